@@ -1,0 +1,64 @@
+/**
+ * What is wrong with, or worth knowing about, what the user gave: plain facts by code and place.
+ * The words are in sentences.ts; nothing else in the project writes a sentence about the user's data.
+ */
+
+/** Where a problem is. Lines are one-based and count the header, as the user's editor does. */
+export interface Place {
+  /** Sheet id (one file, paste or hand-typed sheet). */
+  readonly sheet?: string;
+  /** Sheet name as the user knows it (file name). */
+  readonly sheetName?: string;
+  /** One-based line of the sheet's text. */
+  readonly line?: number;
+  /** Header of the column, or its one-based number where there is no header. */
+  readonly column?: string;
+  /** Record id `sheet/line`. */
+  readonly record?: string;
+  /** Name of a bench entry (session/entries.ts), or `part.2.mass` for the second part's mass. */
+  readonly entry?: string;
+}
+
+/**
+ * stops: a number cannot be had until it is settled · doubt: a number is there and may be wrong ·
+ * note: something was assumed or left out and the number is right if the assumption is.
+ */
+export type Weight = 'stops' | 'doubt' | 'note';
+
+/** One problem. `facts` carries what was found; `effect` what it would change, in standard uncertainties of the run mean. */
+export interface Problem {
+  readonly code: ProblemCode;
+  readonly weight: Weight;
+  readonly place: Place;
+  readonly facts: Readonly<Record<string, string | number>>;
+  readonly effect?: number;
+}
+
+export const PROBLEM_CODES = [
+  // a whole file
+  'file-empty', 'file-binary', 'file-too-large', 'file-no-rows', 'file-other-encoding',
+  'column-missing', 'column-twice', 'column-proposed-by-values', 'decimal-comma-in-comma-file', 'row-ragged', 'same-file-rows-lost',
+  // a cell
+  'cell-not-a-number', 'cell-unknown-unit', 'cell-kind-unknown', 'cell-empty',
+  // a record
+  'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying',
+  // the whole run
+  'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
+  'damping-none', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
+  // a bench entry
+  'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',
+  'bench-unstable', 'bench-inertia-not-positive',
+  // the session file
+  'session-not-json', 'session-not-ours', 'session-newer', 'session-damaged',
+] as const;
+export type ProblemCode = (typeof PROBLEM_CODES)[number];
+
+export function problem(
+  code: ProblemCode,
+  weight: Weight,
+  place: Place,
+  facts: Readonly<Record<string, string | number>> = {},
+  effect?: number,
+): Problem {
+  return effect === undefined ? { code, weight, place, facts } : { code, weight, place, facts, effect };
+}

@@ -1,0 +1,219 @@
+/** What the road returns: plain values in SI units that survive a trip from a worker; screens and exports read this and nothing else. */
+import type { Dimension } from '../units/units.ts';
+import type { Problem } from '../problems/problems.ts';
+import type { RecordKind, Role } from '../readings/meanings.ts';
+import type { Session } from '../session/session.ts';
+
+/** A value with its standard uncertainty, SI. */
+export interface Stated {
+  readonly value: number;
+  readonly u: number;
+}
+
+/** A value with everything that a table prints: u, effective degrees of freedom ν (Infinity where none is finite), coverage factor k for 95 %, U = k·u. SI. */
+export interface Result extends Stated {
+  readonly dof: number;
+  readonly k: number;
+  readonly U: number;
+}
+
+/** How a bench entry was read: the echo that stands beside the field. */
+export interface EntryRead {
+  readonly name: string;
+  readonly label: string;
+  readonly symbol: string;
+  readonly dimension: Dimension;
+  /** null where nothing usable is typed. */
+  readonly value: number | null;
+  readonly u: number;
+  readonly unit: string;
+  readonly distribution: 'normal' | 'rectangular' | 'exact';
+  /** The entry takes part in the present choices (an unused one is kept and greyed). */
+  readonly used: boolean;
+}
+
+/** One line of a chain: reading → angle → corrections → impulse bit. */
+export interface ChainStep {
+  readonly id: string;
+  readonly label: string;
+  readonly symbol: string;
+  readonly equation: string;
+  readonly dimension: Dimension;
+  readonly stated: Stated;
+  /** Multiplying factor that this step applied, where it is one (damping 1.0111). */
+  readonly factor?: number;
+  /** Shown beside the main chain: the other form, the other calibration. */
+  readonly aside?: true;
+}
+
+/** One row of an uncertainty budget (GUM columns). */
+export interface BudgetLine {
+  readonly id: string;
+  readonly label: string;
+  readonly symbol: string;
+  readonly dimension: Dimension;
+  /** null for a line that merges many readings. */
+  readonly estimate: number | null;
+  /** Standard uncertainty of the quantity, SI; null for a merged line. */
+  readonly u: number | null;
+  readonly distribution: string;
+  readonly dof: number;
+  /** Sensitivity coefficient ∂I/∂x, SI; null for a merged line. */
+  readonly sensitivity: number | null;
+  /** Signed c·u in the result's unit (N·s); a merged line has the root of the sum of squares. */
+  readonly contribution: number;
+  /** Share of the variance, in percent with one decimal, rounded so that a budget's shares total exactly 100.0. */
+  readonly share: number;
+  readonly scope: 'common' | 'own' | 'scatter';
+}
+
+export interface Budget {
+  readonly of: Result;
+  readonly lines: readonly BudgetLine[];
+}
+
+/** One record's cells as read. Readings in SI (m or rad), other columns in SI. */
+export interface RecordReadings {
+  readonly rest: number | null;
+  readonly firstSwing: number | null;
+  readonly nextSwings: readonly (number | null)[];
+  readonly time: number | null;
+  readonly voltage: number | null;
+  readonly pressure: number | null;
+  readonly tapImpulse: number | null;
+}
+
+export interface RecordResult {
+  readonly id: string;
+  readonly sheet: string;
+  readonly line: string;
+  /** One-based place in the run, all kinds together. */
+  readonly order: number;
+  readonly kind: RecordKind;
+  /** How the kind is known. */
+  readonly kindBy: 'person' | 'column' | 'sheet' | 'filledIn';
+  readonly label: string;
+  readonly note: string;
+  /** Reason, or null where the record counts. */
+  readonly setAside: string | null;
+  readonly problems: readonly Problem[];
+  readonly readings: RecordReadings;
+  /** First-swing angle from rest, θ_p, rad. */
+  readonly angle: Stated | null;
+  /** Damping-corrected, small-angle-equivalent first swing φ = θ′(0⁺)/ω_n, rad, by the full pendulum. */
+  readonly launch: Stated | null;
+  /** I_bit by each form, with the chosen calibration, N·s. */
+  readonly full: Result | null;
+  readonly smallAngle: Result | null;
+  /** I_bit by each calibration, with the chosen form. */
+  readonly byGeometry: Result | null;
+  readonly byTaps: Result | null;
+  /** The one that counts (chosen form and calibration). For a tap: the impulse at its own lever arm. */
+  readonly impulseBit: Result | null;
+  /** The part of u that is this record's own (readings), N·s: the thick part of the whisker. */
+  readonly ownU: number;
+  /** A tap's stated impulse, N·s. */
+  readonly knownImpulse: Stated | null;
+  /** Angular impulse with its u: of a tap, as stated times its lever arm; of others, K·φ. N·m·s. */
+  readonly angularImpulse: Stated | null;
+}
+
+export interface RunResult {
+  readonly n: number;
+  readonly of: number;
+  readonly mean: Result;
+  /** Standard deviation of the shots, s. NaN never: null for one shot. */
+  readonly scatter: number | null;
+  /** s/√n, or the readings' part where s is smaller or n is 1. */
+  readonly uScatter: number;
+  readonly uCommon: number;
+  /** True where the readings' own uncertainty stood in for a smaller scatter. */
+  readonly readingsInsteadOfScatter: boolean;
+  readonly budget: Budget;
+}
+
+export interface Configuration {
+  readonly name: 'shots' | 'taps';
+  /** J, kg·m²; κ, N·m/rad; ω_n, rad/s; undamped small period T₀, s; ζ; gravity share Mgd/κ. */
+  readonly momentOfInertia: Stated;
+  readonly stiffness: Stated;
+  readonly naturalFrequency: Stated;
+  readonly period: Stated;
+  readonly dampingRatio: Stated;
+  readonly gravityShare: Stated;
+  /** First-peak damping correction D(ζ). */
+  readonly dampingFactor: Stated;
+}
+
+/** One way of knowing the calibration factor of the firing configuration. */
+export interface Calibration {
+  readonly way: 'geometry' | 'taps';
+  /** K, N·m·s/rad. */
+  readonly factor: Result;
+  /** K of the configuration it was taken in, before the change to the firing configuration. */
+  readonly asTaken: Stated;
+  /** √(J_f κ_f/(J_c κ_c)). */
+  readonly change: Stated;
+  readonly taps: number;
+  /** Observed relative scatter of the taps and what their own uncertainties predict. */
+  readonly scatter: number | null;
+  readonly expectedScatter: number | null;
+}
+
+export interface PeriodCheck {
+  /** Undamped zero-amplitude period as timed, and as masses and lengths predict, s, of the configuration it was timed in. */
+  readonly measured: Stated;
+  readonly predicted: Stated;
+  /** (measured − predicted)/u(difference). */
+  readonly inU: number;
+}
+
+export interface Difference {
+  /** (taps − geometry)/geometry, relative. */
+  readonly relative: Stated;
+  readonly inU: number;
+}
+
+/** A column as found in a sheet, with what was proposed and why. */
+export interface SheetColumn {
+  readonly header: string;
+  readonly role: Role;
+  readonly unit: string;
+  readonly by: 'proposal' | 'person';
+}
+
+export interface SheetResult {
+  readonly id: string;
+  readonly name: string;
+  readonly columns: readonly SheetColumn[];
+  /** Rows in order: line, cells as shown (edits applied), record id or null for a row that is no record. */
+  readonly rows: readonly { readonly line: string; readonly cells: readonly string[]; readonly record: string; readonly edited: readonly number[] }[];
+}
+
+export interface Reduction {
+  readonly problems: readonly Problem[];
+  readonly entries: readonly EntryRead[];
+  readonly sheets: readonly SheetResult[];
+  readonly records: readonly RecordResult[];
+  readonly gravity: Stated | null;
+  readonly configurations: { readonly shots: Configuration | null; readonly taps: Configuration | null };
+  /** Where ζ comes from, in a few words, and how many swings it rests on. */
+  readonly damping: { readonly way: 'swings' | 'decrement' | 'ratio' | 'none'; readonly ratio: Stated; readonly logDecrement: Stated; readonly records: number } | null;
+  readonly periodCheck: PeriodCheck | null;
+  readonly calibrations: { readonly geometry: Calibration | null; readonly taps: Calibration | null };
+  readonly chosen: 'geometry' | 'taps';
+  readonly difference: Difference | null;
+  readonly runs: { readonly geometry: RunResult | null; readonly taps: RunResult | null };
+  readonly run: RunResult | null;
+  /** The chosen run with the set-aside shots counted too; null where none is set aside. */
+  readonly runWithSetAside: RunResult | null;
+  /** Blanks, same road: mean and scatter of the pseudo impulse bits; null without blanks. */
+  readonly blanks: { readonly n: number; readonly mean: Stated; readonly scatter: number | null } | null;
+  /** Range of φ of the taps and of the shots that count, rad. */
+  readonly ranges: { readonly taps: readonly [number, number] | null; readonly shots: readonly [number, number] | null };
+  /** The record asked about, opened: chain and budget. */
+  readonly explained: { readonly record: string; readonly chain: readonly ChainStep[]; readonly budget: Budget | null } | null;
+}
+
+/** reduce(session): pure; `explain` names the record whose chain is wanted. */
+export type Reduce = (session: Session, explain: string | null) => Reduction;

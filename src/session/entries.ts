@@ -1,0 +1,57 @@
+/** The bench's quantities: what each is called, its symbol, dimension, usual unit and range. The form, the road and the report all read this one table. */
+import type { Dimension } from '../units/units.ts';
+
+export interface EntryKind {
+  readonly label: string;
+  readonly symbol: string;
+  /** 'reading' takes the dimension of the ruler readings: a length, or an angle where the reading is an angle. */
+  readonly dimension: Dimension | 'reading';
+  /** Unit taken where none is typed. */
+  readonly unit: string;
+  readonly range: 'positive' | 'notNegative' | 'any';
+  /** One line of help: what to measure, from where to where. */
+  readonly hint: string;
+  /** The entry is itself a half-width or a standard uncertainty: "0.2 mm" with the choice of what ± means. */
+  readonly isSpread?: true;
+}
+
+export const ENTRIES = {
+  bobMass: { label: 'Bob mass', symbol: 'm', dimension: 'mass', unit: 'g', range: 'positive', hint: 'everything that swings, taken at one point' },
+  bobDistance: { label: 'Pivot to bob', symbol: 'L', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis to the centre of the bob' },
+  stripMass: { label: 'Strip mass', symbol: 'm', dimension: 'mass', unit: 'g', range: 'positive', hint: 'the rigid strip alone' },
+  stripLength: { label: 'Strip length', symbol: 'L', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis to the free end' },
+  flexureStiffness: { label: 'Flexure stiffness', symbol: 'k_f', dimension: 'rotationalStiffness', unit: 'mN·m/rad', range: 'notNegative', hint: 'flexure, wires and hoses together; leave empty for none' },
+  leverArm: { label: 'Lever arm of the thrust', symbol: 'r_t', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis square to the line of thrust, or to the centre of the plume on the target' },
+  readingRadius: { label: 'Pivot to reading point', symbol: 'R', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis to the tip that moves over the ruler' },
+  rulerHeight: { label: 'Pivot to ruler', symbol: 'H', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis straight down to the ruler’s edge' },
+  screenDistance: { label: 'Mirror to screen', symbol: 'D', dimension: 'length', unit: 'mm', range: 'positive', hint: 'mirror to the flat screen, along the beam at rest' },
+  scaleMark: { label: 'Mark at the plumb point', symbol: 'x_0', dimension: 'length', unit: 'mm', range: 'any', hint: 'ruler reading straight under the pivot (laser: where the beam meets the screen square); empty: each record’s own rest' },
+  scaleFactor: { label: 'Scale of the ruler', symbol: 's', dimension: 'number', unit: '1', range: 'positive', hint: 'true length per length read; empty: 1, exact' },
+  division: { label: 'Read to the nearest', symbol: 'a', dimension: 'reading', unit: 'mm', range: 'positive', hint: 'smallest step in the readings; empty: found from the readings' },
+  readingSpread: { label: 'Eye and judgement', symbol: 'u_eye', dimension: 'reading', unit: 'mm', range: 'notNegative', hint: 'further uncertainty of one reading, beside the division', isSpread: true },
+  logDecrement: { label: 'Log decrement', symbol: 'δ', dimension: 'number', unit: '1', range: 'notNegative', hint: 'natural logarithm of the ratio of two swings on the same side, one full cycle apart' },
+  dampingRatio: { label: 'Damping ratio', symbol: 'ζ', dimension: 'number', unit: '1', range: 'notNegative', hint: 'fraction of critical damping' },
+  gravity: { label: 'Local g', symbol: 'g', dimension: 'acceleration', unit: 'm/s²', range: 'positive', hint: 'acceleration of free fall at the bench' },
+  latitude: { label: 'Latitude', symbol: 'φ', dimension: 'latitude', unit: '°', range: 'any', hint: 'south negative' },
+  height: { label: 'Height', symbol: 'h', dimension: 'length', unit: 'm', range: 'any', hint: 'above sea level' },
+  period: { label: 'Timed period', symbol: 'T', dimension: 'time', unit: 's', range: 'positive', hint: 'one full cycle, there and back' },
+  periodAmplitude: { label: 'Amplitude while timing', symbol: 'A', dimension: 'angle', unit: '°', range: 'notNegative', hint: 'at the start of the timing; empty: small' },
+  periodCycles: { label: 'Cycles timed', symbol: 'N', dimension: 'number', unit: '1', range: 'positive', hint: 'full cycles in one timing; empty: few' },
+  calibrationMass: { label: 'Calibration mass', symbol: 'm_x', dimension: 'mass', unit: 'g', range: 'positive', hint: 'hung on the pendulum for a part of the run only' },
+  calibrationMassDistance: { label: 'Pivot to calibration mass', symbol: 'r_x', dimension: 'length', unit: 'mm', range: 'any', hint: 'below the pivot; above it negative' },
+  calibrationMassInertia: { label: 'Its own inertia', symbol: 'J_x', dimension: 'momentOfInertia', unit: 'g·mm²', range: 'notNegative', hint: 'about its own centre of mass; empty: 0' },
+  tapLeverArm: { label: 'Lever arm of the tap', symbol: 'r_h', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis to the point that the hammer strikes' },
+  hammerFactor: { label: 'Hammer calibration', symbol: 's_h', dimension: 'number', unit: '1', range: 'positive', hint: 'true impulse per impulse stated, common to all taps: 1 ± 2 %' },
+  tapSpread: { label: 'Each tap by itself', symbol: 'u_tap', dimension: 'number', unit: '%', range: 'notNegative', hint: 'uncertainty of one tap’s impulse that the next tap does not share, as a part of it', isSpread: true },
+} as const satisfies Record<string, EntryKind>;
+
+export type EntryName = keyof typeof ENTRIES;
+export const ENTRY_NAMES = Object.keys(ENTRIES) as readonly EntryName[];
+
+/** The three quantities of one part of a built-up body; addressed as `part.1.mass`. */
+export const PART_ENTRIES = {
+  mass: { label: 'Mass', symbol: 'm_i', dimension: 'mass', unit: 'g', range: 'positive', hint: 'of this part' },
+  distance: { label: 'Pivot to its centre of mass', symbol: 'r_i', dimension: 'length', unit: 'mm', range: 'any', hint: 'below the pivot; above it negative' },
+  ownInertia: { label: 'Its own inertia', symbol: 'J_i', dimension: 'momentOfInertia', unit: 'g·mm²', range: 'notNegative', hint: 'about its own centre of mass; a rod or strip hung lengthwise: mL²/12' },
+} as const satisfies Record<string, EntryKind>;
+export type PartEntryName = keyof typeof PART_ENTRIES;

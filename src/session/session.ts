@@ -1,0 +1,111 @@
+/** The session: what the user gave, word for word, with choices and reasons. Nothing computed is in it. */
+import type { ColumnMeaning, RecordKind } from '../readings/meanings.ts';
+import type { EntryName, PartEntryName } from './entries.ts';
+
+/** What the number after ± means (GUM 4.3): a standard uncertainty, limits ±a of a rectangular distribution, or U = k·u. */
+export type PlusMinus = 'standard' | 'limits' | 'expanded';
+
+/** One typed quantity: the text as typed, and what its ± means. */
+export interface Entry {
+  readonly text: string;
+  readonly plusMinus: PlusMinus;
+  /** Coverage factor as typed, used where plusMinus is 'expanded'; '' is 2. */
+  readonly k: string;
+}
+
+export interface Part {
+  readonly id: string;
+  readonly name: string;
+  readonly entries: Readonly<Partial<Record<PartEntryName, Entry>>>;
+}
+
+export interface Choices {
+  readonly form: 'pointBob' | 'uniformStrip' | 'bodyOfParts';
+  readonly readingWay: 'rulerAtTip' | 'rulerUnderLine' | 'laserSpot' | 'angle';
+  /** The scale's numbers fall as the pendulum swings away from the thrust. */
+  readonly scaleRunsBackward: boolean;
+  readonly dampingWay: 'swings' | 'decrement' | 'ratio' | 'none';
+  readonly gravityWay: 'typed' | 'place';
+  /** How stiffness and inertia are known (methods: routes A and B; 'masses' leaves a period as a check only). */
+  readonly route: 'masses' | 'massesAndPeriod' | 'inertiaAndPeriod';
+  readonly periodTimedAs: 'shots' | 'taps';
+  readonly calibrationMassHung: 'never' | 'taps' | 'shots' | 'always';
+  readonly calibration: 'geometry' | 'taps';
+  readonly swingForm: 'full' | 'smallAngle';
+}
+
+/** One file, one paste, or the rows typed by hand. */
+export interface Sheet {
+  readonly id: string;
+  readonly name: string;
+  readonly origin: 'file' | 'paste' | 'typed';
+  /** The text as it came, word for word; '' for a typed sheet. */
+  readonly text: string;
+  /** SHA-256 of the bytes as they came, lower-case hex; '' for a typed sheet. */
+  readonly sha256: string;
+  /** Person's overrides of how the text is cut; absent: as found. */
+  readonly delimiter?: ',' | ';' | '\t';
+  readonly decimal?: '.' | ',';
+  /** Meaning of each column, in order. */
+  readonly columns: readonly ColumnMeaning[];
+  /** Kind of every record that has no kind of its own; null: told from what is filled in. */
+  readonly kindOfAll: RecordKind | null;
+  /** Cells typed over, by line of the text and column index. */
+  readonly edits: Readonly<Record<string, Readonly<Record<number, string>>>>;
+  /** Rows typed by hand, after those of the text; addressed as line `+1`, `+2`, … by their id. */
+  readonly added: readonly { readonly id: string; readonly cells: readonly string[] }[];
+}
+
+/** What a person decided about one record. */
+export interface Mark {
+  readonly setAside?: { readonly reason: string };
+  readonly kind?: RecordKind;
+}
+
+export interface Session {
+  readonly format: 'firstswing-session';
+  readonly version: 1;
+  readonly title: { readonly name: string; readonly place: string; readonly date: string; readonly remark: string };
+  /** An invented scenario, shown as such everywhere. */
+  readonly demo: boolean;
+  readonly entries: Readonly<Partial<Record<EntryName, Entry>>>;
+  readonly parts: readonly Part[];
+  /** Turning readings of one free swing, in order, typed as a list with its unit: "31.6 -29.1 26.9 mm"; '' for none. */
+  readonly freeSwing: string;
+  readonly choices: Choices;
+  readonly sheets: readonly Sheet[];
+  /** By record id `sheet id/line`. */
+  readonly marks: Readonly<Record<string, Mark>>;
+}
+
+export const FIRST_CHOICES: Choices = {
+  form: 'uniformStrip',
+  readingWay: 'rulerAtTip',
+  scaleRunsBackward: false,
+  dampingWay: 'swings',
+  gravityWay: 'typed',
+  route: 'masses',
+  periodTimedAs: 'shots',
+  calibrationMassHung: 'never',
+  calibration: 'geometry',
+  swingForm: 'full',
+};
+
+export function emptySession(): Session {
+  return {
+    format: 'firstswing-session',
+    version: 1,
+    title: { name: '', place: '', date: '', remark: '' },
+    demo: false,
+    entries: {},
+    parts: [],
+    freeSwing: '',
+    choices: FIRST_CHOICES,
+    sheets: [],
+    marks: {},
+  };
+}
+
+export const entry = (text: string, plusMinus: PlusMinus = 'standard', k = ''): Entry => ({ text, plusMinus, k });
+
+export const recordId = (sheet: string, line: string | number): string => `${sheet}/${line}`;
