@@ -38,8 +38,9 @@ export const PROBLEM_CODES = [
   // a whole file
   'file-empty', 'file-binary', 'file-too-large', 'file-no-rows', 'file-other-encoding',
   'column-missing', 'column-twice', 'column-proposed-by-values', 'decimal-comma-in-comma-file', 'row-ragged', 'same-file-rows-lost',
+  'quote-not-closed', 'decimal-marks-mixed', 'column-unit-assumed',
   // a cell
-  'cell-not-a-number', 'cell-unknown-unit', 'cell-kind-unknown', 'cell-empty',
+  'cell-not-a-number', 'cell-unknown-unit', 'cell-wrong-kind-of-unit', 'cell-kind-unknown', 'cell-empty',
   // a record
   'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying',
   // the whole run
@@ -47,7 +48,7 @@ export const PROBLEM_CODES = [
   'damping-none', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
   // a bench entry
   'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',
-  'bench-unstable', 'bench-inertia-not-positive',
+  'bench-unstable', 'bench-inertia-not-positive', 'gravity-assumed',
   // the session file
   'session-not-json', 'session-not-ours', 'session-newer', 'session-damaged',
 ] as const;

@@ -1,0 +1,161 @@
+/** The bench: the pendulum drawn to scale, and beside the drawing every quantity that was measured on it. */
+import { useMemo, useState } from 'react';
+import type { FocusEvent, ReactNode } from 'react';
+import type { Problem } from '../../problems/problems.ts';
+import { sentence } from '../../problems/sentences.ts';
+import { entriesInUse } from '../../reduction/entries.ts';
+import type { EntryRead } from '../../reduction/results.ts';
+import { setChoice, setEntry, setFreeSwing } from '../../session/edits.ts';
+import { ENTRIES } from '../../session/entries.ts';
+import type { EntryKind, EntryName } from '../../session/entries.ts';
+import type { Choices } from '../../session/session.ts';
+import { useActions, useStore } from '../../store/hooks.tsx';
+import styles from './bench.module.css';
+import { BenchDrawing } from './BenchDrawing.tsx';
+import { ChoiceField } from './ChoiceField.tsx';
+import { EntryField } from './EntryField.tsx';
+import { CAUTIONS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, READING_WAYS, ROUTES, SWING_FORMS } from './groups.ts';
+import type { GroupName } from './groups.ts';
+import { PartsTable } from './PartsTable.tsx';
+
+const NO_PROBLEMS: readonly Problem[] = [];
+
+export function BenchSection() {
+  const { change } = useActions();
+  const entries = useStore((state) => state.session.entries);
+  const choices = useStore((state) => state.session.choices);
+  const parts = useStore((state) => state.session.parts);
+  const freeSwing = useStore((state) => state.session.freeSwing);
+  const readings = useStore((state) => state.reduction?.entries);
+  const problems = useStore((state) => state.reduction?.problems);
+  const [focused, setFocused] = useState<string | null>(null);
+
+  const reads = useMemo(() => new Map(readings?.map((read) => [read.name, read])), [readings]);
+  const problemsByEntry = useMemo(() => Map.groupBy(problems ?? [], (problem) => problem.place.entry ?? ''), [problems]);
+  const used = useMemo(() => entriesInUse(choices).used, [choices]);
+  const readOf = (name: string): EntryRead | undefined => reads.get(name);
+  const problemsOf = (name: string): readonly Problem[] => problemsByEntry.get(name) ?? NO_PROBLEMS;
+  const choose = <Name extends keyof Choices>(name: Name, what: string) => (value: Choices[Name]) => change(what, setChoice(name, value));
+
+  function fields(group: GroupName) {
+    const shown = GROUP_ENTRIES[group].filter((name) => used.has(name) || entries[name] !== undefined);
+    return shown.map((name: EntryName) => {
+      const kind: EntryKind = ENTRIES[name];
+      return (
+        <EntryField
+          key={name}
+          name={name}
+          kind={kind.dimension === 'reading' && choices.readingWay === 'angle' ? { ...kind, unit: 'mrad' } : kind}
+          entry={entries[name]}
+          read={readOf(name)}
+          problems={used.has(name) ? problemsOf(name) : NO_PROBLEMS}
+          unused={!used.has(name)}
+          onChange={(patch) => change(kind.label.toLowerCase(), setEntry(name, patch), `entry.${name}`)}
+        />
+      );
+    });
+  }
+
+  const noteFocus = (event: FocusEvent) => setFocused(event.target.id.replace(/^entry-/, ''));
+  return (
+    <section id="bench" aria-labelledby="bench-title" className={styles.bench} onFocus={noteFocus} onBlur={() => setFocused(null)}>
+      <h2 id="bench-title" tabIndex={-1}>Bench</h2>
+      <p className="quiet">
+        Type each quantity with its unit and its uncertainty: <span className="num">118.0 ± 0.3 mm</span>, <span className="num">118.0(3) mm</span>, <span className="num">12,5 g</span>.
+      </p>
+      <div className={styles.columns}>
+        <BenchDrawing choices={choices} parts={parts} reads={reads} focused={focused} />
+        <div className={styles.groups}>
+          <Group name="Pendulum">
+            <ChoiceField name="form" legend="Form" value={choices.form} options={FORMS} onChoose={choose('form', 'form of the pendulum')} />
+            {choices.form === 'bodyOfParts' && <PartsTable parts={parts} readOf={readOf} problemsOf={problemsOf} change={change} />}
+            {fields('Pendulum')}
+          </Group>
+          <Group name="Thrust">
+            {fields('Thrust')}
+            <Caution words={CAUTIONS.charge} />
+            <Caution words={CAUTIONS.vacuum} />
+          </Group>
+          <Group name="Reading">
+            <ChoiceField name="readingWay" legend="Read as" value={choices.readingWay} options={READING_WAYS} onChoose={choose('readingWay', 'way of reading')} />
+            {choices.readingWay === 'laserSpot' && <Caution words={CAUTIONS.laser} />}
+            {fields('Reading')}
+            <label className={styles.check} id="choice-scaleRunsBackward" tabIndex={-1}>
+              <input
+                type="checkbox"
+                checked={choices.scaleRunsBackward}
+                onChange={(event) => change('direction of the scale', setChoice('scaleRunsBackward', event.target.checked))}
+              />
+              The scale’s numbers fall as the pendulum swings away from the thrust
+            </label>
+          </Group>
+          <Group name="Swing and damping">
+            <ChoiceField name="swingForm" legend="Impulse bit by" value={choices.swingForm} options={SWING_FORMS} onChoose={choose('swingForm', 'form of the swing')} />
+            <ChoiceField name="dampingWay" legend="Damping from" value={choices.dampingWay} options={DAMPING_WAYS} onChoose={choose('dampingWay', 'damping from')} />
+            {fields('Swing and damping')}
+            {(choices.dampingWay === 'swings' || freeSwing !== '') && (
+              <FreeSwing text={freeSwing} problems={problemsOf('freeSwing')} onChange={(text) => change('free swing', setFreeSwing(text), 'freeSwing')} />
+            )}
+          </Group>
+          <Group name="Local g">
+            <ChoiceField name="gravityWay" legend="Known" value={choices.gravityWay} options={GRAVITY_WAYS} onChoose={choose('gravityWay', 'local g')} />
+            {fields('Local g')}
+          </Group>
+          <Group name="Timed period">
+            <ChoiceField name="route" legend="Stiffness and inertia from" value={choices.route} options={ROUTES} onChoose={choose('route', 'route')} />
+            {fields('Timed period')}
+            <ChoiceField name="periodTimedAs" legend="Timed with the pendulum" value={choices.periodTimedAs} options={PERIOD_TIMED} onChoose={choose('periodTimedAs', 'period timed as')} />
+          </Group>
+          <Group name="Calibration mass">
+            <ChoiceField name="calibrationMassHung" legend="Hung on the pendulum" value={choices.calibrationMassHung} options={MASS_HUNG} onChoose={choose('calibrationMassHung', 'calibration mass hung')} />
+            {fields('Calibration mass')}
+          </Group>
+          <Group name="Taps">
+            {fields('Taps')}
+            <Caution words={CAUTIONS.hammer} />
+          </Group>
+        </div>
+      </div>
+    </section>
+  );
+}
+
+function Group({ name, children }: { readonly name: GroupName; readonly children: ReactNode }) {
+  return (
+    <div className={styles.group} role="group" aria-label={name}>
+      <h3>{name}</h3>
+      {children}
+    </div>
+  );
+}
+
+function Caution({ words }: { readonly words: string }) {
+  return <p className={styles.caution}>{words}</p>;
+}
+
+interface FreeSwingProps {
+  readonly text: string;
+  readonly problems: readonly Problem[];
+  readonly onChange: (text: string) => void;
+}
+
+function FreeSwing({ text, problems, onChange }: FreeSwingProps) {
+  return (
+    <div className={styles.freeSwing}>
+      <label htmlFor="entry-freeSwing">Free swing</label>
+      <textarea
+        id="entry-freeSwing"
+        rows={2}
+        spellCheck={false}
+        placeholder="31.6 −29.1 26.9 mm"
+        aria-describedby="entry-freeSwing-below"
+        value={text}
+        onChange={(event) => onChange(event.target.value)}
+      />
+      <div id="entry-freeSwing-below" className="quiet">
+        turning readings of one free swing, side after side, with the unit; empty: the swings of the records alone
+        {problems.map((problem) => <p key={problem.code} className="look">{sentence(problem)}</p>)}
+      </div>
+    </div>
+  );
+}

@@ -1,0 +1,93 @@
+/** One quantity as a person types it: value, unit and ± in one field, what the ± means, and beneath how it was read. */
+import type { Problem } from '../../problems/problems.ts';
+import type { EntryRead } from '../../reduction/results.ts';
+import type { EntryKind } from '../../session/entries.ts';
+import { BLANK_ENTRY } from '../../session/edits.ts';
+import type { Entry, PlusMinus } from '../../session/session.ts';
+import { sentence } from '../../problems/sentences.ts';
+import { echoOf, SymbolText } from '../words.tsx';
+import styles from './EntryField.module.css';
+
+interface Props {
+  /** Name of the entry, `leverArm` or `part.p1.mass`. */
+  readonly name: string;
+  readonly kind: EntryKind;
+  readonly entry: Entry | undefined;
+  readonly read: EntryRead | undefined;
+  readonly problems: readonly Problem[];
+  /** Kept, and without effect under the present choices. */
+  readonly unused?: boolean;
+  readonly onChange: (patch: Partial<Entry>) => void;
+}
+
+/** What ± can mean; the short words stand in the field, the long ones explain them. */
+const PLUS_MINUS: readonly (readonly [PlusMinus, string])[] = [
+  ['standard', '± is u'],
+  ['limits', '± limits'],
+  ['expanded', '± is U, k ='],
+];
+/** The same of an entry that is itself an uncertainty. */
+const SPREAD: readonly (readonly [PlusMinus, string])[] = [
+  ['standard', 'as u'],
+  ['limits', 'as ± limits'],
+  ['expanded', 'as U, k ='],
+];
+
+export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, unused = false, onChange }: Props) {
+  const id = `entry-${name}`;
+  const below = `${id}-below`;
+  const isSpread = kind.isSpread === true;
+  const echo = read === undefined || entry.text.trim() === '' ? null : echoOf(read, isSpread);
+  const stopped = entry.text.trim() !== '' && problems.some((problem) => problem.weight === 'stops');
+  return (
+    <div className={unused ? `${styles.row} ${styles.unused}` : styles.row}>
+      <label className={styles.label} htmlFor={id}>
+        {kind.label} <span className={styles.symbol}><SymbolText symbol={kind.symbol} /></span>
+      </label>
+      <input
+        id={id}
+        className={styles.input}
+        type="text"
+        autoComplete="off"
+        spellCheck={false}
+        value={entry.text}
+        placeholder={kind.unit === '1' ? '' : kind.unit}
+        aria-describedby={below}
+        aria-invalid={stopped}
+        onChange={(event) => onChange({ text: event.target.value })}
+      />
+      <span className={styles.meaning}>
+        <select
+          aria-label={`${kind.label}: what ± means`}
+          title="u: standard uncertainty · limits: nothing lies outside, rectangular · U: expanded, with its coverage factor k"
+          value={entry.plusMinus}
+          onChange={(event) => {
+            const chosen = PLUS_MINUS.find(([value]) => value === event.target.value);
+            if (chosen !== undefined) onChange({ plusMinus: chosen[0] });
+          }}
+        >
+          {(isSpread ? SPREAD : PLUS_MINUS).map(([value, words]) => <option key={value} value={value}>{words}</option>)}
+        </select>
+        {entry.plusMinus === 'expanded' && (
+          <input
+            className={styles.k}
+            type="text"
+            inputMode="decimal"
+            autoComplete="off"
+            aria-label={`${kind.label}: coverage factor k`}
+            placeholder="2"
+            value={entry.k}
+            onChange={(event) => onChange({ k: event.target.value })}
+          />
+        )}
+      </span>
+      <div id={below} className={styles.below}>
+        <span className={echo === null ? styles.hint : 'num'}>{echo ?? kind.hint}</span>
+        {unused && <span> · not used by the present choices</span>}
+        {problems.map((problem) => (
+          <p key={problem.code} className={problem.weight === 'note' ? styles.note : 'look'}>{sentence(problem)}</p>
+        ))}
+      </div>
+    </div>
+  );
+}

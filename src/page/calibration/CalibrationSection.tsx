@@ -1,0 +1,38 @@
+/** The calibration: the pendulum as fired and as tapped, its factor by geometry and by taps, and which of them counts. */
+import { useMemo } from 'react';
+import type { Reduction } from '../../reduction/results.ts';
+import { tapsAndShots } from '../../plots/tapsAndShots.ts';
+import { useActions, useStore } from '../../store/hooks.tsx';
+import { FigureView } from '../plot/FigureView.tsx';
+import { useInks } from '../plot/useInks.ts';
+import { openRecord } from '../record/openRecord.ts';
+import { CalibrationFactors } from './CalibrationFactors.tsx';
+import { Configurations } from './Configurations.tsx';
+import { SwingForm } from './SwingForm.tsx';
+import styles from './calibration.module.css';
+
+export function CalibrationSection() {
+  const reduction = useStore((state) => state.reduction);
+  return (
+    <section id="calibration" className={styles.section} aria-labelledby="calibration-heading">
+      <h2 id="calibration-heading">Calibration</h2>
+      {reduction === null ? <p className="quiet">No readings yet.</p> : (
+        <>
+          <CalibrationFactors reduction={reduction} />
+          <TapsFigure reduction={reduction} />
+          <Configurations reduction={reduction} />
+          <SwingForm reduction={reduction} />
+        </>
+      )}
+    </section>
+  );
+}
+
+function TapsFigure({ reduction }: { readonly reduction: Reduction }) {
+  const selected = useStore((state) => state.selected);
+  const { select } = useActions();
+  const inks = useInks();
+  const figure = useMemo(() => tapsAndShots(reduction, inks), [reduction, inks]);
+  if (figure.marks.length === 0) return null;
+  return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={openRecord} />;
+}

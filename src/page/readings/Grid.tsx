@@ -1,0 +1,298 @@
+/** A sheet of readings to look at and to type in, with the keys of a spreadsheet. */
+import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
+import type { ClipboardEvent, FocusEvent, KeyboardEvent, MouseEvent } from 'react';
+import { addRow, countAgain, removeAddedRow, setKind } from '../../session/edits.ts';
+import type { Session, Sheet } from '../../session/session.ts';
+import type { RecordResult } from '../../reduction/results.ts';
+import type { Unit } from '../../units/units.ts';
+import { useActions, useStore } from '../../store/hooks.tsx';
+import { blockOfText, textOfBlock } from './block.ts';
+import { CellLine } from './CellLine.tsx';
+import { GridHead } from './GridHead.tsx';
+import { GridRow } from './GridRow.tsx';
+import type { RowActs } from './GridRow.tsx';
+import { FIRST_CELL, gridColumns } from './gridColumns.ts';
+import { emptied, pasted, typedOver } from './gridEdits.ts';
+import { blockBetween, covers, moved, tabbed, typesText } from './gridKeys.ts';
+import type { Block, Spot } from './gridKeys.ts';
+import { useNotices } from './notices.ts';
+import { useRowWindow } from './rowWindow.ts';
+import { lineWords } from './sheetRows.ts';
+import type { ShownRow, ShownSheet } from './sheetRows.ts';
+import { KIND_LABELS, counted } from './tradeWords.ts';
+import styles from './grid.module.css';
+
+interface GridProps {
+  readonly sheet: Sheet;
+  readonly shown: ShownSheet;
+  readonly results: ReadonlyMap<string, RecordResult>;
+  readonly marks: Session['marks'];
+  readonly impulseUnit: Unit;
+  /** Opens the question why a record is set aside. */
+  readonly askReason: (row: ShownRow) => void;
+}
+
+export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: GridProps) {
+  const { change, select } = useActions();
+  const notices = useNotices();
+  const selected = useStore((state) => state.selected);
+  const [cursor, setCursor] = useState<Spot>({ row: 0, column: FIRST_CELL });
+  const [corner, setCorner] = useState<Spot | null>(null);
+  const [typing, setTyping] = useState<string | null>(null);
+  /** The entry field was opened by a keystroke: arrows leave it, as nothing is there yet to move through. */
+  const begunByKey = useRef(false);
+  const toFocus = useRef(false);
+  const lineStart = useRef(FIRST_CELL);
+  const rowWindow = useRowWindow(shown.rows.length);
+  const columns = useMemo(() => gridColumns(shown), [shown]);
+  const takesEntry = useMemo(() => columns.map(({ is }) => is === 'cell' || is === 'kind' || is === 'aside'), [columns]);
+  const extent = { rows: shown.rows.length, columns: columns.length, page: rowWindow.page };
+  const row = shown.rows[cursor.row];
+  const block = corner === null ? null : blockBetween(cursor, corner);
+  const cellAt = (column: number): number | null => {
+    const found = columns[column];
+    return found?.is === 'cell' ? found.cell.index : null;
+  };
+
+  useLayoutEffect(() => {
+    if (!toFocus.current || typing !== null) return;
+    toFocus.current = false;
+    rowWindow.frame.current?.querySelector<HTMLElement>(`[data-spot="${cursor.row}:${cursor.column}"]`)?.focus();
+  });
+
+  // A record selected in a picture comes into sight here; one selected here is in sight already.
+  useEffect(() => {
+    const at = selected === null ? -1 : shown.rows.findIndex(({ record }) => record === selected);
+    if (at >= 0) rowWindow.bring(at);
+    // Only a new selection scrolls.
+  }, [selected]);
+
+  function goTo(spot: Spot) {
+    setTyping(null);
+    setCorner(null);
+    setCursor(spot);
+    toFocus.current = true;
+    rowWindow.bring(spot.row);
+  }
+
+  function begin(text: string, byKey: boolean) {
+    if (cellAt(cursor.column) === null) return;
+    begunByKey.current = byKey;
+    setCorner(null);
+    setTyping(text);
+  }
+
+  /** Keeps what was typed into the cursor's cell. */
+  function keep(text: string) {
+    const cell = cellAt(cursor.column);
+    setTyping(null);
+    if (row === undefined || cell === null) return;
+    const edit = text.trim() === (row.cells[cell] ?? '').trim() ? null : typedOver(sheet.id, row, cell, text.trim());
+    if (edit !== null) change(`${shown.columns[cell]?.header ?? 'cell'}, ${lineWords(row.line)}`, edit);
+  }
+
+  /** Down one row; below the last row typed by hand, a new one. */
+  function nextLine(column: number) {
+    if (cursor.row + 1 >= extent.rows && (sheet.origin === 'typed' || row?.typed === true)) {
+      change('add a row', addRow(sheet.id));
+      goTo({ row: cursor.row + 1, column: lineStart.current });
+    } else {
+      goTo({ row: Math.min(cursor.row + 1, extent.rows - 1), column });
+    }
+  }
+
+  function keyWhileTyping(event: KeyboardEvent<HTMLElement>, field: HTMLInputElement) {
+    if (event.nativeEvent.isComposing) return;
+    const arrow = begunByKey.current && event.key.startsWith('Arrow') ? moved(cursor, event, extent) : null;
+    const tab = event.key === 'Tab' ? tabbed(cursor, event.shiftKey, takesEntry) : null;
+    if (event.key === 'Escape') {
+      event.preventDefault();
+      event.stopPropagation();
+      goTo(cursor);
+    } else if (event.key === 'Enter') {
+      event.preventDefault();
+      keep(field.value);
+      nextLine(Math.max(FIRST_CELL, lineStart.current));
+    } else if (arrow !== null || tab !== null) {
+      event.preventDefault();
+      keep(field.value);
+      goTo(arrow ?? tab ?? cursor);
+    } else if (event.key === 'F2') {
+      begunByKey.current = false;
+    }
+  }
+
+  function onKeyDown(event: KeyboardEvent<HTMLElement>) {
+    if (event.defaultPrevented) return;
+    if (event.target instanceof HTMLInputElement) return keyWhileTyping(event, event.target);
+    // Alt with an arrow opens a list.
+    if (event.altKey) return;
+    const spot = moved(cursor, event, extent);
+    const cell = cellAt(cursor.column);
+    if (spot !== null) {
+      event.preventDefault();
+      const from = corner ?? cursor;
+      goTo(spot);
+      if (event.shiftKey && cellAt(from.column) !== null && cellAt(spot.column) !== null) setCorner(from);
+      else lineStart.current = Math.max(FIRST_CELL, spot.column);
+    } else if (event.key === 'Tab') {
+      const next = tabbed(cursor, event.shiftKey, takesEntry);
+      if (next === null) return;
+      event.preventDefault();
+      goTo(next);
+    } else if (event.key === 'Escape') {
+      setCorner(null);
+    } else if (cell !== null && row !== undefined) {
+      keyOnCell(event, row, cell);
+    }
+  }
+
+  function keyOnCell(event: KeyboardEvent<HTMLElement>, at: ShownRow, cell: number) {
+    if (event.key === 'Enter' || event.key === 'F2') {
+      event.preventDefault();
+      begin(at.cells[cell] ?? '', false);
+    } else if (event.key === 'Delete' || event.key === 'Backspace') {
+      event.preventDefault();
+      const over: Block = blockBetween(cursor, corner ?? cursor);
+      const edit = emptied(sheet.id, shown, { ...over, left: over.left - FIRST_CELL, right: over.right - FIRST_CELL });
+      if (edit !== null) change(corner === null ? `empty ${lineWords(at.line)}` : 'empty cells', edit);
+    } else if (typesText(event)) {
+      event.preventDefault();
+      begin(event.key, true);
+    }
+  }
+
+  function spotOf(target: EventTarget): Spot | null {
+    const spot = target instanceof Element ? target.closest<HTMLElement>('[data-spot]')?.dataset.spot?.split(':').map(Number) : undefined;
+    return spot?.[0] === undefined || spot[1] === undefined ? null : { row: spot[0], column: spot[1] };
+  }
+
+  function onFocus(event: FocusEvent<HTMLElement>) {
+    const spot = spotOf(event.target);
+    if (spot === null) return;
+    if (spot.row !== cursor.row || spot.column !== cursor.column) setCursor(spot);
+    select(shown.rows[spot.row]?.record ?? null);
+  }
+
+  function onMouseDown(event: MouseEvent<HTMLElement>) {
+    const spot = spotOf(event.target);
+    if (spot === null || event.target instanceof HTMLInputElement) return;
+    if (event.shiftKey && cellAt(spot.column) !== null && cellAt(cursor.column) !== null) {
+      event.preventDefault();
+      setCorner(corner ?? cursor);
+      setCursor(spot);
+      toFocus.current = true;
+    } else {
+      setCorner(null);
+      lineStart.current = Math.max(FIRST_CELL, spot.column);
+    }
+  }
+
+  function onDoubleClick(event: MouseEvent<HTMLElement>) {
+    const spot = spotOf(event.target);
+    const cell = spot === null ? null : cellAt(spot.column);
+    if (spot === null || cell === null || event.target instanceof HTMLInputElement) return;
+    setCursor(spot);
+    begunByKey.current = false;
+    setTyping(shown.rows[spot.row]?.cells[cell] ?? '');
+  }
+
+  function onCopy(event: ClipboardEvent<HTMLElement>) {
+    if (event.target instanceof HTMLInputElement || cellAt(cursor.column) === null) return;
+    event.preventDefault();
+    const over = blockBetween(cursor, corner ?? cursor);
+    const rows = shown.rows.slice(over.top, over.bottom + 1);
+    const cells = rows.map((one) => Array.from({ length: over.right - over.left + 1 }, (_, i) => one.cells[over.left - FIRST_CELL + i] ?? ''));
+    event.clipboardData.setData('text/plain', textOfBlock(cells));
+  }
+
+  function onPaste(event: ClipboardEvent<HTMLElement>) {
+    // A paste into the sheet is no new sheet, so it goes no further up the page.
+    event.stopPropagation();
+    const text = event.clipboardData.getData('text/plain');
+    if (text === '' || (event.target instanceof HTMLInputElement && !/[\t\n\r]/.test(text.trimEnd()))) return;
+    event.preventDefault();
+    setTyping(null);
+    const over = blockBetween(cursor, corner ?? cursor);
+    const from = { row: over.top, column: Math.max(0, Math.min(over.left - FIRST_CELL, shown.columns.length - 1)) };
+    const laid = pasted(sheet, shown, from, blockOfText(text));
+    if (laid.edit !== null) change('paste cells', laid.edit);
+    const said = [
+      ...(laid.rowsAdded > 0 ? [`${counted(laid.rowsAdded, 'row')} added below to hold the pasted cells.`] : []),
+      ...(laid.columnsLeftOut > 0 ? [`${counted(laid.columnsLeftOut, 'pasted column')} beyond the last of ${sheet.name} left out.`] : []),
+    ];
+    if (said.length > 0) notices.say({ tone: laid.columnsLeftOut > 0 ? 'look' : 'told', sentences: said, sheet: sheet.id });
+    goTo({ row: from.row, column: from.column + FIRST_CELL });
+  }
+
+  const latest = useRef({ keep, typing, askReason });
+  latest.current = { keep, typing, askReason };
+  const acts = useMemo((): RowActs => ({
+    setKind: (at, kind) => change(kind === null ? `kind of ${lineWords(at.line)} as told` : `${lineWords(at.line)} is a ${KIND_LABELS[kind]}`, setKind(at.record, kind)),
+    askReason: (at) => latest.current.askReason(at),
+    countAgain: (at) => change(`count ${lineWords(at.line)} again`, countAgain(at.record)),
+    remove: (at) => change(`remove ${lineWords(at.line)}`, removeAddedRow(sheet.id, at.line)),
+    leaveCell: (text) => {
+      if (latest.current.typing !== null) latest.current.keep(text);
+    },
+  }), [change, sheet.id]);
+  const restore = useCallback((at: ShownRow, cell: number) => {
+    const edit = typedOver(sheet.id, at, cell, at.came[cell] ?? '');
+    if (edit !== null) change(`restore ${lineWords(at.line)}`, edit);
+  }, [change, sheet.id]);
+
+  const tabRow = cursor.row >= rowWindow.first && cursor.row < rowWindow.last ? cursor.row : rowWindow.first;
+  const rendered = shown.rows.slice(rowWindow.first, rowWindow.last);
+  const cell = cellAt(cursor.column);
+  return (
+    <>
+      <div ref={rowWindow.frame} className={rowWindow.windowed ? `${styles.frame} ${styles.long}` : styles.frame} onScroll={rowWindow.onScroll}>
+        <table
+          role="grid"
+          aria-label={`Readings of ${sheet.name}`}
+          aria-rowcount={shown.rows.length + 1}
+          aria-colcount={columns.length}
+          aria-multiselectable="true"
+          className={styles.grid}
+          onKeyDown={onKeyDown}
+          onFocus={onFocus}
+          onMouseDown={onMouseDown}
+          onDoubleClick={onDoubleClick}
+          onCopy={onCopy}
+          onPaste={onPaste}
+        >
+          <GridHead columns={columns} impulseUnit={impulseUnit} />
+          <tbody role="rowgroup">
+            {rowWindow.first > 0 && <tr aria-hidden="true" className={styles.unseen} style={{ height: rowWindow.first * rowWindow.rowHeight }} />}
+            {rendered.map((one, i) => {
+              const index = rowWindow.first + i;
+              const inBlock = block !== null && covers(block, index, block.left);
+              return (
+                <GridRow
+                  key={one.line}
+                  row={one}
+                  index={index}
+                  gridColumns={columns}
+                  columns={shown.columns}
+                  result={results.get(one.record)}
+                  mark={marks[one.record]}
+                  impulseUnit={impulseUnit}
+                  selected={selected === one.record}
+                  tabColumn={index === tabRow ? cursor.column : null}
+                  stretchFrom={inBlock ? block.left : null}
+                  stretchTo={inBlock ? block.right : null}
+                  typing={index === cursor.row ? typing : null}
+                  acts={acts}
+                />
+              );
+            })}
+            {rowWindow.last < shown.rows.length && (
+              <tr aria-hidden="true" className={styles.unseen} style={{ height: (shown.rows.length - rowWindow.last) * rowWindow.rowHeight }} />
+            )}
+          </tbody>
+        </table>
+      </div>
+      {row !== undefined && <CellLine row={row} column={cell === null ? null : (shown.columns[cell] ?? null)} result={results.get(row.record)} onRestore={restore} />}
+    </>
+  );
+}

@@ -1,0 +1,162 @@
+/** One row of a sheet's grid. */
+import { memo } from 'react';
+import { alignedParts } from '../../units/format.ts';
+import type { Unit } from '../../units/units.ts';
+import { sentence } from '../../problems/sentences.ts';
+import type { RecordKind } from '../../readings/meanings.ts';
+import type { Mark } from '../../session/session.ts';
+import type { RecordResult, Result } from '../../reduction/results.ts';
+import { KindMark } from './KindMark.tsx';
+import { KindSelect } from './KindSelect.tsx';
+import { columnOfProblem } from './gridColumns.ts';
+import type { GridColumn } from './gridColumns.ts';
+import { lineWords } from './sheetRows.ts';
+import type { ShownColumn, ShownRow } from './sheetRows.ts';
+import styles from './grid.module.css';
+
+export interface RowActs {
+  readonly setKind: (row: ShownRow, kind: RecordKind | null) => void;
+  readonly askReason: (row: ShownRow) => void;
+  readonly countAgain: (row: ShownRow) => void;
+  readonly remove: (row: ShownRow) => void;
+  /** The cell's entry field was left: what it holds is kept. */
+  readonly leaveCell: (text: string) => void;
+}
+
+export interface GridRowProps {
+  readonly row: ShownRow;
+  readonly index: number;
+  readonly gridColumns: readonly GridColumn[];
+  readonly columns: readonly ShownColumn[];
+  readonly result: RecordResult | undefined;
+  readonly mark: Mark | undefined;
+  readonly impulseUnit: Unit;
+  readonly selected: boolean;
+  /** Column that Tab reaches; null where the cursor is in another row. */
+  readonly tabColumn: number | null;
+  /** First and last column of the stretched selection in this row; null for none. */
+  readonly stretchFrom: number | null;
+  readonly stretchTo: number | null;
+  /** Text that the entry field opens with, in the cursor's cell; null while nothing is typed. */
+  readonly typing: string | null;
+  readonly acts: RowActs;
+}
+
+export const GridRow = memo(function GridRow(props: GridRowProps) {
+  const { row, index, gridColumns, columns, result, mark, selected, tabColumn, stretchFrom, stretchTo, typing, acts } = props;
+  const setAside = mark?.setAside;
+  const problems = result?.problems ?? [];
+  const looksId = `looks-${row.record}`;
+  const faulty = new Set(problems.map((problem) => columnOfProblem(problem, columns)));
+  const spot = (column: number) => ({ 'data-spot': `${index}:${column}`, tabIndex: column === tabColumn ? 0 : -1 });
+  const name = lineWords(row.line);
+
+  function cellOf(column: GridColumn, at: number) {
+    switch (column.is) {
+      case 'row':
+        return (
+          <th key="row" scope="row" role="rowheader" aria-colindex={at + 1} className={styles.line} {...spot(at)}>
+            {result !== undefined && <KindMark kind={result.kind} setAside={setAside !== undefined} />}
+            <span className={styles.lineNumber}>{row.line}</span>
+          </th>
+        );
+      case 'kind':
+        return (
+          <td key="kind" role="gridcell" aria-colindex={at + 1} className={styles.kind}>
+            <KindSelect name={name} mark={mark?.kind} result={result} spot={spot(at)} onKind={(kind) => acts.setKind(row, kind)} />
+          </td>
+        );
+      case 'cell': {
+        const { cell } = column;
+        const came = row.came[cell.index];
+        const wrong = faulty.has(cell.index);
+        const stretched = stretchFrom !== null && stretchTo !== null && at >= stretchFrom && at <= stretchTo;
+        const classes = [styles.cell, came === undefined ? '' : styles.typedOver, wrong ? styles.wrong : '', stretched ? styles.stretched : '', styles[cell.meaning.role]];
+        return (
+          <td
+            key={cell.index}
+            role="gridcell"
+            aria-colindex={at + 1}
+            aria-selected={stretched}
+            aria-invalid={wrong ? true : undefined}
+            aria-describedby={wrong ? looksId : undefined}
+            className={classes.join(' ')}
+            title={came === undefined ? undefined : `typed over; came as ${came === '' ? 'an empty cell' : `“${came}”`}`}
+            {...spot(at)}
+          >
+            {typing !== null && at === tabColumn ? (
+              <input
+                className={styles.entry}
+                aria-label={`${cell.header}, ${name}`}
+                defaultValue={typing}
+                autoFocus
+                autoComplete="off"
+                spellCheck={false}
+                onBlur={(left) => acts.leaveCell(left.target.value)}
+              />
+            ) : (
+              (row.cells[cell.index] ?? '')
+            )}
+          </td>
+        );
+      }
+      case 'impulseBit':
+        return (
+          <td key="impulseBit" role="gridcell" aria-colindex={at + 1} className={styles.impulseBit} {...spot(at)}>
+            {result?.impulseBit != null && <ImpulseBit stated={result.impulseBit} unit={props.impulseUnit} />}
+          </td>
+        );
+      case 'aside':
+        return (
+          <td key="aside" role="gridcell" aria-colindex={at + 1} className={styles.asideCell}>
+            {setAside === undefined ? (
+              <button type="button" className="plain-button" aria-label={`Set aside ${name}`} {...spot(at)} onClick={() => acts.askReason(row)}>
+                set aside
+              </button>
+            ) : (
+              <>
+                <span className={styles.reason} title={setAside.reason}>{setAside.reason}</span>{' '}
+                <button type="button" className="plain-button" aria-label={`Count ${name} again`} {...spot(at)} onClick={() => acts.countAgain(row)}>
+                  count it again
+                </button>
+              </>
+            )}
+          </td>
+        );
+      case 'remove':
+        return (
+          <td key="remove" role="gridcell" aria-colindex={at + 1} className={styles.removeCell}>
+            {row.typed && (
+              <button type="button" className="plain-button" aria-label={`Remove ${name}`} {...spot(at)} onClick={() => acts.remove(row)}>
+                remove
+              </button>
+            )}
+          </td>
+        );
+      case 'looks':
+        return (
+          <td key="looks" role="gridcell" aria-colindex={at + 1} className={styles.looks} id={looksId} {...spot(at)}>
+            {problems.map((problem) => sentence(problem)).join(' ')}
+          </td>
+        );
+    }
+  }
+
+  return (
+    <tr role="row" aria-rowindex={index + 2} aria-selected={selected} className={setAside === undefined ? styles.row : `${styles.row} ${styles.aside}`}>
+      {gridColumns.map(cellOf)}
+    </tr>
+  );
+});
+
+function ImpulseBit({ stated, unit }: { readonly stated: Result; readonly unit: Unit }) {
+  const parts = alignedParts(stated.value, stated.u, unit);
+  return (
+    <span className={styles.aligned}>
+      <span className={styles.whole}>{parts.whole}</span>
+      <span className={styles.fraction}>{parts.fraction}</span>
+      {parts.spread !== '' && <span className={styles.spread}> ± {parts.spread}</span>}
+      {parts.unit !== unit.symbol && <span className="unit"> {parts.unit}</span>}
+    </span>
+  );
+}

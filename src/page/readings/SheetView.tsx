@@ -1,0 +1,64 @@
+/** One sheet of readings: its head, its columns' meanings, its grid. */
+import { useId, useMemo } from 'react';
+import { sentence } from '../../problems/sentences.ts';
+import type { Problem } from '../../problems/problems.ts';
+import type { RecordResult } from '../../reduction/results.ts';
+import { addRow } from '../../session/edits.ts';
+import type { Session, Sheet } from '../../session/session.ts';
+import type { Unit } from '../../units/units.ts';
+import { useActions } from '../../store/hooks.tsx';
+import { ColumnMeanings } from './ColumnMeanings.tsx';
+import { Grid } from './Grid.tsx';
+import { SheetHead } from './SheetHead.tsx';
+import { shownSheet, tableOf } from './sheetRows.ts';
+import type { ShownRow } from './sheetRows.ts';
+import { counted } from './tradeWords.ts';
+import styles from './sheet.module.css';
+
+interface SheetViewProps {
+  readonly sheet: Sheet;
+  readonly isFirst: boolean;
+  readonly isLast: boolean;
+  readonly results: ReadonlyMap<string, RecordResult>;
+  readonly marks: Session['marks'];
+  readonly impulseUnit: Unit;
+  /** Problems of the sheet as a whole, and of rows that are no records. */
+  readonly problems: readonly Problem[];
+  readonly askReason: (row: ShownRow, sheet: Sheet) => void;
+}
+
+/** Sentences shown at the head of a sheet; the rest are counted. */
+const SENTENCES_SHOWN = 6;
+
+export function SheetView({ sheet, isFirst, isLast, results, marks, impulseUnit, problems, askReason }: SheetViewProps) {
+  const { change } = useActions();
+  const headingId = useId();
+  const { text, delimiter, decimal } = sheet;
+  const table = useMemo(
+    () => tableOf({ text, ...(delimiter === undefined ? {} : { delimiter }), ...(decimal === undefined ? {} : { decimal }) }),
+    [text, delimiter, decimal],
+  );
+  const shown = useMemo(() => shownSheet(sheet, table), [sheet, table]);
+  return (
+    <article className={styles.sheet} aria-labelledby={headingId} data-sheet={sheet.id}>
+      <SheetHead sheet={sheet} table={table} rows={shown.rows.length} isFirst={isFirst} isLast={isLast} headingId={headingId} />
+      {problems.length > 0 && (
+        <ul className={styles.problems}>
+          {problems.slice(0, SENTENCES_SHOWN).map((one, i) => <li key={`${one.code}-${i}`} className="look">{sentence(one)}</li>)}
+          {problems.length > SENTENCES_SHOWN && <li className="look">And {counted(problems.length - SENTENCES_SHOWN, 'more of the kind', 'more of the kind')}.</li>}
+        </ul>
+      )}
+      {table.preamble.length > 0 && (
+        <details className={styles.preamble}>
+          <summary className="quiet">{counted(table.preamble.length, 'line')} of remarks, kept and not read as readings</summary>
+          <pre>{table.preamble.map(({ line, text: remark }) => `${line}  ${remark}`).join('\n')}</pre>
+        </details>
+      )}
+      <ColumnMeanings sheet={sheet} table={table} shown={shown} />
+      <Grid sheet={sheet} shown={shown} results={results} marks={marks} impulseUnit={impulseUnit} askReason={(row) => askReason(row, sheet)} />
+      <p className={styles.buttons}>
+        <button type="button" onClick={() => change('add a row', addRow(sheet.id))}>Add a row</button>
+      </p>
+    </article>
+  );
+}

@@ -1,0 +1,62 @@
+/** A value and its uncertainty in a table cell, so that a column stands aligned at the decimal sign. */
+import type { CSSProperties } from 'react';
+import { alignedParts } from '../../units/format.ts';
+import type { AlignedParts } from '../../units/format.ts';
+import type { Unit } from '../../units/units.ts';
+import styles from './stated.module.css';
+
+/** A quantity of a column; `spread` is u or U as the column's head says, 0 for none. SI. */
+export interface Cell {
+  readonly value: number;
+  readonly spread: number;
+  readonly unit: Unit;
+}
+
+export interface AlignedColumn {
+  readonly parts: readonly (AlignedParts | null)[];
+  readonly whole: CSSProperties;
+  readonly fraction: CSSProperties;
+  readonly spread: CSSProperties;
+}
+
+const widest = (texts: readonly string[]): CSSProperties => ({ minWidth: `${Math.max(0, ...texts.map((text) => text.length))}ch` });
+
+/** The cells of one column, in order; null where there is none. */
+export function alignedColumn(cells: readonly (Cell | null)[]): AlignedColumn {
+  return columnOf(cells.map((cell) => (cell === null ? null : alignedParts(cell.value, cell.spread, cell.unit))));
+}
+
+/** A column of values (SI) without uncertainties, all to the decimals that two digits of `resolution` (SI) need. */
+export function alignedTo(values: readonly (number | null)[], resolution: number, unit: Unit): AlignedColumn {
+  return columnOf(values.map((value) => (value === null ? null : { ...alignedParts(value, resolution, unit), spread: '' })));
+}
+
+function columnOf(parts: readonly (AlignedParts | null)[]): AlignedColumn {
+  const there = parts.filter((part) => part !== null);
+  return {
+    parts,
+    whole: widest(there.map(({ whole }) => whole)),
+    fraction: widest(there.map(({ fraction }) => fraction)),
+    spread: widest(there.map(({ spread }) => (spread === '' ? '' : `± ${spread}`))),
+  };
+}
+
+interface Props {
+  readonly column: AlignedColumn;
+  readonly row: number;
+  /** Units stand in the head of the column. */
+  readonly bare?: boolean;
+}
+
+export function Aligned({ column, row, bare = false }: Props) {
+  const parts = column.parts[row] ?? null;
+  if (parts === null) return <span className="quiet">–</span>;
+  return (
+    <span className={`num ${styles.aligned}`}>
+      <span className={styles.whole} style={column.whole}>{parts.whole}</span>
+      <span className={styles.fraction} style={column.fraction}>{parts.fraction}</span>
+      {parts.spread !== '' && <span className={styles.spread} style={column.spread}>{' ± '}{parts.spread}</span>}
+      {!bare && parts.unit !== '' && <span className="unit">{' '}{parts.unit}</span>}
+    </span>
+  );
+}

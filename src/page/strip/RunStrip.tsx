@@ -1,0 +1,27 @@
+/** The run in the order it happened, always in sight. */
+import { useMemo } from 'react';
+import type { Reduction } from '../../reduction/results.ts';
+import { runStrip } from '../../plots/runStrip.ts';
+import { useActions, useStore } from '../../store/hooks.tsx';
+import { FigureView } from '../plot/FigureView.tsx';
+import { useInks } from '../plot/useInks.ts';
+import { openRecord } from '../record/openRecord.ts';
+import styles from './strip.module.css';
+
+export function RunStrip() {
+  const reduction = useStore((state) => state.reduction);
+  if (reduction === null || reduction.records.length === 0) return null;
+  return <Strip reduction={reduction} />;
+}
+
+function Strip({ reduction }: { readonly reduction: Reduction }) {
+  const selected = useStore((state) => state.selected);
+  const { select } = useActions();
+  const inks = useInks();
+  const figure = useMemo(() => runStrip(reduction, inks), [reduction, inks]);
+  return (
+    <div className={styles.strip}>
+      <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={openRecord} slim />
+    </div>
+  );
+}

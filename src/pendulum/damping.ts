@@ -1,0 +1,214 @@
+/** Viscous damping: the first swing's correction, log decrement and ratio, and the ratio from successive turning points. */
+import { nextTurningPoint, peakTimeOfSmall } from './launch.ts';
+
+/**
+ * First-peak damping correction of the small swing: D = θ′(0⁺)/(ω_n θ_p) = exp[ζ arccos ζ/√(1 − ζ²)], with arccosh above critical.
+ *
+ * Valid: ζ ≥ 0 (down to −0.5 for half-differences about 0). D = 1 at ζ = 0, e at ζ = 1. Source: derived; methods 1.3 (ODE-checked).
+ */
+export function dampingFactor(dampingRatio: number): number {
+  if (!(dampingRatio > -0.5)) throw new RangeError(`damping factor: damping ratio ${dampingRatio} is far below 0`);
+  return Math.exp(dampingRatio * peakTimeOfSmall(dampingRatio));
+}
+
+/**
+ * Log decrement per full cycle: δ = 2πζ/√(1 − ζ²).
+ *
+ * Valid: 0 ≤ ζ < 1. Source: any vibration handbook (Harris, from memory).
+ */
+export function decrementOfRatio(dampingRatio: number): number {
+  if (!(dampingRatio >= 0 && dampingRatio < 1)) throw new RangeError(`log decrement: damping ratio ${dampingRatio} is not in 0 … 1`);
+  return (2 * Math.PI * dampingRatio) / Math.sqrt(1 - dampingRatio * dampingRatio);
+}
+
+/** Damping ratio: ζ = δ/√(4π² + δ²). Valid: δ ≥ 0. Source: as decrementOfRatio. */
+export function ratioOfDecrement(logDecrement: number): number {
+  if (!(logDecrement >= 0)) throw new RangeError(`damping ratio: log decrement ${logDecrement} is negative`);
+  return logDecrement / Math.hypot(2 * Math.PI, logDecrement);
+}
+
+/**
+ * Logarithmic decrement per cycle from two swings on one side: δ = ln(x₀/x_n)/n.
+ *
+ * Valid: viscous damping, both amplitudes from the same rest, n full cycles, x₀ and x_n of one sign.
+ * @throws RangeError where an amplitude or the cycle count is out of its range.
+ */
+export function logDecrement(firstAmplitude: number, laterAmplitude: number, cycles: number): number {
+  if (!(firstAmplitude * laterAmplitude > 0 && cycles > 0)) throw new RangeError('log decrement: amplitudes of one sign and a positive cycle count are needed');
+  return Math.log(firstAmplitude / laterAmplitude) / cycles;
+}
+
+/** Rest position and half-cycle decay from three successive turning points, exact for viscous decay (methods 1.4). */
+export function restFromThree(x0: number, x1: number, x2: number): { readonly rest: number; readonly halfDecrement: number } {
+  const spread = x0 + x2 - 2 * x1;
+  const ratio = (x0 - x1) / (x2 - x1);
+  if (!(ratio > 0) || spread === 0) throw new RangeError('rest from three turning points: they do not alternate');
+  return { rest: (x0 * x2 - x1 * x1) / spread, halfDecrement: Math.log(ratio) };
+}
+
+/** One turning point of a free swing: its number (0 the first swing, 1 the return swing, …) and its angle from the scale's mark, rad. */
+export interface TurningPoint {
+  readonly number: number;
+  readonly angle: number;
+}
+
+export interface RatioFromSwings {
+  readonly status: 'found' | 'tooFew' | 'notDecaying' | 'noLimit';
+  readonly dampingRatio: number;
+  /** Rest angle and first amplitude as fitted, rad. */
+  readonly rest: number;
+  readonly amplitude: number;
+  /** ∂ζ/∂(reading) in the order: rest (where given), then the turning points. 1/rad. */
+  readonly sensitivities: readonly number[];
+}
+
+const ROUNDS = 60;
+
+/**
+ * Damping ratio from successive turning points of one swing, least squares in rest, amplitude and decay, with the
+ * full pendulum: each turning point follows from the one before by the equation of motion.
+ *
+ * The small swing's law A_{k+1} = −q A_k, q = e^{−δ/2}, is fitted with a factor c_k on each half cycle that carries
+ * what the full pendulum adds (1 + O(ζ θ²)); c_k is computed from the present fit until nothing changes. Sensitivities
+ * hold c_k fixed, which leaves out a part O(θ²) of them.
+ *
+ * Valid: at least three angles in all (a rest reading counts as one) and two turning points; ζ < 1.
+ */
+export function ratioFromSwings(rest: number | null, points: readonly TurningPoint[], gravityShare: number): RatioFromSwings {
+  const failed = (status: RatioFromSwings['status']): RatioFromSwings => ({ status, dampingRatio: 0, rest: 0, amplitude: 0, sensitivities: [] });
+  if (points.length < 2 || points.length + (rest === null ? 0 : 1) < 3) return failed('tooFew');
+  const last = points[points.length - 1]!.number;
+  const excess = new Array<number>(last + 1).fill(1);
+  let fit = startOfFit(rest, points);
+  if (!fit) return failed('notDecaying');
+  for (let round = 0; round < ROUNDS; round++) {
+    const next = fitGeometric(rest, points, excess, fit);
+    if (!next) return failed('notDecaying');
+    const change = Math.abs(next.decay - fit.decay) + Math.abs(next.amplitude - fit.amplitude) / Math.abs(next.amplitude);
+    fit = next;
+    if (!(Math.abs(fit.amplitude) < Math.PI)) return failed('notDecaying');
+    const ratio = ratioOfDecrement(Math.max(0, 2 * fit.decay));
+    carryFullPendulum(fit.amplitude, ratio, gravityShare, excess);
+    if (round > 0 && change < 1e-14) {
+      const slope = slopeOfRatio(2 * fit.decay) * 2;
+      return {
+        status: 'found',
+        dampingRatio: ratioOfSignedDecrement(2 * fit.decay),
+        rest: fit.rest,
+        amplitude: fit.amplitude,
+        sensitivities: fit.decaySensitivities.map((c) => c * slope),
+      };
+    }
+  }
+  return failed('noLimit');
+}
+
+/** Noise can make a swing seem to grow; the estimate stays signed, so that a mean of many is not biased. */
+const ratioOfSignedDecrement = (delta: number): number => delta / Math.hypot(2 * Math.PI, delta);
+const slopeOfRatio = (delta: number): number => (4 * Math.PI ** 2) / (4 * Math.PI ** 2 + delta * delta) ** 1.5;
+
+interface Fit {
+  readonly rest: number;
+  readonly amplitude: number;
+  /** −ln q = δ/2. */
+  readonly decay: number;
+  readonly decaySensitivities: readonly number[];
+}
+
+function startOfFit(rest: number | null, points: readonly TurningPoint[]): Fit | null {
+  const [a, b] = [points[0]!, points[1]!];
+  let z = rest;
+  if (z === null) {
+    const c = points[2]!;
+    if (b.number !== a.number + 1 || c.number !== a.number + 2) z = (a.angle + b.angle) / 2;
+    else {
+      const ratio = (a.angle - b.angle) / (c.angle - b.angle);
+      if (!(ratio > 0)) return null;
+      z = restFromThree(a.angle, b.angle, c.angle).rest;
+    }
+  }
+  const far = points[points.length - 1]!;
+  const first = a.angle - z;
+  const later = (far.angle - z) * ((far.number - a.number) % 2 === 0 ? 1 : -1);
+  if (!(first * later > 0)) return null;
+  const decay = Math.log(first / later) / (far.number - a.number);
+  return { rest: z, amplitude: first * Math.exp(decay * a.number), decay, decaySensitivities: [] };
+}
+
+/** Gauss–Newton in (rest, amplitude, decay) with the excess factors held. */
+function fitGeometric(rest: number | null, points: readonly TurningPoint[], excess: readonly number[], start: Fit): Fit | null {
+  let z = start.rest;
+  let amplitude = start.amplitude;
+  let decay = start.decay;
+  const cumulative: number[] = [1];
+  for (let k = 1; k < excess.length; k++) cumulative[k] = cumulative[k - 1]! * excess[k - 1]!;
+  for (let i = 0; i < ROUNDS; i++) {
+    const normal = new Normal();
+    const rows: (readonly [number, number, number])[] = [];
+    if (rest !== null) {
+      rows.push([1, 0, 0]);
+      normal.add(1, 0, 0, rest - z);
+    }
+    for (const point of points) {
+      const shape = (point.number % 2 === 0 ? 1 : -1) * Math.exp(-decay * point.number) * cumulative[point.number]!;
+      const row = [1, shape, -point.number * amplitude * shape] as const;
+      rows.push(row);
+      normal.add(...row, point.angle - z - amplitude * shape);
+    }
+    const inverse = normal.inverse();
+    if (!inverse) return null;
+    const step = inverse.times(normal.right);
+    z += step[0];
+    amplitude += step[1];
+    decay += step[2];
+    if (!Number.isFinite(decay) || Math.abs(decay) > 20) return null;
+    if (Math.abs(step[2]) < 1e-15 + 1e-14 * Math.abs(decay) || i === ROUNDS - 1) {
+      return { rest: z, amplitude, decay, decaySensitivities: rows.map((row) => inverse.times(row)[2]) };
+    }
+  }
+  return null;
+}
+
+/** Normal equations of three unknowns; well enough conditioned here, since the columns are scaled before solving. */
+class Normal {
+  private readonly m = [0, 0, 0, 0, 0, 0];
+  readonly right: [number, number, number] = [0, 0, 0];
+
+  add(a: number, b: number, c: number, residual: number): void {
+    const m = this.m;
+    m[0]! += a * a; m[1]! += a * b; m[2]! += a * c; m[3]! += b * b; m[4]! += b * c; m[5]! += c * c;
+    this.right[0] += a * residual;
+    this.right[1] += b * residual;
+    this.right[2] += c * residual;
+  }
+
+  inverse(): { times(v: readonly [number, number, number]): [number, number, number] } | null {
+    const [a, b, c, d, e, f] = this.m as [number, number, number, number, number, number];
+    const s = [1 / Math.sqrt(a), 1 / Math.sqrt(d), 1 / Math.sqrt(f)] as const;
+    const [rb, rc, re] = [b * s[0] * s[1], c * s[0] * s[2], e * s[1] * s[2]];
+    const det = 1 + 2 * rb * rc * re - rb * rb - rc * rc - re * re;
+    if (!(det > 1e-13)) return null;
+    const i = [1 - re * re, rc * re - rb, rb * re - rc, 1 - rc * rc, rb * rc - re, 1 - rb * rb].map((x) => x / det) as [number, number, number, number, number, number];
+    return {
+      times: (v) => {
+        const w = [v[0] * s[0], v[1] * s[1], v[2] * s[2]] as const;
+        return [
+          s[0] * (i[0] * w[0] + i[1] * w[1] + i[2] * w[2]),
+          s[1] * (i[1] * w[0] + i[3] * w[1] + i[4] * w[2]),
+          s[2] * (i[2] * w[0] + i[4] * w[1] + i[5] * w[2]),
+        ];
+      },
+    };
+  }
+}
+
+/** c_k = (next turning point of the full pendulum)/(the small swing's q A_k), for each half cycle. */
+function carryFullPendulum(amplitude: number, dampingRatio: number, gravityShare: number, excess: number[]): void {
+  const q = Math.exp(-decrementOfRatio(Math.min(dampingRatio, 0.999)) / 2);
+  let angle = amplitude;
+  for (let k = 0; k + 1 < excess.length; k++) {
+    const next = nextTurningPoint(angle, Math.min(dampingRatio, 0.999), gravityShare);
+    excess[k] = -next / (q * angle);
+    angle = next;
+  }
+}

@@ -1,0 +1,107 @@
+/** What lies under the marks: the zero line, a run mean with its interval, a calibration line with its band. */
+import type uPlot from 'uplot';
+import type { Inks } from './figure.ts';
+
+/** Runs a drawing inside the plotting area only, and leaves the pen as it was. */
+function within(u: uPlot, draw: (pen: CanvasRenderingContext2D) => void): void {
+  const { ctx, bbox } = u;
+  ctx.save();
+  ctx.beginPath();
+  ctx.rect(bbox.left, bbox.top, bbox.width, bbox.height);
+  ctx.clip();
+  draw(ctx);
+  ctx.restore();
+}
+
+/** A thin line at y = 0. */
+export function zeroLine(u: uPlot, inks: Inks): void {
+  within(u, (pen) => {
+    const y = Math.round(u.valToPos(0, 'y', true)) + 0.5;
+    pen.strokeStyle = inks.quiet;
+    pen.lineWidth = devicePixelRatio;
+    pen.beginPath();
+    pen.moveTo(u.bbox.left, y);
+    pen.lineTo(u.bbox.left + u.bbox.width, y);
+    pen.stroke();
+  });
+}
+
+/** The mean as a line and mean ± U as a band, with the words at its right-hand end where there are any. */
+export function meanBand(u: uPlot, mean: number, half: number, inks: Inks, words: string): void {
+  within(u, (pen) => {
+    const { left, width } = u.bbox;
+    const [top, middle, bottom] = [mean + half, mean, mean - half].map((value) => u.valToPos(value, 'y', true)) as [number, number, number];
+    pen.fillStyle = inks.band;
+    pen.fillRect(left, top, width, bottom - top);
+    pen.strokeStyle = inks.shot;
+    pen.lineWidth = 1.25 * devicePixelRatio;
+    pen.beginPath();
+    pen.moveTo(left, middle);
+    pen.lineTo(left + width, middle);
+    pen.stroke();
+    if (words !== '') {
+      pen.fillStyle = inks.ink;
+      pen.font = `${12 * devicePixelRatio}px ${inks.font}`;
+      pen.textAlign = 'right';
+      pen.textBaseline = 'bottom';
+      pen.fillText(words, left + width - 6 * devicePixelRatio, top - 3 * devicePixelRatio);
+    }
+  });
+}
+
+interface Ray {
+  /** Slope in the units of the axes, and its half-width. */
+  readonly slope: number;
+  readonly half: number;
+  readonly dashed: boolean;
+  readonly ink: string;
+}
+
+/** A line through the origin with its band. */
+export function rayBand(u: uPlot, { slope, half, dashed, ink }: Ray, inks: Inks): void {
+  within(u, (pen) => {
+    const far = u.scales['x']?.max ?? 0;
+    const from = [u.valToPos(0, 'x', true), u.valToPos(0, 'y', true)] as const;
+    const end = u.valToPos(far, 'x', true);
+    if (half > 0) {
+      pen.fillStyle = inks.band;
+      pen.beginPath();
+      pen.moveTo(...from);
+      pen.lineTo(end, u.valToPos((slope + half) * far, 'y', true));
+      pen.lineTo(end, u.valToPos((slope - half) * far, 'y', true));
+      pen.closePath();
+      pen.fill();
+    }
+    pen.strokeStyle = ink;
+    pen.lineWidth = 1.25 * devicePixelRatio;
+    if (dashed) pen.setLineDash([5 * devicePixelRatio, 4 * devicePixelRatio]);
+    pen.beginPath();
+    pen.moveTo(...from);
+    pen.lineTo(end, u.valToPos(slope * far, 'y', true));
+    pen.stroke();
+  });
+}
+
+/** A bracket along the bottom from one x to another, with words over it. */
+export function bracket(u: uPlot, from: number, to: number, ink: string, font: string, words: string): void {
+  within(u, (pen) => {
+    const px = devicePixelRatio;
+    const [a, b] = [u.valToPos(from, 'x', true), u.valToPos(to, 'x', true)];
+    const base = u.bbox.top + u.bbox.height - 5 * px;
+    pen.strokeStyle = ink;
+    pen.lineWidth = 1.5 * px;
+    pen.beginPath();
+    pen.moveTo(a, base - 5 * px);
+    pen.lineTo(a, base);
+    pen.lineTo(b, base);
+    pen.lineTo(b, base - 5 * px);
+    pen.stroke();
+    pen.fillStyle = ink;
+    pen.font = `${12 * px}px ${font}`;
+    pen.textBaseline = 'bottom';
+    const wide = pen.measureText(words).width;
+    const right = u.bbox.left + u.bbox.width;
+    pen.textAlign = 'left';
+    pen.fillText(words, Math.max(u.bbox.left + 4 * px, Math.min((a + b) / 2 - wide / 2, right - wide - 4 * px)), base - 6 * px);
+  });
+}

@@ -1,0 +1,86 @@
+/** One cell to a quantity in SI, by what its column means. */
+import { readQuantity } from '../units/quantity.ts';
+import type { DecimalMark, QuantityRead } from '../units/quantity.ts';
+import { unitNamed } from '../units/units.ts';
+import type { Dimension } from '../units/units.ts';
+import type { ProblemCode } from '../problems/problems.ts';
+import { looksClock } from './cells.ts';
+import { ROLE_DIMENSIONS, USUAL_UNIT } from './columns.ts';
+import type { ColumnMeaning } from './meanings.ts';
+
+export interface CellRead {
+  /** SI. Readings: m or rad. Clock times: seconds since midnight; dates with a time: seconds since 1970-01-01. */
+  readonly value: number;
+  /** SI, as typed after ± or in brackets, not interpreted; null where there is none. */
+  readonly spread: number | null;
+  /** Decimals as typed, in `unit`. */
+  readonly decimals: number;
+  /** Unit symbol of the number as written: the cell's own unit, else the column's. */
+  readonly unit: string;
+  /** The cell's text, spaces around it left out. */
+  readonly text: string;
+}
+
+export type CellResult = CellRead | { readonly code: ProblemCode; readonly found: string };
+
+/** Unit and dimension in which a column's numbers are read; the role's usual unit where the meaning names none that fits. */
+export function unitOfColumn({ role, unit }: ColumnMeaning): { dimension: Dimension; unit: string } | null {
+  const dimensions = ROLE_DIMENSIONS[role];
+  const [usual] = dimensions;
+  if (usual === undefined) return null;
+  // ″ is also an inch, so the dimension that shows the very symbol goes first.
+  const exact = dimensions.find((d) => unitNamed(unit, d)?.symbol === unit);
+  const dimension = exact ?? dimensions.find((d) => unit !== '' && unitNamed(unit, d) !== null);
+  return dimension === undefined ? { dimension: usual, unit: USUAL_UNIT[role] } : { dimension, unit };
+}
+
+/** Marks that people put where there is no reading. */
+const NO_READING = /^(?:[-–—.]+|n\.?\/?a\.?|nan|none|null)$/i;
+
+export function isNoReading(text: string): boolean {
+  const trimmed = text.trim();
+  return trimmed === '' || NO_READING.test(trimmed);
+}
+
+const CODE_OF_FAULT: Readonly<Record<Exclude<QuantityRead, { ok: true }>['fault'], ProblemCode>> = {
+  empty: 'cell-empty',
+  notANumber: 'cell-not-a-number',
+  unknownUnit: 'cell-unknown-unit',
+  wrongDimension: 'cell-wrong-kind-of-unit',
+  badSpread: 'cell-not-a-number',
+};
+
+/**
+ * A cell as a quantity; null where it holds no reading.
+ *
+ * @param decimal decimal mark of the table; for a cell typed by hand in the tool, which may have either mark, `typed` is true
+ */
+export function readCell(raw: string, meaning: ColumnMeaning, decimal: DecimalMark, typed: boolean): CellResult | null {
+  const text = raw.trim();
+  const column = unitOfColumn(meaning);
+  if (column === null || isNoReading(text)) return null;
+  if (meaning.role === 'time' && looksClock(text)) {
+    const value = secondsOfClock(text);
+    return value === null ? { code: 'cell-not-a-number', found: text } : { value, spread: null, decimals: 0, unit: 's', text };
+  }
+  let read = readQuantity(text, column.dimension, column.unit, typed ? undefined : decimal);
+  if (read.ok && read.ambiguousComma) read = readQuantity(text, column.dimension, column.unit, decimal);
+  if (!read.ok) return { code: CODE_OF_FAULT[read.fault], found: read.found === '' ? text : read.found };
+  return { value: read.value, spread: read.spread, decimals: read.decimals, unit: read.unit.symbol, text };
+}
+
+const CLOCK = /^(\d{1,2}):(\d{2})(?::(\d{2}(?:[.,]\d+)?))?(?:\s?([aApP])\.?[mM]\.?)?$/;
+
+/** Seconds since midnight of a clock time, or since 1970-01-01T00:00:00Z of an ISO 8601 date (without a zone: as if UTC); null where there is no such time. */
+export function secondsOfClock(text: string): number | null {
+  const [whole, h = '', m = '', s = '0', half = ''] = CLOCK.exec(text) ?? [];
+  if (whole !== undefined) {
+    const seconds = Number(s.replace(',', '.'));
+    const hours = half === '' ? Number(h) : (Number(h) % 12) + (half.toLowerCase() === 'p' ? 12 : 0);
+    const fits = hours < 24 && Number(m) < 60 && seconds < 61 && (half === '' || (Number(h) >= 1 && Number(h) <= 12));
+    return fits ? hours * 3600 + Number(m) * 60 + seconds : null;
+  }
+  const iso = text.replace(' ', 'T').replace(/\s/g, '').replace(',', '.');
+  const milliseconds = Date.parse(/T/.test(iso) && !/(?:Z|[+-]\d{2}:?\d{2})$/.test(iso) ? `${iso}Z` : iso);
+  return Number.isNaN(milliseconds) ? null : milliseconds / 1000;
+}

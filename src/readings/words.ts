@@ -1,0 +1,119 @@
+/** The words that people head a readings table with, by role, in twelve languages. */
+import type { Role } from './meanings.ts';
+
+/** Lower case, without accents, full-width forms made plain, and anything but letters, digits, '#' and '%' turned to single spaces. */
+export function plainWords(text: string): string {
+  return text
+    .normalize('NFKC')
+    .toLowerCase()
+    .replace(/ß/g, 'ss')
+    .replace(/ł/g, 'l')
+    .replace(/ø/g, 'o')
+    .normalize('NFD')
+    .replace(/[\u0300-\u036f]/g, '')
+    .replace(/[^\p{L}\p{M}\p{N}#%]+/gu, ' ')
+    .trim();
+}
+
+/**
+ * Phrases split by '|'. A trailing '*' lets the word go on (stem); phrases in a script without spaces match anywhere.
+ * Lists: English, German, French, Spanish, Italian, Portuguese, Dutch, Polish, Czech, Russian, Japanese, Chinese.
+ */
+const PHRASES: Readonly<Record<Role, string>> = {
+  kind:
+    'kind|type|record type|what|mode|art|typ|sorte|genre|nature|tipo|clase|soort|rodzaj|druh|тип|вид|род|種類|種別|区分|类型|类别|种类',
+  label:
+    'shot|shots|shot no|shot number|shot nr|no|nr|number|num|#|id|run|pulse no|fire no|tap|tap no|record|swing no|index|label|' +
+    'schuss|schuss nr|schussnr|nummer|lfd nr|versuch|tir|tir n|tir no|numero|essai|coup n|disparo|disparo n|n|n o|num disparo|tiro|colpo|colpo n|prova|' +
+    'schot|schot nr|volgnummer|strzal|strzal nr|numer|lp|vystrel|vystrel c|cislo|c|poradi|выстрел|номер|№|импульс no|ショット|番号|回数|発射|编号|序号|发次|次数',
+  rest:
+    'rest|rest position|rest reading|zero|zero reading|zero before|before|initial|equilibrium|at rest|still|start|x0|x 0|' +
+    'ruhe|ruhelage|ruhestellung|null|nullage|nulllage|nullpunkt|vorher|anfang|repos|zero avant|position de repos|avant|equilibre|' +
+    'reposo|cero|antes|equilibrio|posicion de reposo|riposo|prima del tiro|repouso|posicao de repouso|rust|ruststand|nulstand|nul|voor|' +
+    'spoczynek|polozenie spoczynkowe|spoczynkow*|przed|klid|klidova poloha|klidov*|nula|pred|pokoj|покой|положение покоя|ноль|нуль|до выстрела|начальн*|静止|静止位置|零点|ゼロ|ゼロ点|初期|初期位置|静止读数|零位|初始|初值',
+  firstSwing:
+    'first swing|first|first peak|first throw|first deflection|swing 1|swing|throw|deflection|peak|peak 1|1st swing|1st peak|max|maximum|kick|furthest|x1|x 1|a1|p1|' +
+    'erster ausschlag|1 ausschlag|ausschlag|erstausschlag|auslenkung|erste auslenkung|umkehrpunkt|spitze|maximal*|' +
+    'premiere elongation|1re elongation|elongation|deviation|premier|premiere|premiere oscillation|deflexion|pic|ecart|' +
+    'primera oscilacion|primera|oscilacion|desviacion|deflexion|pico|maximo|primer maximo|' +
+    'prima oscillazione|oscillazione|prima|deviazione|deflessione|elongazione|picco|massimo|' +
+    'primeira oscilacao|oscilacao|primeira|deflexao|desvio|elongacao|' +
+    'eerste uitslag|uitslag|eerste|uitwijking|piek|pierwsze wychylenie|wychylenie|pierwsz*|odchylenie|maksimum|szczyt|' +
+    'prvni vychylka|vychylka|prvni|vychyleni|первый|первое отклонение|отклонение|отброс|размах|первый размах|максимум|пик|' +
+    '振れ|最大振れ|変位|第一振れ|最初の振れ|ピーク|最大|偏转|偏移|第一摆|首摆|位移|摆幅|峰值|最大偏转|第一次摆动',
+  nextSwing:
+    'back swing|backswing|return swing|return|back|second swing|second|second peak|2nd swing|2nd peak|third swing|3rd swing|third|fourth swing|4th swing|next|next swing|x2|x3|x4|x5|x 2|x 3|a2|a3|p2|p3|' +
+    'ruckschwung|ruckschlag|zuruck|zweiter ausschlag|2 ausschlag|3 ausschlag|dritter ausschlag|gegenausschlag|' +
+    'retour|elongation retour|elongation de retour|deuxieme|deuxieme elongation|seconde|2e elongation|3e elongation|' +
+    'retorno|vuelta|segunda|segunda oscilacion|tercera oscilacion|oscilacion de retorno|ritorno|oscillazione di ritorno|seconda|seconda oscillazione|terza oscillazione|' +
+    'volta|segunda oscilacao|oscilacao de retorno|terugslag|terug|terugzwaai|tweede uitslag|tweede|derde uitslag|' +
+    'powrot|wychylenie powrotne|powrotn*|drugie wychylenie|zpet|zpetna vychylka|zpetn*|druha vychylka|druha|navrat|' +
+    'возврат|обратн*|второй размах|второе отклонение|второй|третий|戻り|戻り振れ|二回目|第二振れ|返回|回摆|第二摆|第二次摆动',
+  time:
+    'time|when|clock|time of day|hour|timestamp|uhrzeit|zeit|zeitpunkt|heure|temps|hora|tiempo|ora|orario|tempo|tijd|tijdstip|czas|godzina|cas|hodina|время|час|時刻|時間|时间|时刻',
+  voltage:
+    'volt|volts|voltage|charge voltage|bank voltage|charging voltage|charge|hv|kv|u|uc|spannung|ladespannung|tension|tension de charge|' +
+    'voltaje|tension de carga|tensione|tensione di carica|tensao|tensao de carga|spanning|laadspanning|napiecie|napiecie ladowania|napeti|nabijeci napeti|' +
+    'напряжение|напряжение заряда|電圧|充電電圧|电压|充电电压',
+  pressure:
+    'pressure|vacuum|chamber pressure|tank pressure|background pressure|gauge|druck|kammerdruck|vakuum|pression|pression chambre|vide|presion|vacio|pressione|vuoto|pressao|vacuo|' +
+    'druk|kamerdruk|cisnienie|proznia|tlak|вакуум|давление|圧力|真空度|真空|气压|压力|压强',
+  tapImpulse:
+    'hammer impulse|tap impulse|impulse|hammer|known impulse|hammerimpuls|schlagimpuls|impuls|hammer impuls|kraftstoss|impulsion|impulsion du marteau|marteau|' +
+    'impulso|impulso del martillo|martillo|impulso del martello|martello|impulso do martelo|martelo|hamer|hamerimpuls|impuls mlotka|mlotek|impuls kladivka|kladivko|' +
+    'импульс|импульс молотка|молоток|удар|ハンマー|打撃力積|力積|打撃|锤|锤击冲量|冲量',
+  note:
+    'note|notes|remark|remarks|comment|comments|seen|bemerkung|bemerkungen|notiz|anmerkung|kommentar|remarque|remarques|commentaire|observation|observations|' +
+    'nota|notas|comentario|comentarios|observacion|observaciones|commento|osservazioni|observacao|observacoes|opmerking|opmerkingen|uwaga|uwagi|poznamka|poznamky|' +
+    'примечание|примечания|замечание|заметка|備考|メモ|注記|备注|说明|注',
+  ignored:
+    'impulse bit|i bit|ibit|hammer drawn to|drawn to|hammer angle|rebound|time for|time of * swings|mass|weight|temperature|temp|energy|capacitance|current|date|zero after|rest after|after|' +
+    'datum|masse|temperatur|energie|kapazitat|strom|ruhelage nachher|null nachher|nachher|fecha|masa|temperatura|energia|data|massa|zero apres|apres|repos apres|despues|dopo|depois|na afloop|po strzale|po vystrelu|после|после выстрела|дата|日付|質量|温度|日期|质量',
+};
+
+interface Phrase {
+  readonly role: Role;
+  readonly words: string;
+  readonly stem: boolean;
+  readonly anywhere: boolean;
+}
+
+const SCRIPT_WITHOUT_SPACES = /[\p{Script=Han}\p{Script=Hiragana}\p{Script=Katakana}]/u;
+
+const LEXICON: readonly Phrase[] = (Object.entries(PHRASES) as [Role, string][]).flatMap(([role, list]) =>
+  list.split('|').map((raw) => {
+    const stem = raw.endsWith('*');
+    const words = plainWords(stem ? raw.slice(0, -1) : raw);
+    return { role, words, stem, anywhere: SCRIPT_WITHOUT_SPACES.test(raw) };
+  }).filter((p) => p.words !== ''),
+);
+
+/** What a header says: the role, the phrase that told it, and how much of the header the phrase covers (0…1). */
+export interface HeaderRead {
+  readonly role: Role;
+  readonly phrase: string;
+  readonly covers: number;
+}
+
+/** Role told by a header's words, unit and brackets left aside; the longest phrase wins. null where no word is known. */
+export function roleOfHeader(header: string): HeaderRead | null {
+  const bare = plainWords(header.replace(/[([{][^)\]}]*[)\]}]\s*$/u, ' ')) || plainWords(header);
+  if (bare === '') return null;
+  const counted = /(?:^| )(?:swing|throw|peak|deflection|ausschlag|elongation|oscil\w*|uitslag|wychylenie|vychylka|размах|x|a|p) ?(\d+)(?: |$)/u.exec(bare);
+  if (counted?.[1] !== undefined) {
+    const n = Number(counted[1]);
+    if (n === 1) return { role: 'firstSwing', phrase: counted[0].trim(), covers: 1 };
+    if (n >= 2 && n < 100) return { role: 'nextSwing', phrase: counted[0].trim(), covers: 1 };
+  }
+  let best: Phrase | null = null;
+  for (const phrase of LEXICON) {
+    if ((best === null || phrase.words.length > best.words.length) && holds(bare, phrase)) best = phrase;
+  }
+  return best === null ? null : { role: best.role, phrase: best.words, covers: best.words.length / bare.length };
+}
+
+function holds(bare: string, { words, stem, anywhere }: Phrase): boolean {
+  if (anywhere) return bare.includes(words);
+  const padded = ` ${bare} `;
+  return padded.includes(stem ? ` ${words}` : ` ${words} `);
+}

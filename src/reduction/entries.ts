@@ -1,0 +1,127 @@
+/** First step of the road: what was typed about the bench becomes sources, each an anchor that all results may share. */
+import { fromExpanded, fromLimits, type Distribution, type Source } from '../metrology/source.ts';
+import { anchor, exact, ofSource, type Uncertain } from '../metrology/uncertain.ts';
+import { problem, type Problem } from '../problems/problems.ts';
+import { ENTRIES, PART_ENTRIES, type EntryKind, type EntryName, type PartEntryName } from '../session/entries.ts';
+import type { Choices, Entry, Session } from '../session/session.ts';
+import { readNumber, readQuantity } from '../units/quantity.ts';
+import type { Dimension } from '../units/units.ts';
+import type { EntryRead } from './results.ts';
+
+export interface ReadEntry {
+  readonly read: EntryRead;
+  /** null where nothing usable is typed. */
+  readonly value: Uncertain | null;
+  readonly source: Source | null;
+}
+
+export interface BenchRead {
+  readonly entries: ReadonlyMap<EntryName, ReadEntry>;
+  readonly parts: readonly { readonly id: string; readonly name: string; readonly entries: ReadonlyMap<PartEntryName, ReadEntry> }[];
+  readonly problems: readonly Problem[];
+  readonly all: readonly EntryRead[];
+  /** Sources of every used entry, for budgets that list what acts nowhere. */
+  readonly sources: readonly Source[];
+}
+
+/** Entries that the present choices use; `needed` ones stop the road where they are missing. */
+export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<EntryName>; readonly needed: ReadonlySet<EntryName> } {
+  const needed = new Set<EntryName>(['leverArm']);
+  const used = new Set<EntryName>(['leverArm', 'flexureStiffness', 'scaleFactor', 'division', 'readingSpread', 'tapLeverArm', 'hammerFactor', 'tapSpread']);
+  if (choices.form === 'pointBob') for (const name of ['bobMass', 'bobDistance'] as const) needed.add(name);
+  if (choices.form === 'uniformStrip') for (const name of ['stripMass', 'stripLength'] as const) needed.add(name);
+  if (choices.readingWay === 'rulerAtTip') needed.add('readingRadius');
+  if (choices.readingWay === 'rulerUnderLine') needed.add('rulerHeight');
+  if (choices.readingWay === 'laserSpot') needed.add('screenDistance');
+  if (choices.readingWay !== 'angle') used.add('scaleMark');
+  if (choices.dampingWay === 'decrement') needed.add('logDecrement');
+  if (choices.dampingWay === 'ratio') needed.add('dampingRatio');
+  if (choices.gravityWay === 'typed') used.add('gravity');
+  else for (const name of ['latitude', 'height'] as const) needed.add(name);
+  for (const name of ['period', 'periodAmplitude', 'periodCycles'] as const) used.add(name);
+  if (choices.route !== 'masses') needed.add('period');
+  if (choices.calibrationMassHung !== 'never') {
+    for (const name of ['calibrationMass', 'calibrationMassDistance'] as const) needed.add(name);
+    used.add('calibrationMassInertia');
+  }
+  for (const name of needed) used.add(name);
+  return { used, needed };
+}
+
+/** Entries for which a value without ± is usual and no remark is due. */
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude']);
+
+const LARGE_RELATIVE = 0.3;
+
+export function readBench(session: Session): BenchRead {
+  const { used } = entriesInUse(session.choices);
+  const problems: Problem[] = [];
+  const all: EntryRead[] = [];
+  const sources: Source[] = [];
+  const note = (entry: ReadEntry, inUse: boolean): void => {
+    all.push(entry.read);
+    if (inUse && entry.source && entry.source.u > 0) sources.push(entry.source);
+  };
+  const entries = new Map<EntryName, ReadEntry>();
+  for (const name of Object.keys(ENTRIES) as EntryName[]) {
+    const typed = session.entries[name];
+    const inUse = used.has(name);
+    const found = readEntry(name, ENTRIES[name], typed, session.choices, inUse, inUse ? problems : []);
+    entries.set(name, found);
+    note(found, inUse);
+  }
+  const bodyInUse = session.choices.form === 'bodyOfParts';
+  const parts = session.parts.map((part, index) => {
+    const read = new Map<PartEntryName, ReadEntry>();
+    for (const name of Object.keys(PART_ENTRIES) as PartEntryName[]) {
+      const path = `part.${part.id}.${name}`;
+      const label = `${part.name || `part ${index + 1}`}: ${PART_ENTRIES[name].label.toLowerCase()}`;
+      const found = readEntry(path, { ...PART_ENTRIES[name], label }, part.entries[name], session.choices, bodyInUse, bodyInUse ? problems : []);
+      read.set(name, found);
+      note(found, bodyInUse);
+    }
+    return { id: part.id, name: part.name, entries: read };
+  });
+  return { entries, parts, problems, all, sources };
+}
+
+function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choices: Choices, used: boolean, problems: Problem[]): ReadEntry {
+  const dimension: Dimension = kind.dimension === 'reading' ? (choices.readingWay === 'angle' ? 'angle' : 'length') : kind.dimension;
+  const unitIfNone = kind.dimension === 'reading' && choices.readingWay === 'angle' ? 'mrad' : kind.unit;
+  const text = typed?.text.trim() ?? '';
+  const blank = (distribution: EntryRead['distribution'] = 'exact'): ReadEntry => ({
+    read: { name, label: kind.label, symbol: kind.symbol, dimension, value: null, u: 0, unit: unitIfNone, distribution, used },
+    value: null, source: null,
+  });
+  if (text === '' || !typed) return blank();
+  const place = { entry: name };
+  const got = readQuantity(text, dimension, unitIfNone);
+  if (!got.ok) {
+    const code = got.fault === 'unknownUnit' ? 'entry-unknown-unit' : got.fault === 'wrongDimension' ? 'entry-wrong-kind-of-unit' : 'entry-not-a-number';
+    problems.push(problem(code, 'stops', place, { label: kind.label, found: text, unit: unitIfNone }));
+    return blank();
+  }
+  const bad = kind.range === 'positive' ? !(got.value > 0) : kind.range === 'notNegative' ? !(got.value >= 0) : !Number.isFinite(got.value);
+  if (bad) {
+    problems.push(problem('entry-out-of-range', 'stops', place, { label: kind.label, found: text, range: kind.range }));
+    return blank();
+  }
+  const k = typed.k.trim() === '' ? 2 : readNumber(typed.k);
+  if (typed.plusMinus === 'expanded' && !(k !== null && k > 0)) {
+    problems.push(problem('entry-not-a-number', 'stops', place, { label: `${kind.label}, coverage factor k`, found: typed.k, unit: '1' }));
+    return blank();
+  }
+  const spread = kind.isSpread ? got.value : got.spread;
+  const u = spread === null ? 0 : typed.plusMinus === 'limits' ? fromLimits(spread) : typed.plusMinus === 'expanded' ? fromExpanded(spread, k ?? 2) : spread;
+  const distribution: Distribution = u === 0 ? 'exact' : typed.plusMinus === 'limits' ? 'rectangular' : 'normal';
+  if (got.ambiguousComma) problems.push(problem('entry-decimal-ambiguous', 'note', place, { label: kind.label, found: text }));
+  if (got.unitAssumed && dimension !== 'number') problems.push(problem('entry-unit-assumed', 'note', place, { label: kind.label, found: text, unit: unitIfNone }));
+  if (spread === null && !QUIET.has(name.split('.').at(-1)!)) problems.push(problem('entry-no-uncertainty', 'note', place, { label: kind.label, found: text }));
+  if (!kind.isSpread && got.value !== 0 && kind.range !== 'any' && u / Math.abs(got.value) > LARGE_RELATIVE) {
+    problems.push(problem('entry-uncertainty-large', 'doubt', place, { label: kind.label, found: text, percent: (100 * u) / Math.abs(got.value) }));
+  }
+  const read: EntryRead = { name, label: kind.label, symbol: kind.symbol, dimension, value: kind.isSpread ? u : got.value, u: kind.isSpread ? 0 : u, unit: got.unit.symbol, distribution, used };
+  if (kind.isSpread) return { read, value: exact(u), source: null };
+  const source: Source = { id: name, label: kind.label, symbol: kind.symbol, dimension, estimate: got.value, u, distribution, dof: Infinity };
+  return { read, value: u === 0 ? exact(got.value) : anchor(ofSource(source)), source };
+}

@@ -1,0 +1,180 @@
+/** Second step: gravity, inertia and stiffness of the pendulum as fired and as tapped, by the chosen route. */
+import { anchor, combine, exact, ofSource, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
+import { fromLimits, type Source } from '../metrology/source.ts';
+import {
+  bobInertia, bobMoment, geometryFactor, gravityShare, inertiaOfPeriod, partInertia, partMoment, smallPeriod, stiffness, stiffnessOfPeriod, stripInertia, stripMoment,
+} from '../pendulum/forms.ts';
+import { GRAVITY_ANOMALY, normalGravity } from '../pendulum/gravity.ts';
+import { problem, type Problem } from '../problems/problems.ts';
+import type { EntryName, PartEntryName } from '../session/entries.ts';
+import type { Choices } from '../session/session.ts';
+import { entriesInUse, type BenchRead } from './entries.ts';
+
+export type ConfigurationName = 'shots' | 'taps';
+
+/** J, κ and p of the pendulum in one configuration, each an anchor. */
+export interface Body {
+  readonly inertia: Anchor;
+  readonly stiffness: Anchor;
+  readonly gravityShare: Anchor;
+}
+
+export interface Stand {
+  readonly gravity: Anchor | null;
+  /** From masses and lengths alone; null where they are not typed. */
+  readonly masses: Readonly<Record<ConfigurationName, Body>> | null;
+  /** By the chosen route; equal to `masses` on that route. Known once the damping is. */
+  readonly problems: readonly Problem[];
+  /** Gravity share to use where masses are unknown: 1 without a flexure. */
+  readonly shareUnknown: number;
+}
+
+/** Standard gravity, CGPM 1901, taken where nothing is typed, with limits that hold everywhere at sea level to 3 km. */
+const STANDARD_GRAVITY = 9.80665;
+const GRAVITY_LIMITS = 0.035;
+
+/** value of an entry, or null; blank optional entries give `otherwise`. */
+export const valueOf = (bench: BenchRead, name: EntryName): Uncertain | null => bench.entries.get(name)?.value ?? null;
+
+export function missingEntries(bench: BenchRead, choices: Choices): readonly EntryName[] {
+  return [...entriesInUse(choices).needed].filter((name) => bench.entries.get(name)?.value === null);
+}
+
+export function readStand(bench: BenchRead, choices: Choices): Stand {
+  const problems: Problem[] = [];
+  const gravity = readGravity(bench, choices, problems);
+  const flexure = valueOf(bench, 'flexureStiffness') ?? exact(0);
+  const shareUnknown = 1;
+  const body = gravity && bareBody(bench, choices, problems);
+  if (!gravity || !body) return { gravity, masses: null, problems, shareUnknown };
+  const extra = calibrationMass(bench, choices, gravity);
+  const of = (name: ConfigurationName): Body | null => {
+    const inertia = anchor(combine([[1, body.inertia], ...(extra[name] ? [[1, extra[name].inertia] as const] : [])]));
+    const moment = combine([[1, body.moment], ...(extra[name] ? [[1, extra[name].moment] as const] : [])]);
+    const kappa = anchor(propagate(stiffness, { moment, g: gravity, flexure }));
+    if (!(inertia.value > 0)) {
+      problems.push(problem('bench-inertia-not-positive', 'stops', {}, { configuration: name, value: inertia.value }));
+      return null;
+    }
+    if (!(kappa.value > 0)) {
+      problems.push(problem('bench-unstable', 'stops', {}, { configuration: name, value: kappa.value }));
+      return null;
+    }
+    return { inertia, stiffness: kappa, gravityShare: anchor(propagate(gravityShare, { moment, g: gravity, stiffness: kappa })) };
+  };
+  const shots = of('shots');
+  const taps = extra.same ? shots : of('taps');
+  return { gravity, masses: shots && taps ? { shots, taps } : null, problems, shareUnknown };
+}
+
+function readGravity(bench: BenchRead, choices: Choices, problems: Problem[]): Anchor | null {
+  if (choices.gravityWay === 'place') {
+    const latitude = valueOf(bench, 'latitude');
+    const height = valueOf(bench, 'height');
+    if (!latitude || !height) return null;
+    const anomaly: Source = { id: 'gravity.anomaly', label: 'Gravity anomaly (local field against the formula)', symbol: 'Δg', dimension: 'acceleration', estimate: 0, u: GRAVITY_ANOMALY, distribution: 'normal', dof: Infinity };
+    return anchor(combine([[1, propagate(normalGravity, { latitude, height })], [1, ofSource(anomaly)]]));
+  }
+  const typed = valueOf(bench, 'gravity');
+  if (typed) return anchor(typed);
+  problems.push(problem('gravity-assumed', 'note', { entry: 'gravity' }, { value: STANDARD_GRAVITY, limits: GRAVITY_LIMITS }));
+  const assumed: Source = { id: 'gravity', label: 'Local g (standard value assumed)', symbol: 'g', dimension: 'acceleration', estimate: STANDARD_GRAVITY, u: fromLimits(GRAVITY_LIMITS), distribution: 'rectangular', dof: Infinity };
+  return anchor(ofSource(assumed));
+}
+
+interface Bare {
+  readonly inertia: Uncertain;
+  readonly moment: Uncertain;
+}
+
+function bareBody(bench: BenchRead, choices: Choices, problems: Problem[]): Bare | null {
+  switch (choices.form) {
+    case 'pointBob': {
+      const m = valueOf(bench, 'bobMass');
+      const L = valueOf(bench, 'bobDistance');
+      return m && L ? { inertia: propagate(bobInertia, { m, L }), moment: propagate(bobMoment, { m, L }) } : null;
+    }
+    case 'uniformStrip': {
+      const m = valueOf(bench, 'stripMass');
+      const L = valueOf(bench, 'stripLength');
+      return m && L ? { inertia: propagate(stripInertia, { m, L }), moment: propagate(stripMoment, { m, L }) } : null;
+    }
+    case 'bodyOfParts':
+      return sumOfParts(bench, problems);
+  }
+}
+
+function sumOfParts(bench: BenchRead, problems: Problem[]): Bare | null {
+  const inertias: Uncertain[] = [];
+  const moments: Uncertain[] = [];
+  let complete = bench.parts.length > 0;
+  if (!complete) problems.push(problem('entry-missing', 'stops', { entry: 'parts' }, { label: 'Parts of the pendulum' }));
+  for (const part of bench.parts) {
+    const value = (name: PartEntryName): Uncertain | null => part.entries.get(name)?.value ?? null;
+    const m = value('mass');
+    const r = value('distance');
+    for (const name of ['mass', 'distance'] as const) {
+      if (!value(name)) problems.push(problem('entry-missing', 'stops', { entry: `part.${part.id}.${name}` }, { label: part.entries.get(name)!.read.label }));
+    }
+    if (!m || !r) complete = false;
+    else {
+      inertias.push(propagate(partInertia, { m, r, J: value('ownInertia') ?? exact(0) }));
+      moments.push(propagate(partMoment, { m, r }));
+    }
+  }
+  return complete ? { inertia: combine(inertias.map((x) => [1, x])), moment: combine(moments.map((x) => [1, x])) } : null;
+}
+
+interface Extra {
+  readonly shots: Bare | null;
+  readonly taps: Bare | null;
+  /** One configuration for both. */
+  readonly same: boolean;
+}
+
+function calibrationMass(bench: BenchRead, choices: Choices, gravity: Anchor): Extra {
+  const hung = choices.calibrationMassHung;
+  const m = valueOf(bench, 'calibrationMass');
+  const r = valueOf(bench, 'calibrationMassDistance');
+  if (hung === 'never' || !m || !r || !gravity) return { shots: null, taps: null, same: true };
+  const part: Bare = { inertia: propagate(partInertia, { m, r, J: valueOf(bench, 'calibrationMassInertia') ?? exact(0) }), moment: propagate(partMoment, { m, r }) };
+  return { shots: hung === 'taps' ? null : part, taps: hung === 'shots' ? null : part, same: hung === 'always' };
+}
+
+/**
+ * The two configurations by the chosen route, once the undamped small period T₀ of one of them is known.
+ * Route A keeps κ of the masses and takes J from the period, route B keeps J and takes κ; the other configuration
+ * follows by the calibration mass, whose own J and κ are known.
+ */
+export function standByRoute(stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[]): Readonly<Record<ConfigurationName, Body>> | null {
+  const masses = stand.masses;
+  if (!masses) return null;
+  if (choices.route === 'masses' || !period) return choices.route === 'masses' ? masses : null;
+  const timed = masses[choices.periodTimedAs];
+  const timedInertia = choices.route === 'massesAndPeriod' ? propagate(inertiaOfPeriod, { stiffness: timed.stiffness, period }) : timed.inertia;
+  const timedStiffness = choices.route === 'inertiaAndPeriod' ? propagate(stiffnessOfPeriod, { inertia: timed.inertia, period }) : timed.stiffness;
+  const of = (name: ConfigurationName): Body | null => {
+    const here = masses[name];
+    // What differs between the two configurations is the calibration mass alone; it differs by the same J and κ on every route.
+    const inertia = here === timed ? timedInertia : combine([[1, timedInertia], [1, here.inertia], [-1, timed.inertia]]);
+    const kappa = here === timed ? timedStiffness : combine([[1, timedStiffness], [1, here.stiffness], [-1, timed.stiffness]]);
+    if (!(inertia.value > 0)) {
+      problems.push(problem('bench-inertia-not-positive', 'stops', { entry: 'period' }, { configuration: name, value: inertia.value }));
+      return null;
+    }
+    if (!(kappa.value > 0)) {
+      problems.push(problem('bench-unstable', 'stops', { entry: 'period' }, { configuration: name, value: kappa.value }));
+      return null;
+    }
+    const kappaAnchor = anchor(kappa);
+    const weight = propagate(({ share, kappaMasses }) => share * kappaMasses, { share: here.gravityShare, kappaMasses: here.stiffness });
+    return { inertia: anchor(inertia), stiffness: kappaAnchor, gravityShare: anchor(propagate(({ weight: w, kappa: k }) => w / k, { weight, kappa: kappaAnchor })) };
+  };
+  const shots = of('shots');
+  const taps = masses.taps === masses.shots ? shots : of('taps');
+  return shots && taps ? { shots, taps } : null;
+}
+
+export const factorOfBody = (body: Body): Uncertain => propagate(geometryFactor, { inertia: body.inertia, stiffness: body.stiffness });
+export const periodOfBody = (body: Body): Uncertain => propagate(smallPeriod, { inertia: body.inertia, stiffness: body.stiffness });
+export const uOf = standardUncertainty;

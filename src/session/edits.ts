@@ -1,0 +1,221 @@
+/** What a person can do to a session: each function returns an edit, session → session, to hand to the store's `change`. */
+import { RECORD_KINDS } from '../readings/meanings.ts';
+import type { ColumnMeaning, RecordKind, Role } from '../readings/meanings.ts';
+import type { EntryName, PartEntryName } from './entries.ts';
+import { recordId } from './session.ts';
+import type { Choices, Entry, Mark, Part, Session, Sheet } from './session.ts';
+
+export type Edit = (session: Session) => Session;
+
+/** An entry as it stands before anything is typed. */
+export const BLANK_ENTRY: Entry = { text: '', plusMinus: 'standard', k: '' };
+
+const isBlank = (entry: Entry): boolean => entry.text === '' && entry.plusMinus === 'standard' && entry.k === '';
+
+function withEntry<Name extends string>(
+  entries: Readonly<Partial<Record<Name, Entry>>>,
+  name: Name,
+  patch: Partial<Entry>,
+): Readonly<Partial<Record<Name, Entry>>> {
+  const next: Entry = { ...(entries[name] ?? BLANK_ENTRY), ...patch };
+  if (!isBlank(next)) return { ...entries, [name]: next };
+  const rest = { ...entries };
+  delete rest[name];
+  return rest;
+}
+
+/** One more than the largest number that follows the prefix in any of the ids. */
+function nextNumber(ids: readonly string[], prefix: string): number {
+  const numbers = ids.filter((id) => id.startsWith(prefix)).map((id) => Number(id.slice(prefix.length)));
+  return 1 + Math.max(0, ...numbers.filter((n) => Number.isInteger(n)));
+}
+
+export const setTitle = (patch: Partial<Session['title']>): Edit => (session) =>
+  ({ ...session, title: { ...session.title, ...patch } });
+
+export const setEntry = (name: EntryName, patch: Partial<Entry>): Edit => (session) =>
+  ({ ...session, entries: withEntry(session.entries, name, patch) });
+
+export const setChoice = <Name extends keyof Choices>(name: Name, value: Choices[Name]): Edit => (session) =>
+  ({ ...session, choices: { ...session.choices, [name]: value } });
+
+export const setFreeSwing = (text: string): Edit => (session) => ({ ...session, freeSwing: text });
+
+export const addPart = (name = ''): Edit => (session) => {
+  const id = `p${nextNumber(session.parts.map((part) => part.id), 'p')}`;
+  return { ...session, parts: [...session.parts, { id, name, entries: {} }] };
+};
+
+export const removePart = (id: string): Edit => (session) =>
+  ({ ...session, parts: session.parts.filter((part) => part.id !== id) });
+
+const editPart = (id: string, edit: (part: Part) => Part): Edit => (session) =>
+  ({ ...session, parts: session.parts.map((part) => (part.id === id ? edit(part) : part)) });
+
+export const setPartName = (id: string, name: string): Edit => editPart(id, (part) => ({ ...part, name }));
+
+export const setPartEntry = (id: string, name: PartEntryName, patch: Partial<Entry>): Edit =>
+  editPart(id, (part) => ({ ...part, entries: withEntry(part.entries, name, patch) }));
+
+/** The id that the next sheet of this session gets: `s1`, `s2`, … */
+export const nextSheetId = (session: Session): string => `s${nextNumber(session.sheets.map((sheet) => sheet.id), 's')}`;
+
+/** Adds a sheet under the next free id. */
+export const addSheet = (sheet: Omit<Sheet, 'id'>): Edit => (session) =>
+  ({ ...session, sheets: [...session.sheets, { ...sheet, id: nextSheetId(session) }] });
+
+/** Takes a sheet out, with the marks of its records. */
+export const removeSheet = (id: string): Edit => (session) => ({
+  ...session,
+  sheets: session.sheets.filter((sheet) => sheet.id !== id),
+  marks: renameMarks(session.marks, (record) => (record.startsWith(`${id}/`) ? null : record)),
+});
+
+const editSheet = (id: string, edit: (sheet: Sheet) => Sheet): Edit => (session) =>
+  ({ ...session, sheets: session.sheets.map((sheet) => (sheet.id === id ? edit(sheet) : sheet)) });
+
+function renameMarks(marks: Session['marks'], rename: (record: string) => string | null): Session['marks'] {
+  const renamed: Record<string, Mark> = {};
+  for (const [record, mark] of Object.entries(marks)) {
+    const to = rename(record);
+    if (to !== null) renamed[to] = mark;
+  }
+  return renamed;
+}
+
+/**
+ * The same file come again: new text, and where each earlier line went (old line → new line). Marks and typed-over
+ * cells go with their lines; those of a line that is not in the map go out with it. Rows typed by hand stay.
+ */
+export const replaceSheet = (
+  id: string,
+  fresh: Pick<Sheet, 'text' | 'sha256'> & Partial<Pick<Sheet, 'name' | 'columns'>>,
+  movedLines: Readonly<Record<string, string>>,
+): Edit => (session) => {
+  const moved = (line: string): string | null => (line.startsWith('+') ? line : (movedLines[line] ?? null));
+  const replaced = editSheet(id, (sheet) => {
+    const edits: Record<string, Readonly<Record<number, string>>> = {};
+    for (const [line, cells] of Object.entries(sheet.edits)) {
+      const to = moved(line);
+      if (to !== null) edits[to] = cells;
+    }
+    return { ...sheet, ...fresh, edits };
+  })(session);
+  const marks = renameMarks(session.marks, (record) => {
+    if (!record.startsWith(`${id}/`)) return record;
+    const to = moved(record.slice(id.length + 1));
+    return to === null ? null : recordId(id, to);
+  });
+  return { ...replaced, marks };
+};
+
+/** A column's meaning as the person wants it; from now on it is no proposal any more. */
+export const setColumn = (sheet: string, index: number, patch: Partial<Omit<ColumnMeaning, 'by'>>): Edit =>
+  editSheet(sheet, (found) => {
+    const columns = [...found.columns];
+    while (columns.length <= index) columns.push({ role: 'ignored', unit: '', by: 'proposal' });
+    columns[index] = { ...(columns[index] ?? { role: 'ignored', unit: '' }), ...patch, by: 'person' };
+    return { ...found, columns };
+  });
+
+/** All columns' meanings at once: a fresh proposal, or one that keeps what the person chose. */
+export const setColumns = (sheet: string, columns: readonly ColumnMeaning[]): Edit =>
+  editSheet(sheet, (found) => ({ ...found, columns }));
+
+/** How the text is cut; a key given as undefined goes back to "as found", a key left out stays. */
+export const setSheetCut = (
+  sheet: string,
+  cut: { readonly delimiter?: Sheet['delimiter'] | undefined; readonly decimal?: Sheet['decimal'] | undefined },
+): Edit =>
+  editSheet(sheet, (found) => {
+    const { delimiter, decimal, ...rest } = found;
+    const nextDelimiter = 'delimiter' in cut ? cut.delimiter : delimiter;
+    const nextDecimal = 'decimal' in cut ? cut.decimal : decimal;
+    return {
+      ...rest,
+      ...(nextDelimiter === undefined ? {} : { delimiter: nextDelimiter }),
+      ...(nextDecimal === undefined ? {} : { decimal: nextDecimal }),
+    };
+  });
+
+export const setKindOfAll = (sheet: string, kind: RecordKind | null): Edit =>
+  editSheet(sheet, (found) => ({ ...found, kindOfAll: kind }));
+
+/**
+ * Types over one cell. Lines that begin with `+` are rows typed by hand (their id is their line). For a line of the
+ * text the original stays in the text; null takes the typed-over cell back to it.
+ */
+export const setCell = (sheet: string, line: string, column: number, text: string | null): Edit =>
+  editSheet(sheet, (found) => {
+    if (line.startsWith('+')) {
+      const added = found.added.map((row) => {
+        if (row.id !== line) return row;
+        const cells = [...row.cells];
+        while (cells.length <= column) cells.push('');
+        cells[column] = text ?? '';
+        return { ...row, cells };
+      });
+      return { ...found, added };
+    }
+    const cells: Record<number, string> = { ...found.edits[line] };
+    if (text === null) delete cells[column];
+    else cells[column] = text;
+    const edits: Record<string, Readonly<Record<number, string>>> = { ...found.edits, [line]: cells };
+    if (Object.keys(cells).length === 0) delete edits[line];
+    return { ...found, edits };
+  });
+
+/** Adds a row typed by hand at the end; its id, and its line, is `+1`, `+2`, … */
+export const addRow = (sheet: string, cells: readonly string[] = []): Edit =>
+  editSheet(sheet, (found) => {
+    const id = `+${nextNumber(found.added.map((row) => row.id), '+')}`;
+    return { ...found, added: [...found.added, { id, cells }] };
+  });
+
+export const removeAddedRow = (sheet: string, id: string): Edit => (session) => {
+  const without = editSheet(sheet, (found) => ({ ...found, added: found.added.filter((row) => row.id !== id) }))(session);
+  const gone = recordId(sheet, id);
+  return { ...without, marks: renameMarks(session.marks, (record) => (record === gone ? null : record)) };
+};
+
+/** Columns of the sheet for rows typed by hand, with the unit each starts with ('reading' is filled in by the reading). */
+const TYPED_COLUMNS: readonly (readonly [Role, string])[] = [
+  ['kind', ''], ['label', ''], ['rest', 'reading'], ['firstSwing', 'reading'], ['nextSwing', 'reading'],
+  ['tapImpulse', 'mN·s'], ['voltage', 'V'], ['pressure', 'Pa'], ['note', ''],
+];
+
+export const typedSheet = (session: Session): Sheet | undefined => session.sheets.find((sheet) => sheet.origin === 'typed');
+
+/** The session with a sheet for rows typed by hand (as it is, where there is one), holding one empty row to begin with. */
+export const ensureTypedSheet: Edit = (session) => {
+  if (typedSheet(session) !== undefined) return session;
+  const readingUnit = session.choices.readingWay === 'angle' ? 'mrad' : 'mm';
+  const columns = TYPED_COLUMNS.map(([role, unit]): ColumnMeaning =>
+    ({ role, unit: unit === 'reading' ? readingUnit : unit, by: 'person' }));
+  return addSheet({
+    name: 'typed by hand', origin: 'typed', text: '', sha256: '', columns, kindOfAll: null, edits: {}, added: [{ id: '+1', cells: [] }],
+  })(session);
+};
+
+const editMark = (record: string, edit: (mark: Mark) => Mark): Edit => (session) => {
+  const marks: Record<string, Mark> = { ...session.marks };
+  const mark = edit(marks[record] ?? {});
+  if (mark.setAside === undefined && mark.kind === undefined) delete marks[record];
+  else marks[record] = mark;
+  return { ...session, marks };
+};
+
+/** Sets a record aside with its reason; it stays in the table, struck through. */
+export const setAside = (record: string, reason: string): Edit => editMark(record, (mark) => ({ ...mark, setAside: { reason } }));
+
+export const countAgain = (record: string): Edit =>
+  editMark(record, ({ kind }) => (kind === undefined ? {} : { kind }));
+
+/** Says by hand what a record is; null leaves it to the column, the sheet, or what is filled in. */
+export const setKind = (record: string, kind: RecordKind | null): Edit =>
+  editMark(record, ({ setAside: aside }) => ({
+    ...(aside === undefined ? {} : { setAside: aside }),
+    ...(kind === null ? {} : { kind }),
+  }));
+
+export const isRecordKind = (text: unknown): text is RecordKind => RECORD_KINDS.some((kind) => kind === text);

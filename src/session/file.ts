@@ -1,0 +1,247 @@
+/** The session as a file: its text, and the way back, which keeps everything that can be read and tells what could not. */
+import { problem } from '../problems/problems.ts';
+import type { Problem } from '../problems/problems.ts';
+import { RECORD_KINDS, ROLES } from '../readings/meanings.ts';
+import type { ColumnMeaning } from '../readings/meanings.ts';
+import { ENTRY_NAMES, PART_ENTRIES } from './entries.ts';
+import type { EntryName, PartEntryName } from './entries.ts';
+import { emptySession, FIRST_CHOICES } from './session.ts';
+import type { Choices, Entry, Mark, Part, Session, Sheet } from './session.ts';
+
+export interface SessionRead {
+  /** null where the text is no session of ours, or of a later version. */
+  readonly session: Session | null;
+  readonly problems: readonly Problem[];
+}
+
+const VERSION = 1;
+
+/** Keys in the order in which they are written, whatever order edits left them in; others follow as they stand. */
+const KEY_ORDER = [
+  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'freeSwing', 'choices', 'sheets', 'marks',
+  'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
+  'kind', 'setAside', 'reason',
+];
+
+function inOrder(_key: string, value: unknown): unknown {
+  if (!isObject(value)) return value;
+  const place = (key: string) => (KEY_ORDER.includes(key) ? KEY_ORDER.indexOf(key) : KEY_ORDER.length);
+  return Object.fromEntries(Object.entries(value).toSorted(([a], [b]) => place(a) - place(b)));
+}
+
+/** The file's text: JSON, indented and in one order, so that two versions of a session can be compared line by line. */
+export const sessionToText = (session: Session): string => `${JSON.stringify(session, inOrder, 1)}\n`;
+
+type Json = Readonly<Record<string, unknown>>;
+
+const isObject = (value: unknown): value is Json => typeof value === 'object' && value !== null && !Array.isArray(value);
+const isText = (value: unknown): value is string => typeof value === 'string';
+const isOneOf = <Value extends string>(values: readonly Value[]) => (value: unknown): value is Value =>
+  values.some((known) => known === value);
+
+const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices[Name][] } = {
+  form: ['pointBob', 'uniformStrip', 'bodyOfParts'],
+  readingWay: ['rulerAtTip', 'rulerUnderLine', 'laserSpot', 'angle'],
+  scaleRunsBackward: [true, false],
+  dampingWay: ['swings', 'decrement', 'ratio', 'none'],
+  gravityWay: ['typed', 'place'],
+  route: ['masses', 'massesAndPeriod', 'inertiaAndPeriod'],
+  periodTimedAs: ['shots', 'taps'],
+  calibrationMassHung: ['never', 'taps', 'shots', 'always'],
+  calibration: ['geometry', 'taps'],
+  swingForm: ['full', 'smallAngle'],
+};
+const CHOICE_NAMES = Object.keys(CHOICE_VALUES) as readonly (keyof Choices)[];
+const PART_ENTRY_NAMES = Object.keys(PART_ENTRIES) as readonly PartEntryName[];
+
+/** Walks one session; every piece that cannot be read is left out and noted by where it stood. */
+class Reading {
+  readonly damaged: Problem[] = [];
+
+  miss(where: string, value: unknown): void {
+    this.damaged.push(problem('session-damaged', 'doubt', {}, { where, found: shortly(value) }));
+  }
+
+  take<Value>(where: string, value: unknown, fits: (value: unknown) => value is Value, otherwise: Value): Value {
+    if (value === undefined) return otherwise;
+    if (fits(value)) return value;
+    this.miss(where, value);
+    return otherwise;
+  }
+
+  object(where: string, value: unknown): Json {
+    return this.take<Json>(where, value, isObject, {});
+  }
+
+  list(where: string, value: unknown): readonly unknown[] {
+    return this.take<readonly unknown[]>(where, value, Array.isArray, []);
+  }
+
+  entries<Name extends string>(where: string, value: unknown, names: readonly Name[]): Partial<Record<Name, Entry>> {
+    const read: Partial<Record<Name, Entry>> = {};
+    for (const [key, found] of Object.entries(this.object(where, value))) {
+      const name = names.find((known) => known === key);
+      if (name === undefined || !isObject(found) || !isText(found['text'])) {
+        this.miss(`${where}.${key}`, found);
+        continue;
+      }
+      read[name] = {
+        text: found['text'],
+        plusMinus: this.take(`${where}.${key}.plusMinus`, found['plusMinus'], isOneOf(['standard', 'limits', 'expanded']), 'standard'),
+        k: this.take(`${where}.${key}.k`, found['k'], isText, ''),
+      };
+    }
+    return read;
+  }
+
+  choices(value: unknown): Choices {
+    const found = this.object('choices', value);
+    const read: Record<string, unknown> = { ...FIRST_CHOICES };
+    for (const name of CHOICE_NAMES) {
+      const choice = found[name];
+      const known: readonly unknown[] = CHOICE_VALUES[name];
+      if (choice === undefined) continue;
+      if (known.includes(choice)) read[name] = choice;
+      else this.miss(`choices.${name}`, choice);
+    }
+    return read as unknown as Choices;
+  }
+
+  parts(value: unknown): Part[] {
+    const seen = new Set<string>();
+    return this.list('parts', value).flatMap((part, index) => {
+      const where = `parts[${index + 1}]`;
+      if (!isObject(part) || !isText(part['id']) || part['id'] === '' || seen.has(part['id'])) {
+        this.miss(where, part);
+        return [];
+      }
+      seen.add(part['id']);
+      const entries = this.entries<PartEntryName>(`${where}.entries`, part['entries'], PART_ENTRY_NAMES);
+      return [{ id: part['id'], name: this.take(`${where}.name`, part['name'], isText, ''), entries }];
+    });
+  }
+
+  columns(where: string, value: unknown): ColumnMeaning[] {
+    return this.list(where, value).map((column, index) => {
+      const at = `${where}[${index + 1}]`;
+      const found = this.object(at, column);
+      return {
+        role: this.take(`${at}.role`, found['role'], isOneOf(ROLES), 'ignored'),
+        unit: this.take(`${at}.unit`, found['unit'], isText, ''),
+        by: this.take(`${at}.by`, found['by'], isOneOf(['proposal', 'person']), 'proposal'),
+      };
+    });
+  }
+
+  edits(where: string, value: unknown): Sheet['edits'] {
+    const lines = Object.entries(this.object(where, value)).map(([line, cells]): [string, Record<number, string>] => {
+      const kept = Object.entries(this.object(`${where}.${line}`, cells)).filter((cell): cell is [string, string] => {
+        const fits = /^\d+$/.test(cell[0]) && isText(cell[1]);
+        if (!fits) this.miss(`${where}.${line}.${cell[0]}`, cell[1]);
+        return fits;
+      });
+      return [line, Object.fromEntries(kept)];
+    });
+    return Object.fromEntries(lines);
+  }
+
+  added(where: string, value: unknown): Sheet['added'] {
+    const seen = new Set<string>();
+    return this.list(where, value).flatMap((row, index) => {
+      const at = `${where}[${index + 1}]`;
+      if (!isObject(row) || !isText(row['id']) || !/^\+\d+$/.test(row['id']) || seen.has(row['id'])) {
+        this.miss(at, row);
+        return [];
+      }
+      seen.add(row['id']);
+      const cells = this.list(`${at}.cells`, row['cells']).map((cell, column) => this.take(`${at}.cells[${column + 1}]`, cell, isText, ''));
+      return [{ id: row['id'], cells }];
+    });
+  }
+
+  sheets(value: unknown): Sheet[] {
+    const seen = new Set<string>();
+    return this.list('sheets', value).flatMap((sheet, index) => {
+      const where = `sheets[${index + 1}]`;
+      if (!isObject(sheet) || !isText(sheet['id']) || !/^[^/]+$/.test(sheet['id']) || seen.has(sheet['id'])) {
+        this.miss(where, sheet);
+        return [];
+      }
+      seen.add(sheet['id']);
+      const delimiter = this.take<Sheet['delimiter']>(`${where}.delimiter`, sheet['delimiter'], isOneOf([',', ';', '\t'] as const), undefined);
+      const decimal = this.take<Sheet['decimal']>(`${where}.decimal`, sheet['decimal'], isOneOf(['.', ','] as const), undefined);
+      const kindOfAll = sheet['kindOfAll'] === null ? null : this.take(`${where}.kindOfAll`, sheet['kindOfAll'], isOneOf(RECORD_KINDS), null);
+      return [{
+        id: sheet['id'],
+        name: this.take(`${where}.name`, sheet['name'], isText, ''),
+        origin: this.take(`${where}.origin`, sheet['origin'], isOneOf(['file', 'paste', 'typed']), 'paste'),
+        text: this.take(`${where}.text`, sheet['text'], isText, ''),
+        sha256: this.take(`${where}.sha256`, sheet['sha256'], isText, ''),
+        ...(delimiter === undefined ? {} : { delimiter }),
+        ...(decimal === undefined ? {} : { decimal }),
+        columns: this.columns(`${where}.columns`, sheet['columns']),
+        kindOfAll,
+        edits: this.edits(`${where}.edits`, sheet['edits']),
+        added: this.added(`${where}.added`, sheet['added']),
+      }];
+    });
+  }
+
+  marks(value: unknown): Session['marks'] {
+    const marks = Object.entries(this.object('marks', value)).flatMap(([record, found]): [string, Mark][] => {
+      const where = `marks.${record}`;
+      const mark = this.object(where, found);
+      const kind = mark['kind'] === undefined ? undefined : this.take(`${where}.kind`, mark['kind'], isOneOf([...RECORD_KINDS, ''] as const), '');
+      const aside = mark['setAside'] === undefined ? undefined : this.object(`${where}.setAside`, mark['setAside']);
+      const kept: Mark = {
+        ...(aside === undefined ? {} : { setAside: { reason: this.take(`${where}.setAside.reason`, aside['reason'], isText, '') } }),
+        ...(kind === undefined || kind === '' ? {} : { kind }),
+      };
+      return Object.keys(kept).length === 0 ? [] : [[record, kept]];
+    });
+    return Object.fromEntries(marks);
+  }
+
+  session(found: Json): Session {
+    const title = this.object('title', found['title']);
+    const word = (name: keyof Session['title']) => this.take(`title.${name}`, title[name], isText, '');
+    return {
+      ...emptySession(),
+      title: { name: word('name'), place: word('place'), date: word('date'), remark: word('remark') },
+      demo: this.take('demo', found['demo'], (value): value is boolean => typeof value === 'boolean', false),
+      entries: this.entries<EntryName>('entries', found['entries'], ENTRY_NAMES),
+      parts: this.parts(found['parts']),
+      freeSwing: this.take('freeSwing', found['freeSwing'], isText, ''),
+      choices: this.choices(found['choices']),
+      sheets: this.sheets(found['sheets']),
+      marks: this.marks(found['marks']),
+    };
+  }
+}
+
+/** What was found, short enough for a sentence. */
+function shortly(value: unknown): string {
+  const text = JSON.stringify(value) ?? 'nothing';
+  return text.length > 40 ? `${text.slice(0, 39)}…` : text;
+}
+
+/** Reads a session file. Problems: session-not-json, -not-ours and -newer stop it; -damaged says what was left out, piece by piece. */
+export function sessionFromText(text: string): SessionRead {
+  let found: unknown;
+  try {
+    found = JSON.parse(text.replace(/^\uFEFF/, ''));
+  } catch {
+    return { session: null, problems: [problem('session-not-json', 'stops', {})] };
+  }
+  if (!isObject(found) || found['format'] !== 'firstswing-session') {
+    return { session: null, problems: [problem('session-not-ours', 'stops', {})] };
+  }
+  const version = found['version'];
+  if (typeof version === 'number' && version > VERSION) {
+    return { session: null, problems: [problem('session-newer', 'stops', {}, { version, known: VERSION })] };
+  }
+  const reading = new Reading();
+  if (version !== VERSION) reading.miss('version', version);
+  const session = reading.session(found);
+  return { session, problems: reading.damaged };
+}

@@ -1,0 +1,11 @@
+/** A reduction with nothing in it, for tests of what is around it. */
+import type { Reduction } from '../../src/reduction/results.ts';
+
+export function bareReduction(over: Partial<Reduction> = {}): Reduction {
+  return {
+    problems: [], entries: [], sheets: [], records: [], gravity: null, configurations: { shots: null, taps: null }, damping: null,
+    periodCheck: null, calibrations: { geometry: null, taps: null }, chosen: 'geometry', difference: null,
+    runs: { geometry: null, taps: null }, run: null, runWithSetAside: null, blanks: null, ranges: { taps: null, shots: null }, explained: null,
+    ...over,
+  };
+}
