@@ -84,12 +84,12 @@ function columnNorm(a: Matrix, column: number, from: number): number {
 }
 
 /**
- * Householder QR of J (m × n) applied to y.
+ * Householder QR of J (m × n) applied to y. Rank is lost where what a column adds to those before it is below `rankTolerance` of its length.
  *
  * Source: Golub & Van Loan, Matrix Computations, Householder QR (from memory).
  * @throws RangeError when m < n or the sizes do not fit
  */
-export function triangularise(j: Matrix, y: readonly number[]): Triangle {
+export function triangularise(j: Matrix, y: readonly number[], rankTolerance = RANK_TOLERANCE): Triangle {
   const m = j.length;
   const n = j[0]?.length ?? 0;
   checkShape(j, n, 'triangularise');
@@ -100,7 +100,7 @@ export function triangularise(j: Matrix, y: readonly number[]): Triangle {
   let fullRank = true;
   for (let c = 0; c < n; c += 1) {
     const norm = columnNorm(a, c, c);
-    if (!(norm > RANK_TOLERANCE * columnNorms[c]!)) fullRank = false;
+    if (!(norm > rankTolerance * columnNorms[c]!)) fullRank = false;
     if (norm === 0) continue;
     const diagonal = a[c]![c]! > 0 ? -norm : norm;
     // v = column − diagonal·e, with v·v/2 = −diagonal·v_c

@@ -11,7 +11,7 @@ const LARGEST_DAMPING = 1e16;
 /** Converged: the undamped step that is left changes each parameter by less than this part of it … */
 const PARAMETER_TOLERANCE = 1e-11;
 /** … or less than this part of its standard deviation (a parameter whose true value is zero) … */
-const DEVIATION_TOLERANCE = 1e-7;
+const DEVIATION_TOLERANCE = 1e-9;
 /** … or this part where no step helps any more, which is as far as the rounding of the residuals lets one see … */
 const STALLED_TOLERANCE = 1e-4;
 /** … or moves the model by less than this part of what the parameters make of it (residuals that are all rounding) … */
@@ -24,6 +24,8 @@ const FLAT = 1e-10;
 const STATIONARY = 1e-7;
 /** Central differences lose least with a step of the cube root of the rounding. */
 const RELATIVE_STEP = Math.cbrt(Number.EPSILON);
+/** What is left of a column of differences below this part of it is their rounding (its two-thirds power, with some room). */
+const DIFFERENCES_RANK = 1e-9;
 /** A parameter that has shrunk below this part of its start is still stepped as if it had this size. */
 const SCALE_OF_START = 1e-3;
 
@@ -132,6 +134,7 @@ export function fitLeastSquares(residuals: Residuals, start: readonly number[], 
   const n = start.length;
   const scales = options.scales ?? start.map((p) => Math.abs(p) * SCALE_OF_START || 1);
   const jacobianAt = options.jacobian ?? ((p: readonly number[]): Matrix => differences(residuals, p, scales));
+  const rankTolerance = options.jacobian === undefined ? DIFFERENCES_RANK : undefined;
   const limit = options.iterationLimit ?? ITERATION_LIMIT;
   if (scales.length !== n || !scales.every((scale) => scale > 0)) throw new RangeError('fitLeastSquares: the scales do not fit the parameters');
   /** null where the model has no value, or its sum of squares is not below the ceiling. */
@@ -142,7 +145,7 @@ export function fitLeastSquares(residuals: Residuals, start: readonly number[], 
     if (!(sum < ceiling)) return null;
     const jacobian = jacobianAt(p);
     if (!jacobian.every((row) => row.every(Number.isFinite))) return null;
-    return { p, r, jacobian, sum, triangle: triangularise(jacobian, r) };
+    return { p, r, jacobian, sum, triangle: triangularise(jacobian, r, rankTolerance) };
   };
   const first = placeAt([...start], Infinity);
   if (first === null) throw new RangeError('fitLeastSquares: the start has no finite residuals and Jacobian');

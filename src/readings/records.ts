@@ -76,7 +76,8 @@ interface Bench {
  * The records of one sheet, in the order of its rows, hand-typed rows last.
  *
  * The kind of a record is what a person marked, else what the kind column says, else that of the whole sheet, else told from what is filled in:
- * a tap impulse makes a tap; a rest without any swing and without a voltage makes a zero; anything else is a shot.
+ * a tap impulse makes a tap; a rest without any swing and without a voltage makes a zero; else the header of the numbers ("Tap") tells;
+ * anything else is a shot.
  *
  * @param kinds a person's marks by record id
  */
@@ -146,6 +147,11 @@ function isTorn({ sheet }: Bench, row: Row): boolean {
   return sheet.columns.some(({ role }, i) => role !== 'ignored' && role !== 'note' && !row.edited.includes(i) && !isNoReading(row.cells[i] ?? ''));
 }
 
+/** "Tap" or "Blank no." at the head of the numbers says what the rows are, where nothing else does. */
+function kindOfHeader(header: string): RecordKind | null {
+  return kindOfWord(header.replace(/(?:\s|^)(?:no|nr|number|n°|№)\.?\s*$/iu, ''));
+}
+
 function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetPlace: Place): SheetRecord {
   const { sheet, headers, single } = bench;
   const id = `${sheet.id}/${row.line}`;
@@ -179,11 +185,16 @@ function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetP
   const hasText = (role: Role): boolean => !isNoReading(textAt(single.get(role)));
   const anySwing = hasText('firstSwing') || bench.nextSwings.some((i) => !isNoReading(textAt(i)));
   const filledIn: RecordKind = hasText('tapImpulse') ? 'tap' : hasText('rest') && !anySwing && !hasText('voltage') ? 'zero' : 'shot';
+  const headed = filledIn === 'shot' ? kindOfHeader(headers[single.get('label') ?? -1] ?? '') : null;
   const [kind, kindBy] =
     marked !== undefined ? ([marked, 'person'] as const)
     : kindInColumn !== null ? ([kindInColumn, 'column'] as const)
     : sheet.kindOfAll !== null ? ([sheet.kindOfAll, 'sheet'] as const)
-    : ([filledIn, 'filledIn'] as const);
+    : ([headed ?? filledIn, 'filledIn'] as const);
+  const firstSwing = single.get('firstSwing');
+  if (firstSwing !== undefined && !torn && !hasText('firstSwing') && (kind === 'shot' || kind === 'tap' || kind === 'blank')) {
+    problems.push(problem('cell-empty', 'stops', { ...place, column: columnName(headers, firstSwing) }, { role: 'firstSwing', kind }));
+  }
   return {
     id,
     line: row.line,

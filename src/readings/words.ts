@@ -32,7 +32,7 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'reposo|cero|antes|equilibrio|posicion de reposo|riposo|prima del tiro|repouso|posicao de repouso|rust|ruststand|nulstand|nul|voor|' +
     'spoczynek|polozenie spoczynkowe|spoczynkow*|przed|klid|klidova poloha|klidov*|nula|pred|pokoj|покой|положение покоя|ноль|нуль|до выстрела|начальн*|静止|静止位置|零点|ゼロ|ゼロ点|初期|初期位置|静止读数|零位|初始|初值',
   firstSwing:
-    'first swing|first|first peak|first throw|first deflection|swing 1|swing|throw|deflection|peak|peak 1|1st swing|1st peak|max|maximum|kick|furthest|x1|x 1|a1|p1|' +
+    'first swing|first|first peak|first throw|first deflection|swing 1|swing|throw|deflection|peak|peak 1|1st swing|1st peak|max|maximum|kick|furthest|x1|x 1|a1|p1|right|rechts|droite|derecha|destra|direita|' +
     'erster ausschlag|1 ausschlag|ausschlag|erstausschlag|auslenkung|erste auslenkung|umkehrpunkt|spitze|maximal*|' +
     'premiere elongation|1re elongation|elongation|deviation|premier|premiere|premiere oscillation|deflexion|pic|ecart|' +
     'primera oscilacion|primera|oscilacion|desviacion|deflexion|pico|maximo|primer maximo|' +
@@ -42,7 +42,7 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'prvni vychylka|vychylka|prvni|vychyleni|первый|первое отклонение|отклонение|отброс|размах|первый размах|максимум|пик|' +
     '振れ|最大振れ|変位|第一振れ|最初の振れ|ピーク|最大|偏转|偏移|第一摆|首摆|位移|摆幅|峰值|最大偏转|第一次摆动',
   nextSwing:
-    'back swing|backswing|return swing|return|back|second swing|second|second peak|2nd swing|2nd peak|third swing|3rd swing|third|fourth swing|4th swing|next|next swing|x2|x3|x4|x5|x 2|x 3|a2|a3|p2|p3|' +
+    'back swing|backswing|return swing|return|back|second swing|second|second peak|2nd swing|2nd peak|third swing|3rd swing|third|fourth swing|4th swing|next|next swing|x2|x3|x4|x5|x 2|x 3|a2|a3|p2|p3|left|links|gauche|izquierda|sinistra|esquerda|' +
     'ruckschwung|ruckschlag|zuruck|zweiter ausschlag|2 ausschlag|3 ausschlag|dritter ausschlag|gegenausschlag|' +
     'retour|elongation retour|elongation de retour|deuxieme|deuxieme elongation|seconde|2e elongation|3e elongation|' +
     'retorno|vuelta|segunda|segunda oscilacion|tercera oscilacion|oscilacion de retorno|ritorno|oscillazione di ritorno|seconda|seconda oscillazione|terza oscillazione|' +

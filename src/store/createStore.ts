@@ -7,8 +7,8 @@ import type { Actions, AskForReduction, State } from './store.ts';
 export interface FirstswingStore {
   readonly state: StoreApi<State>;
   readonly actions: Actions;
-  /** The session as it stands was kept on this device at this time (ms since epoch). */
-  readonly noteKept: (at: number) => void;
+  /** The session as it stands was kept on this device at this time (ms since epoch); null: it was not taken. */
+  readonly noteKept: (at: number | null) => void;
 }
 
 interface StoreParts {
@@ -33,7 +33,7 @@ function stillSelected(selected: string | null, session: Session): string | null
 /** Asks for the first reduction at once. */
 export function createFirstswingStore({ ask, first, now = Date.now }: StoreParts): FirstswingStore {
   const state = createStore<State>()(() => ({
-    session: first, reduction: null, busy: false, failure: null, selected: null, past: [], future: [], keptAt: null,
+    session: first, reduction: null, busy: false, failure: null, selected: null, past: [], future: [], keptAt: null, notKept: false,
   }));
   let running = false;
   let askAgain = false;
@@ -115,5 +115,5 @@ export function createFirstswingStore({ ask, first, now = Date.now }: StoreParts
   };
 
   request();
-  return { state, actions, noteKept: (at) => state.setState({ keptAt: at }) };
+  return { state, actions, noteKept: (at) => state.setState(at === null ? { notKept: true } : { keptAt: at, notKept: false }) };
 }

@@ -15,6 +15,8 @@ export interface State {
   readonly future: readonly Step[];
   /** Time of the last save on this device, ms since epoch; null before the first. */
   readonly keptAt: number | null;
+  /** This device did not take the latest save (private window, disk full). */
+  readonly notKept: boolean;
 }
 
 /** One undoable step: the session before it, and what it did, in a few words ("lever arm", "set aside shot 7"). */

@@ -15,7 +15,7 @@ test('roots in closed form come back to the last digits', () => {
   expect(rootOf((x) => Math.exp(x) - 10, 5, -5)).toBeCloseTo(Math.LN10, 14);
 });
 
-// Source: Kepler's equation has one root; Dottie number 0.7390851332151607 (from memory).
+// The Dottie number, 0.7390851332151607 (from memory).
 test('the fixed point of the cosine is found', () => {
   expect(rootOf((x) => Math.cos(x) - x, 0, 1)).toBeCloseTo(0.7390851332151607, 15);
 });

@@ -6,10 +6,10 @@ import type { Choices, Part } from '../../session/session.ts';
 import { useStore } from '../../store/hooks.tsx';
 import { chooseUnit, plain } from '../../units/format.ts';
 import { unitNamed } from '../../units/units.ts';
-import { valueRead } from '../words.tsx';
 import styles from './bench.module.css';
 import { Drawing } from './Drawing.tsx';
-import type { BenchLengths, DrawnEntry } from './drawing.ts';
+import { valueRead } from './echo.ts';
+import type { BenchLengths, DrawnEntry } from './layDrawing.ts';
 
 interface Props {
   readonly choices: Choices;

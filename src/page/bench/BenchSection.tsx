@@ -14,11 +14,23 @@ import styles from './bench.module.css';
 import { BenchDrawing } from './BenchDrawing.tsx';
 import { ChoiceField } from './ChoiceField.tsx';
 import { EntryField } from './EntryField.tsx';
-import { CAUTIONS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, READING_WAYS, ROUTES, SWING_FORMS } from './groups.ts';
+import { CAUTIONS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, READING_WAYS, ROUTES } from './groups.ts';
 import type { GroupName } from './groups.ts';
 import { PartsTable } from './PartsTable.tsx';
 
 const NO_PROBLEMS: readonly Problem[] = [];
+
+function byEntry(problems: readonly Problem[]): ReadonlyMap<string, readonly Problem[]> {
+  const found = new Map<string, Problem[]>();
+  for (const problem of problems) {
+    const { entry } = problem.place;
+    if (entry === undefined) continue;
+    const list = found.get(entry);
+    if (list === undefined) found.set(entry, [problem]);
+    else list.push(problem);
+  }
+  return found;
+}
 
 export function BenchSection() {
   const { change } = useActions();
@@ -31,7 +43,7 @@ export function BenchSection() {
   const [focused, setFocused] = useState<string | null>(null);
 
   const reads = useMemo(() => new Map(readings?.map((read) => [read.name, read])), [readings]);
-  const problemsByEntry = useMemo(() => Map.groupBy(problems ?? [], (problem) => problem.place.entry ?? ''), [problems]);
+  const problemsByEntry = useMemo(() => byEntry(problems ?? NO_PROBLEMS), [problems]);
   const used = useMemo(() => entriesInUse(choices).used, [choices]);
   const readOf = (name: string): EntryRead | undefined => reads.get(name);
   const problemsOf = (name: string): readonly Problem[] => problemsByEntry.get(name) ?? NO_PROBLEMS;
@@ -58,8 +70,8 @@ export function BenchSection() {
 
   const noteFocus = (event: FocusEvent) => setFocused(event.target.id.replace(/^entry-/, ''));
   return (
-    <section id="bench" aria-labelledby="bench-title" className={styles.bench} onFocus={noteFocus} onBlur={() => setFocused(null)}>
-      <h2 id="bench-title" tabIndex={-1}>Bench</h2>
+    <section id="bench" aria-labelledby="bench-heading" className={styles.bench} onFocus={noteFocus} onBlur={() => setFocused(null)}>
+      <h2 id="bench-heading" tabIndex={-1}>Bench</h2>
       <p className="quiet">
         Type each quantity with its unit and its uncertainty: <span className="num">118.0 ± 0.3 mm</span>, <span className="num">118.0(3) mm</span>, <span className="num">12,5 g</span>.
       </p>
@@ -89,10 +101,9 @@ export function BenchSection() {
               The scale’s numbers fall as the pendulum swings away from the thrust
             </label>
           </Group>
-          <Group name="Swing and damping">
-            <ChoiceField name="swingForm" legend="Impulse bit by" value={choices.swingForm} options={SWING_FORMS} onChoose={choose('swingForm', 'form of the swing')} />
+          <Group name="Damping">
             <ChoiceField name="dampingWay" legend="Damping from" value={choices.dampingWay} options={DAMPING_WAYS} onChoose={choose('dampingWay', 'damping from')} />
-            {fields('Swing and damping')}
+            {fields('Damping')}
             {(choices.dampingWay === 'swings' || freeSwing !== '') && (
               <FreeSwing text={freeSwing} problems={problemsOf('freeSwing')} onChange={(text) => change('free swing', setFreeSwing(text), 'freeSwing')} />
             )}

@@ -1,7 +1,7 @@
 /** The bench drawn to scale: pivot, pendulum, lever arms, reading and the largest throw at its true angle; a dimension leads to its field. */
 import type { MouseEvent, ReactNode } from 'react';
-import type { BenchLengths, DrawnEntry, Drawing as Layout, SideWord } from './drawing.ts';
-import { layDrawing } from './drawing.ts';
+import type { BenchLengths, DrawnEntry, Drawing as Layout, SideWord } from './layDrawing.ts';
+import { layDrawing } from './layDrawing.ts';
 import styles from './Drawing.module.css';
 
 interface Props {

@@ -5,7 +5,8 @@ import type { EntryKind } from '../../session/entries.ts';
 import { BLANK_ENTRY } from '../../session/edits.ts';
 import type { Entry, PlusMinus } from '../../session/session.ts';
 import { sentence } from '../../problems/sentences.ts';
-import { echoOf, SymbolText } from '../words.tsx';
+import { SymbolText } from '../words.tsx';
+import { echoOf } from './echo.ts';
 import styles from './EntryField.module.css';
 
 interface Props {

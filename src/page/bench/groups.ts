@@ -24,11 +24,6 @@ export const DAMPING_WAYS: Options<'dampingWay'> = [
   { value: 'none', words: 'none' },
 ];
 
-export const SWING_FORMS: Options<'swingForm'> = [
-  { value: 'full', words: 'full pendulum' },
-  { value: 'smallAngle', words: 'small angle' },
-];
-
 export const GRAVITY_WAYS: Options<'gravityWay'> = [
   { value: 'typed', words: 'typed' },
   { value: 'place', words: 'from latitude and height' },
@@ -52,14 +47,14 @@ export const MASS_HUNG: Options<'calibrationMassHung'> = [
   { value: 'always', words: 'always' },
 ];
 
-export type GroupName = 'Pendulum' | 'Thrust' | 'Reading' | 'Swing and damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
+export type GroupName = 'Pendulum' | 'Thrust' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
 
 /** Every entry of the bench, in the order of the work. */
 export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = {
   Pendulum: ['bobMass', 'bobDistance', 'stripMass', 'stripLength', 'flexureStiffness'],
   Thrust: ['leverArm'],
   Reading: ['readingRadius', 'rulerHeight', 'screenDistance', 'scaleMark', 'scaleFactor', 'division', 'readingSpread'],
-  'Swing and damping': ['logDecrement', 'dampingRatio'],
+  Damping: ['logDecrement', 'dampingRatio'],
   'Local g': ['gravity', 'latitude', 'height'],
   'Timed period': ['period', 'periodAmplitude', 'periodCycles'],
   'Calibration mass': ['calibrationMass', 'calibrationMassDistance', 'calibrationMassInertia'],

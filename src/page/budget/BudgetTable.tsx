@@ -4,7 +4,7 @@ import { chooseUnit, plain } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
 import { Aligned, alignedTo } from '../stated/Aligned.tsx';
 import { coverageFactor, degreesOfFreedom } from '../stated/numberWords.ts';
-import { QuantitySymbol } from '../stated/QuantitySymbol.tsx';
+import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
 import stated from '../stated/stated.module.css';
 import styles from './budget.module.css';
@@ -66,7 +66,7 @@ export function BudgetTable({ budget, of, unit }: Props) {
       <tbody>
         {lines.map((line, index) => (
           <tr key={line.id} className={styles[line.scope]}>
-            <th scope="row">{line.label} <QuantitySymbol symbol={line.symbol} /></th>
+            <th scope="row">{line.label} <SymbolText symbol={line.symbol} /></th>
             <td className="num">{inItsUnit(line, line.estimate, 6)}</td>
             <td className="num">{inItsUnit(line, line.u, 2)}</td>
             <td>{line.distribution}</td>

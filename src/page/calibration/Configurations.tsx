@@ -5,7 +5,7 @@ import type { Dimension } from '../../units/units.ts';
 import { siUnit } from '../../units/units.ts';
 import { Aligned, alignedColumn } from '../stated/Aligned.tsx';
 import { PLAIN, timesU } from '../stated/numberWords.ts';
-import { QuantitySymbol } from '../stated/QuantitySymbol.tsx';
+import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
 
 interface Row {
@@ -67,7 +67,7 @@ function Body({ configurations }: { readonly configurations: readonly Configurat
       {ROWS.map(({ label, symbol }, row) => (
         <tr key={symbol}>
           <th scope="row">{label}</th>
-          <td><QuantitySymbol symbol={symbol} /></td>
+          <td><SymbolText symbol={symbol} /></td>
           {columns.map((column, index) => <td key={configurations[index]?.name}><Aligned column={column} row={row} /></td>)}
         </tr>
       ))}

@@ -14,7 +14,7 @@ import { useInks } from '../plot/useInks.ts';
 import { openRecord } from '../record/openRecord.ts';
 import { coverageFactor, degreesOfFreedom, roundedAs } from '../stated/numberWords.ts';
 import { Quantity } from '../stated/Quantity.tsx';
-import { QuantitySymbol } from '../stated/QuantitySymbol.tsx';
+import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
 import styles from './run.module.css';
 
@@ -110,7 +110,7 @@ function Composition({ run, withAside, unit }: CompositionProps) {
         {ROWS.map(({ label, symbol, text }) => (
           <tr key={label}>
             <th scope="row">{label}</th>
-            <td><QuantitySymbol symbol={symbol} /></td>
+            <td><SymbolText symbol={symbol} /></td>
             <td className="num">{text(run, unit)}</td>
             {withAside !== null && <td className="num quiet">{text(withAside, unit)}</td>}
           </tr>

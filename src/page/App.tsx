@@ -1,0 +1,98 @@
+/** The one sheet, read from top to bottom as the work goes. */
+import { useRef, useState } from 'react';
+import { demoSession } from '../session/demo.ts';
+import { emptySession } from '../session/session.ts';
+import { useActions, useStateNow } from '../store/hooks.tsx';
+import styles from './App.module.css';
+import { BenchSection } from './bench/BenchSection.tsx';
+import { BudgetSection } from './budget/BudgetSection.tsx';
+import { CalibrationSection } from './calibration/CalibrationSection.tsx';
+import { HeadLine } from './head/HeadLine.tsx';
+import { Help } from './head/Help.tsx';
+import { LookList } from './head/LookList.tsx';
+import { Messages } from './head/Messages.tsx';
+import { ResultLine } from './head/ResultLine.tsx';
+import { looksLikeSession, openSessionFile, saveSessionFile } from './head/sessionFiles.ts';
+import type { Message } from './head/sessionFiles.ts';
+import { Start } from './head/Start.tsx';
+import { useSheetEvents } from './head/useSheetEvents.ts';
+import { ReadingsSection } from './readings/ReadingsSection.tsx';
+import { useReadingsIntake } from './readings/intake.ts';
+import { RecordSection } from './record/RecordSection.tsx';
+import { RunSection } from './run/RunSection.tsx';
+import { RunStrip } from './strip/RunStrip.tsx';
+import { TableSection } from './table/TableSection.tsx';
+
+/** What is to be said when the page opens: what this device kept and could not be read. */
+export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message, 'id'>[] }) {
+  const { change, undo, redo } = useActions();
+  const now = useStateNow();
+  const intake = useReadingsIntake();
+  const chooser = useRef<HTMLInputElement>(null);
+  const [help, setHelp] = useState(false);
+  const [messages, setMessages] = useState<readonly Message[]>(() => arrival.map((message, index) => ({ ...message, id: index })));
+
+  const say = (sentences: readonly string[]): void => {
+    if (sentences.length === 0) return;
+    setMessages((said) => [...said, { id: 1 + Math.max(-1, ...said.map((message) => message.id)), sentences }]);
+  };
+
+  async function takeFiles(files: readonly File[]): Promise<void> {
+    const tables: File[] = [];
+    for (const file of files) {
+      if (await looksLikeSession(file)) say(await openSessionFile(file, change));
+      else tables.push(file);
+    }
+    if (tables.length > 0) intake.takeFiles(tables);
+  }
+
+  const choose = () => chooser.current?.click();
+  const save = () => saveSessionFile(now().session);
+  const openDemo = () => change('open the demo', () => demoSession());
+  const dragging = useSheetEvents({
+    onUndo: undo,
+    onRedo: redo,
+    onSave: save,
+    onOpen: choose,
+    onHelp: () => setHelp(true),
+    onFiles: (files) => void takeFiles(files),
+    onText: (text) => intake.takeText(text),
+  });
+
+  return (
+    <div className={dragging ? `${styles.sheet} ${styles.dragging}` : styles.sheet}>
+      <HeadLine onOpen={choose} onSave={save} onDemo={openDemo} onNew={() => change('begin a new session', () => emptySession())} onHelp={() => setHelp(true)} />
+      <input
+        ref={chooser}
+        className="visually-hidden"
+        type="file"
+        multiple
+        tabIndex={-1}
+        aria-label="Open a session file or tables of readings"
+        onChange={(event) => {
+          const files = [...(event.target.files ?? [])];
+          event.target.value = '';
+          void takeFiles(files);
+        }}
+      />
+      <Messages messages={messages} onTake={(id) => setMessages((said) => said.filter((message) => message.id !== id))} />
+      <ResultLine />
+      <RunStrip />
+      <main>
+        <Start onChoose={choose} onDemo={openDemo} />
+        <div className={styles.pair}>
+          <BenchSection />
+          <RecordSection />
+        </div>
+        <ReadingsSection />
+        <CalibrationSection />
+        <RunSection />
+        <BudgetSection />
+        <TableSection />
+        <LookList />
+      </main>
+      <Help open={help} onClose={() => setHelp(false)} />
+      {dragging && <p className={styles.drop} aria-hidden="true">Drop a table of readings, or a session file</p>}
+    </div>
+  );
+}

@@ -1,0 +1,25 @@
+/** How the bench says back what was typed: an entry's value, its standard uncertainty, and what that was taken from. */
+import type { EntryRead } from '../../reduction/results.ts';
+import { alignedParts } from '../../units/format.ts';
+import { unitNamed } from '../../units/units.ts';
+
+/** The value of an entry alone, as its field understood it: `118.00 mm`; null where nothing usable is typed. */
+export function valueRead({ value, u, unit, dimension }: EntryRead): string | null {
+  const found = unitNamed(unit, dimension);
+  if (value === null || found === null) return null;
+  const parts = alignedParts(value, u, found);
+  return withUnit(`${parts.whole}${parts.fraction}`, parts.unit);
+}
+
+/** The echo beside a field: `118.00 mm, u = 0.17 mm (rectangular)`; for an entry that is itself an uncertainty, `u = 0.2 mm`. */
+export function echoOf(read: EntryRead, isSpread: boolean): string | null {
+  const value = valueRead(read);
+  const found = unitNamed(read.unit, read.dimension);
+  if (value === null || read.value === null || found === null) return null;
+  if (isSpread) return `u = ${value}`;
+  if (read.u === 0) return `${value}, exact`;
+  const parts = alignedParts(read.value, read.u, found);
+  return `${value}, u = ${withUnit(parts.spread, parts.unit)}${read.distribution === 'rectangular' ? ' (rectangular)' : ''}`;
+}
+
+const withUnit = (number: string, unit: string): string => (/^[°′″]?$/.test(unit) ? `${number}${unit}` : `${number}\u00A0${unit}`);

@@ -1,0 +1,46 @@
+/** What the page has to say about session files and about itself, until it is taken away. */
+import { saveTextAsFile } from '../../platform/download.ts';
+import { useStore, useStateNow } from '../../store/hooks.tsx';
+import styles from './head.module.css';
+import { saveSessionFile } from './sessionFiles.ts';
+import type { Message } from './sessionFiles.ts';
+
+interface Props {
+  readonly messages: readonly Message[];
+  readonly onTake: (id: number) => void;
+}
+
+export function Messages({ messages, onTake }: Props) {
+  return (
+    <div aria-live="polite">
+      <Failure />
+      {messages.map(({ id, sentences, offer }) => (
+        <div key={id} className={styles.message}>
+          <ul>
+            {sentences.map((words) => <li key={words}>{words}</li>)}
+          </ul>
+          {offer !== undefined && (
+            <button type="button" onClick={() => saveTextAsFile(offer.name, offer.text, 'text/plain')}>{offer.words}</button>
+          )}
+          <button type="button" className="plain-button" onClick={() => onTake(id)}>take away</button>
+        </div>
+      ))}
+    </div>
+  );
+}
+
+/** Our own mistake: what is shown may belong to an earlier state, and the session is offered for saving. */
+function Failure() {
+  const failure = useStore((state) => state.failure);
+  const now = useStateNow();
+  if (failure === null) return null;
+  return (
+    <div className={styles.message} role="alert">
+      <p>
+        The reduction failed, which is a mistake of this program and not of your readings. The numbers below are those of before your last change; nothing
+        typed is lost. <span className="quiet">{failure}</span>
+      </p>
+      <button type="button" onClick={() => saveSessionFile(now().session)}>Save the session</button>
+    </div>
+  );
+}

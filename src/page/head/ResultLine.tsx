@@ -1,0 +1,56 @@
+/** The result line, always in sight: the run mean with U, its coverage, the scatter, and how much there is to look at. */
+import { impulseUnit } from '../../plots/impulseUnit.ts';
+import type { Reduction } from '../../reduction/results.ts';
+import { useStore } from '../../store/hooks.tsx';
+import { plain } from '../../units/format.ts';
+import { coverageFactor } from '../stated/numberWords.ts';
+import { Quantity } from '../stated/Quantity.tsx';
+import { goToElement } from './goTo.ts';
+import styles from './head.module.css';
+
+export function ResultLine() {
+  const reduction = useStore((state) => state.reduction);
+  const busy = useStore((state) => state.busy);
+  return (
+    <div className={styles.result} aria-busy={busy}>
+      <p className={styles.answer} role="status">
+        <span className={styles.answerName}>Mean impulse bit</span> <Mean reduction={reduction} />
+      </p>
+      <LookCount reduction={reduction} />
+    </div>
+  );
+}
+
+function Mean({ reduction }: { readonly reduction: Reduction | null }) {
+  if (reduction === null) return <span className="quiet">…</span>;
+  const { run, chosen } = reduction;
+  if (run === null) return <span className={styles.none}>— <span className="quiet">{whyNone(reduction)}</span></span>;
+  const unit = impulseUnit(reduction);
+  return (
+    <>
+      <strong className={styles.figure}><Quantity value={run.mean.value} spread={run.mean.U} unit={unit} /></strong>{' '}
+      <span className={styles.evidence}>
+        <span className="num">± U, 95 %, k = {coverageFactor(run.mean.k)}</span>
+        <span className="num">n = {run.n} of {run.of}</span>
+        {run.scatter !== null && <span className="num">scatter s = {plain(run.scatter, unit, 2)}</span>}
+        <span>{chosen === 'taps' ? 'calibrated by taps' : 'calibrated by geometry'}</span>
+      </span>
+    </>
+  );
+}
+
+function whyNone({ records, problems }: Reduction): string {
+  if (records.length === 0) return 'no readings yet';
+  if (problems.some((problem) => problem.code === 'entry-missing')) return 'the bench wants more quantities';
+  return 'no shot gives one yet';
+}
+
+function LookCount({ reduction }: { readonly reduction: Reduction | null }) {
+  const count = reduction?.problems.length ?? 0;
+  if (count === 0) return null;
+  return (
+    <button type="button" className={`plain-button ${styles.lookCount}`} onClick={() => goToElement('look')}>
+      {count} {count === 1 ? 'thing' : 'things'} to look at
+    </button>
+  );
+}

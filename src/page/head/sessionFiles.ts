@@ -1,0 +1,41 @@
+/** Session files: told from tables of readings, opened as one undoable step, and saved. */
+import { fileName, saveTextAsFile } from '../../platform/download.ts';
+import { sentence } from '../../problems/sentences.ts';
+import { sessionFromText, sessionToText } from '../../session/file.ts';
+import type { Session } from '../../session/session.ts';
+import type { Actions } from '../../store/store.ts';
+
+/** Enough of a file to see whether it begins as JSON. */
+const FIRST_BYTES = 64;
+
+export async function looksLikeSession(file: File): Promise<boolean> {
+  if (/\.json$/i.test(file.name)) return true;
+  const beginning = await file.slice(0, FIRST_BYTES).text();
+  return beginning.replace(/^\uFEFF/, '').trimStart().startsWith('{');
+}
+
+export interface Message {
+  readonly id: number;
+  readonly sentences: readonly string[];
+  /** A text that the person may want to have as a file, and its name. */
+  readonly offer?: { readonly words: string; readonly name: string; readonly text: string };
+}
+
+/** Sentences shown of one file; a badly damaged file would fill the page. */
+const SENTENCES_SHOWN = 6;
+
+export function shortened(sentences: readonly string[]): readonly string[] {
+  const more = sentences.length - SENTENCES_SHOWN;
+  return more <= 0 ? sentences : [...sentences.slice(0, SENTENCES_SHOWN), `… and ${more} more of the kind.`];
+}
+
+/** Opens a session file in place of the present session; returns what there is to say about it. */
+export async function openSessionFile(file: File, change: Actions['change']): Promise<readonly string[]> {
+  const { session, problems } = sessionFromText(await file.text());
+  if (session !== null) change(`open ${file.name}`, () => session);
+  return shortened(problems.map((found) => `${file.name}: ${sentence(found)}`));
+}
+
+export function saveSessionFile(session: Session): void {
+  saveTextAsFile(fileName(session.title.name, 'session', 'firstswing.json'), sessionToText(session), 'application/json');
+}

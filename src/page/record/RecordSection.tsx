@@ -1,0 +1,135 @@
+/** The selected record opened: its chain from reading to impulse bit, the other ways beside it, its swing, its budget. */
+import { useState } from 'react';
+import type { RecordResult, Reduction } from '../../reduction/results.ts';
+import { countAgain, setAside } from '../../session/edits.ts';
+import { impulseUnit } from '../../plots/impulseUnit.ts';
+import { recordName } from '../../plots/recordWords.ts';
+import { sentence } from '../../problems/sentences.ts';
+import { useActions, useStore } from '../../store/hooks.tsx';
+import { AsideDialog } from '../readings/AsideDialog.tsx';
+import { BudgetTable } from '../budget/BudgetTable.tsx';
+import { coverageFactor } from '../stated/numberWords.ts';
+import { Quantity } from '../stated/Quantity.tsx';
+import { Beside } from './Beside.tsx';
+import { ChainTable } from './ChainTable.tsx';
+import { RECORD_SECTION } from './openRecord.ts';
+import { SwingPicture } from './SwingPicture.tsx';
+import styles from './record.module.css';
+
+export function RecordSection() {
+  const reduction = useStore((state) => state.reduction);
+  const selected = useStore((state) => state.selected);
+  const record = reduction?.records.find(({ id }) => id === selected) ?? null;
+  return (
+    <section id={RECORD_SECTION} className={styles.section} tabIndex={-1} aria-labelledby="record-heading">
+      {reduction === null || record === null
+        ? <Unchosen reduction={reduction} />
+        : <Chosen reduction={reduction} record={record} />}
+    </section>
+  );
+}
+
+function Unchosen({ reduction }: { readonly reduction: Reduction | null }) {
+  const { select } = useActions();
+  const records = reduction?.records ?? [];
+  const first = records.find(({ kind }) => kind === 'shot') ?? records[0];
+  return (
+    <>
+      <h2 id="record-heading">Record</h2>
+      {first === undefined
+        ? <p className="quiet">No readings yet; a record opens here into the chain that made its impulse bit.</p>
+        : (
+          <p className="quiet">
+            Choose a record in the run strip, a figure or the table, and the chain that made its impulse bit opens here.{' '}
+            <button type="button" className="plain-button" onClick={() => select(first.id)}>Open {recordName(first)}</button>
+          </p>
+        )}
+    </>
+  );
+}
+
+interface Props {
+  readonly reduction: Reduction;
+  readonly record: RecordResult;
+}
+
+function Chosen({ reduction, record }: Props) {
+  const unit = impulseUnit(reduction);
+  const { impulseBit } = record;
+  const explained = reduction.explained?.record === record.id ? reduction.explained : null;
+  const configuration = reduction.configurations[record.kind === 'tap' ? 'taps' : 'shots'];
+  const name = recordName(record);
+  return (
+    <>
+      <Heading reduction={reduction} record={record} />
+      {impulseBit !== null && (
+        <p className={styles.answer}>
+          <Quantity value={impulseBit.value} spread={impulseBit.U} unit={unit} />
+          {' '}<span className="quiet">± U, 95 %, k = {coverageFactor(impulseBit.k)}{record.kind === 'tap' ? '; at the tap’s own lever arm' : ''}</span>
+        </p>
+      )}
+      <Standing record={record} />
+      {record.note !== '' && <p className="quiet">Note: {record.note}</p>}
+      {record.problems.length > 0 && (
+        <ul className={styles.problems}>
+          {record.problems.map((one) => <li key={`${one.code} ${one.place.column ?? ''}`} className="look">{sentence(one)}</li>)}
+        </ul>
+      )}
+      {explained !== null && explained.chain.length > 0 && <ChainTable chain={explained.chain} />}
+      {impulseBit !== null && <Beside record={record} reduction={reduction} unit={unit} />}
+      {configuration !== null && record.angle !== null && record.launch !== null && (
+        <SwingPicture angle={record.angle.value} launch={record.launch.value} dampingRatio={configuration.dampingRatio.value} period={configuration.period.value} />
+      )}
+      {explained?.budget != null && (
+        <>
+          <h3>What contributes to the uncertainty of {name.charAt(0).toLowerCase() + name.slice(1)}</h3>
+          <BudgetTable budget={explained.budget} of={name.charAt(0).toLowerCase() + name.slice(1)} unit={unit} />
+        </>
+      )}
+    </>
+  );
+}
+
+function Heading({ reduction, record }: Props) {
+  const { select } = useActions();
+  const { records } = reduction;
+  const at = records.findIndex(({ id }) => id === record.id);
+  const before = records[at - 1];
+  const after = records[at + 1];
+  return (
+    <div className={styles.heading}>
+      <h2 id="record-heading">{recordName(record)} <span className="quiet">record {record.order} of {records.length}</span></h2>
+      <span className={styles.turn}>
+        <button type="button" disabled={before === undefined} onClick={() => before !== undefined && select(before.id)}>Record before</button>
+        <button type="button" disabled={after === undefined} onClick={() => after !== undefined && select(after.id)}>Record after</button>
+      </span>
+    </div>
+  );
+}
+
+/** Whether the record counts, and the way to change that. */
+function Standing({ record }: { readonly record: RecordResult }) {
+  const { change } = useActions();
+  const [asking, setAsking] = useState(false);
+  const name = recordName(record);
+  return (
+    <p>
+      {record.setAside === null
+        ? <button type="button" className="plain-button" onClick={() => setAsking(true)}>Set aside…</button>
+        : (
+          <>
+            Set aside: {record.setAside}. It does not count.{' '}
+            <button type="button" className="plain-button" onClick={() => change(`count ${name} again`, countAgain(record.id))}>Count again</button>
+          </>
+        )}
+      {asking && (
+        <AsideDialog
+          record={name}
+          reason=""
+          onReason={(reason) => change(`set aside ${name}`, setAside(record.id, reason))}
+          onClose={() => setAsking(false)}
+        />
+      )}
+    </p>
+  );
+}

@@ -1,0 +1,190 @@
+/** The words for every problem: what was found, where, and what to do. */
+import { chooseUnit, plain } from '../units/format.ts';
+import type { Dimension } from '../units/units.ts';
+import type { Place, Problem } from './problems.ts';
+import { KIND_WORDS, ROLE_WORDS } from './words.ts';
+
+/** Figures in a sentence: enough to find the thing, not to compute with. */
+const FIGURES = 4;
+
+/** "readings.csv, line 9, column “Rest (mm)”"; '' where the problem has no place in a sheet. */
+export function placeInWords({ sheetName, line, column, record }: Place): string {
+  const typedRow = record?.split('/').at(-1);
+  const row = typedRow?.startsWith('+') === true ? `row ${typedRow}` : line !== undefined && line > 0 ? `line ${line}` : '';
+  const columnWords = column === undefined ? '' : /^\d+$/.test(column) ? `column ${column}` : `column “${column}”`;
+  return [sheetName ?? '', row, columnWords].filter((part) => part !== '').join(', ');
+}
+
+/** One problem as a sentence or two, beginning with where it is. */
+export function sentence(found: Problem): string {
+  const where = placeInWords(found.place);
+  const said = words(found);
+  if (where === '') return said.charAt(0).toUpperCase() + said.slice(1);
+  return `${where.charAt(0).toUpperCase()}${where.slice(1)}: ${said}`;
+}
+
+/** The same without its place, for where the place is plain to see. */
+export function sentenceInPlace(found: Problem): string {
+  const said = words(found);
+  return said.charAt(0).toUpperCase() + said.slice(1);
+}
+
+function words({ code, place, facts, weight }: Problem): string {
+  const text = (name: string, otherwise = ''): string => (facts[name] === undefined ? otherwise : String(facts[name]));
+  const number = (name: string): number => (typeof facts[name] === 'number' ? facts[name] : Number.NaN);
+  const figure = (name: string, figures = FIGURES): string => shown(number(name), figures);
+  const quantity = (name: string, dimension: Dimension): string => {
+    const value = number(name);
+    return Number.isFinite(value) ? plain(value, chooseUnit([value], dimension), FIGURES) : 'not known';
+  };
+  const many = (name: string, one: string, more = `${one}s`): string => (number(name) === 1 ? `1 ${one}` : `${text(name, 'some')} ${more}`);
+  const entry = text('label', place.entry ?? 'this entry');
+  const found = text('found');
+  const role = ROLE_WORDS[text('role')] ?? text('role', 'this column');
+  const configuration = text('configuration') === 'taps' ? 'for the taps' : text('configuration') === 'shots' ? 'for the shots' : '';
+  const ofConfiguration = configuration === '' ? '' : ` ${configuration}`;
+
+  switch (code) {
+    case 'file-empty':
+      return 'there is nothing in it. Drop the file that holds the readings, or type them into the table.';
+    case 'file-binary':
+      return `this is ${text('kind', 'not a text file')}, not a table of text. ${text('remedy', 'Save the readings as CSV, or copy the cells and paste them here.')}`;
+    case 'file-too-large':
+      return `the file has ${text('size')} and a table taken by hand at most ${text('limit')}. If it is a recorded trace, read the swings off it first; if it holds more than the readings, save only these.`;
+    case 'file-no-rows':
+      return 'there is a header or free text, but no row of readings beneath it. Check that the whole table was saved or copied.';
+    case 'file-other-encoding':
+      return `the text is not UTF-8 and was read as ${text('taken', 'windows-1252')}. Check signs such as µ, ° and ±, or save the file as UTF-8.`;
+    case 'column-missing':
+      return `no column is marked as ${role}. Choose it above the table.`;
+    case 'column-twice':
+      return `a second column is marked as ${role}; ${quotedColumn(text('used'))} is used. Mark one of them otherwise.`;
+    case 'column-proposed-by-values':
+      return `taken as ${role}${inUnit(text('unit'), text('unitFrom'))}, told from the values and the place of the column, not from a header. Check it, and choose the meaning above the table.`;
+    case 'column-unit-assumed':
+      return `no unit${text('unknownUnit') === '' ? '' : ` that is known (found “${text('unknownUnit')}”)`} is given for ${role}; ${text('unit')} is taken${text('unitFrom') === 'others' ? ', as in the other columns of readings' : ''}. Check it, and choose the unit above the table.`;
+    case 'decimal-comma-in-comma-file':
+      return weight === 'stops'
+        ? `“${found}” looks like a number with a decimal comma, cut in two because commas part the cells here, so no number of this row is used. Save the table with semicolons or tabs between the cells, or with decimal points.`
+        : `numbers such as “${found}” may have a decimal comma and be cut in two here, because commas part the cells. If so, save the table with semicolons or tabs between the cells, or with decimal points.`;
+    case 'decimal-marks-mixed':
+      return `${many('commas', 'number')} with a decimal comma and ${many('points', 'number')} with a decimal point stand in one table; the decimal ${text('taken') === ',' ? 'comma' : 'point'} is taken. Write all numbers in one way, or choose the mark above the table.`;
+    case 'row-ragged':
+      return number('found') > number('expected')
+        ? `${text('found')} cells, but the table has ${many('expected', 'column')}. The cells past the last column are kept and not used; check that none has slipped to the right.`
+        : `${many('found', 'cell')}, but the table has ${many('expected', 'column')}. The missing cells are taken as empty.`;
+    case 'quote-not-closed':
+      return 'a quotation mark is not closed, so quotation marks in this line are taken as plain signs. Close it, or take it out.';
+    case 'same-file-rows-lost':
+      return `${many('lost', 'row')} of the earlier version ${number('lost') === 1 ? 'is' : 'are'} not in this one${number('marked') > 0 ? `, ${text('marked')} of them with a decision of yours (set aside, kind or typed over)` : ''}. Undo brings the earlier version back.`;
+
+    case 'cell-not-a-number':
+      return `“${found}” is not a number. Correct it, or leave the cell empty; the row gives no ${role} until then.`;
+    case 'cell-unknown-unit':
+      return `the unit “${found}” is not known. Write the number in ${text('unit', 'a usual unit')}, or with another unit.`;
+    case 'cell-wrong-kind-of-unit':
+      return `“${found}” is not a unit for ${role}. Write the number in ${text('unit', 'the column’s unit')}.`;
+    case 'cell-kind-unknown':
+      return `“${found}” is none of shot, tap, blank, zero or free swing, so the kind is told from what is filled in. Write one of these words, or choose the kind in the table.`;
+    case 'cell-empty':
+      return `no ${role} is written, so this ${KIND_WORDS[text('kind')] ?? 'record'} gives no impulse bit. Fill it in, or set the record aside with its reason (no discharge, say).`;
+
+    case 'record-no-rest':
+      return 'no rest reading, neither its own nor from a zero before it. Write the rest, or a zero record.';
+    case 'record-rest-from-zero':
+      return `no rest reading of its own; that of the zero in line ${text('zeroLine', 'before')} is taken. If the rest has moved since, write it.`;
+    case 'record-no-throw':
+      return 'the first swing equals the rest, so there is no throw and the impulse bit is 0. If there was no discharge, set the record aside; else check the reading.';
+    case 'record-negative-throw':
+      return 'the first swing lies on the other side of the rest than the thrust should send it. Check whether rest and first swing are exchanged, or the return swing was taken for the first.';
+    case 'record-reading-beyond-radius':
+      return `the reading lies ${quantity('reading', 'length')} from the plumb point, farther than the reading radius of ${quantity('radius', 'length')} can reach. Check the reading, its unit, and the radius.`;
+    case 'record-angle-too-large':
+      return `the angle is ${figure('degrees')}°, and a pendulum that swings so far is past what is reckoned here. Check the reading, its unit, and the reading radius.`;
+    case 'record-tap-without-impulse':
+      return 'a tap without its impulse; it does not count for the calibration. Write the impulse of the tap, or choose another kind.';
+    case 'swings-not-decaying':
+      return place.record !== undefined
+        ? 'the swings do not grow smaller from one to the next on alternate sides of the rest, so they are not used for the damping. Check them and the rest.'
+        : place.entry !== undefined
+          ? 'the turning readings of the free swing do not grow smaller from one to the next, so they are not used. Check them: they are to be the readings at the turning points, in order, one side after the other.'
+          : 'taken together, the swings do not die away, so no damping is taken. Check rest and swings, or type the log decrement.';
+
+    case 'all-throws-negative':
+      return 'every first swing lies on the other side of the rest than the thrust should send it. If the numbers of the ruler fall in that direction, mark it as running backward.';
+    case 'all-on-one-division':
+      return `all ${text('shots')} shots read the same throw to the division, so their scatter says nothing and the division decides. Read finer, by estimating between the marks, or state the division.`;
+    case 'division-from-readings':
+      return `readings are taken as made to the nearest ${figure('division')} ${text('unit')}, the smallest step in ${many('readings', 'reading')}. If the ruler was read otherwise, write the division.`;
+    case 'few-shots':
+      return `${many('n', 'shot')} only, so the coverage factor is ${figure('k', 3)}. More shots narrow the interval.`;
+    case 'no-shots':
+      return `none of the ${many('records', 'record')} is a shot that counts. Check the kinds, the columns, and what is set aside.`;
+    case 'shots-beyond-taps':
+      return `${text('shots')} of ${text('of')} shots swing ${number('largest') > 1 ? `up to ${figure('largest', 3)} times the widest tap` : `as little as ${figure('smallest', 3)} of the smallest tap`}, outside the range that the taps calibrate. Tap over the whole range of the shots.`;
+    case 'forms-differ':
+      return `the small-angle form differs from the full pendulum by ${figure('percent', 2)} %, ${figure('inU', 2)} times the standard uncertainty. Use the full pendulum.`;
+    case 'scatter-below-reading':
+      return `the shots scatter by ${quantity('scatter', 'impulse')}, less than their readings alone would make them (${quantity('reading', 'impulse')}); the larger is used. The division or the eye may be stated too large.`;
+    case 'taps-scatter-more-than-stated':
+      return `the ${text('taps')} taps scatter by ${figure('seen', 2)} %, their stated uncertainties make ${figure('stated', 2)} %; the larger is used. Look for a tap that slipped or struck off its point.`;
+    case 'calibrations-differ':
+      return `the calibration by taps differs from that by geometry by ${figure('percent', 2)} %, ${figure('inU', 2)} times the uncertainty of the difference. Check lever arms, masses, and the hammer’s calibration.`;
+    case 'damping-none':
+      return weight === 'note'
+        ? 'no damping is taken, as chosen; impulse bits come out too small by what the first quarter swing loses.'
+        : 'there is no damping to be had from the readings or the entries, so none is taken, and impulse bits come out too small. Note the swings after the first, or type the log decrement.';
+    case 'damping-from-few':
+      return `the damping rests on ${many('records', 'record')} with more than one swing. Note the return swing of more shots, or a free swing.`;
+    case 'damping-carried-over':
+      return `there are swings of the ${text('from') === 'taps' ? 'taps' : 'shots'} only, so the damping of the other configuration is carried over from them. Note swings with the other configuration, too.`;
+    case 'period-differs':
+      return `the timed period, ${quantity('measured', 'time')}, differs from the ${quantity('predicted', 'time')} that masses and lengths make by ${figure('percent', 2)} %, ${figure('inU', 2)} times the uncertainty of the difference. Check distances, masses, the flexure, and the count of cycles.`;
+    case 'pressures-mixed':
+      return `the shots were fired between ${quantity('low', 'pressure')} and ${quantity('high', 'pressure')}, and one mean is taken over all. Treat them as several runs if the pressure matters.`;
+
+    case 'entry-missing':
+      return `${entry} is missing. Write it with its unit and uncertainty.`;
+    case 'entry-not-a-number':
+      return `${entry}: “${found}” is not a number with a unit. Write it as 118.0 ± 0.3${text('unit') === '' || text('unit') === '1' ? '' : ` ${text('unit')}`}, say.`;
+    case 'entry-unknown-unit':
+      return `${entry}: the unit in “${found}” is not known. Write it in ${text('unit', 'a usual unit')}, say.`;
+    case 'entry-wrong-kind-of-unit':
+      return `${entry}: “${found}” has a unit of another kind. Write it in ${text('unit', 'a fitting unit')}, say.`;
+    case 'entry-out-of-range':
+      return `${entry}: “${found}” ${text('range') === 'positive' ? 'must be greater than zero' : text('range') === 'notNegative' ? 'must not be less than zero' : 'is outside what can be'}. Check sign and value.`;
+    case 'entry-no-uncertainty':
+      return `${entry}: “${found}” has no uncertainty, and is taken as exact. Write it after ±.`;
+    case 'entry-unit-assumed':
+      return `${entry}: “${found}” has no unit; ${text('unit')} is taken. Write the unit.`;
+    case 'entry-uncertainty-large':
+      return `${entry}: the uncertainty of “${found}” is ${figure('percent', 2)} % of it. Check its unit, and what the ± means.`;
+    case 'entry-decimal-ambiguous':
+      return `${entry}: the comma in “${found}” is read as a decimal comma. If it groups thousands, leave it out.`;
+    case 'bench-unstable':
+      return `the stiffness${ofConfiguration} comes out as ${quantity('value', 'rotationalStiffness')}, not above zero: the pendulum would not come back to rest. Check the distances of the masses; above the pivot they are negative.`;
+    case 'bench-inertia-not-positive':
+      return `the moment of inertia${ofConfiguration} comes out as ${quantity('value', 'momentOfInertia')}, not above zero. Check masses, distances, and the period.`;
+    case 'gravity-assumed':
+      return `no local g is given; ${quantity('value', 'acceleration')} ± ${quantity('limits', 'acceleration')} is taken. Write it, or latitude and height.`;
+
+    case 'session-not-json':
+      return 'this file cannot be read as a session: it is damaged, or of another kind. Open the file that was saved here.';
+    case 'session-not-ours':
+      return 'this file is not a session of Firstswing. To read a table of readings, drop it on the readings.';
+    case 'session-newer':
+      return `this session was saved by a later version (format ${text('version')}; known here: ${text('known')}). Open it with that version.`;
+    case 'session-damaged':
+      return `a piece of the session could not be read and was left out: ${text('where')}${found === '' ? '' : `, where “${found}” stands`}. The rest is as saved; check that piece.`;
+  }
+}
+
+function shown(value: number, figures: number): string {
+  return Number.isFinite(value) ? String(Number(value.toPrecision(figures))).replace('-', '−') : 'not known';
+}
+
+const quotedColumn = (name: string): string => (/^\d+$/.test(name) ? `column ${name}` : `“${name}”`);
+
+function inUnit(unit: string, from: string): string {
+  return unit === '' ? '' : ` in ${unit}${from === 'assumed' ? ' (no unit is given)' : from === 'others' ? ' (as the other readings)' : ''}`;
+}

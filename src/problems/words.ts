@@ -1,0 +1,25 @@
+/** What sentences call the columns and the kinds of record. */
+
+/** By role of a column (readings/meanings.ts). */
+export const ROLE_WORDS: Readonly<Record<string, string>> = {
+  kind: 'kind of record',
+  label: 'shot number',
+  rest: 'rest reading',
+  firstSwing: 'first swing',
+  nextSwing: 'next swing',
+  time: 'time',
+  voltage: 'charge voltage',
+  pressure: 'pressure',
+  tapImpulse: 'tap impulse',
+  note: 'note',
+  ignored: 'not used',
+};
+
+/** By kind of record. */
+export const KIND_WORDS: Readonly<Record<string, string>> = {
+  shot: 'shot',
+  tap: 'tap',
+  blank: 'blank',
+  zero: 'zero',
+  freeSwing: 'free swing',
+};
