@@ -24,13 +24,14 @@ export interface Line {
  * Nothing is dropped: a line of zero contribution is a line.
  *
  * `also`: sources that were typed and act nowhere on y, listed with zero contribution.
+ * `ownApart`: sources that y has directly (one record's readings) get a line each, outside their family.
  */
-export function budgetLines(y: Uncertain, also: readonly Source[] = []): readonly Line[] {
+export function budgetLines(y: Uncertain, also: readonly Source[] = [], ownApart = false): readonly Line[] {
   const parts = new Map(contributions(y));
   for (const source of also) if (!parts.has(source)) parts.set(source, 0);
   const groups = new Map<string, [Source, number][]>();
   for (const [source, part] of parts) {
-    const key = source.family?.id ?? source.id;
+    const key = ownApart && y.own.has(source) ? source.id : (source.family?.id ?? source.id);
     const group = groups.get(key);
     if (group) group.push([source, part]);
     else groups.set(key, [[source, part]]);
@@ -45,7 +46,7 @@ function lineOf(id: string, group: readonly [Source, number][], total: number): 
   const variance = group.reduce((sum, [, part]) => sum + part * part, 0);
   const share = total === 0 ? 0 : (100 * variance) / total;
   const [first, part] = group[0]!;
-  if (group.length === 1 && !first.family) {
+  if (group.length === 1 && id === first.id) {
     return {
       id, label: first.label, symbol: first.symbol, dimension: first.dimension, estimate: first.estimate, u: first.u,
       distribution: first.distribution, dof: first.dof, sensitivity: first.u === 0 ? null : part / first.u, contribution: part, share, sources: 1,

@@ -63,3 +63,24 @@ export function pooledMean(items: readonly Uncertain[], ownU: readonly number[],
     readingsInsteadOfScatter: seen < ownVariance,
   };
 }
+
+/** Sources that more than one of these results have directly (a zero reading that served several shots as rest). */
+export function sharedDirectly(items: readonly Uncertain[]): ReadonlySet<Source> {
+  const seen = new Set<Source>();
+  const shared = new Set<Source>();
+  for (const item of items) for (const source of item.own.keys()) (seen.has(source) ? shared : seen).add(source);
+  return shared;
+}
+
+/** u of what belongs to each result alone: its direct sources that no other result has. */
+export function ownParts(items: readonly Uncertain[]): readonly number[] {
+  const shared = sharedDirectly(items);
+  return items.map((item) => {
+    let sum = 0;
+    for (const [source, part] of item.own) if (!shared.has(source)) sum += part * part;
+    return Math.sqrt(sum);
+  });
+}
+
+/** Weights 1/u², or equal ones where some u is zero. */
+export const weightsOf = (u: readonly number[]): readonly number[] => (u.every((x) => x > 0) ? u.map((x) => 1 / x ** 2) : u.map(() => 1));

@@ -82,7 +82,9 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
         <Start onChoose={choose} onDemo={openDemo} />
         <div className={styles.pair}>
           <BenchSection />
-          <RecordSection />
+          <div className={styles.beside}>
+            <RecordSection />
+          </div>
         </div>
         <ReadingsSection />
         <CalibrationSection />

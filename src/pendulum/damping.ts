@@ -63,14 +63,16 @@ export interface RatioFromSwings {
 }
 
 const ROUNDS = 60;
+/** Change of δ/2 and of the amplitude (as a share) between two rounds; above the rounding of n_k, and each round takes off a factor ζ θ². */
+const SETTLED = 1e-11;
 
 /**
  * Damping ratio from successive turning points of one swing, least squares in rest, amplitude and decay, with the
  * full pendulum: each turning point follows from the one before by the equation of motion.
  *
- * The small swing's law A_{k+1} = −q A_k, q = e^{−δ/2}, is fitted with a factor c_k on each half cycle that carries
- * what the full pendulum adds (1 + O(ζ θ²)); c_k is computed from the present fit until nothing changes. Sensitivities
- * hold c_k fixed, which leaves out a part O(θ²) of them.
+ * The small swing's law |A_k| = A e^{−kδ/2} is fitted with the count k of half cycles replaced by the full pendulum's
+ * n_k = Σ ln|θ_j/θ_{j+1}|/(δ/2), which is k(1 + O(θ²)) and hardly depends on δ; n_k is computed from the present fit
+ * until nothing changes. Sensitivities hold n_k fixed, which leaves out a part O(ζ θ²) of them.
  *
  * Valid: at least three angles in all (a rest reading counts as one) and two turning points; ζ < 1.
  */
@@ -78,18 +80,17 @@ export function ratioFromSwings(rest: number | null, points: readonly TurningPoi
   const failed = (status: RatioFromSwings['status']): RatioFromSwings => ({ status, dampingRatio: 0, rest: 0, amplitude: 0, sensitivities: [] });
   if (points.length < 2 || points.length + (rest === null ? 0 : 1) < 3) return failed('tooFew');
   const last = points[points.length - 1]!.number;
-  const excess = new Array<number>(last + 1).fill(1);
+  let counts: readonly number[] = Array.from({ length: last + 1 }, (_, k) => k);
   let fit = startOfFit(rest, points);
   if (!fit) return failed('notDecaying');
   for (let round = 0; round < ROUNDS; round++) {
-    const next = fitGeometric(rest, points, excess, fit);
+    const next = fitGeometric(rest, points, counts, fit);
     if (!next) return failed('notDecaying');
     const change = Math.abs(next.decay - fit.decay) + Math.abs(next.amplitude - fit.amplitude) / Math.abs(next.amplitude);
     fit = next;
     if (!(Math.abs(fit.amplitude) < Math.PI)) return failed('notDecaying');
-    const ratio = ratioOfDecrement(Math.max(0, 2 * fit.decay));
-    carryFullPendulum(fit.amplitude, ratio, gravityShare, excess);
-    if (round > 0 && change < 1e-14) {
+    counts = halfCyclesOfFullPendulum(fit.amplitude, ratioOfSignedDecrement(2 * fit.decay), gravityShare, last);
+    if (round > 0 && change < SETTLED) {
       const slope = slopeOfRatio(2 * fit.decay) * 2;
       return {
         status: 'found',
@@ -127,21 +128,21 @@ function startOfFit(rest: number | null, points: readonly TurningPoint[]): Fit |
       z = restFromThree(a.angle, b.angle, c.angle).rest;
     }
   }
-  const far = points[points.length - 1]!;
-  const first = a.angle - z;
-  const later = (far.angle - z) * ((far.number - a.number) % 2 === 0 ? 1 : -1);
-  if (!(first * later > 0)) return null;
-  const decay = Math.log(first / later) / (far.number - a.number);
+  const rest0 = z;
+  const first = a.angle - rest0;
+  const fallen = (point: TurningPoint): number => ((point.angle - rest0) / first) * ((point.number - a.number) % 2 === 0 ? 1 : -1);
+  // The last point not yet fallen below a third tells the decay best (methods 1.4); later ones may be lost in the readings' scatter.
+  const far = points.findLast((point, i) => i > 0 && fallen(point) > 1 / 3) ?? b;
+  if (!(fallen(far) > 0)) return null;
+  const decay = -Math.log(fallen(far)) / (far.number - a.number);
   return { rest: z, amplitude: first * Math.exp(decay * a.number), decay, decaySensitivities: [] };
 }
 
-/** Gauss–Newton in (rest, amplitude, decay) with the excess factors held. */
-function fitGeometric(rest: number | null, points: readonly TurningPoint[], excess: readonly number[], start: Fit): Fit | null {
+/** Gauss–Newton in (rest, amplitude, decay) with the counts of half cycles held. */
+function fitGeometric(rest: number | null, points: readonly TurningPoint[], counts: readonly number[], start: Fit): Fit | null {
   let z = start.rest;
   let amplitude = start.amplitude;
   let decay = start.decay;
-  const cumulative: number[] = [1];
-  for (let k = 1; k < excess.length; k++) cumulative[k] = cumulative[k - 1]! * excess[k - 1]!;
   for (let i = 0; i < ROUNDS; i++) {
     const normal = new Normal();
     const rows: (readonly [number, number, number])[] = [];
@@ -150,8 +151,8 @@ function fitGeometric(rest: number | null, points: readonly TurningPoint[], exce
       normal.add(1, 0, 0, rest - z);
     }
     for (const point of points) {
-      const shape = (point.number % 2 === 0 ? 1 : -1) * Math.exp(-decay * point.number) * cumulative[point.number]!;
-      const row = [1, shape, -point.number * amplitude * shape] as const;
+      const shape = (point.number % 2 === 0 ? 1 : -1) * Math.exp(-decay * counts[point.number]!);
+      const row = [1, shape, -counts[point.number]! * amplitude * shape] as const;
       rows.push(row);
       normal.add(...row, point.angle - z - amplitude * shape);
     }
@@ -202,13 +203,20 @@ class Normal {
   }
 }
 
-/** c_k = (next turning point of the full pendulum)/(the small swing's q A_k), for each half cycle. */
-function carryFullPendulum(amplitude: number, dampingRatio: number, gravityShare: number, excess: number[]): void {
-  const q = Math.exp(-decrementOfRatio(Math.min(dampingRatio, 0.999)) / 2);
+/** Below this ratio n_k is that of this ratio: what it changes stays below 1e-10 of ζ, while its rounding would grow as 1/ζ. */
+const LEAST_RATIO_FOLLOWED = 1e-5;
+const LARGEST_RATIO_FOLLOWED = 0.999;
+
+/** n_k = Σ ln|θ_j/θ_{j+1}|/(δ/2), k = 0 … last: the half cycles of a small swing that decay as much as k of the full pendulum. */
+function halfCyclesOfFullPendulum(amplitude: number, dampingRatio: number, gravityShare: number, last: number): readonly number[] {
+  const ratio = Math.min(Math.max(dampingRatio, LEAST_RATIO_FOLLOWED), LARGEST_RATIO_FOLLOWED);
+  const perHalfCycle = decrementOfRatio(ratio) / 2;
+  const counts = [0];
   let angle = amplitude;
-  for (let k = 0; k + 1 < excess.length; k++) {
-    const next = nextTurningPoint(angle, Math.min(dampingRatio, 0.999), gravityShare);
-    excess[k] = -next / (q * angle);
+  for (let k = 0; k < last; k++) {
+    const next = nextTurningPoint(angle, ratio, gravityShare);
+    counts.push(counts[k]! + Math.log(-angle / next) / perHalfCycle);
     angle = next;
   }
+  return counts;
 }

@@ -22,9 +22,9 @@ export function roomFor(values: readonly number[], margin = MARGIN): Range {
 }
 
 /** The range of what counts, widened for what does not count unless that would crush the picture. */
-export function roomForBoth(counting: readonly number[], others: readonly number[]): Range {
-  const first = roomFor(counting.length > 0 ? counting : others);
-  const both = roomFor([...counting, ...others]);
+export function roomForBoth(counting: readonly number[], others: readonly number[], margin = MARGIN): Range {
+  const first = roomFor(counting.length > 0 ? counting : others, margin);
+  const both = roomFor([...counting, ...others], margin);
   return both.high - both.low <= WIDENS_UP_TO * (first.high - first.low) ? both : first;
 }
 

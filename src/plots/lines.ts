@@ -26,27 +26,56 @@ export function zeroLine(u: uPlot, inks: Inks): void {
   });
 }
 
-/** The mean as a line and mean ± U as a band, with the words at its right-hand end where there are any. */
-export function meanBand(u: uPlot, mean: number, half: number, inks: Inks, words: string): void {
+export interface Mean {
+  readonly value: number;
+  /** U, and the part of it that more shots would shrink, k·s/√n; in the units of the axis. */
+  readonly half: number;
+  readonly scatter: number;
+}
+
+/** How dark the scatter's part lies on the band. */
+const SCATTER_INK = 0.22;
+
+/** The mean as a line, mean ± U as a band with the scatter's part darker in it. */
+export function meanBand(u: uPlot, { value: mean, half, scatter }: Mean, inks: Inks): void {
   within(u, (pen) => {
     const { left, width } = u.bbox;
     const [top, middle, bottom] = [mean + half, mean, mean - half].map((value) => u.valToPos(value, 'y', true)) as [number, number, number];
     pen.fillStyle = inks.band;
     pen.fillRect(left, top, width, bottom - top);
+    const inner = u.valToPos(mean + scatter, 'y', true);
+    pen.globalAlpha = SCATTER_INK;
+    pen.fillStyle = inks.shot;
+    pen.fillRect(left, inner, width, 2 * (middle - inner));
+    pen.globalAlpha = 1;
     pen.strokeStyle = inks.shot;
     pen.lineWidth = 1.25 * devicePixelRatio;
     pen.beginPath();
     pen.moveTo(left, middle);
     pen.lineTo(left + width, middle);
     pen.stroke();
-    if (words !== '') {
-      pen.fillStyle = inks.ink;
-      pen.font = `${12 * devicePixelRatio}px ${inks.font}`;
-      pen.textAlign = 'right';
-      pen.textBaseline = 'bottom';
-      pen.fillText(words, left + width - 6 * devicePixelRatio, top - 3 * devicePixelRatio);
-    }
   });
+}
+
+/** Lines of words need this much between them, CSS px. */
+const LINE_APART = 14;
+
+/** Names the line and the edges of the mean's band in the margin to the right of the axes. */
+export function meanNames(u: uPlot, { value, half }: Mean, inks: Inks): void {
+  const { ctx: pen, bbox } = u;
+  const px = devicePixelRatio;
+  const names: readonly (readonly [string, number])[] = [['Ī + U', value + half], ['Ī', value], ['Ī − U', value - half]];
+  const places = names.map(([name, at]) => ({ name, y: u.valToPos(at, 'y', true) }));
+  const [top, middle] = places;
+  if (top === undefined || middle === undefined) return;
+  const isThin = middle.y - top.y < LINE_APART * px;
+  pen.save();
+  pen.fillStyle = inks.ink;
+  pen.font = `${12 * px}px ${inks.font}`;
+  pen.textAlign = 'left';
+  pen.textBaseline = 'middle';
+  for (const { name, y } of isThin ? [{ name: 'Ī ± U', y: middle.y }] : places) pen.fillText(name, bbox.left + bbox.width + 6 * px, y);
+  pen.restore();
 }
 
 interface Ray {

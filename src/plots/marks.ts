@@ -13,7 +13,7 @@ interface Group {
 }
 
 /** Half the size of a mark where there is room for it, CSS px. */
-const LARGEST_MARK = 4.5;
+const LARGEST_MARK = 4;
 const SMALLEST_MARK = 2;
 const OWN_WIDTH = 4;
 
@@ -71,10 +71,9 @@ export function traceSign(path: Path2D, mark: Mark, x: number, y: number, size: 
       path.lineTo(x, y + 1.4 * size);
       break;
     case 'freeSwing':
-      path.moveTo(x - 0.5 * size, y - 1.4 * size);
-      path.lineTo(x - 0.5 * size, y + 1.4 * size);
-      path.moveTo(x + 0.5 * size, y - 1.4 * size);
-      path.lineTo(x + 0.5 * size, y + 1.4 * size);
+      path.moveTo(x - 1.4 * size, y);
+      path.bezierCurveTo(x - 0.9 * size, y - 2 * size, x - 0.5 * size, y - 2 * size, x, y);
+      path.bezierCurveTo(x + 0.5 * size, y + 1.4 * size, x + 0.9 * size, y + 1.4 * size, x + 1.4 * size, y);
       break;
   }
 }
@@ -85,16 +84,22 @@ function traceStrike(path: Path2D, x: number, y: number, size: number): void {
   path.lineTo(x + 1.9 * size, y - 1.9 * size);
 }
 
-/** A value where the axis can show it; what lies beyond is drawn at the edge. */
-const held = (value: number, scale: { min?: number; max?: number }): number =>
-  Math.max(scale.min ?? value, Math.min(scale.max ?? value, value));
+/** Where a mark is drawn, canvas px: at its place, or just inside the edge where its place is off the axes. */
+function placeOf(u: uPlot, mark: Mark, size: number): { readonly x: number; readonly y: number; readonly isOff: boolean } {
+  const room = 1.5 * size;
+  const { left, top, width, height } = u.bbox;
+  const [x, y] = [u.valToPos(mark.x, 'x', true), u.valToPos(mark.y, 'y', true)];
+  const isOff = x < left || x > left + width || y < top || y > top + height;
+  if (!isOff) return { x, y, isOff };
+  return { x: Math.max(left + room, Math.min(left + width - room, x)), y: Math.max(top + room, Math.min(top + height - room, y)), isOff };
+}
 
 /** One path of every thick whisker of a group. */
 function ownPath(u: uPlot, marks: readonly Mark[], group: Group): uPlot.Series.Paths {
   const stroke = new Path2D();
   for (const index of group.members) {
     const mark = marks[index];
-    if (mark === undefined || mark.own === 0) continue;
+    if (mark === undefined || mark.own === 0 || placeOf(u, mark, 0).isOff) continue;
     const x = u.valToPos(mark.x, 'x', true);
     stroke.moveTo(x, u.valToPos(mark.y - mark.own, 'y', true));
     stroke.lineTo(x, u.valToPos(mark.y + mark.own, 'y', true));
@@ -110,12 +115,11 @@ function signPath(u: uPlot, marks: readonly Mark[], group: Group, pixels: number
   for (const index of group.members) {
     const mark = marks[index];
     if (mark === undefined) continue;
-    const x = u.valToPos(mark.x, 'x', true);
-    const y = u.valToPos(held(mark.y, u.scales['y'] ?? {}), 'y', true);
-    if (mark.whisker > 0) {
+    const { x, y, isOff } = placeOf(u, mark, size);
+    if (mark.whisker > 0 && !isOff) {
       whisker(stroke, x, y, size, u.valToPos(mark.y + mark.whisker, 'y', true), u.valToPos(mark.y - mark.whisker, 'y', true));
     }
-    if (mark.across > 0) {
+    if (mark.across > 0 && !isOff) {
       stroke.moveTo(u.valToPos(mark.x - mark.across, 'x', true), y);
       stroke.lineTo(x - size, y);
       stroke.moveTo(x + size, y);
@@ -159,8 +163,8 @@ export function markSeries(marks: readonly Mark[], inks: Inks): { readonly colum
       {
         label: group.kind,
         stroke: ink,
-        width: group.kind === 'zero' || hollow ? 1.5 : 1,
-        fill: hollow ? inks.paper : ink,
+        width: group.kind === 'zero' || group.kind === 'freeSwing' || hollow ? 1.5 : 1,
+        fill: hollow ? inks.paper : group.kind === 'freeSwing' ? 'transparent' : ink,
         points: { show: false },
         paths: (u) => signPath(u, marks, group, devicePixelRatio),
       },

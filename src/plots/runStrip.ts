@@ -1,11 +1,12 @@
 /** The run strip: every record in the order it happened, at its impulse bit, with the run mean's interval behind. */
-import type { Reduction, RecordResult } from '../reduction/results.ts';
+import type { RecordResult, Reduction, RunResult } from '../reduction/results.ts';
 import { plain, withPlusMinus } from '../units/format.ts';
 import { fromSi } from '../units/units.ts';
 import type { Unit } from '../units/units.ts';
 import { axis, frame, roomFor } from './axes.ts';
 import type { Figure, FigureTable, Inks, Mark } from './figure.ts';
 import { meanBand, zeroLine } from './lines.ts';
+import type { Mean } from './lines.ts';
 import { impulseUnit } from './impulseUnit.ts';
 import { markSeries } from './marks.ts';
 import { KIND_WORDS, readingOf } from './recordWords.ts';
@@ -47,6 +48,13 @@ export function impulseTable(records: readonly RecordResult[], unit: Unit): Figu
   };
 }
 
+/** The run mean in the unit of the axis. */
+export function meanIn(run: RunResult | null, unit: Unit): Mean | null {
+  if (run === null) return null;
+  const { mean, uScatter } = run;
+  return { value: fromSi(mean.value, unit), half: fromSi(mean.U, unit), scatter: fromSi(mean.k * uScatter, unit) };
+}
+
 function countOfKinds(records: readonly RecordResult[]): string {
   const counts = new Map<string, number>();
   for (const { kind } of records) counts.set(kind, (counts.get(kind) ?? 0) + 1);
@@ -69,7 +77,7 @@ export function runStrip(reduction: Reduction, inks: Inks): Figure {
   const first = marks[0]?.x ?? 1;
   const last = marks.at(-1)?.x ?? 1;
   const asideCount = records.filter(({ setAside }) => setAside !== null).length;
-  const mean = run === null ? null : { value: fromSi(run.mean.value, unit), half: fromSi(run.mean.U, unit) };
+  const mean = meanIn(run, unit);
   return {
     title: 'The run in order',
     summary: `${countOfKinds(records) || 'No records'}${asideCount === 0 ? '' : `, ${asideCount} set aside`}.`
@@ -83,7 +91,7 @@ export function runStrip(reduction: Reduction, inks: Inks): Figure {
       hooks: {
         drawAxes: [
           (u) => {
-            if (mean !== null) meanBand(u, mean.value, mean.half, inks, '');
+            if (mean !== null) meanBand(u, mean, inks);
             zeroLine(u, inks);
           },
         ],

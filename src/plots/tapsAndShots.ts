@@ -5,7 +5,8 @@ import type { Calibration, RecordResult, Reduction } from '../reduction/results.
 import { chooseUnit, withPlusMinus } from '../units/format.ts';
 import { fromSi, siUnit, unitNamed } from '../units/units.ts';
 import type { Unit } from '../units/units.ts';
-import { axis, frame } from './axes.ts';
+import { axis, frame, roomForBoth } from './axes.ts';
+import type { Range } from './axes.ts';
 import type { Figure, FigureTable, Inks, Mark } from './figure.ts';
 import { bracket, rayBand } from './lines.ts';
 import { markSeries } from './marks.ts';
@@ -14,8 +15,8 @@ import { KIND_WORDS, recordName } from './recordWords.ts';
 const HEIGHT = 340;
 /** The coverage factor of all bars here: swing and angular impulse carry a standard uncertainty only. */
 const K_OF_BARS = 2;
-/** Free space beyond the largest swing, as a part of it. */
-const ROOM = 1.12;
+/** Free space around the marks, as a part of their span. */
+const ROOM = 0.15;
 /** A change of configuration smaller than this is none to be seen. */
 const SAME_LINE = 1e-6;
 
@@ -85,6 +86,14 @@ function tableOf(records: readonly Placed[], unit: Unit): FigureTable {
   };
 }
 
+const along = (mark: Mark): number[] => [mark.x - mark.across, mark.x + mark.across];
+const upward = (mark: Mark): number[] => [mark.y - mark.whisker, mark.y + mark.whisker];
+
+/** Swings and impulses begin at zero; a range that comes near it goes there. */
+function fromZeroUp({ low, high }: Range): Range {
+  return low < high / 3 ? { low: 0, high } : { low, high };
+}
+
 /** Slope of a calibration line in the units of the axes. */
 const slopeIn = (factor: number, unit: Unit): number => fromSi(factor, unit) / fromSi(1, SWING_UNIT);
 
@@ -98,8 +107,10 @@ export function tapsAndShots(reduction: Reduction, inks: Inks): Figure {
   const line: Calibration | null = calibrations[chosen];
   const asTaken = calibrations.taps;
   const isOtherLine = asTaken !== null && Math.abs(asTaken.change.value - 1) > SAME_LINE;
-  const far = Math.max(0, ...marks.map((mark) => mark.x + mark.across)) * ROOM || 1;
-  const high = Math.max(0, ...marks.map((mark) => mark.y + mark.whisker)) * ROOM || 1;
+  const counting = marks.filter((mark) => !mark.setAside);
+  const aside = marks.filter((mark) => mark.setAside);
+  const x = fromZeroUp(roomForBoth(counting.flatMap(along), aside.flatMap(along), ROOM));
+  const y = fromZeroUp(roomForBoth(counting.flatMap(upward), aside.flatMap(upward), ROOM));
   const taps = ranges.taps;
   return {
     title: 'Taps and shots',
@@ -108,11 +119,12 @@ export function tapsAndShots(reduction: Reduction, inks: Inks): Figure {
       line === null ? '' : `Line: angular impulse per swing ${chosen === 'taps' ? 'by taps' : 'by geometry'}, band ± U of its factor; shots stand on it.`,
       isOtherLine ? 'Dashed: the taps’ own line, in the configuration they were struck in.' : '',
       'Bars: 2u; thick: the record’s own part.',
+      aside.some((mark) => mark.x < x.low || mark.x > x.high || mark.y < y.low || mark.y > y.high) ? 'What is set aside and lies far off is drawn at the edge.' : '',
     ].filter((part) => part !== '').join(' '),
     marks,
     columns,
     options: {
-      ...frame({ low: 0, high: far }, { low: 0, high }, HEIGHT),
+      ...frame(x, y, HEIGHT),
       axes: [
         axis({ label: `First swing, damping-corrected  (${SWING_UNIT.symbol})`, side: 'bottom' }, inks),
         axis({ label: `Angular impulse  (${unit.symbol})`, side: 'left' }, inks),

@@ -19,7 +19,7 @@ export function findHeader(content: readonly CutRow[], comments: readonly CutRow
   const usual = usualWidth(content);
   const firstReadings = content.findIndex(({ cells }) => holdsReadings(cells, usual));
   const before = content.slice(0, Math.min(firstReadings === -1 ? content.length : firstReadings, HEADER_WITHIN));
-  const at = bestHeading(before, usual);
+  const at = bestHeading(before, usual, firstReadings !== -1);
   if (at !== null) {
     const headerRow = content[at];
     if (headerRow === undefined) throw new RangeError(`find header: row ${at} of ${content.length}`);
@@ -59,7 +59,7 @@ function holdsReadings(cells: readonly string[], usual: number): boolean {
   return numbers >= 2 || (numbers === 1 && usual <= 2 && (filled(cells) === 1 || usual === 2) && !/:\s*$/.test(cells[0] ?? ''));
 }
 
-function bestHeading(before: readonly CutRow[], usual: number): number | null {
+function bestHeading(before: readonly CutRow[], usual: number, readingsFollow: boolean): number | null {
   const least = usual >= 2 ? Math.max(2, Math.ceil(usual / 3)) : 1;
   let best: number | null = null;
   let bestScore = -1;
@@ -69,7 +69,7 @@ function bestHeading(before: readonly CutRow[], usual: number): number | null {
     const known = cells.filter((cell) => !looksNumeric(cell) && isHeading(cell)).length;
     if (numericCells(cells) * 3 > full && known * 2 < full) continue;
     const score = known * 1000 + full;
-    if (score > bestScore || (score === bestScore && usual === 1)) [best, bestScore] = [i, score];
+    if (score > bestScore || (score === bestScore && usual === 1 && readingsFollow)) [best, bestScore] = [i, score];
   }
   return best;
 }

@@ -71,7 +71,7 @@ export function readTable(text: string, options: TableOptions = {}): TableRead {
   if (told.commas > 0 && told.points > 0) {
     problems.push(problem('decimal-marks-mixed', 'doubt', place, { commas: told.commas, points: told.points, taken: decimal }));
   }
-  const split = delimiter === ',' ? commaProblems(found.rows, { width, hasHeader: found.headerRow !== null }, place) : [];
+  const split = delimiter === ',' ? commaProblems(found.rows, { columns: width, headerCells: found.headerCells.length }, place) : [];
   problems.push(...split);
   const spoiled = new Set(split.map((p) => p.place.line));
   const rows = found.rows.map(({ line, cells }): TableRow => {

@@ -1,6 +1,7 @@
 /** Third step: every reading of a record becomes a source of its own, with the division and the eye as its uncertainty. */
+import { sampleStandardDeviation } from '../numeric/samples.ts';
 import { fromResolution, type Family, type Source } from '../metrology/source.ts';
-import { combine, ofSource, type Uncertain } from '../metrology/uncertain.ts';
+import { anchor, combine, ofSource, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import type { CellRead } from '../readings/cellReads.ts';
 import type { RecordKind } from '../readings/meanings.ts';
@@ -70,15 +71,57 @@ const FAMILY: Readonly<Record<RecordKind, Family>> = {
 };
 export const familyOf = (kind: RecordKind): Family => FAMILY[kind];
 
-function reading(record: SessionRecord, cell: CellRead, part: string, label: string, symbol: string, spread: ReadingSpread, dimension: Dimension): Uncertain {
+/** Harmonics of the rounding error that are summed; the tenth is below 1e-3 of the first even without any spread. */
+const HARMONICS = 40;
+
+/**
+ * u of the part of the rounding error that is common to many readings of one division a, where the readings would
+ * spread by σ before rounding: u² = Σ_k a²/(2π²k²) e^{−4π²k²σ²/a²}; a²/12 at σ = 0 (all on one division: it does not
+ * average), nothing from σ ≈ a/2 on (the rounding errors are independent).
+ *
+ * Valid: a > 0, σ ≥ 0, Gaussian spread, position within the division unknown. Unit of a.
+ * Source: derived from the characteristic function of the spread (quantisation theory, B. Widrow; from memory).
+ */
+export function commonRounding(division: number, spread: number): number {
+  let sum = 0;
+  const x = 2 * Math.PI * (spread / division);
+  for (let k = 1; k <= HARMONICS; k++) sum += Math.exp(-((k * x) ** 2)) / (2 * Math.PI ** 2 * k * k);
+  // What the harmonics left out hold at σ = 0: the sum to infinity is 1/12.
+  if (x === 0) return division / Math.sqrt(12);
+  return division * Math.sqrt(Math.min(sum, 1 / 12));
+}
+
+/** The common part of the rounding of a group of readings: one source that each of them has, or none. */
+function commonDivision(id: string, label: string, symbol: string, cells: readonly CellRead[], spread: ReadingSpread, dimension: Dimension): Anchor | null {
+  const rounded = cells.filter((cell) => cell.spread === null).map((cell) => cell.value);
+  if (rounded.length < 2 || !(spread.division > 0)) return null;
+  const s = sampleStandardDeviation(rounded);
+  const before = Math.sqrt(Math.max(0, s * s - spread.division ** 2 / 12));
+  const u = commonRounding(spread.division, before);
+  return u < 1e-3 * spread.division ? null : anchor(ofSource({ id, label, symbol, dimension, estimate: 0, u, distribution: 'rectangular', dof: Infinity }));
+}
+
+/** Common rounding by what the readings are of: rests together, first swings by kind. */
+function commonDivisions(records: readonly SessionRecord[], spread: ReadingSpread, dimension: Dimension): (part: string, kind: RecordKind) => Anchor | null {
+  const filled = (cells: readonly (CellRead | null)[]): readonly CellRead[] => cells.filter((cell): cell is CellRead => cell !== null);
+  const rests = commonDivision('division.rest', 'Rest readings: division, common part', 'x₀', filled(records.map((r) => (r.kind === 'zero' ? r.rest ?? r.firstSwing : r.rest))), spread, dimension);
+  const first = (kind: RecordKind, label: string): Anchor | null =>
+    commonDivision(`division.first.${kind}`, label, 'x₁', filled(records.filter((r) => r.kind === kind).map((r) => r.firstSwing)), spread, dimension);
+  const shots = first('shot', 'First swings of the shots: division, common part');
+  const taps = first('tap', 'First swings of the taps: division, common part');
+  return (part, kind) => (part === 'rest' ? rests : part !== 'first' ? null : kind === 'shot' ? shots : kind === 'tap' ? taps : null);
+}
+
+function reading(record: SessionRecord, cell: CellRead, part: string, label: string, symbol: string, spread: ReadingSpread, dimension: Dimension, common: Anchor | null = null): Uncertain {
   const of = (id: string, what: string, u: number, distribution: Source['distribution']): Source => ({
     id: `${record.id}.${part}${id}`, label: `${label}${what}`, symbol, dimension, estimate: cell.value, u, distribution, dof: Infinity, family: FAMILY[record.kind],
   });
   if (cell.spread !== null) return ofSource(of('', '', cell.spread, 'normal'));
-  const division = ofSource(of('', ', division', fromResolution(spread.division), 'rectangular'));
-  if (spread.eye === 0) return division;
-  const eye = ofSource({ ...of('.eye', ', eye', spread.eye, 'normal'), estimate: 0 });
-  return combine([[1, division], [1, eye]]);
+  const alone = Math.sqrt(Math.max(0, fromResolution(spread.division) ** 2 - (common ? standardUncertainty(common) : 0) ** 2));
+  const parts: Uncertain[] = [ofSource(of('', ', division', alone, 'rectangular'))];
+  if (spread.eye !== 0) parts.push(ofSource({ ...of('.eye', ', eye', spread.eye, 'normal'), estimate: 0 }));
+  if (common) parts.push(common);
+  return parts.length === 1 ? parts[0]! : combine(parts.map((part) => [1, part]));
 }
 
 /**
@@ -88,11 +131,12 @@ function reading(record: SessionRecord, cell: CellRead, part: string, label: str
 export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpread, dimension: Dimension): { readonly byRecord: ReadonlyMap<string, Readings>; readonly problems: readonly Problem[] } {
   const byRecord = new Map<string, Readings>();
   const problems: Problem[] = [];
+  const common = commonDivisions(records, spread, dimension);
   let lastZero: { readonly label: string; readonly line: string; readonly rest: Uncertain } | null = null;
   for (const record of records) {
     const place = placeOf(record);
     const zeroCell = record.kind === 'zero' ? record.rest ?? record.firstSwing : record.rest;
-    let rest = zeroCell ? reading(record, zeroCell, 'rest', 'Rest reading', 'x₀', spread, dimension) : null;
+    let rest = zeroCell ? reading(record, zeroCell, 'rest', 'Rest reading', 'x₀', spread, dimension, common('rest', record.kind)) : null;
     let restFrom: string | null = rest ? record.id : null;
     if (record.kind === 'zero') {
       if (rest) lastZero = { label: record.label, line: record.line, rest };
@@ -106,17 +150,9 @@ export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpr
     } else if (!rest && record.firstSwing && record.kind !== 'freeSwing') {
       problems.push(problem('record-no-rest', 'stops', place, {}));
     }
-    const first = record.firstSwing ? reading(record, record.firstSwing, 'first', 'First swing', 'x₁', spread, dimension) : null;
+    const first = record.firstSwing ? reading(record, record.firstSwing, 'first', 'First swing', 'x₁', spread, dimension, common('first', record.kind)) : null;
     const next = record.nextSwings.flatMap((cell, i) => (cell ? [{ number: i + 1, reading: reading(record, cell, `next${i + 1}`, `Turning point ${i + 2}`, `x${i + 2}`, spread, dimension) }] : []));
     byRecord.set(record.id, { restFrom, rest, first, next });
   }
   return { byRecord, problems };
 }
-
-/** u of the parts that belong to this value alone (not through anchors). */
-export const ownUncertainty = (y: Uncertain): number => {
-  let sum = 0;
-  for (const part of y.own.values()) sum += part * part;
-  return Math.sqrt(sum);
-};
-

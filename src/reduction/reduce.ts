@@ -1,6 +1,7 @@
 /** The road: session → readings → angles → swings → calibration → impulse bits → run. It reads like a method section; one file a step. */
 import { anchor, exact, propagate, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { expanded, finiteSources } from '../metrology/coverage.ts';
+import { ownParts } from '../metrology/pooled.ts';
 import { dampingFactor, decrementOfRatio } from '../pendulum/damping.ts';
 import { naturalFrequency } from '../pendulum/forms.ts';
 import { undampedSmallPeriod } from '../pendulum/period.ts';
@@ -10,9 +11,9 @@ import type { Choices, Session } from '../session/session.ts';
 import { differenceOf, remarksOnRun } from './remarks.ts';
 import { readBench, type BenchRead } from './entries.ts';
 import { chainOf } from './explain.ts';
-import { ownUncertainty, readingSpread, readingsOf } from './readings.ts';
+import { readingSpread, readingsOf } from './readings.ts';
 import type { Calibration, Configuration, PeriodCheck, RecordResult, Reduction, RunResult } from './results.ts';
-import { budgetOf, runOf, stated, type Run } from './run.ts';
+import { budgetOfRecord, runOf, stated, type Run } from './run.ts';
 import { readSheets, type SessionRecord } from './sheets.ts';
 import { calibrationFromTaps, geometryAnchor, impulseOfLaunch, swingOf, tapsOf, toFiring, type Form, type Swing, type TapCalibration, type TapKnown, type Way } from './shots.ts';
 import { missingEntries, periodOfBody, readStand, standByRoute, valueOf, type Body, type ConfigurationName, type Stand } from './stand.ts';
@@ -72,7 +73,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const chosenRun = runs[way];
   const anyAside = shots.some((s) => !counts(s.record));
 
-  const results = recordResults(swings, taps, impulse, factors, form, way, setAside, [...problems, ...sheets.recordProblems]);
+  const results = recordResults(swings, damping, taps, impulse, factors, form, way, setAside, [...problems, ...sheets.recordProblems]);
   problems.push(...sheets.recordProblems);
   const difference = differenceOf(runs.geometry, runs.taps);
   problems.push(...remarksOnRun({ choices, records: results, run: chosenRun?.result ?? null, difference, damping, spread, taps: factors[form].tapCalibration, bench, period: periodCheck(stand, period, choices), sheets: sheets.sheets }));
@@ -173,19 +174,20 @@ function configuration(name: ConfigurationName, bodies: ByConfiguration<Body> | 
 }
 
 function recordResults(
-  swings: readonly Swing[], taps: readonly TapKnown[], impulse: (swing: Swing, form: Form, way: Way) => Uncertain | null,
+  swings: readonly Swing[], damping: Damping, taps: readonly TapKnown[], impulse: (swing: Swing, form: Form, way: Way) => Uncertain | null,
   factors: Readonly<Record<Form, Factors>>, form: Form, way: Way, setAside: (record: SessionRecord) => string | null, problems: readonly Problem[],
 ): readonly RecordResult[] {
   const knownOf = new Map(taps.map((tap) => [tap.swing.record.id, tap]));
   const problemsOf = new Map<string, Problem[]>();
   for (const p of problems) if (p.place.record !== undefined) problemsOf.set(p.place.record, [...(problemsOf.get(p.place.record) ?? []), p]);
   const anchors = [factors[form].geometry, factors[form].taps].flatMap((f) => [f.shots, f.taps]).filter((a): a is Anchor => a !== null);
-  const ratios = swings.flatMap((s) => (s.launch ? [s.launch.full] : []));
-  const finite = finiteSources([...anchors, ...ratios.slice(0, 1)]);
+  const finite = finiteSources([...anchors, damping.ratio.shots, damping.ratio.taps]);
   const result = (y: Uncertain | null): ReturnType<typeof expanded> | null => (y ? expanded(y, finite) : null);
+  const impulses = swings.map((swing) => impulse(swing, form, way));
+  const own = ownParts(impulses.map((y) => y ?? exact(0)));
   return swings.map((swing, i): RecordResult => {
     const { record } = swing;
-    const chosen = impulse(swing, form, way);
+    const chosen = impulses[i]!;
     const other: Way = way === 'geometry' ? 'taps' : 'geometry';
     const otherForm: Form = form === 'full' ? 'smallAngle' : 'full';
     const chosenResult = result(chosen);
@@ -208,7 +210,7 @@ function recordResults(
       byGeometry: way === 'geometry' ? chosenResult : otherResult,
       byTaps: way === 'taps' ? chosenResult : otherResult,
       impulseBit: chosenResult,
-      ownU: chosen ? ownUncertainty(chosen) : 0,
+      ownU: own[i]!,
       knownImpulse: known ? stated(known.impulse) : null,
       angularImpulse: moment ? stated(moment) : null,
     };
@@ -236,5 +238,5 @@ function explainOf(
     swing, scale, damping, share: shares[c], arm: arms[c], factor: { geometry: factors[form].geometry[c], taps: factors[form].taps[c] },
     impulse: (f, w) => impulse(swing, f, w), chosen: { form, way }, known: taps.find((t) => t.swing === swing)?.impulse ?? null,
   });
-  return { record: swing.record.id, chain, budget: y ? budgetOf(y, expanded(y, finiteSources([y])), bench.sources, null) : null };
+  return { record: swing.record.id, chain, budget: y ? budgetOfRecord(y, expanded(y, finiteSources([y])), bench.sources) : null };
 }

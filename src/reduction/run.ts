@@ -1,29 +1,11 @@
 /** Seventh step: the run mean, its scatter and what is common to all shots. */
-import { budgetLines } from '../metrology/budget.ts';
+import { budgetLines, type Line } from '../metrology/budget.ts';
 import { expanded, finiteSources } from '../metrology/coverage.ts';
-import { pooledMean } from '../metrology/pooled.ts';
+import { ownParts, pooledMean, sharedDirectly } from '../metrology/pooled.ts';
 import type { Source } from '../metrology/source.ts';
 import { contributions, standardUncertainty, type Uncertain } from '../metrology/uncertain.ts';
 import { familyOf } from './readings.ts';
 import type { Budget, BudgetLine, Result, RunResult } from './results.ts';
-
-/** Reading sources that more than one of these results took directly (a zero that served several shots). */
-function sharedReadings(items: readonly Uncertain[]): ReadonlySet<Source> {
-  const seen = new Set<Source>();
-  const shared = new Set<Source>();
-  for (const item of items) for (const source of item.own.keys()) (seen.has(source) ? shared : seen).add(source);
-  return shared;
-}
-
-/** u of what belongs to each result alone. */
-export function ownParts(items: readonly Uncertain[]): readonly number[] {
-  const shared = sharedReadings(items);
-  return items.map((item) => {
-    let sum = 0;
-    for (const [source, part] of item.own) if (!shared.has(source)) sum += part * part;
-    return Math.sqrt(sum);
-  });
-}
 
 export interface Run {
   readonly mean: Uncertain;
@@ -42,7 +24,7 @@ export function runOf(items: readonly Uncertain[], of: number, typed: readonly S
   const mean = pooled.mean;
   const result = expanded(mean, finiteSources([mean]));
   const alone = new Set<Source>();
-  const shared = sharedReadings(items);
+  const shared = sharedDirectly(items);
   for (const item of items) for (const source of item.own.keys()) if (!shared.has(source)) alone.add(source);
   let common = 0;
   for (const [source, part] of contributions(mean)) if (!alone.has(source) && source.id !== 'shots.scatter') common += part * part;
@@ -50,18 +32,24 @@ export function runOf(items: readonly Uncertain[], of: number, typed: readonly S
     mean,
     result: {
       n: pooled.n, of, mean: result, scatter: pooled.scatter, uScatter: pooled.uScatter, uCommon: Math.sqrt(common),
-      readingsInsteadOfScatter: pooled.readingsInsteadOfScatter, budget: budgetOf(mean, result, typed, familyOf('shot').id),
+      readingsInsteadOfScatter: pooled.readingsInsteadOfScatter, budget: budgetOfRun(mean, result, typed, familyOf('shot').id),
     },
   };
 }
 
-/** Budget of a result; `scatterFamily` names the line that holds what is not common. */
-export function budgetOf(y: Uncertain, of: Result, typed: readonly Source[], scatterFamily: string | null): Budget {
-  const lines = budgetLines(y, typed).map((line): BudgetLine => {
-    const { sources: _merged, ...rest } = line;
-    return { ...rest, scope: line.id === scatterFamily ? 'scatter' : y.own.size > 0 && [...y.own.keys()].some((s) => s.id === line.id || s.family?.id === line.id) ? 'own' : 'common' };
-  });
-  return { of, lines };
+/** Budget of a run mean; the line of the family `scatter` holds what is not common. */
+export function budgetOfRun(y: Uncertain, of: Result, typed: readonly Source[], scatter: string): Budget {
+  return { of, lines: budgetLines(y, typed).map((line) => asBudgetLine(line, line.id === scatter ? 'scatter' : 'common')) };
+}
+
+/** Budget of one record: its own readings a line each, what it shares with others a line a source or family. */
+export function budgetOfRecord(y: Uncertain, of: Result, typed: readonly Source[]): Budget {
+  const own = new Set([...y.own.keys()].map((source) => source.id));
+  return { of, lines: budgetLines(y, typed, true).map((line) => asBudgetLine(line, own.has(line.id) ? 'own' : 'common')) };
+}
+
+function asBudgetLine({ sources: _merged, ...line }: Line, scope: BudgetLine['scope']): BudgetLine {
+  return { ...line, scope };
 }
 
 export const stated = (y: Uncertain): { value: number; u: number } => ({ value: y.value, u: standardUncertainty(y) });

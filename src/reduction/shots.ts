@@ -1,5 +1,5 @@
 /** Fifth and sixth steps: angle, launch and impulse bit of every record, and the calibration factors they rest on. */
-import { pooledMean, type Pooled } from '../metrology/pooled.ts';
+import { ownParts, pooledMean, weightsOf, type Pooled } from '../metrology/pooled.ts';
 import type { Source } from '../metrology/source.ts';
 import { anchor, combine, exact, ofSource, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingFactor } from '../pendulum/damping.ts';
@@ -9,7 +9,7 @@ import { problem, type Problem } from '../problems/problems.ts';
 import { swingFromMark, swingFromRest } from '../readings/angle.ts';
 import type { BenchRead } from './entries.ts';
 import { valueOf } from './stand.ts';
-import { familyOf, ownUncertainty, type Readings } from './readings.ts';
+import { familyOf, type Readings } from './readings.ts';
 import { factorOfBody, type Body, type ConfigurationName } from './stand.ts';
 import type { Damping, Scale } from './swings.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
@@ -111,10 +111,10 @@ export function calibrationFromTaps(taps: readonly TapKnown[], form: Form): TapC
     factors.push(propagate(factorOfTap, { moment: angularImpulse, launch }));
   }
   if (factors.length === 0) return null;
-  const own = factors.map(ownUncertainty);
+  const own = ownParts(factors);
   const pooled = pooledMean(factors, own, {
     id: 'taps.scatter', label: 'Scatter of the taps', symbol: 'K', dimension: 'calibrationFactor', family: familyOf('tap'),
-    weights: own.every((u) => u > 0) ? own.map((u) => 1 / u ** 2) : own.map(() => 1),
+    weights: weightsOf(own),
   });
   return { asTaken: anchor(pooled.mean), pooled };
 }

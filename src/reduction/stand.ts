@@ -60,7 +60,9 @@ export function readStand(bench: BenchRead, choices: Choices): Stand {
       problems.push(problem('bench-unstable', 'stops', {}, { configuration: name, value: kappa.value }));
       return null;
     }
-    return { inertia, stiffness: kappa, gravityShare: anchor(propagate(gravityShare, { moment, g: gravity, stiffness: kappa })) };
+    // Without a flexure gravity does all the work; p = 1 then, exactly.
+    const share = flexure.value === 0 ? exact(1) : propagate(gravityShare, { moment, g: gravity, stiffness: kappa });
+    return { inertia, stiffness: kappa, gravityShare: anchor(share) };
   };
   const shots = of('shots');
   const taps = extra.same ? shots : of('taps');

@@ -1,6 +1,6 @@
 /** Fourth step: the damping ratio of each configuration, from successive turning points or as typed. */
 import { fromResolution, type Source } from '../metrology/source.ts';
-import { pooledMean } from '../metrology/pooled.ts';
+import { ownParts, pooledMean, weightsOf } from '../metrology/pooled.ts';
 import { anchor, exact, ofSource, propagate, standardUncertainty, withSensitivities, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { ratioFromSwings, ratioOfDecrement, type TurningPoint } from '../pendulum/damping.ts';
 import { dampingCarried } from '../pendulum/forms.ts';
@@ -80,10 +80,9 @@ function carried(ratio: Uncertain, stand: Stand, from: ConfigurationName = 'shot
 }
 
 function pooledRatio(items: readonly Uncertain[], id: string, problems: Problem[]): Anchor {
-  const ownU = items.map(standardUncertainty);
-  const weights = ownU.every((u) => u > 0) ? ownU.map((u) => 1 / u ** 2) : ownU.map(() => 1);
+  const ownU = ownParts(items);
   const pooled = pooledMean(items, ownU, {
-    id: `damping.scatter.${id}`, label: 'Scatter of the damping ratio', symbol: 'ζ', dimension: 'number', weights,
+    id: `damping.scatter.${id}`, label: 'Scatter of the damping ratio', symbol: 'ζ', dimension: 'number', weights: weightsOf(ownU),
     family: { id: `damping.scatter.${id}`, label: 'Scatter of the damping ratio among the swings' },
   });
   if (pooled.mean.value < 0) {

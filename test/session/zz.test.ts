@@ -4,7 +4,7 @@ import { reduce } from '../../src/reduction/reduce.ts';
 import { readSheets } from '../../src/reduction/sheets.ts';
 import { demoSession } from '../../src/session/demo.ts';
 it('dump', () => {
-  const s0=demoSession(); const lines=s0.sheets[0]!.text.trim().split('\n'); const rows=lines.slice(1);
+  const s0=demoSession(); writeFileSync("/tmp/fs/demo.json", JSON.stringify(reduce(s0,"demo/20")));const lines=s0.sheets[0]!.text.trim().split("\n"); const rows=lines.slice(1);
   const text=[lines[0],...rows,...rows,...rows,...rows,...rows].join('\n');
   const s={...s0,sheets:[{...s0.sheets[0]!,text}]};
   const out:number[]=[]; const sh:number[]=[];

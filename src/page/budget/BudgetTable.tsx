@@ -3,7 +3,7 @@ import type { Budget, BudgetLine } from '../../reduction/results.ts';
 import { chooseUnit, plain } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
 import { Aligned, alignedTo } from '../stated/Aligned.tsx';
-import { coverageFactor, degreesOfFreedom } from '../stated/numberWords.ts';
+import { coverageFactor, degreesOfFreedom, roundedAs } from '../stated/numberWords.ts';
 import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
 import stated from '../stated/stated.module.css';
@@ -15,6 +15,8 @@ interface Props {
   readonly of: string;
   /** Unit of the impulse bits. */
   readonly unit: Unit;
+  /** Only quantity, u, contribution and share, where the sheet is narrow. */
+  readonly brief?: boolean;
 }
 
 const SCOPE_WORDS: Readonly<Record<BudgetLine['scope'], string>> = {
@@ -44,22 +46,27 @@ function ShareBar({ share }: { readonly share: number }) {
   return <span className={styles.bar} aria-hidden="true"><span style={{ inlineSize: `${share}%` }} /></span>;
 }
 
-export function BudgetTable({ budget, of, unit }: Props) {
+export function BudgetTable({ budget, of, unit, brief = false }: Props) {
   const { lines } = budget;
   const small = chooseUnit([budget.of.u], 'impulse');
-  const contributions = alignedTo(lines.map(({ contribution }) => contribution), budget.of.u / 10, small);
+  const contributions = alignedTo([...lines.map(({ contribution }) => contribution), budget.of.u], budget.of.u / 10, small);
   return (
     <SheetTable label={`Budget of the ${of}`}>
       <thead>
         <tr>
           <th scope="col">Quantity</th>
-          <th scope="col">Estimate</th>
-          <th scope="col">Standard uncertainty u</th>
-          <th scope="col">Distribution</th>
-          <th scope="col" className={stated.right}>ν</th>
-          <th scope="col">Sensitivity coefficient c</th>
+          {!brief && <th scope="col">Estimate</th>}
+          <th scope="col">{brief ? 'u' : 'Standard uncertainty u'}</th>
+          {!brief && (
+            <>
+              <th scope="col">Distribution</th>
+              <th scope="col" className={stated.right}>ν</th>
+              <th scope="col">Sensitivity coefficient c</th>
+            </>
+          )}
           <th scope="col">Contribution c·u ({small.symbol})</th>
           <th scope="col" className={stated.right}>Share of u²</th>
+          <th scope="col"><span className="visually-hidden">Share, drawn</span></th>
           <th scope="col">Reaches</th>
         </tr>
       </thead>
@@ -67,13 +74,18 @@ export function BudgetTable({ budget, of, unit }: Props) {
         {lines.map((line, index) => (
           <tr key={line.id} className={styles[line.scope]}>
             <th scope="row">{line.label} <SymbolText symbol={line.symbol} /></th>
-            <td className="num">{inItsUnit(line, line.estimate, 6)}</td>
+            {!brief && <td className="num">{inItsUnit(line, line.estimate, 6)}</td>}
             <td className="num">{inItsUnit(line, line.u, 2)}</td>
-            <td>{line.distribution}</td>
-            <td className={`num ${stated.right}`}>{degreesOfFreedom(line.dof)}</td>
-            <td className="num">{sensitivityText(line, unitOf(line), unit)}</td>
+            {!brief && (
+              <>
+                <td>{line.distribution}</td>
+                <td className={`num ${stated.right}`}>{degreesOfFreedom(line.dof)}</td>
+                <td className="num">{sensitivityText(line, unitOf(line), unit)}</td>
+              </>
+            )}
             <td><Aligned column={contributions} row={index} bare /></td>
-            <td className={`num ${stated.right}`}>{line.share.toFixed(1)} %<ShareBar share={line.share} /></td>
+            <td className={`num ${stated.right}`}>{line.share.toFixed(1)} %</td>
+            <td><ShareBar share={line.share} /></td>
             <td>{SCOPE_WORDS[line.scope]}</td>
           </tr>
         ))}
@@ -81,13 +93,18 @@ export function BudgetTable({ budget, of, unit }: Props) {
       <tfoot>
         <tr>
           <th scope="row">{of.charAt(0).toUpperCase() + of.slice(1)}</th>
-          <td className="num">{plain(budget.of.value, unit, 5)}</td>
+          {!brief && <td className="num">{roundedAs(budget.of.value, budget.of.u, unit)}</td>}
           <td className="num">{plain(budget.of.u, small, 2)}</td>
-          <td>combined</td>
-          <td className={`num ${stated.right}`}>{degreesOfFreedom(budget.of.dof)}</td>
-          <td />
-          <td className="num">{plain(budget.of.u, small, 2)}</td>
+          {!brief && (
+            <>
+              <td>combined</td>
+              <td className={`num ${stated.right}`}>{degreesOfFreedom(budget.of.dof)}</td>
+              <td />
+            </>
+          )}
+          <td><Aligned column={contributions} row={lines.length} bare /></td>
           <td className={`num ${stated.right}`}>{totalShare(lines)} %</td>
+          <td />
           <td className="num">U = {plain(budget.of.U, small, 2)} (k = {coverageFactor(budget.of.k)})</td>
         </tr>
       </tfoot>

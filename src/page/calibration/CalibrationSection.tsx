@@ -3,9 +3,9 @@ import { useMemo } from 'react';
 import type { Reduction } from '../../reduction/results.ts';
 import { tapsAndShots } from '../../plots/tapsAndShots.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
+import { goToElement } from '../head/goTo.ts';
 import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
-import { openRecord } from '../record/openRecord.ts';
 import { CalibrationFactors } from './CalibrationFactors.tsx';
 import { Configurations } from './Configurations.tsx';
 import { SwingForm } from './SwingForm.tsx';
@@ -34,5 +34,5 @@ function TapsFigure({ reduction }: { readonly reduction: Reduction }) {
   const inks = useInks();
   const figure = useMemo(() => tapsAndShots(reduction, inks), [reduction, inks]);
   if (figure.marks.length === 0) return null;
-  return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={openRecord} />;
+  return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={() => goToElement('record')} />;
 }

@@ -14,6 +14,14 @@ const FORMS: readonly { readonly form: Choices['swingForm']; readonly label: str
   { form: 'smallAngle', label: 'small-angle form', hint: 'sin θ taken as θ, damping by the factor D' },
 ];
 
+/** Below this many standard uncertainties a gap is told as "less than". */
+const TOLD_FROM = 0.05;
+
+function gapSentence(name: string, inU: number): string {
+  const size = Math.abs(inU) < TOLD_FROM ? 'less than 0.1' : timesU(Math.abs(inU));
+  return `The two part most at ${name}: the small-angle form lies ${size} standard uncertainties u ${inU < 0 ? 'below' : 'above'} the full pendulum.`;
+}
+
 export function SwingForm({ reduction }: { readonly reduction: Reduction }) {
   const choice = useStore((state) => state.session.choices.swingForm);
   const { change } = useActions();
@@ -30,7 +38,7 @@ export function SwingForm({ reduction }: { readonly reduction: Reduction }) {
       ))}
       {gap !== null && (
         <p className="quiet">
-          The two part most at {recordName(gap.record)}: the small-angle form lies {timesU(Math.abs(gap.inU))} of its standard uncertainties u {gap.inU < 0 ? 'below' : 'above'} the full pendulum.
+          {gapSentence(recordName(gap.record), gap.inU)}
         </p>
       )}
     </fieldset>

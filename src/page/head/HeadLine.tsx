@@ -42,7 +42,7 @@ export function HeadLine({ onOpen, onSave, onDemo, onNew, onHelp }: Props) {
             onChange={(event) => change(label.toLowerCase(), setTitle({ [name]: event.target.value }), `title.${name}`)}
           />
         ))}
-        {demo && <strong className={styles.demo}>Demo: an invented bench</strong>}
+        {demo && <strong className={styles.demo}>Demo: invented, not a measurement</strong>}
       </div>
       <div className={styles.doings} role="group" aria-label="Session">
         <Kept />

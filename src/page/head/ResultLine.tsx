@@ -1,4 +1,5 @@
 /** The result line, always in sight: the run mean with U, its coverage, the scatter, and how much there is to look at. */
+import { useLayoutEffect, useRef } from 'react';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
 import type { Reduction } from '../../reduction/results.ts';
 import { useStore } from '../../store/hooks.tsx';
@@ -11,8 +12,18 @@ import styles from './head.module.css';
 export function ResultLine() {
   const reduction = useStore((state) => state.reduction);
   const busy = useStore((state) => state.busy);
+  const line = useRef<HTMLDivElement>(null);
+  useLayoutEffect(() => {
+    const measured = line.current;
+    if (measured === null) return undefined;
+    // The strip sticks beneath this line, however many rows of words a narrow window makes of it.
+    const tell = () => document.documentElement.style.setProperty('--result-line-height', `${measured.offsetHeight}px`);
+    const observer = new ResizeObserver(tell);
+    observer.observe(measured);
+    return () => observer.disconnect();
+  }, []);
   return (
-    <div className={styles.result} aria-busy={busy}>
+    <div ref={line} className={styles.result} aria-busy={busy}>
       <p className={styles.answer} role="status">
         <span className={styles.answerName}>Mean impulse bit</span> <Mean reduction={reduction} />
       </p>
@@ -30,7 +41,7 @@ function Mean({ reduction }: { readonly reduction: Reduction | null }) {
     <>
       <strong className={styles.figure}><Quantity value={run.mean.value} spread={run.mean.U} unit={unit} /></strong>{' '}
       <span className={styles.evidence}>
-        <span className="num">± U, 95 %, k = {coverageFactor(run.mean.k)}</span>
+        <span className="num">± is U, 95 %, k = {coverageFactor(run.mean.k)}</span>
         <span className="num">n = {run.n} of {run.of}</span>
         {run.scatter !== null && <span className="num">scatter s = {plain(run.scatter, unit, 2)}</span>}
         <span>{chosen === 'taps' ? 'calibrated by taps' : 'calibrated by geometry'}</span>

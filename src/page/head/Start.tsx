@@ -29,14 +29,15 @@ export function Start({ onChoose, onDemo }: Props) {
     <section className={styles.start} aria-labelledby="start-title">
       <h2 id="start-title">Readings of a ballistic pendulum in, impulse bits with their uncertainty out</h2>
       <p>
-        Drop a table of readings anywhere on this sheet, paste it from a spreadsheet,{' '}
-        <button type="button" className="plain-button" onClick={onChoose}>choose a file</button>,{' '}
-        <button type="button" className="plain-button" onClick={typeByHand}>type by hand</button>, or{' '}
-        <button type="button" className="plain-button" onClick={onDemo}>open the demo</button>, an invented bench.
+        Drop a table of readings anywhere on this sheet, or paste it from a spreadsheet. One row a record: shots, hammer taps, blanks and zeros,
+        each with its rest reading and first swing.
       </p>
-      <p className="quiet">
-        One row a record: shots, hammer taps, blanks and zeros, each with its rest reading and first swing. Nothing leaves this device.
-      </p>
+      <div className={styles.ways}>
+        <button type="button" onClick={onChoose}>Choose a file</button>
+        <button type="button" onClick={typeByHand}>Type by hand</button>
+        <button type="button" onClick={onDemo}>Open the demo, an invented bench</button>
+      </div>
+      <p className="quiet">Nothing leaves this device. What you type is kept here, and saved as a file when you say so.</p>
     </section>
   );
 }

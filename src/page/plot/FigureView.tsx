@@ -138,7 +138,7 @@ export function FigureView({ figure, inks, selected, onSelect, onOpen, slim = fa
       </div>
       <figcaption id={summary} className={slim ? 'visually-hidden' : 'quiet'}>{figure.summary}</figcaption>
       <p role="status" className="visually-hidden">{told}</p>
-      <NumbersOf title={figure.title} table={figure.table} />
+      <NumbersOf title={figure.title} table={figure.table} slim={slim} />
     </figure>
   );
 }

@@ -5,7 +5,7 @@ import type { FigureTable } from '../../plots/figure.ts';
 import { Leaves, useLeaves } from './Leaves.tsx';
 import styles from './FigureView.module.css';
 
-export function NumbersOf({ title, table }: { readonly title: string; readonly table: FigureTable }) {
+export function NumbersOf({ title, table, slim }: { readonly title: string; readonly table: FigureTable; readonly slim: boolean }) {
   const [open, setOpen] = useState(false);
   const leaves = useLeaves(table.rows.length);
   function turn(event: MouseEvent): void {
@@ -14,7 +14,7 @@ export function NumbersOf({ title, table }: { readonly title: string; readonly t
   }
   return (
     <details open={open} className={styles.numbers}>
-      <summary onClick={turn} className="quiet">These numbers as a table</summary>
+      <summary onClick={turn} className="quiet">{slim ? 'As a table' : 'These numbers as a table'}</summary>
       {open && (
         <div className={styles.scroll} role="group" aria-label={`${title}, table`} tabIndex={0}>
           <table>

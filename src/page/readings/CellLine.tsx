@@ -1,6 +1,6 @@
 /** One line under a sheet about the cell that the cursor is in: what it came as, and what there is to look at in its row. */
-import { sentence } from '../../problems/sentences.ts';
 import type { RecordResult } from '../../reduction/results.ts';
+import { besideRow } from './gridColumns.ts';
 import { lineWords } from './sheetRows.ts';
 import type { ShownColumn, ShownRow } from './sheetRows.ts';
 import styles from './grid.module.css';
@@ -15,7 +15,7 @@ interface CellLineProps {
 
 export function CellLine({ row, column, result, onRestore }: CellLineProps) {
   const came = column === null ? undefined : row.came[column.index];
-  const problems = result?.problems ?? [];
+  const sentences = [...new Set((result?.problems ?? []).map(besideRow))];
   return (
     <div className={`${styles.cellLine} quiet`}>
       <span>
@@ -30,9 +30,7 @@ export function CellLine({ row, column, result, onRestore }: CellLineProps) {
           </button>
         </span>
       )}
-      {problems.map((problem, i) => (
-        <span key={`${problem.code}-${i}`} className="look">{sentence(problem)}</span>
-      ))}
+      {sentences.map((one) => <span key={one} className="look">{one}</span>)}
     </div>
   );
 }

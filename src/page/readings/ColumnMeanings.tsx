@@ -4,7 +4,7 @@ import { ROLE_DIMENSIONS, USUAL_UNIT, proposeColumns } from '../../readings/colu
 import { ROLES } from '../../readings/meanings.ts';
 import type { Role } from '../../readings/meanings.ts';
 import type { TableRead } from '../../readings/table.ts';
-import { proposalSentence } from '../../problems/proposals.ts';
+import { sentenceForProposal } from '../../problems/proposals.ts';
 import { setColumn, setColumns } from '../../session/edits.ts';
 import type { Sheet } from '../../session/session.ts';
 import { unitNamed, unitsOf } from '../../units/units.ts';
@@ -47,7 +47,7 @@ export function ColumnMeanings({ sheet, table, shown }: ColumnMeaningsProps) {
     const proposal = proposals[index];
     if (meaning.by === 'person') return { text: sheet.origin === 'typed' ? '' : 'as you chose', look: false };
     if (proposal === undefined || proposal.role !== meaning.role || proposal.unit !== meaning.unit) return { text: 'as proposed before', look: false };
-    return { text: proposalSentence(proposal), look: !proposal.sure };
+    return { text: sentenceForProposal(proposal), look: !proposal.sure };
   }
 
   const toCheck = proposed ? shown.columns.filter((column) => reasonOf(column).look).length : 0;
@@ -97,7 +97,6 @@ export function ColumnMeanings({ sheet, table, shown }: ColumnMeaningsProps) {
                     )}
                   </td>
                   <td className={reason.look ? 'look' : 'quiet'}>
-                    {reason.look && <strong>check: </strong>}
                     {reason.text}
                   </td>
                 </tr>

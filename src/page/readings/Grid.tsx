@@ -1,5 +1,5 @@
 /** A sheet of readings to look at and to type in, with the keys of a spreadsheet. */
-import { useCallback, useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
+import { useCallback, useEffect, useEffectEvent, useLayoutEffect, useMemo, useRef, useState } from 'react';
 import type { ClipboardEvent, FocusEvent, KeyboardEvent, MouseEvent } from 'react';
 import { addRow, countAgain, removeAddedRow, setKind } from '../../session/edits.ts';
 import type { Session, Sheet } from '../../session/session.ts';
@@ -43,10 +43,10 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
   const begunByKey = useRef(false);
   const toFocus = useRef(false);
   const lineStart = useRef(FIRST_CELL);
-  const rowWindow = useRowWindow(shown.rows.length);
+  const { frame, first, last, windowed, rowHeight, page, onScroll, bring } = useRowWindow(shown.rows.length);
   const columns = useMemo(() => gridColumns(shown), [shown]);
   const takesEntry = useMemo(() => columns.map(({ is }) => is === 'cell' || is === 'kind' || is === 'aside'), [columns]);
-  const extent = { rows: shown.rows.length, columns: columns.length, page: rowWindow.page };
+  const extent = { rows: shown.rows.length, columns: columns.length, page };
   const row = shown.rows[cursor.row];
   const block = corner === null ? null : blockBetween(cursor, corner);
   const cellAt = (column: number): number | null => {
@@ -57,22 +57,22 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
   useLayoutEffect(() => {
     if (!toFocus.current || typing !== null) return;
     toFocus.current = false;
-    rowWindow.frame.current?.querySelector<HTMLElement>(`[data-spot="${cursor.row}:${cursor.column}"]`)?.focus();
+    frame.current?.querySelector<HTMLElement>(`[data-spot="${cursor.row}:${cursor.column}"]`)?.focus();
   });
 
-  // A record selected in a picture comes into sight here; one selected here is in sight already.
-  useEffect(() => {
-    const at = selected === null ? -1 : shown.rows.findIndex(({ record }) => record === selected);
-    if (at >= 0) rowWindow.bring(at);
-    // Only a new selection scrolls.
-  }, [selected]);
+  const bringRecord = useEffectEvent((record: string | null) => {
+    const at = record === null ? -1 : shown.rows.findIndex((one) => one.record === record);
+    if (at >= 0) bring(at);
+  });
+  // A record selected in a picture comes into sight here.
+  useEffect(() => bringRecord(selected), [selected]);
 
   function goTo(spot: Spot) {
     setTyping(null);
     setCorner(null);
     setCursor(spot);
     toFocus.current = true;
-    rowWindow.bring(spot.row);
+    bring(spot.row);
   }
 
   function begin(text: string, byKey: boolean) {
@@ -225,47 +225,48 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
     goTo({ row: from.row, column: from.column + FIRST_CELL });
   }
 
-  const latest = useRef({ keep, typing, askReason });
-  latest.current = { keep, typing, askReason };
+  function onBlur(event: FocusEvent<HTMLElement>) {
+    if (typing !== null && event.target instanceof HTMLInputElement) keep(event.target.value);
+  }
+
   const acts = useMemo((): RowActs => ({
     setKind: (at, kind) => change(kind === null ? `kind of ${lineWords(at.line)} as told` : `${lineWords(at.line)} is a ${KIND_LABELS[kind]}`, setKind(at.record, kind)),
-    askReason: (at) => latest.current.askReason(at),
+    askReason,
     countAgain: (at) => change(`count ${lineWords(at.line)} again`, countAgain(at.record)),
     remove: (at) => change(`remove ${lineWords(at.line)}`, removeAddedRow(sheet.id, at.line)),
-    leaveCell: (text) => {
-      if (latest.current.typing !== null) latest.current.keep(text);
-    },
-  }), [change, sheet.id]);
+  }), [change, sheet.id, askReason]);
   const restore = useCallback((at: ShownRow, cell: number) => {
     const edit = typedOver(sheet.id, at, cell, at.came[cell] ?? '');
     if (edit !== null) change(`restore ${lineWords(at.line)}`, edit);
   }, [change, sheet.id]);
 
-  const tabRow = cursor.row >= rowWindow.first && cursor.row < rowWindow.last ? cursor.row : rowWindow.first;
-  const rendered = shown.rows.slice(rowWindow.first, rowWindow.last);
+  const tabRow = cursor.row >= first && cursor.row < last ? cursor.row : first;
+  const rendered = shown.rows.slice(first, last);
   const cell = cellAt(cursor.column);
   return (
     <>
-      <div ref={rowWindow.frame} className={rowWindow.windowed ? `${styles.frame} ${styles.long}` : styles.frame} onScroll={rowWindow.onScroll}>
-        <table
+      <div ref={frame} className={windowed ? `${styles.frame} ${styles.long}` : styles.frame} onScroll={onScroll}>
+        <div
           role="grid"
+          tabIndex={-1}
           aria-label={`Readings of ${sheet.name}`}
           aria-rowcount={shown.rows.length + 1}
           aria-colcount={columns.length}
           aria-multiselectable="true"
-          className={styles.grid}
           onKeyDown={onKeyDown}
           onFocus={onFocus}
+          onBlur={onBlur}
           onMouseDown={onMouseDown}
           onDoubleClick={onDoubleClick}
           onCopy={onCopy}
           onPaste={onPaste}
         >
+          <table role="presentation" className={styles.grid}>
           <GridHead columns={columns} impulseUnit={impulseUnit} />
           <tbody role="rowgroup">
-            {rowWindow.first > 0 && <tr aria-hidden="true" className={styles.unseen} style={{ height: rowWindow.first * rowWindow.rowHeight }} />}
+            {first > 0 && <tr aria-hidden="true" className={styles.unseen} style={{ height: first * rowHeight }} />}
             {rendered.map((one, i) => {
-              const index = rowWindow.first + i;
+              const index = first + i;
               const inBlock = block !== null && covers(block, index, block.left);
               return (
                 <GridRow
@@ -286,11 +287,12 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
                 />
               );
             })}
-            {rowWindow.last < shown.rows.length && (
-              <tr aria-hidden="true" className={styles.unseen} style={{ height: (shown.rows.length - rowWindow.last) * rowWindow.rowHeight }} />
+            {last < shown.rows.length && (
+              <tr aria-hidden="true" className={styles.unseen} style={{ height: (shown.rows.length - last) * rowHeight }} />
             )}
           </tbody>
-        </table>
+          </table>
+        </div>
       </div>
       {row !== undefined && <CellLine row={row} column={cell === null ? null : (shown.columns[cell] ?? null)} result={results.get(row.record)} onRestore={restore} />}
     </>

@@ -2,13 +2,12 @@
 import { memo } from 'react';
 import { alignedParts } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
-import { sentence } from '../../problems/sentences.ts';
 import type { RecordKind } from '../../readings/meanings.ts';
 import type { Mark } from '../../session/session.ts';
 import type { RecordResult, Result } from '../../reduction/results.ts';
 import { KindMark } from './KindMark.tsx';
 import { KindSelect } from './KindSelect.tsx';
-import { columnOfProblem } from './gridColumns.ts';
+import { besideRow, columnOfProblem } from './gridColumns.ts';
 import type { GridColumn } from './gridColumns.ts';
 import { lineWords } from './sheetRows.ts';
 import type { ShownColumn, ShownRow } from './sheetRows.ts';
@@ -19,8 +18,6 @@ export interface RowActs {
   readonly askReason: (row: ShownRow) => void;
   readonly countAgain: (row: ShownRow) => void;
   readonly remove: (row: ShownRow) => void;
-  /** The cell's entry field was left: what it holds is kept. */
-  readonly leaveCell: (text: string) => void;
 }
 
 export interface GridRowProps {
@@ -92,7 +89,6 @@ export const GridRow = memo(function GridRow(props: GridRowProps) {
                 autoFocus
                 autoComplete="off"
                 spellCheck={false}
-                onBlur={(left) => acts.leaveCell(left.target.value)}
               />
             ) : (
               (row.cells[cell.index] ?? '')
@@ -136,7 +132,7 @@ export const GridRow = memo(function GridRow(props: GridRowProps) {
       case 'looks':
         return (
           <td key="looks" role="gridcell" aria-colindex={at + 1} className={styles.looks} id={looksId} {...spot(at)}>
-            {problems.map((problem) => sentence(problem)).join(' ')}
+            {problems.map(besideRow).join(' ')}
           </td>
         );
     }

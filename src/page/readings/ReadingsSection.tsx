@@ -2,7 +2,6 @@
 import { useEffect, useMemo, useRef, useState } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { setAside } from '../../session/edits.ts';
-import type { Sheet } from '../../session/session.ts';
 import type { RecordResult } from '../../reduction/results.ts';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
@@ -26,20 +25,21 @@ export function ReadingsSection() {
   const records = useStore((state) => state.reduction?.records ?? NO_RECORDS);
   const run = useStore((state) => state.reduction?.run ?? null);
   const problems = useStore((state) => state.reduction?.problems ?? NO_PROBLEMS);
-  const [asked, setAsked] = useState<{ readonly record: string; readonly name: string; readonly sheet: string } | null>(null);
+  const [asked, setAsked] = useState<ShownRow | null>(null);
   const section = useRef<HTMLElement>(null);
   const results = useMemo(() => new Map(records.map((record) => [record.id, record])), [records]);
   const unit = useMemo(() => impulseUnit({ run, records }), [run, records]);
   useLatestInSight(section);
 
-  function askReason(row: ShownRow, sheet: Sheet) {
+  const nameOf = (row: ShownRow): string => {
     const result = results.get(row.record);
-    const named = result === undefined ? '' : `${KIND_LABELS[result.kind]} ${result.label}`.trim();
-    setAsked({ record: row.record, sheet: sheet.name, name: named === '' ? `${lineWords(row.line)} of ${sheet.name}` : `${named}, ${lineWords(row.line)} of ${sheet.name}` });
-  }
+    const sheet = sheets.find(({ id }) => row.record.startsWith(`${id}/`))?.name ?? '';
+    const place = sheets.length > 1 ? `${lineWords(row.line)} of ${sheet}` : lineWords(row.line);
+    return result === undefined ? place : `${`${KIND_LABELS[result.kind]} ${result.label}`.trim()}, ${place}`;
+  };
 
   return (
-    <section ref={section} className={styles.section} aria-labelledby="readings-heading">
+    <section id="readings" ref={section} className={styles.section} aria-labelledby="readings-heading">
       <h2 id="readings-heading">Readings</h2>
       <IntakeRow hasSheets={sheets.length > 0} />
       <NoticeList />
@@ -53,14 +53,14 @@ export function ReadingsSection() {
           marks={marks}
           impulseUnit={unit}
           problems={problems.filter(({ place }) => place.sheet === sheet.id && place.record === undefined)}
-          askReason={askReason}
+          askReason={setAsked}
         />
       ))}
       {asked !== null && (
         <AsideDialog
-          record={asked.name}
+          record={nameOf(asked)}
           reason={marks[asked.record]?.setAside?.reason ?? ''}
-          onReason={(reason) => change(`set aside ${asked.name}`, setAside(asked.record, reason))}
+          onReason={(reason) => change(`set aside ${nameOf(asked)}`, setAside(asked.record, reason))}
           onClose={() => setAsked(null)}
         />
       )}

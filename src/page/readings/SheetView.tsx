@@ -1,7 +1,7 @@
 /** One sheet of readings: its head, its columns' meanings, its grid. */
 import { useId, useMemo } from 'react';
 import { sentence } from '../../problems/sentences.ts';
-import type { Problem } from '../../problems/problems.ts';
+import type { Place, Problem } from '../../problems/problems.ts';
 import type { RecordResult } from '../../reduction/results.ts';
 import { addRow } from '../../session/edits.ts';
 import type { Session, Sheet } from '../../session/session.ts';
@@ -24,7 +24,12 @@ interface SheetViewProps {
   readonly impulseUnit: Unit;
   /** Problems of the sheet as a whole, and of rows that are no records. */
   readonly problems: readonly Problem[];
-  readonly askReason: (row: ShownRow, sheet: Sheet) => void;
+  readonly askReason: (row: ShownRow) => void;
+}
+
+/** The sheet's name stands above its sentences already. */
+function withoutSheet({ line, column }: Place): Place {
+  return { ...(line === undefined ? {} : { line }), ...(column === undefined ? {} : { column }) };
 }
 
 /** Sentences shown at the head of a sheet; the rest are counted. */
@@ -39,13 +44,14 @@ export function SheetView({ sheet, isFirst, isLast, results, marks, impulseUnit,
     [text, delimiter, decimal],
   );
   const shown = useMemo(() => shownSheet(sheet, table), [sheet, table]);
+  const sentences = [...new Set(problems.map((one) => sentence({ ...one, place: withoutSheet(one.place) })))];
   return (
     <article className={styles.sheet} aria-labelledby={headingId} data-sheet={sheet.id}>
       <SheetHead sheet={sheet} table={table} rows={shown.rows.length} isFirst={isFirst} isLast={isLast} headingId={headingId} />
-      {problems.length > 0 && (
+      {sentences.length > 0 && (
         <ul className={styles.problems}>
-          {problems.slice(0, SENTENCES_SHOWN).map((one, i) => <li key={`${one.code}-${i}`} className="look">{sentence(one)}</li>)}
-          {problems.length > SENTENCES_SHOWN && <li className="look">And {counted(problems.length - SENTENCES_SHOWN, 'more of the kind', 'more of the kind')}.</li>}
+          {sentences.slice(0, SENTENCES_SHOWN).map((one) => <li key={one} className="look">{one}</li>)}
+          {sentences.length > SENTENCES_SHOWN && <li className="look">And {sentences.length - SENTENCES_SHOWN} more, among the things to look at.</li>}
         </ul>
       )}
       {table.preamble.length > 0 && (
@@ -55,7 +61,7 @@ export function SheetView({ sheet, isFirst, isLast, results, marks, impulseUnit,
         </details>
       )}
       <ColumnMeanings sheet={sheet} table={table} shown={shown} />
-      <Grid sheet={sheet} shown={shown} results={results} marks={marks} impulseUnit={impulseUnit} askReason={(row) => askReason(row, sheet)} />
+      <Grid sheet={sheet} shown={shown} results={results} marks={marks} impulseUnit={impulseUnit} askReason={askReason} />
       <p className={styles.buttons}>
         <button type="button" onClick={() => change('add a row', addRow(sheet.id))}>Add a row</button>
       </p>

@@ -1,5 +1,6 @@
 /** The columns of a sheet's grid: the row's mark and line, its kind, the sheet's own columns, and what the road says at the right. */
 import type { Problem } from '../../problems/problems.ts';
+import { sentence } from '../../problems/sentences.ts';
 import { ROLE_LABELS } from './tradeWords.ts';
 import type { ShownColumn, ShownSheet } from './sheetRows.ts';
 
@@ -28,3 +29,7 @@ export function columnOfProblem(problem: Problem, columns: readonly ShownColumn[
   const found = columns.find((column) => column.header === named) ?? columns.find((column) => String(column.index + 1) === named);
   return found?.index ?? null;
 }
+
+/** A row's problem as it stands beside its row: the sheet and the line are named there already. */
+export const besideRow = (problem: Problem): string =>
+  sentence({ ...problem, place: problem.place.column === undefined ? {} : { column: problem.place.column } });

@@ -4,7 +4,7 @@ import type { RecordResult } from '../../reduction/results.ts';
 
 export const ROLE_LABELS: Readonly<Record<Role, string>> = {
   kind: 'kind of record',
-  label: 'number or name',
+  label: 'shot number',
   rest: 'rest reading',
   firstSwing: 'first swing',
   nextSwing: 'next swing',

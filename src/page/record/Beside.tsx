@@ -39,14 +39,14 @@ export function Beside({ record, reduction, unit }: Props) {
           <th scope="col">Impulse bit</th>
           <th scope="col">Value ± U</th>
           <th scope="col">k</th>
-          <th scope="col">From the line above</th>
-          <th scope="col">in its u</th>
+          <th scope="col">Apart from the line above</th>
+          <th scope="col">in u of that line</th>
         </tr>
       </thead>
       <tbody>
         {lines.map((line, row) => (
           <tr key={line.label}>
-            <th scope="row">{line.label}{line.counts && <span className="quiet"> (counts)</span>}</th>
+            <th scope="row">{line.label}{line.counts && <span className="quiet"> (chosen)</span>}</th>
             <td><Aligned column={values} row={row} /></td>
             <td className="num">{line.result === null ? '' : coverageFactor(line.result.k)}</td>
             <Apart line={line} />

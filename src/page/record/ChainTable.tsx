@@ -2,6 +2,7 @@
 import type { ChainStep } from '../../reduction/results.ts';
 import { chooseUnit } from '../../units/format.ts';
 import { Aligned, alignedColumn } from '../stated/Aligned.tsx';
+import { EquationText } from './EquationText.tsx';
 import { correctingFactor } from '../stated/numberWords.ts';
 import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
@@ -14,21 +15,22 @@ export function ChainTable({ chain }: { readonly chain: readonly ChainStep[] }) 
     <SheetTable label="From reading to impulse bit">
       <thead>
         <tr>
-          <th scope="col">Step</th>
+          <th scope="col">Step, and its equation</th>
           <th scope="col">Symbol</th>
           <th scope="col">Value ± u</th>
           <th scope="col">Factor</th>
-          <th scope="col">Equation</th>
         </tr>
       </thead>
       <tbody>
         {steps.map((step, row) => (
           <tr key={step.id} className={step.aside === true ? styles.aside : undefined}>
-            <th scope="row">{step.aside === true ? <span className="quiet">beside: </span> : ''}{step.label}</th>
+            <th scope="row">
+              {step.aside === true ? <span className="quiet">beside: </span> : ''}{step.label}
+              {step.equation !== '' && <span className={`quiet ${styles.equation}`}><EquationText equation={step.equation} /></span>}
+            </th>
             <td><SymbolText symbol={step.symbol} /></td>
             <td><Aligned column={values} row={row} /></td>
             <td className="num">{step.factor === undefined ? '' : `× ${correctingFactor(step.factor)}`}</td>
-            <td className={styles.equation}>{step.equation}</td>
           </tr>
         ))}
       </tbody>

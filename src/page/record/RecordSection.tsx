@@ -1,18 +1,18 @@
 /** The selected record opened: its chain from reading to impulse bit, the other ways beside it, its swing, its budget. */
 import { useState } from 'react';
-import type { RecordResult, Reduction } from '../../reduction/results.ts';
+import type { Budget, RecordResult, Reduction } from '../../reduction/results.ts';
 import { countAgain, setAside } from '../../session/edits.ts';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
 import { recordName } from '../../plots/recordWords.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
+import type { Unit } from '../../units/units.ts';
 import { AsideDialog } from '../readings/AsideDialog.tsx';
 import { BudgetTable } from '../budget/BudgetTable.tsx';
 import { coverageFactor } from '../stated/numberWords.ts';
 import { Quantity } from '../stated/Quantity.tsx';
 import { Beside } from './Beside.tsx';
 import { ChainTable } from './ChainTable.tsx';
-import { RECORD_SECTION } from './openRecord.ts';
 import { SwingPicture } from './SwingPicture.tsx';
 import styles from './record.module.css';
 
@@ -21,7 +21,7 @@ export function RecordSection() {
   const selected = useStore((state) => state.selected);
   const record = reduction?.records.find(({ id }) => id === selected) ?? null;
   return (
-    <section id={RECORD_SECTION} className={styles.section} tabIndex={-1} aria-labelledby="record-heading">
+    <section id="record" className={styles.section} aria-labelledby="record-heading">
       {reduction === null || record === null
         ? <Unchosen reduction={reduction} />
         : <Chosen reduction={reduction} record={record} />}
@@ -80,12 +80,20 @@ function Chosen({ reduction, record }: Props) {
       {configuration !== null && record.angle !== null && record.launch !== null && (
         <SwingPicture angle={record.angle.value} launch={record.launch.value} dampingRatio={configuration.dampingRatio.value} period={configuration.period.value} />
       )}
-      {explained?.budget != null && (
-        <>
-          <h3>What contributes to the uncertainty of {name.charAt(0).toLowerCase() + name.slice(1)}</h3>
-          <BudgetTable budget={explained.budget} of={name.charAt(0).toLowerCase() + name.slice(1)} unit={unit} />
-        </>
+      {explained !== null && explained.budget !== null && (
+        <Contributions budget={explained.budget} of={name.charAt(0).toLowerCase() + name.slice(1)} unit={unit} />
       )}
+    </>
+  );
+}
+
+function Contributions({ budget, of, unit }: { readonly budget: Budget; readonly of: string; readonly unit: Unit }) {
+  const [brief, setBrief] = useState(true);
+  return (
+    <>
+      <h3>What contributes to the uncertainty of {of}</h3>
+      <BudgetTable budget={budget} of={of} unit={unit} brief={brief} />
+      <button type="button" className="plain-button" onClick={() => setBrief(!brief)}>{brief ? 'All columns of this budget' : 'Fewer columns'}</button>
     </>
   );
 }

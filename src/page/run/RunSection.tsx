@@ -9,9 +9,10 @@ import { shotsFigure } from '../../plots/shotsFigure.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
 import { plain, withPlusMinus } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
+import { goToElement } from '../head/goTo.ts';
 import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
-import { openRecord } from '../record/openRecord.ts';
+import { Aligned, alignedTo } from '../stated/Aligned.tsx';
 import { coverageFactor, degreesOfFreedom, roundedAs } from '../stated/numberWords.ts';
 import { Quantity } from '../stated/Quantity.tsx';
 import { SymbolText } from '../words.tsx';
@@ -66,7 +67,9 @@ function Run({ reduction }: { readonly reduction: Reduction }) {
 interface Row {
   readonly label: string;
   readonly symbol: string;
-  readonly text: (run: RunResult, unit: Unit) => string;
+  /** Stands in the column that is aligned at the decimal sign, N·s. */
+  readonly value?: (run: RunResult) => number | null;
+  readonly text?: (run: RunResult, unit: Unit) => string;
 }
 
 /** "1.220 mN·s to 1.283 mN·s". */
@@ -76,15 +79,15 @@ function intervalText({ mean }: RunResult, unit: Unit): string {
 }
 
 const ROWS: readonly Row[] = [
-  { label: 'Mean impulse bit', symbol: 'Ī', text: ({ mean }, unit) => roundedAs(mean.value, mean.u, unit) },
   { label: 'Shots that count', symbol: 'n', text: ({ n, of }) => `${n} of ${of}` },
-  { label: 'Scatter of the shots, standard deviation', symbol: 's', text: ({ scatter }, unit) => (scatter === null ? '–' : plain(scatter, unit, 2)) },
-  { label: 'Scatter’s part of the mean', symbol: 's/√n', text: ({ uScatter }, unit) => plain(uScatter, unit, 2) },
-  { label: 'Common part, not divided by √n', symbol: 'u_common', text: ({ uCommon }, unit) => plain(uCommon, unit, 2) },
-  { label: 'Standard uncertainty of the mean', symbol: 'u', text: ({ mean }, unit) => plain(mean.u, unit, 2) },
+  { label: 'Mean impulse bit', symbol: 'Ī', value: ({ mean }) => mean.value },
+  { label: 'Scatter of the shots, standard deviation', symbol: 's', value: ({ scatter }) => scatter },
+  { label: 'Scatter’s part of the mean', symbol: 's/√n', value: ({ uScatter }) => uScatter },
+  { label: 'Common part, not divided by √n', symbol: 'u_common', value: ({ uCommon }) => uCommon },
+  { label: 'Standard uncertainty of the mean', symbol: 'u', value: ({ mean }) => mean.u },
   { label: 'Effective degrees of freedom', symbol: 'ν_eff', text: ({ mean }) => degreesOfFreedom(mean.dof) },
   { label: 'Coverage factor for 95 %', symbol: 'k', text: ({ mean }) => coverageFactor(mean.k) },
-  { label: 'Expanded uncertainty', symbol: 'U = k·u', text: ({ mean }, unit) => plain(mean.U, unit, 2) },
+  { label: 'Expanded uncertainty', symbol: 'U = k·u', value: ({ mean }) => mean.U },
   { label: '95 % interval of the mean', symbol: 'Ī ± U', text: intervalText },
 ];
 
@@ -96,6 +99,9 @@ interface CompositionProps {
 
 /** What the mean and its uncertainty are made of, beside the same with the set-aside shots counted too. */
 function Composition({ run, withAside, unit }: CompositionProps) {
+  const runs = withAside === null ? [run] : [run, withAside];
+  // One digit more than the answer has, so that sums can be checked.
+  const columns = runs.map((one) => alignedTo(ROWS.map(({ value }) => value?.(one) ?? null), run.mean.u / 10, unit));
   return (
     <SheetTable label="What the run mean is made of">
       <thead>
@@ -107,12 +113,15 @@ function Composition({ run, withAside, unit }: CompositionProps) {
         </tr>
       </thead>
       <tbody>
-        {ROWS.map(({ label, symbol, text }) => (
+        {ROWS.map(({ label, symbol, text }, row) => (
           <tr key={label}>
             <th scope="row">{label}</th>
             <td><SymbolText symbol={symbol} /></td>
-            <td className="num">{text(run, unit)}</td>
-            {withAside !== null && <td className="num quiet">{text(withAside, unit)}</td>}
+            {columns.map((column, index) => (
+              <td key={index === 0 ? 'counts' : 'with'} className={index === 0 ? 'num' : `num ${styles.other}`}>
+                {text === undefined ? <Aligned column={column} row={row} /> : text(runs[index] ?? run, unit)}
+              </td>
+            ))}
           </tr>
         ))}
       </tbody>
@@ -125,7 +134,7 @@ function ShotsFigure({ reduction }: { readonly reduction: Reduction }) {
   const { select } = useActions();
   const inks = useInks();
   const figure = useMemo(() => shotsFigure(reduction, inks), [reduction, inks]);
-  return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={openRecord} />;
+  return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={() => goToElement('record')} />;
 }
 
 function SetAside({ records, unit }: { readonly records: readonly RecordResult[]; readonly unit: Unit }) {

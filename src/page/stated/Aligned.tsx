@@ -19,7 +19,9 @@ export interface AlignedColumn {
   readonly spread: CSSProperties;
 }
 
-const widest = (texts: readonly string[]): CSSProperties => ({ minWidth: `${Math.max(0, ...texts.map((text) => text.length))}ch` });
+/** A decimal point is about half as wide as a figure. */
+const wide = (text: string): number => (text.includes('.') ? text.length - 0.5 : text.length);
+const widest = (texts: readonly string[]): CSSProperties => ({ minWidth: `${Math.max(0, ...texts.map(wide))}ch` });
 
 /** The cells of one column, in order; null where there is none. */
 export function alignedColumn(cells: readonly (Cell | null)[]): AlignedColumn {

@@ -3,9 +3,9 @@ import { useMemo } from 'react';
 import type { Reduction } from '../../reduction/results.ts';
 import { runStrip } from '../../plots/runStrip.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
+import { goToElement } from '../head/goTo.ts';
 import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
-import { openRecord } from '../record/openRecord.ts';
 import styles from './strip.module.css';
 
 export function RunStrip() {
@@ -21,7 +21,7 @@ function Strip({ reduction }: { readonly reduction: Reduction }) {
   const figure = useMemo(() => runStrip(reduction, inks), [reduction, inks]);
   return (
     <div className={styles.strip}>
-      <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={openRecord} slim />
+      <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={() => goToElement('record')} slim />
     </div>
   );
 }
