@@ -5,7 +5,7 @@ import type { Problem } from '../problems/problems.ts';
 import type { Session } from '../session/session.ts';
 import { chooseUnit, tenDigits, withPlusMinus } from '../units/format.ts';
 import { fromSi, siUnit, unitNamed, type Unit } from '../units/units.ts';
-import { csvText, textField } from './csv.ts';
+import { commentRow, csvText, harmless, textField } from './csv.ts';
 
 export interface TableColumn {
   readonly id: string;
@@ -101,21 +101,21 @@ function cellText(cell: TableCell): string {
 }
 
 /**
- * The table as CSV: comment lines (each starts with #) with conditions and methods, a header row with units, a row a
+ * The table as CSV: comment lines (each starts with `#,`) with conditions and methods, a header row with units, a row a
  * record. Numbers have 10 significant digits, so that engines that differ in a last bit write the same bytes.
  *
- * RFC 4180 knows no comments; a reader that does not either finds the header in the first row with more than one field.
+ * RFC 4180 knows no comments; a reader that does not either finds the header in the first row with more than two fields.
  */
 export function perShotCsv(session: Session, reduction: Reduction): string {
   const table = perShotTable(session, reduction);
-  const preamble = conditions(session, reduction).map((line) => [textField(`# ${line}`)]);
+  const preamble = conditions(session, reduction).map(commentRow);
   return csvText([...preamble, table.columns.map((c) => textField(c.header)), ...table.rows.map((row) => row.map(cellText))]);
 }
 
 /** Tab-separated, for a spreadsheet: header and rows, no preamble. */
 export function perShotTabs(session: Session, reduction: Reduction): string {
   const table = perShotTable(session, reduction);
-  const plain = (cell: TableCell): string => (typeof cell === 'string' ? cell.replace(/[\t\r\n]+/g, ' ') : cellText(cell));
+  const plain = (cell: TableCell): string => (typeof cell === 'string' ? harmless(cell.replace(/[\t\r\n]+/g, ' ')) : cellText(cell));
   return [table.columns.map((c) => c.header), ...table.rows.map((row) => row.map(plain))].map((row) => `${row.join('\t')}\n`).join('');
 }
 

@@ -1,4 +1,6 @@
 /** The mean of repeated results whose common part does not shrink and whose scatter is at least what was seen. */
+import { tQuantile } from '../numeric/quantiles.ts';
+import { COVERAGE_PROBABILITY, coverageFactor } from './coverage.ts';
 import type { Source, Family } from './source.ts';
 import { combine, exact, ofSource, type Uncertain } from './uncertain.ts';
 import type { Dimension } from '../units/units.ts';
@@ -34,6 +36,9 @@ export interface PooledOptions {
  * and are not counted twice. The extra source has ν = (n − 1)(u_extra/u_scatter)⁴, which gives the whole scatter
  * the ν = n − 1 of s in Welch–Satterthwaite's sum. With weights 1/u_own², s is the Birge-scaled scatter.
  *
+ * Where s is the smaller, few items may have come out alike by chance; the interval is then not let below the one that
+ * s alone would make, t(n − 1) s/√n: ν is where t(ν) u_own reaches it, and infinite where 1.96 u_own does.
+ *
  * `ownU[i]`: what belongs to item i alone, in the unit of the items, ≥ 0.
  * Source: JCGM 100:2008 4.2.3, 5.2, G.4; methods: "s already contains reading and background randomness".
  */
@@ -49,10 +54,13 @@ export function pooledMean(items: readonly Uncertain[], ownU: readonly number[],
 
   // Weighted scatter about the mean as the variance of the mean: Σ w (y − ȳ)² / (n − 1), which is s²/n for equal weights.
   const seen = items.reduce((sum, item, i) => sum + w[i]! * (item.value - mean.value) ** 2, 0) / (n - 1);
-  const extra = Math.max(0, seen - ownVariance);
+  const dof = dofOfScatter(seen, ownVariance, n);
+  const used = Math.max(seen, ownVariance);
+  // Never quite nothing, so that there is a source to carry ν.
+  const extra = Number.isFinite(dof) ? Math.max(LEAST_EXTRA * used, seen - ownVariance) : 0;
   const scatterSource: Source = {
     id: options.id, label: options.label, symbol: options.symbol, dimension: options.dimension,
-    estimate: 0, u: Math.sqrt(extra), distribution: 't', dof: extra === 0 ? Infinity : (n - 1) * (extra / seen) ** 2, family: options.family,
+    estimate: 0, u: Math.sqrt(extra), distribution: 't', dof: extra === 0 ? Infinity : dof * (extra / used) ** 2, family: options.family,
   };
   return {
     mean: combine([[1, mean], [1, extra === 0 ? exact(0) : ofSource(scatterSource)]]),
@@ -62,6 +70,24 @@ export function pooledMean(items: readonly Uncertain[], ownU: readonly number[],
     uScatter: Math.sqrt(Math.max(seen, ownVariance)),
     readingsInsteadOfScatter: seen < ownVariance,
   };
+}
+
+/** Part of the variance of the scatter that stands for it where the items' own sources explain all of it. */
+const LEAST_EXTRA = 1e-12;
+
+/** ν of the scatter part: n − 1 where s is the larger, from there to infinity as s falls below the items' own part. */
+function dofOfScatter(seen: number, ownVariance: number, n: number): number {
+  if (seen >= ownVariance) return seen === 0 ? Infinity : n - 1;
+  const wanted = coverageFactor(n - 1) * Math.sqrt(seen / ownVariance);
+  if (wanted <= coverageFactor(Infinity)) return Infinity;
+  let [low, high] = [Math.log(n - 1), Math.log(1e6)];
+  // Thirty halvings place ν to eight digits; a k to five would do.
+  for (let i = 0; i < 30; i++) {
+    const middle = (low + high) / 2;
+    if (tQuantile(0.5 + COVERAGE_PROBABILITY / 2, Math.exp(middle)) > wanted) low = middle;
+    else high = middle;
+  }
+  return Math.exp(high);
 }
 
 /** Sources that more than one of these results have directly (a zero reading that served several shots as rest). */
@@ -82,5 +108,8 @@ export function ownParts(items: readonly Uncertain[]): readonly number[] {
   });
 }
 
-/** Weights 1/u², or equal ones where some u is zero. */
-export const weightsOf = (u: readonly number[]): readonly number[] => (u.every((x) => x > 0) ? u.map((x) => 1 / x ** 2) : u.map(() => 1));
+/** Weights (u_min/u)², or equal ones where some u is zero. */
+export function weightsOf(u: readonly number[]): readonly number[] {
+  const least = Math.min(...u);
+  return u.map((x) => (least > 0 ? (least / x) ** 2 : 1));
+}

@@ -96,12 +96,16 @@ function addScaled<K>(into: Map<K, number>, parts: ReadonlyMap<K, number>, c: nu
 
 export type Model<Name extends string> = (x: Readonly<Record<Name, number>>) => number;
 
+/** Quarterings of the step before a model counts as defined at its estimate alone. */
+const NARROWINGS = 12;
+
 /**
  * y = f(x₁, …) with u_i(y) from half-differences Z_i = ½[f(x_i + u_i) − f(x_i − u_i)].
  *
- * Valid: f defined within one standard uncertainty of each input.
+ * Where f ends within one standard uncertainty of an input (a reading near the edge of the ruler's reach, a mass of
+ * twice its uncertainty), the half-difference is taken over a quarter of the step, and so on, and scaled up.
  * Source: JCGM 100:2008 5.1.3 note 2 (clause number from memory).
- * @throws RangeError from the model, where it throws.
+ * @throws RangeError from the model, where it throws at the estimates.
  */
 export function propagate<Name extends string>(model: Model<Name>, inputs: Readonly<Record<Name, Uncertain>>): Uncertain {
   const names = Object.keys(inputs) as Name[];
@@ -114,17 +118,32 @@ export function propagate<Name extends string>(model: Model<Name>, inputs: Reado
     const input = inputs[name];
     const u = standardUncertainty(input);
     if (u === 0) continue;
-    const centre = input.value;
-    x[name] = centre + u;
-    const above = model(x);
-    x[name] = centre - u;
-    const below = model(x);
-    x[name] = centre;
-    const c = (above - below) / (2 * u);
+    const c = slopeAbout(model, x, name, u);
     addScaled(own, input.own, c);
     addScaled(through, input.through, c);
   }
   return { value, own, through };
+}
+
+function slopeAbout<Name extends string>(model: Model<Name>, x: Record<Name, number>, name: Name, u: number): number {
+  const centre = x[name];
+  let failure: unknown = new RangeError(`propagate: no slope of the model in ${name} about ${centre}`);
+  let step = u;
+  for (let i = 0; i <= NARROWINGS; i++, step /= 4) {
+    try {
+      x[name] = centre + step;
+      const above = model(x);
+      x[name] = centre - step;
+      const c = (above - model(x)) / (2 * step);
+      if (Number.isFinite(c)) return c;
+    } catch (ended) {
+      if (!(ended instanceof RangeError)) throw ended;
+      failure = ended;
+    } finally {
+      x[name] = centre;
+    }
+  }
+  throw failure;
 }
 
 /** An uncertain value whose sensitivities are already known: y with ∂y/∂x_j for each x_j (implicit derivatives of a fit). */

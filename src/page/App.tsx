@@ -1,12 +1,10 @@
 /** The one sheet, read from top to bottom as the work goes. */
-import { useRef, useState } from 'react';
+import { Suspense, useEffect, useRef, useState } from 'react';
 import { demoSession } from '../session/demo.ts';
 import { emptySession } from '../session/session.ts';
-import { useActions, useStateNow } from '../store/hooks.tsx';
+import { FollowLater, useActions, useStateNow, useStore } from '../store/hooks.tsx';
 import styles from './App.module.css';
 import { BenchSection } from './bench/BenchSection.tsx';
-import { BudgetSection } from './budget/BudgetSection.tsx';
-import { CalibrationSection } from './calibration/CalibrationSection.tsx';
 import { HeadLine } from './head/HeadLine.tsx';
 import { Help } from './head/Help.tsx';
 import { LookList } from './head/LookList.tsx';
@@ -16,21 +14,22 @@ import { looksLikeSession, openSessionFile, saveSessionFile } from './head/sessi
 import type { Message } from './head/sessionFiles.ts';
 import { Start } from './head/Start.tsx';
 import { useSheetEvents } from './head/useSheetEvents.ts';
+import { BudgetSection, CalibrationSection, fetchSections, RecordSection, RunSection, RunStrip, TableSection } from './later.ts';
 import { ReadingsSection } from './readings/ReadingsSection.tsx';
 import { useReadingsIntake } from './readings/intake.ts';
-import { RecordSection } from './record/RecordSection.tsx';
-import { RunSection } from './run/RunSection.tsx';
-import { RunStrip } from './strip/RunStrip.tsx';
-import { TableSection } from './table/TableSection.tsx';
 
 /** What is to be said when the page opens: what this device kept and could not be read. */
 export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message, 'id'>[] }) {
   const { change, undo, redo } = useActions();
   const now = useStateNow();
   const intake = useReadingsIntake();
+  const hasSheets = useStore((state) => state.session.sheets.length > 0);
   const chooser = useRef<HTMLInputElement>(null);
   const [help, setHelp] = useState(false);
   const [messages, setMessages] = useState<readonly Message[]>(() => arrival.map((message, index) => ({ ...message, id: index })));
+
+  // Where it fails, each section is fetched again when it is needed.
+  useEffect(() => void fetchSections().catch(() => undefined), []);
 
   const say = (sentences: readonly string[]): void => {
     if (sentences.length === 0) return;
@@ -43,7 +42,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
       if (await looksLikeSession(file)) say(await openSessionFile(file, change));
       else tables.push(file);
     }
-    if (tables.length > 0) intake.takeFiles(tables);
+    if (tables.length > 0) await intake.takeFiles(tables);
   }
 
   const choose = () => chooser.current?.click();
@@ -64,10 +63,9 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
       <HeadLine onOpen={choose} onSave={save} onDemo={openDemo} onNew={() => change('begin a new session', () => emptySession())} onHelp={() => setHelp(true)} />
       <input
         ref={chooser}
-        className="visually-hidden"
+        hidden
         type="file"
         multiple
-        tabIndex={-1}
         aria-label="Open a session file or tables of readings"
         onChange={(event) => {
           const files = [...(event.target.files ?? [])];
@@ -76,21 +74,25 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
         }}
       />
       <Messages messages={messages} onTake={(id) => setMessages((said) => said.filter((message) => message.id !== id))} />
-      <ResultLine />
-      <RunStrip />
       <main>
+        <ResultLine />
+        {hasSheets && <Suspense><RunStrip /></Suspense>}
         <Start onChoose={choose} onDemo={openDemo} />
-        <div className={styles.pair}>
+        <div className={hasSheets ? `${styles.pair} ${styles.withRecord}` : styles.pair}>
           <BenchSection />
-          <div className={styles.beside}>
-            <RecordSection />
-          </div>
+          {hasSheets && <div className={styles.beside}><Suspense><RecordSection /></Suspense></div>}
         </div>
         <ReadingsSection />
-        <CalibrationSection />
-        <RunSection />
-        <BudgetSection />
-        <TableSection />
+        {hasSheets && (
+          <Suspense>
+            <FollowLater>
+              <CalibrationSection />
+              <RunSection />
+              <BudgetSection />
+              <TableSection />
+            </FollowLater>
+          </Suspense>
+        )}
         <LookList />
       </main>
       <Help open={help} onClose={() => setHelp(false)} />

@@ -42,7 +42,7 @@ export function logDecrement(firstAmplitude: number, laterAmplitude: number, cyc
 export function restFromThree(x0: number, x1: number, x2: number): { readonly rest: number; readonly halfDecrement: number } {
   const spread = x0 + x2 - 2 * x1;
   const ratio = (x0 - x1) / (x2 - x1);
-  if (!(ratio > 0) || spread === 0) throw new RangeError('rest from three turning points: they do not alternate');
+  if (!(ratio > 0 && ratio < Infinity)) throw new RangeError('rest from three turning points: they do not alternate');
   return { rest: (x0 * x2 - x1 * x1) / spread, halfDecrement: Math.log(ratio) };
 }
 
@@ -74,11 +74,13 @@ const SETTLED = 1e-11;
  * n_k = Σ ln|θ_j/θ_{j+1}|/(δ/2), which is k(1 + O(θ²)) and hardly depends on δ; n_k is computed from the present fit
  * until nothing changes. Sensitivities hold n_k fixed, which leaves out a part O(ζ θ²) of them.
  *
- * Valid: at least three angles in all (a rest reading counts as one) and two turning points; ζ < 1.
+ * Valid: at least two turning points in the order of their numbers and a rest reading, or three turning points not all of
+ * one side; ζ < 1. Where turning points are missing and no rest was read, two ratios may fit (numbers 0, 1, 3: e^{−δ/2} and
+ * 1 − e^{−δ/2}); the one found is that of the lighter damping.
  */
 export function ratioFromSwings(rest: number | null, points: readonly TurningPoint[], gravityShare: number): RatioFromSwings {
   const failed = (status: RatioFromSwings['status']): RatioFromSwings => ({ status, dampingRatio: 0, rest: 0, amplitude: 0, sensitivities: [] });
-  if (points.length < 2 || points.length + (rest === null ? 0 : 1) < 3) return failed('tooFew');
+  if (points.length < 2 || (rest === null && (points.length < 3 || !closestOpposite(points)))) return failed('tooFew');
   const last = points[points.length - 1]!.number;
   let counts: readonly number[] = Array.from({ length: last + 1 }, (_, k) => k);
   let fit = startOfFit(rest, points);
@@ -116,26 +118,46 @@ interface Fit {
   readonly decaySensitivities: readonly number[];
 }
 
+/** Rounds that bring the rest of a swing with missing turning points from halfway to where the decay puts it. */
+const ROUNDS_OF_START = 20;
+
 function startOfFit(rest: number | null, points: readonly TurningPoint[]): Fit | null {
-  const [a, b] = [points[0]!, points[1]!];
-  let z = rest;
-  if (z === null) {
-    const c = points[2]!;
-    if (b.number !== a.number + 1 || c.number !== a.number + 2) z = (a.angle + b.angle) / 2;
-    else {
-      const ratio = (a.angle - b.angle) / (c.angle - b.angle);
-      if (!(ratio > 0)) return null;
-      z = restFromThree(a.angle, b.angle, c.angle).rest;
-    }
+  if (rest !== null) return startAbout(rest, points);
+  const [a, b, c] = [points[0]!, points[1]!, points[2]!];
+  if (b.number === a.number + 1 && c.number === a.number + 2) {
+    const ratio = (a.angle - b.angle) / (c.angle - b.angle);
+    return ratio > 0 && ratio < Infinity ? startAbout(restFromThree(a.angle, b.angle, c.angle).rest, points) : null;
   }
-  const rest0 = z;
-  const first = a.angle - rest0;
-  const fallen = (point: TurningPoint): number => ((point.angle - rest0) / first) * ((point.number - a.number) % 2 === 0 ? 1 : -1);
+  const [near, far] = closestOpposite(points)!;
+  let left = 1;
+  let start: Fit | null = null;
+  for (let i = 0; i < ROUNDS_OF_START; i++) {
+    start = startAbout((far.angle + left * near.angle) / (1 + left), points);
+    if (!start) return null;
+    left = Math.exp(-start.decay * (far.number - near.number));
+  }
+  return start;
+}
+
+/** The two turning points of opposite sides that lie the fewest half cycles apart; null where all are of one side. */
+function closestOpposite(points: readonly TurningPoint[]): readonly [TurningPoint, TurningPoint] | null {
+  let best: readonly [TurningPoint, TurningPoint] | null = null;
+  for (const [i, a] of points.entries()) {
+    const b = points.find((point, j) => j > i && (point.number - a.number) % 2 !== 0);
+    if (b && (!best || b.number - a.number < best[1].number - best[0].number)) best = [a, b];
+  }
+  return best;
+}
+
+function startAbout(rest: number, points: readonly TurningPoint[]): Fit | null {
+  const a = points[0]!;
+  const first = a.angle - rest;
+  const fallen = (point: TurningPoint): number => ((point.angle - rest) / first) * ((point.number - a.number) % 2 === 0 ? 1 : -1);
   // The last point not yet fallen below a third tells the decay best (methods 1.4); later ones may be lost in the readings' scatter.
-  const far = points.findLast((point, i) => i > 0 && fallen(point) > 1 / 3) ?? b;
+  const far = points.findLast((point, i) => i > 0 && fallen(point) > 1 / 3) ?? points[1]!;
   if (!(fallen(far) > 0)) return null;
   const decay = -Math.log(fallen(far)) / (far.number - a.number);
-  return { rest: z, amplitude: first * Math.exp(decay * a.number), decay, decaySensitivities: [] };
+  return { rest, amplitude: first * Math.exp(decay * a.number), decay, decaySensitivities: [] };
 }
 
 /** Gauss–Newton in (rest, amplitude, decay) with the counts of half cycles held. */

@@ -7,12 +7,14 @@ const NODES = 64;
  * T/T₀ of an undamped swing of amplitude A with gravity share p:
  * T/T₀ = (2/π) ∫₀^{π/2} A cos φ / √(2[p(cos θ − cos A) + (1 − p)(A² − θ²)/2]) dφ, θ = A sin φ.
  *
- * Valid: 0 ≤ A < π (p = 1: to 1e-12 up to 2.4 rad), 0 ≤ p. At p = 1 it is 2K(sin A/2)/π.
+ * Valid: 0 ≤ A < π (p = 1: to 1e-14 up to 170°), 0 ≤ p, above 1 where gravity and flexure still restore at A. At p = 1 it is 2K(sin A/2)/π.
  * Source: energy integral; series 1 + p A²/16 + … (methods 1.5).
+ * @throws RangeError where A is no amplitude of a swing.
  */
 export function periodRatio(amplitude: number, gravityShare: number): number {
   const A = Math.abs(amplitude);
   if (!(A < Math.PI)) throw new RangeError(`period ratio: amplitude ${amplitude} rad is not below π`);
+  if (gravityShare * Math.sin(A) + (1 - gravityShare) * A < 0) throw new RangeError(`period ratio: nothing restores at ${amplitude} rad with gravity share ${gravityShare}`);
   if (A < 1e-4) return 1 + (gravityShare * A * A) / 16;
   let sum = 0;
   for (let i = 0; i < NODES; i++) {

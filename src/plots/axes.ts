@@ -10,7 +10,7 @@ export interface Range {
 /** Free space beyond the outermost value, as a part of the span. */
 const MARGIN = 0.08;
 /** What is set aside widens a range up to this many times its span; beyond, it is drawn at the edge. */
-const WIDENS_UP_TO = 2;
+const WIDENS_UP_TO = 1.5;
 
 /** Range that holds every value with some space around; a single value gets a span of its own size. */
 export function roomFor(values: readonly number[], margin = MARGIN): Range {

@@ -11,7 +11,7 @@ import { impulseUnit } from './impulseUnit.ts';
 import { markSeries } from './marks.ts';
 import { KIND_WORDS, readingOf } from './recordWords.ts';
 
-const HEIGHT = 112;
+const HEIGHT = 104;
 
 /** A record's mark in the strip or among the shots; a record without an impulse bit stands on the zero line. */
 export function impulseMark(record: RecordResult, x: number, unit: Unit): Mark {
@@ -68,9 +68,8 @@ function countOfKinds(records: readonly RecordResult[]): string {
 }
 
 /** Every record of the run at its place and impulse bit, N·s in a fitting unit. */
-export function runStrip(reduction: Reduction, inks: Inks): Figure {
-  const { records, run } = reduction;
-  const unit = impulseUnit(reduction);
+export function runStrip({ records, run }: Pick<Reduction, 'records' | 'run'>, inks: Inks): Figure {
+  const unit = impulseUnit({ records, run });
   const marks = records.map((record) => impulseMark(record, record.order, unit));
   const { columns, series } = markSeries(marks, inks);
   const reach = marks.flatMap((mark) => [mark.y - mark.whisker, mark.y + mark.whisker]);

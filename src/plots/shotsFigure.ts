@@ -13,10 +13,9 @@ const HEIGHT = 320;
 const span = (mark: Mark): number[] => [mark.y - mark.whisker, mark.y + mark.whisker];
 
 /** The shots, counted from one in the order of the run. What is set aside and lies far off is drawn at the edge, and the summary says so. */
-export function shotsFigure(reduction: Reduction, inks: Inks): Figure {
-  const { run } = reduction;
-  const unit = impulseUnit(reduction);
-  const shots = reduction.records.filter(({ kind }) => kind === 'shot');
+export function shotsFigure({ records, run }: Pick<Reduction, 'records' | 'run'>, inks: Inks): Figure {
+  const unit = impulseUnit({ records, run });
+  const shots = records.filter(({ kind }) => kind === 'shot');
   const marks = shots.map((shot, index) => impulseMark(shot, index + 1, unit));
   const { columns, series } = markSeries(marks, inks);
   const mean = meanIn(run, unit);

@@ -97,9 +97,11 @@ function fromZeroUp({ low, high }: Range): Range {
 /** Slope of a calibration line in the units of the axes. */
 const slopeIn = (factor: number, unit: Unit): number => fromSi(factor, unit) / fromSi(1, SWING_UNIT);
 
+/** What the figure is drawn from. */
+type Calibrated = Pick<Reduction, 'records' | 'chosen' | 'calibrations' | 'ranges'>;
+
 /** φ in mrad along, angular impulse up; the line is K·φ of the chosen calibration with ± U of K. */
-export function tapsAndShots(reduction: Reduction, inks: Inks): Figure {
-  const { records, chosen, calibrations, ranges } = reduction;
+export function tapsAndShots({ records, chosen, calibrations, ranges }: Calibrated, inks: Inks): Figure {
   const placed = records.filter(isPlaced).sort((a, b) => a.launch.value - b.launch.value);
   const unit = chooseUnit(placed.map((record) => record.angularImpulse.value), 'angularImpulse');
   const marks = placed.map((record) => placedMark(record, unit));

@@ -18,9 +18,10 @@ export function placeInWords({ sheetName, line, column, record }: Place): string
 /** One problem as a sentence or two, beginning with where it is. */
 export function sentence(found: Problem): string {
   const where = placeInWords(found.place);
-  const said = words(found);
-  if (where === '') return said.charAt(0).toUpperCase() + said.slice(1);
-  return `${where.charAt(0).toUpperCase()}${where.slice(1)}: ${said}`;
+  if (where === '') return sentenceInPlace(found);
+  // A file's name is left as it is.
+  const begins = found.place.sheetName === undefined ? where.charAt(0).toUpperCase() + where.slice(1) : where;
+  return `${begins}: ${words(found)}`;
 }
 
 /** The same without its place, for where the place is plain to see. */
@@ -30,7 +31,8 @@ export function sentenceInPlace(found: Problem): string {
 }
 
 function words({ code, place, facts, weight }: Problem): string {
-  const text = (name: string, otherwise = ''): string => (facts[name] === undefined ? otherwise : String(facts[name]));
+  const has = (name: string): boolean => facts[name] !== undefined && facts[name] !== '';
+  const text = (name: string, otherwise = '…'): string => (has(name) ? String(facts[name]) : otherwise);
   const number = (name: string): number => (typeof facts[name] === 'number' ? facts[name] : Number.NaN);
   const figure = (name: string, figures = FIGURES): string => shown(number(name), figures);
   const quantity = (name: string, dimension: Dimension): string => {
@@ -40,7 +42,7 @@ function words({ code, place, facts, weight }: Problem): string {
   const many = (name: string, one: string, more = `${one}s`): string => (number(name) === 1 ? `1 ${one}` : `${text(name, 'some')} ${more}`);
   const entry = text('label', place.entry ?? 'this entry');
   const found = text('found');
-  const role = ROLE_WORDS[text('role')] ?? text('role', 'this column');
+  const role = ROLE_WORDS[text('role')] ?? 'reading';
   const configuration = text('configuration') === 'taps' ? 'for the taps' : text('configuration') === 'shots' ? 'for the shots' : '';
   const ofConfiguration = configuration === '' ? '' : ` ${configuration}`;
 
@@ -60,9 +62,9 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'column-twice':
       return `a second column is marked as ${role}; ${quotedColumn(text('used'))} is used. Mark one of them otherwise.`;
     case 'column-proposed-by-values':
-      return `taken as ${role}${inUnit(text('unit'), text('unitFrom'))}, told from the values and the place of the column, not from a header. Check it, and choose the meaning above the table.`;
+      return `taken as ${role}${inUnit(text('unit', ''), text('unitFrom'))}, told from the values and the place of the column, not from a header. Check it, and choose the meaning above the table.`;
     case 'column-unit-assumed':
-      return `no unit${text('unknownUnit') === '' ? '' : ` that is known (found “${text('unknownUnit')}”)`} is given for ${role}; ${text('unit')} is taken${text('unitFrom') === 'others' ? ', as in the other columns of readings' : ''}. Check it, and choose the unit above the table.`;
+      return `no unit${!has('unknownUnit') ? '' : ` that is known (found “${text('unknownUnit')}”)`} is given for ${role}; ${text('unit')} is taken${text('unitFrom') === 'others' ? ', as in the other columns of readings' : ''}. Check it, and choose the unit above the table.`;
     case 'decimal-comma-in-comma-file':
       return weight === 'stops'
         ? `“${found}” looks like a number with a decimal comma, cut in two because commas part the cells here, so no number of this row is used. Save the table with semicolons or tabs between the cells, or with decimal points.`
@@ -146,7 +148,7 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'entry-missing':
       return `${entry} is missing. Write it with its unit and uncertainty.`;
     case 'entry-not-a-number':
-      return `${entry}: “${found}” is not a number with a unit. Write it as 118.0 ± 0.3${text('unit') === '' || text('unit') === '1' ? '' : ` ${text('unit')}`}, say.`;
+      return `${entry}: “${found}” is not a number with a unit. Write it as 118.0 ± 0.3${!has('unit') || text('unit') === '1' ? '' : ` ${text('unit')}`}, say.`;
     case 'entry-unknown-unit':
       return `${entry}: the unit in “${found}” is not known. Write it in ${text('unit', 'a usual unit')}, say.`;
     case 'entry-wrong-kind-of-unit':
@@ -175,7 +177,7 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'session-newer':
       return `this session was saved by a later version (format ${text('version')}; known here: ${text('known')}). Open it with that version.`;
     case 'session-damaged':
-      return `a piece of the session could not be read and was left out: ${text('where')}${found === '' ? '' : `, where “${found}” stands`}. The rest is as saved; check that piece.`;
+      return `a piece of the session could not be read and was left out: ${text('where')}${!has('found') ? '' : `, where “${found}” stands`}. The rest is as saved; check that piece.`;
   }
 }
 

@@ -56,3 +56,11 @@ export function isComment(cells: readonly string[]): boolean {
   if (/^[#%]\s*$/.test(first)) return filled(cells) < 2;
   return !(/^#\s?\d+\s*$/.test(first) && numericCells(cells.slice(1)) > 0);
 }
+
+/** Marks that people put where there is no reading. */
+const NO_READING = /^(?:[-–—.]+|n\.?\/?a\.?|nan|none|null)$/i;
+
+export function isNoReading(text: string): boolean {
+  const trimmed = text.trim();
+  return trimmed === '' || NO_READING.test(trimmed);
+}

@@ -1,5 +1,5 @@
 /** What the cells of one column look like: numbers, clock times, kind words, text, and the unit written in them. */
-import { looksClock, looksNumeric } from './cells.ts';
+import { isNoReading, looksClock, looksNumeric } from './cells.ts';
 import { columnUnit } from './headerUnits.ts';
 import { kindOfWord } from './kinds.ts';
 import type { TableRead } from './table.ts';
@@ -44,7 +44,7 @@ export function profileColumn(table: TableRead, index: number): ColumnProfile {
   let longest = 0;
   for (const { cells } of table.rows.slice(0, ROWS_LOOKED_AT)) {
     const text = (cells[index] ?? '').trim();
-    if (text === '') {
+    if (isNoReading(text)) {
       numbers.push(null);
       continue;
     }

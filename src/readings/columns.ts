@@ -59,7 +59,7 @@ export interface Claim {
   role: Role | null;
   code: ReasonCode;
   facts: Record<string, string | number>;
-  /** Part of the header that the known words cover, for choosing between two columns of one role. */
+  /** Part of the header that the known words cover, then their length, for choosing between two columns of one role. */
   strength: number;
   sure: boolean;
 }
@@ -109,6 +109,8 @@ function proposeAfresh(table: TableRead): Proposal[] {
 
 const MOSTLY = 0.8;
 
+const fitsRole = (unit: Unit | null, role: Role): boolean => unit !== null && ROLE_DIMENSIONS[role].some((d) => unitNamed(unit.symbol, d) !== null);
+
 function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
   const claim: Claim = { role: null, code: 'nothing', facts: {}, strength: 0, sure: false };
   const header = table.headers[profile.index] ?? '';
@@ -117,17 +119,18 @@ function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
     const byHeader = read?.role === 'kind';
     return { role: 'kind', code: byHeader ? 'header' : 'values', facts: byHeader ? { word: read.phrase } : { seen: 'kindWords' }, strength: 1, sure: true };
   }
-  if (read === null) return claim;
+  const written = writtenUnit(table, profile);
+  // One letter with a foreign unit ("C (mN s)") is a name, not a word.
+  if (read === null || (read.phrase.length <= 2 && written.from === 'header' && !fitsRole(written.unit, read.role))) return claim;
   claim.facts = { word: read.phrase };
-  claim.strength = read.covers;
+  claim.strength = read.covers + read.phrase.length / 1000;
   const { role } = read;
   if (role === 'kind' && profile.full > 0 && profile.kind === 0) {
     return { ...claim, role: 'ignored', code: 'values', facts: { ...claim.facts, seen: 'noKindWords' } };
   }
-  const { unit, unknown } = writtenUnit(table, profile);
-  const dimensions = ROLE_DIMENSIONS[role];
-  const needsNumbers = dimensions.length > 0;
-  const mismatch = needsNumbers && unit !== null && !dimensions.some((d) => unitNamed(unit.symbol, d) !== null);
+  const { unit, unknown } = written;
+  const needsNumbers = ROLE_DIMENSIONS[role].length > 0;
+  const mismatch = needsNumbers && unit !== null && !fitsRole(unit, role);
   const strange = needsNumbers && !isReading(role) && unit === null && unknown !== '';
   if (mismatch || strange) {
     return { ...claim, role: 'ignored', code: 'unit', facts: { ...claim.facts, wrongUnit: unit?.symbol ?? unknown, wanted: role } };

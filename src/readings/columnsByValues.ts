@@ -6,6 +6,9 @@ import type { Role } from './meanings.ts';
 
 const MOSTLY = 0.8;
 
+/** Columns of numbers compared with each other as rest and swing; a hand table has far fewer. */
+const MOST_READINGS = 40;
+
 /** A swing back is never wider than the swing before it, one reading step aside. */
 const DECAY_ALLOWANCE = 1.05;
 
@@ -32,7 +35,7 @@ export function placeByValues(profiles: readonly ColumnProfile[], claims: readon
     else if (looksLikeVolts(profile) && !has('voltage') && isAsideFromReadings(profile, profiles, claims)) set(index, 'voltage', 'values', 'voltsBySize');
     else readings.push(profile);
   }
-  placeReadings(profiles, claims, readings, set);
+  placeReadings(profiles, claims, readings.slice(0, MOST_READINGS), set);
   for (const [index, claim] of claims.entries()) if (claim.role === null) set(index, 'ignored', 'nothing', 'noSign');
 }
 
@@ -46,6 +49,10 @@ function isAsideFromReadings(profile: ColumnProfile, profiles: readonly ColumnPr
 }
 
 type SetRole = (index: number, role: Role, code: Claim['code'], seen: string, facts?: Claim['facts']) => void;
+
+/** Weights of place against wander, the latter as a part of the throw: the rest is nearly always written just before the swing. */
+const COLUMN_BETWEEN = 0.3;
+const RIGHT_OF_SWING = 0.25;
 
 /** How badly one column serves as the rest of another: wanders, lies far, stands right of it. Infinity where it cannot. */
 function misfit(rest: ColumnProfile, swing: ColumnProfile): number {
@@ -61,7 +68,7 @@ function misfit(rest: ColumnProfile, swing: ColumnProfile): number {
   const wander = wanderOf(rest.numbers) / Math.abs(middle);
   if (wander > 1) return Infinity;
   const size = Math.abs(medianOf(rest.numbers) ?? 0) + Math.abs(medianOf(swing.numbers) ?? 0);
-  const apart = rest.index < swing.index ? 0.3 * (swing.index - rest.index - 1) : 1;
+  const apart = rest.index < swing.index ? COLUMN_BETWEEN * (swing.index - rest.index - 1) : RIGHT_OF_SWING;
   return wander + Math.abs(middle) / size + apart;
 }
 

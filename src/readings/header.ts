@@ -15,6 +15,9 @@ export interface HeaderFound {
 /** A header stands within this many rows that are not blank, or there is none. */
 const HEADER_WITHIN = 60;
 
+/** A header is known by its first cells, however many follow. */
+const CELLS_LOOKED_AT = 100;
+
 export function findHeader(content: readonly CutRow[], comments: readonly CutRow[]): HeaderFound {
   const usual = usualWidth(content);
   const firstReadings = content.findIndex(({ cells }) => holdsReadings(cells, usual));
@@ -66,7 +69,7 @@ function bestHeading(before: readonly CutRow[], usual: number, readingsFollow: b
   for (const [i, { cells }] of before.entries()) {
     const full = filled(cells);
     if (full < least || (isUnitsRow(cells) && best !== null)) continue;
-    const known = cells.filter((cell) => !looksNumeric(cell) && isHeading(cell)).length;
+    const known = cells.slice(0, CELLS_LOOKED_AT).filter((cell) => !looksNumeric(cell) && isHeading(cell)).length;
     if (numericCells(cells) * 3 > full && known * 2 < full) continue;
     const score = known * 1000 + full;
     if (score > bestScore || (score === bestScore && usual === 1 && readingsFollow)) [best, bestScore] = [i, score];

@@ -1,6 +1,7 @@
 /** The unit that a column's header, or the units row beneath it, names. */
 import { unitNamed } from '../units/units.ts';
 import type { Dimension, Unit } from '../units/units.ts';
+import { LONGEST_HEADER } from './words.ts';
 
 const BRACKETED = /[([{]\s*([^()[\]{}]+?)\s*[)\]}]\s*$/u;
 const AFTER_MARK = /(?:\s*\/\s+|\s+\/\s*|,\s*|\sin\s+|\sen\s+|:\s*|_|\s[–-]\s+)([^\s,]+(?:\s?Hg)?)\s*$/u;
@@ -8,10 +9,13 @@ const AFTER_MARK = /(?:\s*\/\s+|\s+\/\s*|,\s*|\sin\s+|\sen\s+|:\s*|_|\s[–-]\s+
 /** Dimensions that a column of readings can have. */
 const COLUMN_DIMENSIONS: readonly Dimension[] = ['length', 'angle', 'voltage', 'pressure', 'impulse', 'time', 'mass', 'angularImpulse', 'number'];
 
+/** No unit of the table is spelled with more characters. */
+const LONGEST_UNIT = 40;
+
 /** The unit that a text in a table names; null for texts that are units only elsewhere (N and S of a latitude). */
 export function columnUnit(text: string): Unit | null {
   const bare = text.trim();
-  if (bare === '' || bare === '1') return null;
+  if (bare === '' || bare === '1' || bare.length > LONGEST_UNIT) return null;
   for (const dimension of COLUMN_DIMENSIONS) {
     const unit = unitNamed(bare, dimension);
     if (unit !== null) return unit;
@@ -24,6 +28,7 @@ export function columnUnit(text: string): Unit | null {
  * What stands in brackets is given back whether it is a known unit or not; null: none.
  */
 export function unitTextOf(header: string): string | null {
+  if (header.length > LONGEST_HEADER) return null;
   const bracketed = BRACKETED.exec(header)?.[1];
   if (bracketed !== undefined) return bracketed;
   const after = AFTER_MARK.exec(header)?.[1];
@@ -33,9 +38,10 @@ export function unitTextOf(header: string): string | null {
   return whole !== null && whole.dimension !== 'time' ? header : null;
 }
 
-/** Text of a units-row cell without its brackets. */
+/** Text of a units-row cell without the brackets around it. */
 export function unitInBrackets(cell: string): string {
-  return BRACKETED.exec(cell)?.[1] ?? cell.trim();
+  const bare = cell.trim();
+  return /^[([{]\s*(.*?)\s*[)\]}]$/u.exec(bare)?.[1] ?? bare;
 }
 
 /** A row beneath the header that holds nothing but units, dashes and blanks. */

@@ -1,8 +1,9 @@
 /** Rows of a sheet to records: shots, taps, blanks, zeros and free swings, with every cell read or a problem in its place. */
 import { problem } from '../problems/problems.ts';
 import type { Place, Problem } from '../problems/problems.ts';
-import { isNoReading, readCell } from './cellReads.ts';
+import { readCell } from './cellReads.ts';
 import type { CellRead } from './cellReads.ts';
+import { isNoReading } from './cells.ts';
 import { columnName, proposalProblems } from './columns.ts';
 import { kindOfWord } from './kinds.ts';
 import type { ColumnMeaning, RecordKind, Role } from './meanings.ts';
@@ -106,9 +107,7 @@ export function recordsOf(sheet: SheetShape, table: TableRead, kinds: Readonly<R
   problems.push(...columnProblems(bench, place), ...proposalProblems(table, sheet.columns, place));
   const rows = [...table.rows.map((row): Row => editedRow(sheet, String(row.line), row.cells, byLine.get(row.line) ?? [])), ...addedRows(sheet)];
   const records = rows.map((row) => recordOf(bench, row, kinds[`${sheet.id}/${row.line}`], place));
-  if (!bench.single.has('firstSwing') && records.some(({ kind }) => kind !== 'zero' && kind !== 'freeSwing')) {
-    problems.push(problem('column-missing', 'stops', place, { role: 'firstSwing' }));
-  }
+  problems.push(...missingColumns(bench, records, place));
   return { records, problems };
 }
 
@@ -118,6 +117,16 @@ function columnProblems({ sheet, headers, single }: Bench, place: Place): Proble
     if (first === undefined || first === i) return [];
     return [problem('column-twice', 'doubt', { ...place, column: columnName(headers, i) }, { role, used: columnName(headers, first) })];
   });
+}
+
+/** Without a first-swing column rows look like zeros; they count as such without a word only where someone has said so. */
+function missingColumns({ single }: Bench, records: readonly SheetRecord[], place: Place): Problem[] {
+  const found: Problem[] = [];
+  const swung = records.some(({ kind }) => kind !== 'zero' && kind !== 'freeSwing');
+  const guessed = records.some(({ kind, kindBy }) => kind === 'zero' && kindBy === 'filledIn');
+  if (!single.has('firstSwing') && (swung || guessed)) found.push(problem('column-missing', swung ? 'stops' : 'doubt', place, { role: 'firstSwing' }));
+  if (!single.has('rest') && records.length > 0) found.push(problem('column-missing', 'doubt', place, { role: 'rest' }));
+  return found;
 }
 
 function editedRow(sheet: SheetShape, line: string, cells: readonly string[], problems: readonly Problem[]): Row {

@@ -67,26 +67,51 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'nota|notas|comentario|comentarios|observacion|observaciones|commento|osservazioni|observacao|observacoes|opmerking|opmerkingen|uwaga|uwagi|poznamka|poznamky|' +
     'примечание|примечания|замечание|заметка|備考|メモ|注記|备注|说明|注',
   ignored:
-    'impulse bit|i bit|ibit|hammer drawn to|drawn to|hammer angle|rebound|time for|time of * swings|mass|weight|temperature|temp|energy|capacitance|current|date|zero after|rest after|after|' +
+    'impulse bit|i bit|ibit|hammer drawn to|drawn to|hammer angle|rebound|time for|mass|weight|temperature|temp|energy|capacitance|current|date|zero after|rest after|after|' +
     'datum|masse|temperatur|energie|kapazitat|strom|ruhelage nachher|null nachher|nachher|fecha|masa|temperatura|energia|data|massa|zero apres|apres|repos apres|despues|dopo|depois|na afloop|po strzale|po vystrelu|после|после выстрела|дата|日付|質量|温度|日期|质量',
 };
 
 interface Phrase {
   readonly role: Role;
   readonly words: string;
-  readonly stem: boolean;
-  readonly anywhere: boolean;
 }
 
 const SCRIPT_WITHOUT_SPACES = /[\p{Script=Han}\p{Script=Hiragana}\p{Script=Katakana}]/u;
 
-const LEXICON: readonly Phrase[] = (Object.entries(PHRASES) as [Role, string][]).flatMap(([role, list]) =>
-  list.split('|').map((raw) => {
-    const stem = raw.endsWith('*');
-    const words = plainWords(stem ? raw.slice(0, -1) : raw);
-    return { role, words, stem, anywhere: SCRIPT_WITHOUT_SPACES.test(raw) };
-  }).filter((p) => p.words !== ''),
-);
+/** Phrases of whole words by themselves; the most words that one has. */
+const WHOLE = new Map<string, Role>();
+const STEMS: Phrase[] = [];
+const ANYWHERE: Phrase[] = [];
+for (const [role, list] of Object.entries(PHRASES) as [Role, string][]) {
+  for (const raw of list.split('|')) {
+    const words = plainWords(raw.replace(/\*$/, ''));
+    if (words === '') continue;
+    if (SCRIPT_WITHOUT_SPACES.test(raw)) ANYWHERE.push({ role, words });
+    else if (raw.endsWith('*')) STEMS.push({ role, words });
+    else if (!WHOLE.has(words)) WHOLE.set(words, role);
+  }
+}
+const MOST_WORDS = Math.max(...[...WHOLE.keys()].map((words) => words.split(' ').length));
+
+/** The longest known phrase in a header; the first of the list where two are as long. */
+function longestPhrase(bare: string): Phrase | null {
+  let best: Phrase | null = null;
+  const offer = (role: Role, words: string): void => {
+    if (best === null || words.length > best.words.length) best = { role, words };
+  };
+  const tokens = bare.split(' ');
+  for (let from = 0; from < tokens.length; from++) {
+    for (let to = from + 1; to <= Math.min(tokens.length, from + MOST_WORDS); to++) {
+      const words = tokens.slice(from, to).join(' ');
+      const role = WHOLE.get(words);
+      if (role !== undefined) offer(role, words);
+    }
+  }
+  const padded = ` ${bare}`;
+  for (const { role, words } of STEMS) if (padded.includes(` ${words}`)) offer(role, words);
+  if (SCRIPT_WITHOUT_SPACES.test(bare)) for (const { role, words } of ANYWHERE) if (bare.includes(words)) offer(role, words);
+  return best;
+}
 
 /** What a header says: the role, the phrase that told it, and how much of the header the phrase covers (0…1). */
 export interface HeaderRead {
@@ -95,8 +120,12 @@ export interface HeaderRead {
   readonly covers: number;
 }
 
+/** Longer cells are text, not headers, and are not searched for words and units. */
+export const LONGEST_HEADER = 120;
+
 /** Role told by a header's words, unit and brackets left aside; the longest phrase wins. null where no word is known. */
 export function roleOfHeader(header: string): HeaderRead | null {
+  if (header.length > LONGEST_HEADER) return null;
   const bare = plainWords(header.replace(/[([{][^)\]}]*[)\]}]\s*$/u, ' ')) || plainWords(header);
   if (bare === '') return null;
   const counted = /(?:^| )(?:swing|throw|peak|deflection|ausschlag|elongation|oscil\w*|uitslag|wychylenie|vychylka|размах|x|a|p) ?(\d+)(?: |$)/u.exec(bare);
@@ -105,15 +134,6 @@ export function roleOfHeader(header: string): HeaderRead | null {
     if (n === 1) return { role: 'firstSwing', phrase: counted[0].trim(), covers: 1 };
     if (n >= 2 && n < 100) return { role: 'nextSwing', phrase: counted[0].trim(), covers: 1 };
   }
-  let best: Phrase | null = null;
-  for (const phrase of LEXICON) {
-    if ((best === null || phrase.words.length > best.words.length) && holds(bare, phrase)) best = phrase;
-  }
+  const best = longestPhrase(bare);
   return best === null ? null : { role: best.role, phrase: best.words, covers: best.words.length / bare.length };
-}
-
-function holds(bare: string, { words, stem, anywhere }: Phrase): boolean {
-  if (anywhere) return bare.includes(words);
-  const padded = ` ${bare} `;
-  return padded.includes(stem ? ` ${words}` : ` ${words} `);
 }

@@ -53,6 +53,10 @@ const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread',
 
 const LARGE_RELATIVE = 0.3;
 
+/** SI. Beyond these nothing of a bench is measured, and squares of squares would leave the range of numbers. */
+export const GREATEST = 1e12;
+export const LEAST = 1e-18;
+
 export function readBench(session: Session): BenchRead {
   const { used } = entriesInUse(session.choices);
   const problems: Problem[] = [];
@@ -101,9 +105,10 @@ function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choi
     problems.push(problem(code, 'stops', place, { label: kind.label, found: text, unit: unitIfNone }));
     return blank();
   }
-  const bad = kind.range === 'positive' ? !(got.value > 0) : kind.range === 'notNegative' ? !(got.value >= 0) : !Number.isFinite(got.value);
+  const isAbsurd = Math.abs(got.value) > GREATEST || (got.spread ?? 0) > GREATEST || (kind.range === 'positive' && got.value < LEAST);
+  const bad = isAbsurd || (kind.range === 'positive' ? !(got.value > 0) : kind.range === 'notNegative' ? !(got.value >= 0) : !Number.isFinite(got.value));
   if (bad) {
-    problems.push(problem('entry-out-of-range', 'stops', place, { label: kind.label, found: text, range: kind.range }));
+    problems.push(problem('entry-out-of-range', 'stops', place, { label: kind.label, found: text, range: isAbsurd && got.value > 0 ? 'any' : kind.range }));
     return blank();
   }
   const k = typed.k.trim() === '' ? 2 : readNumber(typed.k);

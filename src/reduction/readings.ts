@@ -125,8 +125,8 @@ function reading(record: SessionRecord, cell: CellRead, part: string, label: str
 }
 
 /**
- * Readings of every record in the order of the run. A record without a rest reading takes the last zero, or failing
- * that the last rest, before it; that reading's source is then shared by all who take it.
+ * Readings of every record in the order of the run. A record without a rest reading takes the last zero
+ * before it; that reading's source is then shared by all who take it.
  */
 export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpread, dimension: Dimension): { readonly byRecord: ReadonlyMap<string, Readings>; readonly problems: readonly Problem[] } {
   const byRecord = new Map<string, Readings>();
@@ -143,11 +143,13 @@ export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpr
       byRecord.set(record.id, { restFrom, rest, first: null, next: [] });
       continue;
     }
-    if (!rest && lastZero && record.firstSwing) {
+    // A rest that was written and cannot be read is not the zero's: the rest may have moved since.
+    const spoiled = record.problems.some((p) => p.weight === 'stops' && p.facts['role'] === 'rest');
+    if (!rest && !spoiled && lastZero && record.firstSwing) {
       rest = lastZero.rest;
       restFrom = lastZero.line;
       problems.push(problem('record-rest-from-zero', 'note', place, { zeroLine: lastZero.line }));
-    } else if (!rest && record.firstSwing && record.kind !== 'freeSwing') {
+    } else if (!rest && !spoiled && record.firstSwing && record.kind !== 'freeSwing') {
       problems.push(problem('record-no-rest', 'stops', place, {}));
     }
     const first = record.firstSwing ? reading(record, record.firstSwing, 'first', 'First swing', 'x₁', spread, dimension, common('first', record.kind)) : null;

@@ -45,7 +45,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   problems.push(...read.problems);
 
   const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
-  const period = timedPeriod(bench, stand, damping, choices);
+  const period = timedPeriod(session, bench, stand, damping, problems);
   const bodies = standByRoute(stand, choices, period, problems);
   const unknown = anchor(exact(stand.shareUnknown));
   const shares: ByConfiguration<Anchor> = bodies
@@ -73,9 +73,9 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const chosenRun = runs[way];
   const anyAside = shots.some((s) => !counts(s.record));
 
-  const results = recordResults(swings, damping, taps, impulse, factors, form, way, setAside, [...problems, ...sheets.recordProblems]);
+  const results = recordResults(swings, damping, taps, impulse, factors, form, way, setAside);
   problems.push(...sheets.recordProblems);
-  const difference = differenceOf(runs.geometry, runs.taps);
+  const difference = chosenRun ? differenceOf(factors[form].geometry.shots, factors[form].taps.shots) : null;
   problems.push(...remarksOnRun({ choices, records: results, run: chosenRun?.result ?? null, difference, damping, spread, taps: factors[form].tapCalibration, bench, period: periodCheck(stand, period, choices), sheets: sheets.sheets }));
 
   const opened = explain === null ? undefined : swings.find((s) => s.record.id === explain);
@@ -83,7 +83,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     problems,
     entries: bench.all,
     sheets: sheets.sheets,
-    records: results,
+    records: withProblems(results, problems),
     gravity: stand.gravity ? stated(stand.gravity) : null,
     configurations: { shots: configuration('shots', bodies, damping), taps: configuration('taps', bodies, damping) },
     damping: { way: damping.way, ratio: stated(damping.ratio.shots), logDecrement: stated(propagate(({ z }) => Math.sign(z) * decrementOfRatio(Math.min(Math.abs(z), 0.999)), { z: damping.ratio.shots })), records: damping.records },
@@ -111,13 +111,19 @@ function scaleOf(bench: BenchRead, choices: Choices): Scale | null {
   return { way: choices.readingWay, far, scale: valueOf(bench, 'scaleFactor') ?? exact(1), mark: choices.readingWay === 'angle' ? null : valueOf(bench, 'scaleMark'), sense: choices.scaleRunsBackward ? -1 : 1 };
 }
 
-/** T₀ of the configuration in which the period was timed; null where none is typed. */
-function timedPeriod(bench: BenchRead, stand: Stand, damping: Damping, choices: Choices): Anchor | null {
+/** T₀ of the configuration in which the period was timed; null where none is typed, or the amplitude is none of a swing. */
+function timedPeriod(session: Session, bench: BenchRead, stand: Stand, damping: Damping, problems: Problem[]): Anchor | null {
   const timed = valueOf(bench, 'period');
   if (!timed) return null;
+  const { periodTimedAs } = session.choices;
+  const amplitude = valueOf(bench, 'periodAmplitude') ?? exact(0);
+  if (!(amplitude.value < Math.PI)) {
+    problems.push(problem('entry-out-of-range', 'stops', { entry: 'periodAmplitude' }, { label: ENTRIES.periodAmplitude.label, found: session.entries.periodAmplitude?.text ?? '', range: 'any' }));
+    return null;
+  }
   return anchor(propagate(undampedSmallPeriod, {
-    timed, dampingRatio: damping.ratio[choices.periodTimedAs], amplitude: valueOf(bench, 'periodAmplitude') ?? exact(0), cycles: valueOf(bench, 'periodCycles') ?? exact(0),
-    gravityShare: stand.masses?.[choices.periodTimedAs].gravityShare ?? exact(stand.shareUnknown),
+    timed, dampingRatio: damping.ratio[periodTimedAs], amplitude, cycles: valueOf(bench, 'periodCycles') ?? exact(0),
+    gravityShare: stand.masses?.[periodTimedAs].gravityShare ?? exact(stand.shareUnknown),
   }));
 }
 
@@ -175,12 +181,10 @@ function configuration(name: ConfigurationName, bodies: ByConfiguration<Body> | 
 
 function recordResults(
   swings: readonly Swing[], damping: Damping, taps: readonly TapKnown[], impulse: (swing: Swing, form: Form, way: Way) => Uncertain | null,
-  factors: Readonly<Record<Form, Factors>>, form: Form, way: Way, setAside: (record: SessionRecord) => string | null, problems: readonly Problem[],
+  factors: Readonly<Record<Form, Factors>>, form: Form, way: Way, setAside: (record: SessionRecord) => string | null,
 ): readonly RecordResult[] {
   const knownOf = new Map(taps.map((tap) => [tap.swing.record.id, tap]));
-  const problemsOf = new Map<string, Problem[]>();
-  for (const p of problems) if (p.place.record !== undefined) problemsOf.set(p.place.record, [...(problemsOf.get(p.place.record) ?? []), p]);
-  const anchors = [factors[form].geometry, factors[form].taps].flatMap((f) => [f.shots, f.taps]).filter((a): a is Anchor => a !== null);
+  const anchors = [factors.full, factors.smallAngle].flatMap((f) => [f.geometry.shots, f.geometry.taps, f.taps.shots, f.taps.taps]).filter((a): a is Anchor => a !== null);
   const finite = finiteSources([...anchors, damping.ratio.shots, damping.ratio.taps]);
   const result = (y: Uncertain | null): ReturnType<typeof expanded> | null => (y ? expanded(y, finite) : null);
   const impulses = swings.map((swing) => impulse(swing, form, way));
@@ -198,7 +202,7 @@ function recordResults(
     const moment = known ? known.angularImpulse : swing.launch && factor ? propagate(({ k, f }) => k * f, { k: factor, f: swing.launch[form] }) : null;
     return {
       id: record.id, sheet: record.sheet, line: record.line, order: i + 1, kind: record.kind, kindBy: record.kindBy, label: record.label, note: record.note,
-      setAside: setAside(record), problems: problemsOf.get(record.id) ?? [],
+      setAside: setAside(record), problems: [],
       readings: {
         rest: swing.readings.rest?.value ?? null, firstSwing: swing.readings.first?.value ?? null, nextSwings: record.nextSwings.map((cell) => cell?.value ?? null),
         time: record.time?.value ?? null, voltage: record.voltage?.value ?? null, pressure: record.pressure?.value ?? null, tapImpulse: record.tapImpulse?.value ?? null,
@@ -214,6 +218,21 @@ function recordResults(
       knownImpulse: known ? stated(known.impulse) : null,
       angularImpulse: moment ? stated(moment) : null,
     };
+  });
+}
+
+/** Each record with the problems that are its own, those of the run's remarks among them. */
+function withProblems(records: readonly RecordResult[], problems: readonly Problem[]): readonly RecordResult[] {
+  const byRecord = new Map<string, Problem[]>();
+  for (const p of problems) {
+    if (p.place.record === undefined) continue;
+    const found = byRecord.get(p.place.record);
+    if (found) found.push(p);
+    else byRecord.set(p.place.record, [p]);
+  }
+  return records.map((record) => {
+    const own = byRecord.get(record.id);
+    return own ? { ...record, problems: own } : record;
   });
 }
 

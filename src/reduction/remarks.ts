@@ -1,11 +1,11 @@
 /** What a colleague would say on looking over the run: facts for "things to look at", none of which changes a number. */
-import { combine, standardUncertainty } from '../metrology/uncertain.ts';
-import { problem, type Problem } from '../problems/problems.ts';
+import { propagate, standardUncertainty, type Uncertain } from '../metrology/uncertain.ts';
+import { problem, type Place, type Problem } from '../problems/problems.ts';
 import type { Choices } from '../session/session.ts';
 import type { BenchRead } from './entries.ts';
 import type { ReadingSpread } from './readings.ts';
 import type { Difference, PeriodCheck, RecordResult, RunResult, SheetResult } from './results.ts';
-import type { Run } from './run.ts';
+import { placeOf } from './sheets.ts';
 import type { TapCalibration } from './shots.ts';
 import type { Damping } from './swings.ts';
 
@@ -18,12 +18,15 @@ const FEW_SHOTS = 5;
 /** Pressures that differ by more than this ratio are not one condition. */
 const PRESSURE_RATIO = 1.5;
 
-/** Taps against geometry on the run mean, shared sources cancelling as they should. */
-export function differenceOf(geometry: Run | null, taps: Run | null): Difference | null {
-  if (!geometry || !taps || geometry.mean.value === 0) return null;
-  const gap = combine([[1, taps.mean], [-1, geometry.mean]]);
+/**
+ * Taps against geometry: both ways reduce the same shots, so the run means differ as their calibration factors do,
+ * K_taps/K_geometry − 1; the shots' scatter, their readings and the lever arm of the thrust cancel.
+ */
+export function differenceOf(geometry: Uncertain | null, taps: Uncertain | null): Difference | null {
+  if (!geometry || !taps) return null;
+  const gap = propagate(({ t, g }) => t / g - 1, { t: taps, g: geometry });
   const u = standardUncertainty(gap);
-  return { relative: { value: gap.value / geometry.mean.value, u: Math.abs(u / geometry.mean.value) }, inU: u === 0 ? 0 : gap.value / u };
+  return { relative: { value: gap.value, u }, inU: u === 0 ? 0 : gap.value / u };
 }
 
 export interface RunFacts {
@@ -44,20 +47,23 @@ export function remarksOnRun(x: RunFacts): readonly Problem[] {
   const shots = counted.filter((r) => r.kind === 'shot');
   const swung = counted.filter((r) => r.angle !== null && (r.kind === 'shot' || r.kind === 'tap'));
   return [
-    ...senseOfThrows(x.records, swung),
+    ...senseOfThrows(x.records, swung, x.sheets),
     ...shotRemarks(x, shots),
     ...calibrationRemarks(x, counted, shots),
     ...pressureRemarks(shots),
   ];
 }
 
-function senseOfThrows(all: readonly RecordResult[], swung: readonly RecordResult[]): Problem[] {
+function placeOfResult(record: RecordResult, sheets: readonly SheetResult[]): Place {
+  return placeOf({ ...record, sheetName: sheets.find(({ id }) => id === record.sheet)?.name ?? '' });
+}
+
+function senseOfThrows(all: readonly RecordResult[], swung: readonly RecordResult[], sheets: readonly SheetResult[]): Problem[] {
   const negative = swung.filter((r) => r.angle!.value < 0);
   if (swung.length > 1 && negative.length === swung.length) return [problem('all-throws-negative', 'doubt', { entry: 'scaleRunsBackward' }, { records: swung.length })];
-  const place = (r: RecordResult): { sheet: string; record: string; line: number } => ({ sheet: r.sheet, record: r.id, line: Number(r.line) || 0 });
   return [
-    ...negative.map((r) => problem('record-negative-throw', 'doubt', place(r), {})),
-    ...all.filter((r) => r.setAside === null && r.angle !== null && r.angle.value === 0 && r.kind !== 'blank' && r.kind !== 'zero').map((r) => problem('record-no-throw', 'doubt', place(r), { kind: r.kind })),
+    ...negative.map((r) => problem('record-negative-throw', 'doubt', placeOfResult(r, sheets), {})),
+    ...all.filter((r) => r.setAside === null && r.angle !== null && r.angle.value === 0 && r.kind !== 'blank' && r.kind !== 'zero').map((r) => problem('record-no-throw', 'doubt', placeOfResult(r, sheets), { kind: r.kind })),
   ];
 }
 
@@ -82,7 +88,7 @@ function shotRemarks(x: RunFacts, shots: readonly RecordResult[]): Problem[] {
     if (!shot.full || !shot.smallAngle || !shot.impulseBit) continue;
     const gap = shot.smallAngle.value - shot.full.value;
     if (Math.abs(gap) > shot.impulseBit.u) {
-      found.push(problem('forms-differ', 'note', { sheet: shot.sheet, record: shot.id, line: Number(shot.line) || 0 }, { percent: (100 * gap) / shot.full.value, inU: gap / shot.impulseBit.u }));
+      found.push(problem('forms-differ', 'note', placeOfResult(shot, x.sheets), { percent: (100 * gap) / shot.full.value, inU: gap / shot.impulseBit.u }));
     }
   }
   return found;

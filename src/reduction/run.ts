@@ -1,9 +1,9 @@
 /** Seventh step: the run mean, its scatter and what is common to all shots. */
 import { budgetLines, type Line } from '../metrology/budget.ts';
 import { expanded, finiteSources } from '../metrology/coverage.ts';
-import { ownParts, pooledMean, sharedDirectly } from '../metrology/pooled.ts';
+import { ownParts, pooledMean } from '../metrology/pooled.ts';
 import type { Source } from '../metrology/source.ts';
-import { contributions, standardUncertainty, type Uncertain } from '../metrology/uncertain.ts';
+import { standardUncertainty, type Uncertain } from '../metrology/uncertain.ts';
 import { familyOf } from './readings.ts';
 import type { Budget, BudgetLine, Result, RunResult } from './results.ts';
 
@@ -14,6 +14,8 @@ export interface Run {
 
 /**
  * Run mean with u² = s²/n + (common part)²; the common part is not divided by √n. `of` counts the shots with those set aside.
+ * The common part takes in what a shot's readings do to all shots through the damping ratio, with its correlation to what
+ * they do to that shot, so that the two parts make up u.
  *
  * Source: JCGM 100:2008 4.2.3, 5.2 (clause numbers from memory); methods 3.
  */
@@ -23,15 +25,10 @@ export function runOf(items: readonly Uncertain[], of: number, typed: readonly S
   const pooled = pooledMean(items, own, { id: 'shots.scatter', label: 'Scatter of the shots', symbol: 's/√n', dimension: 'impulse', family: familyOf('shot') });
   const mean = pooled.mean;
   const result = expanded(mean, finiteSources([mean]));
-  const alone = new Set<Source>();
-  const shared = sharedDirectly(items);
-  for (const item of items) for (const source of item.own.keys()) if (!shared.has(source)) alone.add(source);
-  let common = 0;
-  for (const [source, part] of contributions(mean)) if (!alone.has(source) && source.id !== 'shots.scatter') common += part * part;
   return {
     mean,
     result: {
-      n: pooled.n, of, mean: result, scatter: pooled.scatter, uScatter: pooled.uScatter, uCommon: Math.sqrt(common),
+      n: pooled.n, of, mean: result, scatter: pooled.scatter, uScatter: pooled.uScatter, uCommon: Math.sqrt(Math.max(0, result.u ** 2 - pooled.uScatter ** 2)),
       readingsInsteadOfScatter: pooled.readingsInsteadOfScatter, budget: budgetOfRun(mean, result, typed, familyOf('shot').id),
     },
   };

@@ -21,7 +21,7 @@ export interface SheetsRead {
   readonly recordProblems: readonly Problem[];
 }
 
-export function placeOf(record: SessionRecord): Place {
+export function placeOf(record: Pick<SessionRecord, 'id' | 'line' | 'sheet' | 'sheetName'>): Place {
   const line = Number(record.line);
   const place = { sheet: record.sheet, sheetName: record.sheetName, record: record.id };
   return record.line.startsWith('+') || !Number.isFinite(line) ? place : { ...place, line };

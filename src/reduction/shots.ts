@@ -7,7 +7,7 @@ import { configurationChange } from '../pendulum/forms.ts';
 import { launchOfFirstSwing } from '../pendulum/launch.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import { swingFromMark, swingFromRest } from '../readings/angle.ts';
-import type { BenchRead } from './entries.ts';
+import { LEAST, type BenchRead } from './entries.ts';
 import { valueOf } from './stand.ts';
 import { familyOf, type Readings } from './readings.ts';
 import { factorOfBody, type Body, type ConfigurationName } from './stand.ts';
@@ -107,7 +107,7 @@ export function calibrationFromTaps(taps: readonly TapKnown[], form: Form): TapC
   const factors: Uncertain[] = [];
   for (const { swing, angularImpulse } of taps) {
     const launch = swing.launch?.[form];
-    if (!launch || Math.abs(launch.value) <= LEAST_THROW * standardUncertainty(launch) || !(angularImpulse.value !== 0)) continue;
+    if (!launch || Math.abs(launch.value) <= LEAST_THROW * standardUncertainty(launch) || Math.abs(angularImpulse.value) < LEAST) continue;
     factors.push(propagate(factorOfTap, { moment: angularImpulse, launch }));
   }
   if (factors.length === 0) return null;

@@ -8,7 +8,8 @@ import { problem, type Problem } from '../problems/problems.ts';
 import { angleOfReading, type ReadingWay } from '../readings/angle.ts';
 import type { Session } from '../session/session.ts';
 import { readQuantity } from '../units/quantity.ts';
-import type { BenchRead } from './entries.ts';
+import { unitNamed } from '../units/units.ts';
+import { GREATEST, type BenchRead } from './entries.ts';
 import type { Readings, ReadingSpread } from './readings.ts';
 import { factorOfBody, type ConfigurationName, type Stand } from './stand.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
@@ -118,21 +119,37 @@ function swingsByConfiguration(
   return found;
 }
 
+/** Secant steps in which the plumb point of a free swing is found from the swing itself; five reach the last digits of the widest. */
+const PLUMB_STEPS = 12;
+
 /** ζ of one record, with its readings' contributions by the fit's sensitivities; null where the swings do not decay. */
 function ratioOfRecord(rest: Uncertain | null, turning: readonly { readonly number: number; readonly reading: Uncertain }[], scale: Scale, gravityShare: number): Uncertain | null {
-  // A fixed mark near the swing's middle serves where none is typed; the ratio does not depend on it but for the scale's curvature.
-  const mark = scale.mark?.value ?? rest?.value ?? (turning[0]!.reading.value + turning[1]!.reading.value) / 2;
+  const middle = (turning[0]!.reading.value + turning[1]!.reading.value) / 2;
+  let mark = scale.mark?.value ?? rest?.value ?? middle;
   const angle = (x: number): number => scale.sense * angleOfReading(scale.way, { x, mark, far: scale.far.value, scale: scale.scale.value });
-  const slope = (reading: Uncertain): number => {
-    const u = standardUncertainty(reading);
-    return u === 0 ? 0 : (angle(reading.value + u) - angle(reading.value - u)) / (2 * u);
+  const slopeAt = (x: number, h: number): number => (h === 0 ? 0 : (angle(x + h) - angle(x - h)) / (2 * h));
+  const fitFrom = (): ReturnType<typeof ratioFromSwings> => {
+    const points: TurningPoint[] = turning.map(({ number, reading }) => ({ number, angle: angle(reading.value) }));
+    return ratioFromSwings(rest ? angle(rest.value) : null, points, gravityShare);
   };
   try {
-    const points: TurningPoint[] = turning.map(({ number, reading }) => ({ number, angle: angle(reading.value) }));
-    const fit = ratioFromSwings(rest ? angle(rest.value) : null, points, gravityShare);
+    let fit = fitFrom();
+    // With neither mark nor rest the plumb point is where the swing comes to rest: only there is the scale's curvature the same on both sides.
+    if (scale.mark === null && rest === null && scale.way !== 'angle') {
+      let before = mark;
+      mark += fit.rest / slopeAt(mark, 1e-3 * Math.abs(turning[0]!.reading.value - middle));
+      for (let i = 0; i < PLUMB_STEPS && fit.status === 'found' && mark !== before; i++) {
+        const restBefore = fit.rest;
+        fit = fitFrom();
+        if (Math.abs(fit.rest) <= 1e-14 * Math.abs(fit.amplitude) || fit.rest === restBefore) break;
+        const next = mark - (fit.rest * (mark - before)) / (fit.rest - restBefore);
+        before = mark;
+        mark = next;
+      }
+    }
     if (fit.status !== 'found') return null;
     const inputs = [...(rest ? [rest] : []), ...turning.map((t) => t.reading)];
-    return withSensitivities(fit.dampingRatio, inputs.map((x, i) => [fit.sensitivities[i]! * slope(x), x] as const));
+    return withSensitivities(fit.dampingRatio, inputs.map((x, i) => [fit.sensitivities[i]! * slopeAt(x.value, standardUncertainty(x)), x] as const));
   } catch (failure) {
     if (failure instanceof RangeError) return null;
     throw failure;
@@ -145,11 +162,14 @@ function typedFreeSwing(session: Session, spread: ReadingSpread, problems: Probl
   if (text === '') return [];
   const dimension = session.choices.readingWay === 'angle' ? 'angle' : 'length';
   const cells = text.split(/[;\n\t]+|,\s+|\s+(?=[-−+]?[\d.,])/).map((cell) => cell.trim()).filter((cell) => cell !== '');
-  const unitOfLast = /[^\d.,\s+\-−()]+\S*$/.exec(cells.at(-1) ?? '')?.[0] ?? (dimension === 'angle' ? 'mrad' : 'mm');
+  const unitIfNone = dimension === 'angle' ? 'mrad' : 'mm';
+  const unitTyped = /[^\d.,\s+\-−()]+\S*$/.exec(cells.at(-1) ?? '')?.[0];
+  // A unit that is none of this dimension is told by the last cell itself.
+  const unitOfLast = (unitTyped === undefined ? null : unitNamed(unitTyped, dimension)?.symbol) ?? unitIfNone;
   const readings: Uncertain[] = [];
   for (const [i, cell] of cells.entries()) {
     const got = readQuantity(cell, dimension, unitOfLast);
-    if (!got.ok) {
+    if (!got.ok || Math.abs(got.value) > GREATEST || (got.spread ?? 0) > GREATEST) {
       problems.push(problem('entry-not-a-number', 'stops', { entry: 'freeSwing' }, { label: `Free swing, turning point ${i + 1}`, found: cell, unit: unitOfLast }));
       return [];
     }

@@ -2,6 +2,7 @@
 import { createStore } from 'zustand/vanilla';
 import type { StoreApi } from 'zustand/vanilla';
 import type { Session } from '../session/session.ts';
+import { share } from './share.ts';
 import type { Actions, AskForReduction, State } from './store.ts';
 
 export interface FirstswingStore {
@@ -46,8 +47,10 @@ export function createFirstswingStore({ ask, first, now = Date.now }: StoreParts
         askAgain = false;
         const { session, selected } = state.getState();
         try {
-          const reduction = await ask(session, selected);
-          if (state.getState().session === session) state.setState({ reduction, failure: null });
+          const answer = await ask(session, selected);
+          if (state.getState().session === session) {
+            state.setState(({ reduction }) => ({ reduction: share(reduction, answer), failure: null }));
+          }
         } catch (reason) {
           if (state.getState().session === session) state.setState({ failure: messageOf(reason) });
         }

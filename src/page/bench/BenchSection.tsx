@@ -1,6 +1,6 @@
 /** The bench: the pendulum drawn to scale, and beside the drawing every quantity that was measured on it. */
 import { useMemo, useState } from 'react';
-import type { FocusEvent, ReactNode } from 'react';
+import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { entriesInUse } from '../../reduction/entries.ts';
@@ -62,15 +62,15 @@ export function BenchSection() {
           read={readOf(name)}
           problems={used.has(name) ? problemsOf(name) : NO_PROBLEMS}
           unused={!used.has(name)}
+          onFocus={setFocused}
           onChange={(patch) => change(kind.label.toLowerCase(), setEntry(name, patch), `entry.${name}`)}
         />
       );
     });
   }
 
-  const noteFocus = (event: FocusEvent) => setFocused(event.target.id.replace(/^entry-/, ''));
   return (
-    <section id="bench" aria-labelledby="bench-heading" className={styles.bench} onFocus={noteFocus} onBlur={() => setFocused(null)}>
+    <section id="bench" aria-labelledby="bench-heading" className={styles.bench}>
       <h2 id="bench-heading" tabIndex={-1}>Bench</h2>
       <p className="quiet">
         Type each quantity with its unit and its uncertainty: <span className="num">118.0 ± 0.3 mm</span>, <span className="num">118.0(3) mm</span>, <span className="num">12,5 g</span>.

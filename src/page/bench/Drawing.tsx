@@ -35,7 +35,7 @@ export function Drawing({ bench, wordsOf, throwWords, scaleWords, focused, onPic
       viewBox={`0 0 ${drawing.width} ${drawing.height}`}
       width={drawing.width}
       height={drawing.height}
-      role="img"
+      role="group"
       aria-label={`The pendulum to scale${throwWords === null ? '' : `, largest throw ${throwWords}`}`}
     >
       <g transform={`translate(${pivot.x} ${pivot.y})`}>
@@ -75,10 +75,7 @@ export function Drawing({ bench, wordsOf, throwWords, scaleWords, focused, onPic
         )}
         <circle className={styles.pivot} r="3.5" />
         {drawing.words.map((word) => <Side key={word.id} word={word} />)}
-        {throwWords !== null && ruler === null && laser === null && (
-          <text className={styles.throw} transform={`rotate(${-degrees(drawing.angle)}) translate(0 ${drawing.bodyEnd + 24})`}>{throwWords}</text>
-        )}
-        {throwWords !== null && (ruler !== null || laser !== null) && (
+        {throwWords !== null && (
           <text className={styles.throw} x="0" y={Math.max(drawing.bodyEnd, ruler?.y ?? 0) + 31}>{throwWords}</text>
         )}
       </g>

@@ -19,6 +19,8 @@ interface Props {
   /** Kept, and without effect under the present choices. */
   readonly unused?: boolean;
   readonly onChange: (patch: Partial<Entry>) => void;
+  /** The entry whose field has the focus, null when it leaves: the drawing marks it. */
+  readonly onFocus?: (name: string | null) => void;
 }
 
 /** What ± can mean; the short words stand in the field, the long ones explain them. */
@@ -34,11 +36,16 @@ const SPREAD: readonly (readonly [PlusMinus, string])[] = [
   ['expanded', 'as U, k ='],
 ];
 
-export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, unused = false, onChange }: Props) {
+/** The echo says "exact" already, and what cannot be read need not be called missing too. */
+const isSaid = ({ code }: Problem, all: readonly Problem[]): boolean =>
+  code !== 'entry-no-uncertainty' && (code !== 'entry-missing' || all.every((other) => other.code === code || other.weight !== 'stops'));
+
+export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, unused = false, onChange, onFocus }: Props) {
   const id = `entry-${name}`;
   const below = `${id}-below`;
   const isSpread = kind.isSpread === true;
   const echo = read === undefined || entry.text.trim() === '' ? null : echoOf(read, isSpread);
+  const said = problems.filter((problem) => isSaid(problem, problems));
   const stopped = entry.text.trim() !== '' && problems.some((problem) => problem.weight === 'stops');
   return (
     <div className={unused ? `${styles.row} ${styles.unused}` : styles.row}>
@@ -55,6 +62,8 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
         placeholder={kind.unit === '1' ? '' : kind.unit}
         aria-describedby={below}
         aria-invalid={stopped}
+        onFocus={() => onFocus?.(name)}
+        onBlur={() => onFocus?.(null)}
         onChange={(event) => onChange({ text: event.target.value })}
       />
       <span className={styles.meaning}>
@@ -85,7 +94,7 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
       <div id={below} className={styles.below}>
         <span className={echo === null ? styles.hint : 'num'}>{echo ?? kind.hint}</span>
         {unused && <span> · not used by the present choices</span>}
-        {problems.map((problem) => (
+        {said.map((problem) => (
           <p key={problem.code} className={problem.weight === 'note' ? styles.note : 'look'}>{sentence(problem)}</p>
         ))}
       </div>

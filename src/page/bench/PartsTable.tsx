@@ -35,7 +35,7 @@ export function PartsTable({ parts, readOf, problemsOf, change }: Props) {
                 onChange={(event) => change(`name of part ${index + 1}`, setPartName(part.id, event.target.value), `part.${part.id}.name`)}
               />
               <button type="button" className="plain-button" onClick={() => change(`take out ${title}`, removePart(part.id))}>
-                take out<span className="visually-hidden"> {title}</span>
+                take out{' '}<span className="visually-hidden">{title}</span>
               </button>
             </div>
             {NAMES.map((name) => {

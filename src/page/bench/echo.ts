@@ -17,7 +17,7 @@ export function echoOf(read: EntryRead, isSpread: boolean): string | null {
   const found = unitNamed(read.unit, read.dimension);
   if (value === null || read.value === null || found === null) return null;
   if (isSpread) return `u = ${value}`;
-  if (read.u === 0) return `${value}, exact`;
+  if (read.u === 0) return `${value}, taken as exact`;
   const parts = alignedParts(read.value, read.u, found);
   return `${value}, u = ${withUnit(parts.spread, parts.unit)}${read.distribution === 'rectangular' ? ' (rectangular)' : ''}`;
 }

@@ -60,6 +60,8 @@ const LEFT = 168;
 /** Between neighbouring dimension lines, and from the swing to the first. */
 const LINE_STEP = 30;
 const LINE_START = 34;
+/** Room to the right of the pendulum at rest that dimension lines leave to the swing. */
+const SWING_KEPT_CLEAR = 60;
 const WORD_STEP = 17;
 /** Longest drawn laser path: the screen is usually metres away and is drawn broken. */
 const LASER_PATH = 118;
@@ -143,7 +145,8 @@ export function layDrawing(bench: BenchLengths): Drawing {
     const metres = typed.get(entry) ?? null;
     return { entry, metres: metres ?? assumed[entry] ?? body, assumed: metres === null };
   });
-  const firstLine = pivot.x + swing + LINE_START;
+  // A wide swing passes behind the dimension lines, or the drawing would grow too wide to read.
+  const firstLine = pivot.x + Math.min(swing, SWING_KEPT_CLEAR) + LINE_START;
   const lines = placed
     .toSorted((a, b) => a.metres - b.metres)
     .map(({ entry, metres, assumed: isAssumed }, index): DimensionLine => ({ entry, x: firstLine + index * LINE_STEP, y: metres * scale, assumed: isAssumed }));
@@ -157,7 +160,7 @@ export function layDrawing(bench: BenchLengths): Drawing {
   if (massY !== null) marks.push({ id: 'calibrationMass', y: massY });
 
   return {
-    width: firstLine + (lines.length - 1) * LINE_STEP + 22,
+    width: Math.max(firstLine + (lines.length - 1) * LINE_STEP, pivot.x + swing) + 22,
     height: HEIGHT,
     pivot,
     angle,

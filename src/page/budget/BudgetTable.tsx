@@ -35,7 +35,7 @@ const unitOf = (line: BudgetLine): Unit => chooseUnit(line.estimate === null || 
 function sensitivityText(line: BudgetLine, x: Unit, impulse: Unit): string {
   if (line.sensitivity === null) return '–';
   const perUnit = plain(line.sensitivity * x.factor, impulse, 3);
-  return x.symbol === '1' ? perUnit : `${perUnit}/${x.symbol.includes('/') ? `(${x.symbol})` : x.symbol}`;
+  return x.symbol === '1' ? perUnit : `${perUnit}/${/[·/]/.test(x.symbol) ? `(${x.symbol})` : x.symbol}`;
 }
 
 const inItsUnit = (line: BudgetLine, value: number | null, digits: number): string =>
@@ -78,7 +78,7 @@ export function BudgetTable({ budget, of, unit, brief = false }: Props) {
             <td className="num">{inItsUnit(line, line.u, 2)}</td>
             {!brief && (
               <>
-                <td>{line.distribution}</td>
+                <td className={stated.words}>{line.distribution}</td>
                 <td className={`num ${stated.right}`}>{degreesOfFreedom(line.dof)}</td>
                 <td className="num">{sensitivityText(line, unitOf(line), unit)}</td>
               </>

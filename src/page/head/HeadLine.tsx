@@ -28,6 +28,7 @@ export function HeadLine({ onOpen, onSave, onDemo, onNew, onHelp }: Props) {
   const redone = useStore((state) => state.future[0]?.what);
   return (
     <header className={styles.head}>
+      <h1 className="visually-hidden">Firstswing</h1>
       <div className={styles.title}>
         {TITLE_FIELDS.map(([name, label, placeholder]) => (
           <input

@@ -44,9 +44,7 @@ export function Help({ open, onClose }: { readonly open: boolean; readonly onClo
           </div>
         ))}
       </dl>
-      <form method="dialog">
-        <button type="submit">Close</button>
-      </form>
+      <button type="button" onClick={onClose}>Close</button>
     </dialog>
   );
 }

@@ -3,7 +3,7 @@ import { useMemo, useState } from 'react';
 import type { Problem, Weight } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
-import { goToElement, placeOf, placeWords } from './goTo.ts';
+import { goToProblem, placeWords } from './goTo.ts';
 import styles from './head.module.css';
 
 const WEIGHTS: readonly Weight[] = ['stops', 'doubt', 'note'];
@@ -27,7 +27,7 @@ export function LookList() {
   );
   const count = problems?.length ?? 0;
   return (
-    <section id="look" aria-labelledby="look-heading" className={styles.lookList}>
+    <section id="look" aria-labelledby="look-heading">
       <h2 id="look-heading" tabIndex={-1}>Things to look at</h2>
       {count === 0 && <p className="quiet">Nothing now.</p>}
       {groups.map(({ weight, found }) => found.length > 0 && <Group key={weight} weight={weight} problems={found} />)}
@@ -39,11 +39,6 @@ function Group({ weight, problems }: { readonly weight: Weight; readonly problem
   const { select } = useActions();
   const [all, setAll] = useState(false);
   const shown = all ? problems : problems.slice(0, SHOWN_FIRST);
-  function go(problem: Problem): void {
-    const place = placeOf(problem);
-    if (problem.place.record !== undefined) select(problem.place.record);
-    goToElement(place ?? 'record');
-  }
   return (
     <div className={styles.lookGroup}>
       <h3>{WEIGHT_WORDS[weight]}</h3>
@@ -52,7 +47,7 @@ function Group({ weight, problems }: { readonly weight: Weight; readonly problem
           <li key={keyOf(problem, index)} className={styles[weight]}>
             <span>{sentence(problem)}</span>{' '}
             {problem.effect !== undefined && <span className="num unit">{problem.effect.toFixed(1)} u of the run mean</span>}{' '}
-            <button type="button" className="plain-button" onClick={() => go(problem)}>{placeWords(problem.place)}</button>
+            <button type="button" className="plain-button" onClick={() => goToProblem(problem, select)}>{placeWords(problem)}</button>
           </li>
         ))}
       </ul>

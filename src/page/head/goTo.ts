@@ -1,5 +1,5 @@
 /** Where on the sheet a problem is settled, and the way there. */
-import type { Place, Problem, ProblemCode } from '../../problems/problems.ts';
+import type { Problem, ProblemCode } from '../../problems/problems.ts';
 
 /** Problems of the whole run carry no place of their own: the field, choice or section that settles them. */
 const SETTLED_AT: Partial<Record<ProblemCode, string>> = {
@@ -19,29 +19,46 @@ const SETTLED_AT: Partial<Record<ProblemCode, string>> = {
   'calibrations-differ': 'calibration',
 };
 
-/** Id of the element that settles a problem, the nearest that is known; null for a record, which is opened instead. */
-export function placeOf(problem: Problem): string | null {
-  if (problem.place.entry !== undefined) return `entry-${problem.place.entry}`;
-  if (problem.place.record !== undefined) return null;
-  return SETTLED_AT[problem.code] ?? 'readings-heading';
-}
+const isOfACell = ({ code, place }: Problem): boolean => place.sheet !== undefined && (code.startsWith('cell-') || place.record === undefined);
 
 /** A few words for the link: where it leads. */
-export function placeWords({ entry, record, sheetName, line, column }: Place): string {
-  if (entry !== undefined) return 'to the field';
-  if (record !== undefined) return 'open the record';
-  const words = [sheetName, line === undefined ? undefined : `line ${line}`, column === undefined ? undefined : `column ${column}`];
-  const known = words.filter((word) => word !== undefined && word !== '');
-  return known.length === 0 ? 'settle it' : `to ${known.join(', ')}`;
+export function placeWords(problem: Problem): string {
+  if (problem.place.entry !== undefined) return 'to the field';
+  if (isOfACell(problem)) return problem.place.record === undefined ? 'to the sheet' : 'to the cell';
+  return problem.place.record === undefined ? 'settle it' : 'open the record';
 }
 
-/** Brings an element into view and gives it the focus; a section takes it by its heading. */
-export function goToElement(id: string): void {
-  const found = document.getElementById(id);
+function goTo(found: HTMLElement | null): void {
   if (found === null) return;
-  const target = found.matches('section') ? (found.querySelector<HTMLElement>('h2') ?? found) : found;
+  const target = found.matches('section, article') ? (found.querySelector<HTMLElement>('h2, h3') ?? found) : found;
   const field = target.matches('fieldset, label') ? (target.querySelector<HTMLElement>('input:checked, input') ?? target) : target;
   if (!field.matches('input, select, textarea, button, a, [tabindex]')) field.tabIndex = -1;
   field.scrollIntoView({ block: 'center' });
   field.focus({ preventScroll: true });
+}
+
+/** Brings an element into view and gives it the focus; a section takes it by its heading, a choice by what is chosen. */
+export const goToElement = (id: string): void => goTo(document.getElementById(id));
+
+/** The faulty cell of the selected record, else its row, else the sheet. */
+function goToRow(sheet: string): void {
+  const article = document.querySelector<HTMLElement>(`[data-sheet="${CSS.escape(sheet)}"]`);
+  const row = article?.querySelector('tr[aria-selected="true"]');
+  goTo(row?.querySelector<HTMLElement>('[aria-invalid="true"]') ?? row?.querySelector<HTMLElement>('[data-spot]') ?? article ?? document.getElementById('readings-heading'));
+}
+
+/** Goes to where a problem is settled: its field, its cell, its record, or the choice or section that settles it. */
+export function goToProblem(problem: Problem, select: (record: string) => void): void {
+  const { entry, sheet, record } = problem.place;
+  if (entry !== undefined) {
+    goToElement(`entry-${entry}`);
+    return;
+  }
+  if (record !== undefined) select(record);
+  if (sheet !== undefined && isOfACell(problem)) {
+    // The grid brings the selected record's row into sight first.
+    requestAnimationFrame(() => requestAnimationFrame(() => goToRow(sheet)));
+    return;
+  }
+  goToElement(record === undefined ? (SETTLED_AT[problem.code] ?? 'readings-heading') : 'record');
 }

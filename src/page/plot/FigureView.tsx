@@ -1,6 +1,6 @@
 /** A figure on the sheet: drawn, pointed at, walked through by keys, read aloud, and repeated as a table. */
 import { useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
-import type { KeyboardEvent } from 'react';
+import type { CSSProperties, KeyboardEvent } from 'react';
 import type { Figure, Inks, Mark } from '../../plots/figure.ts';
 import { mountFigure } from '../../plots/mount.ts';
 import type { Mounted } from '../../plots/mount.ts';
@@ -14,19 +14,23 @@ interface Props {
   readonly onSelect: (record: string) => void;
   /** What Enter does: to where the selected record is open. */
   readonly onOpen: () => void;
-  /** Little height: the summary is for assistive technology only, and the table opens in a corner. */
+  /** Little height: the selected record is named above; the summary is for assistive technology only, and the table opens in a corner. */
   readonly slim?: boolean;
 }
 
 interface Hover {
   readonly mark: Mark;
-  readonly left: number;
-  readonly top: number;
+  /** To the right of the mark, or to its left where it stands far right. */
+  readonly place: CSSProperties;
 }
 
 const FIRST_WIDTH = 640;
 /** A readout is shown to the left of its mark where the mark is further right than this part of the width. */
 const TURN_AT = 0.6;
+
+const BESIDE = 12;
+const placeBeside = (left: number, top: number, width: number): CSSProperties =>
+  left > width * TURN_AT ? { right: width - left + BESIDE, top } : { left: left + BESIDE, top };
 
 /** The mark that a key leads to from the present one, or null where the key is not ours. */
 function markAfter(key: string, marks: readonly Mark[], present: number): Mark | null {
@@ -63,7 +67,7 @@ export function FigureView({ figure, inks, selected, onSelect, onOpen, slim = fa
     if (into === null) return undefined;
     width.current = into.clientWidth || width.current;
     const drawn = mountFigure(figure, inks, into, width.current, latest.current.selected, {
-      hover: (mark, left, top) => setHover(mark === null ? null : { mark, left, top }),
+      hover: (mark, left, top) => setHover(mark === null ? null : { mark, place: placeBeside(left, top, width.current) }),
       pick: (mark) => {
         latest.current.onSelect(mark.id);
         setTold(mark.reading);
@@ -110,9 +114,9 @@ export function FigureView({ figure, inks, selected, onSelect, onOpen, slim = fa
     setTold('');
   }
 
-  const turned = hover !== null && hover.left > width.current * TURN_AT;
   return (
     <figure className={slim ? `${styles.figure} ${styles.slim}` : styles.figure} aria-label={figure.title} aria-describedby={summary}>
+      {slim && <p className={`quiet ${styles.present}`} aria-hidden="true">{mark?.reading ?? 'No record chosen'}</p>}
       <div
         ref={surface}
         className={styles.surface}
@@ -130,7 +134,7 @@ export function FigureView({ figure, inks, selected, onSelect, onOpen, slim = fa
           <div
             className={styles.readout}
             aria-hidden="true"
-            style={turned ? { right: width.current - hover.left + 12, top: hover.top } : { left: hover.left + 12, top: hover.top }}
+            style={hover.place}
           >
             {hover.mark.reading}
           </div>

@@ -30,7 +30,8 @@ export function AsideDialog({ record, reason, onReason, onClose }: AsideDialogPr
     submitted.preventDefault();
     if (chosen === '') return;
     onReason(chosen);
-    onClose();
+    // Closing gives the focus back to where it was.
+    dialog.current?.close();
   }
 
   return (
@@ -63,7 +64,7 @@ export function AsideDialog({ record, reason, onReason, onClose }: AsideDialogPr
         </fieldset>
         <p className={styles.buttons}>
           <button type="submit" disabled={chosen === ''}>Set aside</button>
-          <button type="button" onClick={onClose}>Cancel</button>
+          <button type="button" onClick={() => dialog.current?.close()}>Cancel</button>
         </p>
       </form>
     </dialog>

@@ -9,22 +9,27 @@ interface CellLineProps {
   readonly row: ShownRow;
   /** null where the cursor is in none of the sheet's own columns. */
   readonly column: ShownColumn | null;
+  readonly columns: readonly ShownColumn[];
+  /** undefined where its sentences stand below its row already. */
   readonly result: RecordResult | undefined;
+  /** Opens the cell for typing, where a tap is all one has. */
+  readonly onType: () => void;
   readonly onRestore: (row: ShownRow, cell: number) => void;
 }
 
-export function CellLine({ row, column, result, onRestore }: CellLineProps) {
+export function CellLine({ row, column, columns, result, onType, onRestore }: CellLineProps) {
   const came = column === null ? undefined : row.came[column.index];
-  const sentences = [...new Set((result?.problems ?? []).map(besideRow))];
+  const sentences = [...new Set((result?.problems ?? []).map((problem) => besideRow(problem, columns)))];
   return (
     <div className={`${styles.cellLine} quiet`}>
       <span>
         {lineWords(row.line)}
-        {column !== null && `, ${column.header}`}
+        {column !== null && `, ${column.header} `}
+        {column !== null && <button type="button" className="plain-button" onClick={onType}>type over</button>}
       </span>
       {came !== undefined && column !== null && (
         <span>
-          typed over; came as {came === '' ? 'an empty cell' : `“${came}”`}{' '}
+          came as {came === '' ? 'an empty cell' : `“${came}”`}{' '}
           <button type="button" className="plain-button" onClick={() => onRestore(row, column.index)}>
             restore what came
           </button>

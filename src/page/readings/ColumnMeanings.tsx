@@ -62,7 +62,7 @@ export function ColumnMeanings({ sheet, table, shown }: ColumnMeaningsProps) {
           <thead>
             <tr>
               <th scope="col">column</th>
-              <th scope="col">first cells</th>
+              <th scope="col" className={styles.samples}>first cells</th>
               <th scope="col">means</th>
               <th scope="col">in</th>
               <th scope="col">because</th>
@@ -76,7 +76,7 @@ export function ColumnMeanings({ sheet, table, shown }: ColumnMeaningsProps) {
               return (
                 <tr key={index} className={reason.look ? styles.unsure : undefined}>
                   <th scope="row">{header}</th>
-                  <td className="quiet">{shown.rows.slice(0, SAMPLES).map((row) => row.cells[index] ?? '').filter((cell) => cell.trim() !== '').join(' · ')}</td>
+                  <td className={`${styles.samples} quiet`}>{shown.rows.slice(0, SAMPLES).map((row) => row.cells[index] ?? '').filter((cell) => cell.trim() !== '').join(' · ')}</td>
                   <td>
                     <select
                       aria-label={`Meaning of ${header}`}

@@ -6,20 +6,21 @@ import type { Session, Sheet } from '../../session/session.ts';
 import type { RecordResult } from '../../reduction/results.ts';
 import type { Unit } from '../../units/units.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
+import { alignedColumn } from '../stated/Aligned.tsx';
 import { blockOfText, textOfBlock } from './block.ts';
 import { CellLine } from './CellLine.tsx';
 import { GridHead } from './GridHead.tsx';
 import { GridRow } from './GridRow.tsx';
 import type { RowActs } from './GridRow.tsx';
 import { FIRST_CELL, gridColumns } from './gridColumns.ts';
-import { emptied, pasted, typedOver } from './gridEdits.ts';
-import { blockBetween, covers, moved, tabbed, typesText } from './gridKeys.ts';
-import type { Block, Spot } from './gridKeys.ts';
+import { cellsIn, emptied, pasted, typedOver } from './gridEdits.ts';
+import { blockBetween, covers, moved, shiftedLeft, tabbed, typesText } from './gridKeys.ts';
+import type { Spot } from './gridKeys.ts';
 import { useNotices } from './notices.ts';
 import { useRowWindow } from './rowWindow.ts';
 import { lineWords } from './sheetRows.ts';
 import type { ShownRow, ShownSheet } from './sheetRows.ts';
-import { KIND_LABELS, counted } from './tradeWords.ts';
+import { KIND_LABELS } from './tradeWords.ts';
 import styles from './grid.module.css';
 
 interface GridProps {
@@ -36,7 +37,7 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
   const { change, select } = useActions();
   const notices = useNotices();
   const selected = useStore((state) => state.selected);
-  const [cursor, setCursor] = useState<Spot>({ row: 0, column: FIRST_CELL });
+  const [spotLast, setCursor] = useState<Spot>({ row: 0, column: FIRST_CELL });
   const [corner, setCorner] = useState<Spot | null>(null);
   const [typing, setTyping] = useState<string | null>(null);
   /** The entry field was opened by a keystroke: arrows leave it, as nothing is there yet to move through. */
@@ -44,11 +45,20 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
   const toFocus = useRef(false);
   const lineStart = useRef(FIRST_CELL);
   const { frame, first, last, windowed, rowHeight, page, onScroll, bring } = useRowWindow(shown.rows.length);
-  const columns = useMemo(() => gridColumns(shown), [shown]);
+  // Rows of one height have no room for a line below.
+  const columns = useMemo(() => gridColumns(shown, windowed), [shown, windowed]);
+  const impulseBits = useMemo(() => alignedColumn(shown.rows.map(({ record }) => {
+    const stated = results.get(record)?.impulseBit ?? null;
+    return stated === null ? null : { value: stated.value, spread: stated.u, unit: impulseUnit };
+  })), [shown, results, impulseUnit]);
   const takesEntry = useMemo(() => columns.map(({ is }) => is === 'cell' || is === 'kind' || is === 'aside'), [columns]);
   const extent = { rows: shown.rows.length, columns: columns.length, page };
+  // Rows and columns go away by an undo or with a newer version of the file.
+  const cursor: Spot = { row: Math.min(spotLast.row, Math.max(0, extent.rows - 1)), column: Math.min(spotLast.column, extent.columns - 1) };
   const row = shown.rows[cursor.row];
   const block = corner === null ? null : blockBetween(cursor, corner);
+  /** Cells of the sheet that a command is for. */
+  const underCursor = shiftedLeft(block ?? blockBetween(cursor, cursor), FIRST_CELL);
   const cellAt = (column: number): number | null => {
     const found = columns[column];
     return found?.is === 'cell' ? found.cell.index : null;
@@ -153,8 +163,7 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
       begin(at.cells[cell] ?? '', false);
     } else if (event.key === 'Delete' || event.key === 'Backspace') {
       event.preventDefault();
-      const over: Block = blockBetween(cursor, corner ?? cursor);
-      const edit = emptied(sheet.id, shown, { ...over, left: over.left - FIRST_CELL, right: over.right - FIRST_CELL });
+      const edit = emptied(sheet.id, shown, underCursor);
       if (edit !== null) change(corner === null ? `empty ${lineWords(at.line)}` : 'empty cells', edit);
     } else if (typesText(event)) {
       event.preventDefault();
@@ -200,10 +209,7 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
   function onCopy(event: ClipboardEvent<HTMLElement>) {
     if (event.target instanceof HTMLInputElement || cellAt(cursor.column) === null) return;
     event.preventDefault();
-    const over = blockBetween(cursor, corner ?? cursor);
-    const rows = shown.rows.slice(over.top, over.bottom + 1);
-    const cells = rows.map((one) => Array.from({ length: over.right - over.left + 1 }, (_, i) => one.cells[over.left - FIRST_CELL + i] ?? ''));
-    event.clipboardData.setData('text/plain', textOfBlock(cells));
+    event.clipboardData.setData('text/plain', textOfBlock(cellsIn(shown, underCursor)));
   }
 
   function onPaste(event: ClipboardEvent<HTMLElement>) {
@@ -213,15 +219,10 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
     if (text === '' || (event.target instanceof HTMLInputElement && !/[\t\n\r]/.test(text.trimEnd()))) return;
     event.preventDefault();
     setTyping(null);
-    const over = blockBetween(cursor, corner ?? cursor);
-    const from = { row: over.top, column: Math.max(0, Math.min(over.left - FIRST_CELL, shown.columns.length - 1)) };
+    const from = { row: underCursor.top, column: Math.max(0, Math.min(underCursor.left, shown.columns.length - 1)) };
     const laid = pasted(sheet, shown, from, blockOfText(text));
     if (laid.edit !== null) change('paste cells', laid.edit);
-    const said = [
-      ...(laid.rowsAdded > 0 ? [`${counted(laid.rowsAdded, 'row')} added below to hold the pasted cells.`] : []),
-      ...(laid.columnsLeftOut > 0 ? [`${counted(laid.columnsLeftOut, 'pasted column')} beyond the last of ${sheet.name} left out.`] : []),
-    ];
-    if (said.length > 0) notices.say({ tone: laid.columnsLeftOut > 0 ? 'look' : 'told', sentences: said, sheet: sheet.id });
+    if (laid.sentences.length > 0) notices.say({ tone: laid.leftOut ? 'look' : 'told', sentences: laid.sentences, sheet: sheet.id });
     goTo({ row: from.row, column: from.column + FIRST_CELL });
   }
 
@@ -233,7 +234,10 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
     setKind: (at, kind) => change(kind === null ? `kind of ${lineWords(at.line)} as told` : `${lineWords(at.line)} is a ${KIND_LABELS[kind]}`, setKind(at.record, kind)),
     askReason,
     countAgain: (at) => change(`count ${lineWords(at.line)} again`, countAgain(at.record)),
-    remove: (at) => change(`remove ${lineWords(at.line)}`, removeAddedRow(sheet.id, at.line)),
+    remove: (at) => {
+      toFocus.current = true;
+      change(`remove ${lineWords(at.line)}`, removeAddedRow(sheet.id, at.line));
+    },
   }), [change, sheet.id, askReason]);
   const restore = useCallback((at: ShownRow, cell: number) => {
     const edit = typedOver(sheet.id, at, cell, at.came[cell] ?? '');
@@ -245,7 +249,7 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
   const cell = cellAt(cursor.column);
   return (
     <>
-      <div ref={frame} className={windowed ? `${styles.frame} ${styles.long}` : styles.frame} onScroll={onScroll}>
+      <div ref={frame} className={styles.frame} onScroll={onScroll}>
         <div
           role="grid"
           tabIndex={-1}
@@ -262,39 +266,48 @@ export function Grid({ sheet, shown, results, marks, impulseUnit, askReason }: G
           onPaste={onPaste}
         >
           <table role="presentation" className={styles.grid}>
-          <GridHead columns={columns} impulseUnit={impulseUnit} />
-          <tbody role="rowgroup">
-            {first > 0 && <tr aria-hidden="true" className={styles.unseen} style={{ height: first * rowHeight }} />}
-            {rendered.map((one, i) => {
-              const index = first + i;
-              const inBlock = block !== null && covers(block, index, block.left);
-              return (
-                <GridRow
-                  key={one.line}
-                  row={one}
-                  index={index}
-                  gridColumns={columns}
-                  columns={shown.columns}
-                  result={results.get(one.record)}
-                  mark={marks[one.record]}
-                  impulseUnit={impulseUnit}
-                  selected={selected === one.record}
-                  tabColumn={index === tabRow ? cursor.column : null}
-                  stretchFrom={inBlock ? block.left : null}
-                  stretchTo={inBlock ? block.right : null}
-                  typing={index === cursor.row ? typing : null}
-                  acts={acts}
-                />
-              );
-            })}
-            {last < shown.rows.length && (
-              <tr aria-hidden="true" className={styles.unseen} style={{ height: (shown.rows.length - last) * rowHeight }} />
-            )}
-          </tbody>
+            <GridHead columns={columns} impulseUnit={impulseUnit} />
+            <tbody role="rowgroup">
+              {first > 0 && <tr aria-hidden="true" className={styles.unseen} style={{ height: first * rowHeight }} />}
+              {rendered.map((one, i) => {
+                const index = first + i;
+                const inBlock = block !== null && covers(block, index, block.left);
+                return (
+                  <GridRow
+                    key={one.line}
+                    row={one}
+                    index={index}
+                    gridColumns={columns}
+                    columns={shown.columns}
+                    result={results.get(one.record)}
+                    mark={marks[one.record]}
+                    impulseBits={impulseBits}
+                    selected={selected === one.record}
+                    tabColumn={index === tabRow ? cursor.column : null}
+                    stretchFrom={inBlock ? block.left : null}
+                    stretchTo={inBlock ? block.right : null}
+                    typing={index === cursor.row ? typing : null}
+                    acts={acts}
+                  />
+                );
+              })}
+              {last < shown.rows.length && (
+                <tr aria-hidden="true" className={styles.unseen} style={{ height: (shown.rows.length - last) * rowHeight }} />
+              )}
+            </tbody>
           </table>
         </div>
       </div>
-      {row !== undefined && <CellLine row={row} column={cell === null ? null : (shown.columns[cell] ?? null)} result={results.get(row.record)} onRestore={restore} />}
+      {row !== undefined && (
+        <CellLine
+          row={row}
+          column={cell === null ? null : (shown.columns[cell] ?? null)}
+          columns={shown.columns}
+          result={windowed ? results.get(row.record) : undefined}
+          onType={() => cell !== null && begin(row.cells[cell] ?? '', false)}
+          onRestore={restore}
+        />
+      )}
     </>
   );
 }

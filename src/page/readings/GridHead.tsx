@@ -13,8 +13,8 @@ export function GridHead({ columns, impulseUnit }: { readonly columns: readonly 
             role="columnheader"
             scope="col"
             aria-colindex={at + 1}
-            className={styles[`${column.is}Head`]}
-            style={column.is === 'cell' ? { minWidth: `${column.cell.characters + 1}ch` } : undefined}
+            className={column.is === 'cell' ? `${styles.cellHead} ${styles[column.cell.meaning.role]}` : styles[`${column.is}Head`]}
+            style={column.is === 'cell' ? { minWidth: `${column.cell.characters + 2}ch` } : undefined}
           >
             <HeadText column={column} impulseUnit={impulseUnit} />
           </th>
@@ -31,7 +31,7 @@ function HeadText({ column, impulseUnit }: { readonly column: GridColumn; readon
     case 'kind':
       return <TwoLines above="record" below="kind · told by" />;
     case 'cell':
-      return column.cell.header === column.meaning ? <>{column.meaning}</> : <TwoLines above={column.cell.header} below={column.meaning} />;
+      return column.meaning.startsWith(column.cell.header) ? <>{column.meaning}</> : <TwoLines above={column.cell.header} below={column.meaning} />;
     case 'impulseBit':
       return <TwoLines above={`impulse bit, ${impulseUnit.symbol}`} below="± standard uncertainty u" />;
     case 'aside':

@@ -1,16 +1,17 @@
 /** One row of a sheet's grid. */
 import { memo } from 'react';
-import { alignedParts } from '../../units/format.ts';
-import type { Unit } from '../../units/units.ts';
 import type { RecordKind } from '../../readings/meanings.ts';
 import type { Mark } from '../../session/session.ts';
-import type { RecordResult, Result } from '../../reduction/results.ts';
+import type { RecordResult } from '../../reduction/results.ts';
+import { Aligned } from '../stated/Aligned.tsx';
+import type { AlignedColumn } from '../stated/Aligned.tsx';
 import { KindMark } from './KindMark.tsx';
 import { KindSelect } from './KindSelect.tsx';
 import { besideRow, columnOfProblem } from './gridColumns.ts';
 import type { GridColumn } from './gridColumns.ts';
 import { lineWords } from './sheetRows.ts';
 import type { ShownColumn, ShownRow } from './sheetRows.ts';
+import { KIND_LABELS } from './tradeWords.ts';
 import styles from './grid.module.css';
 
 export interface RowActs {
@@ -27,7 +28,8 @@ export interface GridRowProps {
   readonly columns: readonly ShownColumn[];
   readonly result: RecordResult | undefined;
   readonly mark: Mark | undefined;
-  readonly impulseUnit: Unit;
+  /** Impulse bits of all rows, by row, with u. */
+  readonly impulseBits: AlignedColumn;
   readonly selected: boolean;
   /** Column that Tab reaches; null where the cursor is in another row. */
   readonly tabColumn: number | null;
@@ -40,19 +42,22 @@ export interface GridRowProps {
 }
 
 export const GridRow = memo(function GridRow(props: GridRowProps) {
-  const { row, index, gridColumns, columns, result, mark, selected, tabColumn, stretchFrom, stretchTo, typing, acts } = props;
+  const { row, index, gridColumns, columns, result, mark, impulseBits, selected, tabColumn, stretchFrom, stretchTo, typing, acts } = props;
   const setAside = mark?.setAside;
   const problems = result?.problems ?? [];
+  const sentences = [...new Set(problems.map((problem) => besideRow(problem, columns)))];
+  const looksBelow = sentences.length > 0 && !gridColumns.some(({ is }) => is === 'looks');
   const looksId = `looks-${row.record}`;
   const faulty = new Set(problems.map((problem) => columnOfProblem(problem, columns)));
   const spot = (column: number) => ({ 'data-spot': `${index}:${column}`, tabIndex: column === tabColumn ? 0 : -1 });
   const name = lineWords(row.line);
+  const rowName = [name, ...(result === undefined ? [] : [KIND_LABELS[result.kind]]), ...(setAside === undefined ? [] : ['set aside'])].join(', ');
 
   function cellOf(column: GridColumn, at: number) {
     switch (column.is) {
       case 'row':
         return (
-          <th key="row" scope="row" role="rowheader" aria-colindex={at + 1} className={styles.line} {...spot(at)}>
+          <th key="row" scope="row" role="rowheader" aria-colindex={at + 1} aria-label={rowName} aria-describedby={sentences.length > 0 ? looksId : undefined} className={styles.line} {...spot(at)}>
             {result !== undefined && <KindMark kind={result.kind} setAside={setAside !== undefined} />}
             <span className={styles.lineNumber}>{row.line}</span>
           </th>
@@ -99,24 +104,22 @@ export const GridRow = memo(function GridRow(props: GridRowProps) {
       case 'impulseBit':
         return (
           <td key="impulseBit" role="gridcell" aria-colindex={at + 1} className={styles.impulseBit} {...spot(at)}>
-            {result?.impulseBit != null && <ImpulseBit stated={result.impulseBit} unit={props.impulseUnit} />}
+            {result?.impulseBit != null && <Aligned column={impulseBits} row={index} bare />}
           </td>
         );
       case 'aside':
         return (
           <td key="aside" role="gridcell" aria-colindex={at + 1} className={styles.asideCell}>
-            {setAside === undefined ? (
-              <button type="button" className="plain-button" aria-label={`Set aside ${name}`} {...spot(at)} onClick={() => acts.askReason(row)}>
-                set aside
-              </button>
-            ) : (
-              <>
-                <span className={styles.reason} title={setAside.reason}>{setAside.reason}</span>{' '}
-                <button type="button" className="plain-button" aria-label={`Count ${name} again`} {...spot(at)} onClick={() => acts.countAgain(row)}>
-                  count it again
-                </button>
-              </>
-            )}
+            {setAside !== undefined && <span className={styles.reason} title={setAside.reason}>{setAside.reason} </span>}
+            <button
+              type="button"
+              className="plain-button"
+              aria-label={setAside === undefined ? `Set aside ${name}` : `Count ${name} again`}
+              onClick={() => (setAside === undefined ? acts.askReason(row) : acts.countAgain(row))}
+              {...spot(at)}
+            >
+              {setAside === undefined ? 'set aside' : 'count it again'}
+            </button>
           </td>
         );
       case 'remove':
@@ -132,27 +135,26 @@ export const GridRow = memo(function GridRow(props: GridRowProps) {
       case 'looks':
         return (
           <td key="looks" role="gridcell" aria-colindex={at + 1} className={styles.looks} id={looksId} {...spot(at)}>
-            {problems.map(besideRow).join(' ')}
+            {sentences.join(' ')}
           </td>
         );
     }
   }
 
+  const classes = [styles.row, setAside === undefined ? '' : styles.aside, looksBelow ? styles.withLooks : ''].join(' ');
   return (
-    <tr role="row" aria-rowindex={index + 2} aria-selected={selected} className={setAside === undefined ? styles.row : `${styles.row} ${styles.aside}`}>
-      {gridColumns.map(cellOf)}
-    </tr>
+    <>
+      <tr role="row" data-row={index} aria-rowindex={index + 2} aria-selected={selected} className={classes}>
+        {gridColumns.map(cellOf)}
+      </tr>
+      {looksBelow && (
+        // Read aloud as the description of the row's head and of the cell in question.
+        <tr aria-hidden="true" className={styles.looksBelow}>
+          <td colSpan={gridColumns.length}>
+            <div id={looksId}>{sentences.join(' ')}</div>
+          </td>
+        </tr>
+      )}
+    </>
   );
 });
-
-function ImpulseBit({ stated, unit }: { readonly stated: Result; readonly unit: Unit }) {
-  const parts = alignedParts(stated.value, stated.u, unit);
-  return (
-    <span className={styles.aligned}>
-      <span className={styles.whole}>{parts.whole}</span>
-      <span className={styles.fraction}>{parts.fraction}</span>
-      {parts.spread !== '' && <span className={styles.spread}> ± {parts.spread}</span>}
-      {parts.unit !== unit.symbol && <span className="unit"> {parts.unit}</span>}
-    </span>
-  );
-}

@@ -2,6 +2,7 @@
 import { useStore, useActions } from '../../store/hooks.tsx';
 import { useNoticeList, useNotices } from './notices.ts';
 import type { Notice } from './notices.ts';
+import { sheetElement } from './sheetRows.ts';
 import styles from './readings.module.css';
 
 export function NoticeList() {
@@ -20,7 +21,8 @@ export function NoticeList() {
 
 function NoticeItem({ notice, onTaken }: { readonly notice: Notice; readonly onTaken: () => void }) {
   const { change } = useActions();
-  const { offer } = notice;
+  const { offer, sheet } = notice;
+  const isThere = useStore((state) => state.session.sheets.some(({ id }) => id === sheet));
   const offerStands = useStore((state) => offer !== undefined && offer.stands(state.session));
   return (
     <div className={notice.tone === 'told' ? styles.notice : `${styles.notice} ${styles.lookHere}`} data-notice={notice.id}>
@@ -32,6 +34,9 @@ function NoticeItem({ notice, onTaken }: { readonly notice: Notice; readonly onT
         }}>
           {offer.label}
         </button>
+      )}
+      {sheet !== undefined && isThere && (
+        <button type="button" className="plain-button" onClick={() => document.getElementById(sheetElement(sheet))?.scrollIntoView()}>to the sheet</button>
       )}
       <button type="button" className="plain-button" onClick={onTaken}>put away</button>
     </div>

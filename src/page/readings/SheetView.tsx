@@ -10,7 +10,7 @@ import { useActions } from '../../store/hooks.tsx';
 import { ColumnMeanings } from './ColumnMeanings.tsx';
 import { Grid } from './Grid.tsx';
 import { SheetHead } from './SheetHead.tsx';
-import { shownSheet, tableOf } from './sheetRows.ts';
+import { sheetElement, shownSheet, tableOf } from './sheetRows.ts';
 import type { ShownRow } from './sheetRows.ts';
 import { counted } from './tradeWords.ts';
 import styles from './sheet.module.css';
@@ -46,7 +46,7 @@ export function SheetView({ sheet, isFirst, isLast, results, marks, impulseUnit,
   const shown = useMemo(() => shownSheet(sheet, table), [sheet, table]);
   const sentences = [...new Set(problems.map((one) => sentence({ ...one, place: withoutSheet(one.place) })))];
   return (
-    <article className={styles.sheet} aria-labelledby={headingId} data-sheet={sheet.id}>
+    <article className={styles.sheet} aria-labelledby={headingId} id={sheetElement(sheet.id)}>
       <SheetHead sheet={sheet} table={table} rows={shown.rows.length} isFirst={isFirst} isLast={isLast} headingId={headingId} />
       {sentences.length > 0 && (
         <ul className={styles.problems}>

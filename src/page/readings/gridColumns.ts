@@ -8,7 +8,8 @@ export type GridColumn =
   | { readonly is: 'row' | 'kind' | 'impulseBit' | 'aside' | 'remove' | 'looks' }
   | { readonly is: 'cell'; readonly cell: ShownColumn; readonly meaning: string };
 
-export function gridColumns(shown: ShownSheet): readonly GridColumn[] {
+/** @param looks what there is to look at has a column of its own, instead of a line below its row */
+export function gridColumns(shown: ShownSheet, looks: boolean): readonly GridColumn[] {
   let nextSwings = 0;
   const cells = shown.columns.map((cell): GridColumn => {
     const { role, unit } = cell.meaning;
@@ -16,7 +17,7 @@ export function gridColumns(shown: ShownSheet): readonly GridColumn[] {
     return { is: 'cell', cell, meaning: unit === '' ? name : `${name}, ${unit}` };
   });
   const remove: readonly GridColumn[] = shown.rows.some((row) => row.typed) ? [{ is: 'remove' }] : [];
-  return [{ is: 'row' }, { is: 'kind' }, ...cells, { is: 'impulseBit' }, { is: 'aside' }, ...remove, { is: 'looks' }];
+  return [{ is: 'row' }, { is: 'kind' }, ...cells, { is: 'impulseBit' }, { is: 'aside' }, ...remove, ...(looks ? [{ is: 'looks' } as const] : [])];
 }
 
 /** Grid position of the sheet's first own column. */
@@ -30,6 +31,9 @@ export function columnOfProblem(problem: Problem, columns: readonly ShownColumn[
   return found?.index ?? null;
 }
 
-/** A row's problem as it stands beside its row: the sheet and the line are named there already. */
-export const besideRow = (problem: Problem): string =>
-  sentence({ ...problem, place: problem.place.column === undefined ? {} : { column: problem.place.column } });
+/** A row's problem as it stands beside its row, where the sheet and the line are named already. */
+export function besideRow(problem: Problem, columns: readonly ShownColumn[]): string {
+  const index = columnOfProblem(problem, columns);
+  const header = index === null ? undefined : columns.find((column) => column.index === index)?.header;
+  return sentence({ ...problem, place: header === undefined ? {} : { column: header } });
+}

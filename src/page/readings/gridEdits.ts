@@ -5,6 +5,7 @@ import type { Sheet } from '../../session/session.ts';
 import { widthOfBlock } from './block.ts';
 import type { Block } from './gridKeys.ts';
 import type { ShownRow, ShownSheet } from './sheetRows.ts';
+import { counted } from './tradeWords.ts';
 
 /** Several edits in order, as one. */
 export const inOrder = (edits: readonly Edit[]): Edit => (session) => edits.reduce((after, edit) => edit(after), session);
@@ -29,13 +30,17 @@ export function emptied(sheet: string, shown: ShownSheet, block: Block): Edit | 
   return edits.length === 0 ? null : inOrder(edits);
 }
 
+/** Cells of a block, as they are shown. Columns are those of the sheet. */
+export const cellsIn = (shown: ShownSheet, { top, bottom, left, right }: Block): readonly (readonly string[])[] =>
+  shown.rows.slice(top, bottom + 1).map(({ cells }) => Array.from({ length: right - left + 1 }, (_, i) => cells[left + i] ?? ''));
+
 export interface Pasted {
   /** null where the cells hold the same already. */
   readonly edit: Edit | null;
-  /** Rows that were added below to hold the block. */
-  readonly rowsAdded: number;
-  /** Columns of the block beyond the sheet's last, left out. */
-  readonly columnsLeftOut: number;
+  /** What became of the block beyond the sheet's edges. */
+  readonly sentences: readonly string[];
+  /** Cells of the block found no place. */
+  readonly leftOut: boolean;
 }
 
 /** Lays a block of cells over the sheet, its first cell on the row and column given. */
@@ -55,5 +60,13 @@ export function pasted(sheet: Sheet, shown: ShownSheet, from: { readonly row: nu
       if (edit !== null) edits.push(edit);
     });
   });
-  return { edit: edits.length === 0 ? null : inOrder(edits), rowsAdded, columnsLeftOut: Math.max(0, widthOfBlock(block) - room) };
+  const columnsLeftOut = Math.max(0, widthOfBlock(block) - room);
+  return {
+    edit: edits.length === 0 ? null : inOrder(edits),
+    leftOut: columnsLeftOut > 0,
+    sentences: [
+      ...(rowsAdded > 0 ? [`${counted(rowsAdded, 'row')} added below to hold the pasted cells.`] : []),
+      ...(columnsLeftOut > 0 ? [`${counted(columnsLeftOut, 'pasted column')} beyond the last of ${sheet.name} left out.`] : []),
+    ],
+  };
 }

@@ -78,3 +78,6 @@ export const blockBetween = (a: Spot, b: Spot): Block => ({
 
 export const covers = (block: Block, row: number, column: number): boolean =>
   row >= block.top && row <= block.bottom && column >= block.left && column <= block.right;
+
+/** The same block so many columns further left. */
+export const shiftedLeft = (block: Block, columns: number): Block => ({ ...block, left: block.left - columns, right: block.right - columns });

@@ -43,13 +43,14 @@ export function useRowWindow(rows: number): RowWindow {
 
   function bring(row: number) {
     const element = frame.current;
-    if (!windowed || element === null) return;
+    if (element === null) return;
     const headHeight = element.querySelector('thead')?.offsetHeight ?? 0;
-    const seen = Math.max(ROW_HEIGHT, element.clientHeight - headHeight);
-    const start = row * ROW_HEIGHT;
+    const shown = windowed ? null : (element.querySelectorAll('tr[data-row]')[row] ?? null);
+    const [start, rowHeight] = shown instanceof HTMLElement ? [shown.offsetTop - headHeight, shown.offsetHeight] : [row * ROW_HEIGHT, ROW_HEIGHT];
+    const seen = Math.max(rowHeight, element.clientHeight - headHeight);
     if (start < element.scrollTop) element.scrollTop = start;
-    else if (start + ROW_HEIGHT > element.scrollTop + seen) element.scrollTop = start + ROW_HEIGHT - seen;
-    look(element);
+    else if (start + rowHeight > element.scrollTop + seen) element.scrollTop = start + rowHeight - seen;
+    if (windowed) look(element);
   }
 
   return { frame, first, last, windowed, rowHeight: ROW_HEIGHT, page: Math.max(1, Math.floor(height / ROW_HEIGHT) - 2), onScroll, bring };

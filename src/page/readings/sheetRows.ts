@@ -32,7 +32,7 @@ export interface ShownSheet {
 
 const UNUSED: ColumnMeaning = { role: 'ignored', unit: '', by: 'proposal' };
 const NARROWEST = 6;
-const WIDEST = 26;
+const WIDEST = 18;
 
 /** The text of a sheet as a table, cut as the person chose or as found. */
 export const tableOf = (sheet: Pick<Sheet, 'text' | 'delimiter' | 'decimal'>): TableRead =>
@@ -68,10 +68,13 @@ function shownColumns(sheet: Sheet, table: TableRead, rows: readonly ShownRow[])
     const written = table.headers[index] ?? '';
     const header = written !== '' ? written : sheet.origin === 'typed' ? ROLE_LABELS[meaning.role] : `column ${index + 1}`;
     const longest = rows.reduce((most, row) => Math.max(most, row.cells[index]?.length ?? 0), 0);
-    const characters = Math.min(WIDEST, Math.max(NARROWEST, longest + 1, Math.min(header.length, 16)));
+    const characters = Math.min(WIDEST, Math.max(NARROWEST, longest));
     return { index, header, meaning, characters };
   });
 }
 
 /** Rows as `line` names them in sentences and labels: "line 9", "row +2". */
 export const lineWords = (line: string): string => (line.startsWith('+') ? `row ${line}` : `line ${line}`);
+
+/** Id of the element that shows a sheet. */
+export const sheetElement = (sheet: string): string => `sheet-${sheet}`;

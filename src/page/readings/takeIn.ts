@@ -78,7 +78,7 @@ function asNewSheet(came: Came, session: Session, table: TableRead, whole: reado
       sheet: nextSheetId(session),
       sentences: [
         `${name}: ${counted(table.rows.length, 'row')} taken in${ofOneName ? `, as a sheet of its own, as none of its rows is in the other ${came.name}` : ''}.`,
-        `What its ${counted(table.headers.length, 'column')} mean is proposed below: check ${unsure === 0 ? 'it' : `it, ${unsure === 1 ? 'one' : unsure} above all`}.`,
+        `Column meanings are proposed below: check them${unsure === 0 ? '' : `; ${unsure === 1 ? 'one is' : `${unsure} are`} unsure`}.`,
         ...whole.map(sentence),
       ],
     },

@@ -2,7 +2,7 @@
 import { beside } from '../../reduction/beside.ts';
 import type { RecordResult, Reduction, Result } from '../../reduction/results.ts';
 import { useStore } from '../../store/hooks.tsx';
-import { withPlusMinus } from '../../units/format.ts';
+import { plain } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
 import { Aligned, alignedColumn } from '../stated/Aligned.tsx';
 import { coverageFactor, PERCENT, timesU } from '../stated/numberWords.ts';
@@ -28,19 +28,20 @@ export function Beside({ record, reduction, unit }: Props) {
   const lines: readonly Line[] = [
     { label: 'full pendulum', result: record.full, counts: form === 'full', against: null },
     { label: 'small-angle form', result: record.smallAngle, counts: form === 'smallAngle', against: record.full },
-    { label: 'by geometry', result: record.byGeometry, counts: chosen === 'geometry', against: null },
-    { label: 'by taps', result: record.byTaps, counts: chosen === 'taps', against: record.byGeometry },
+    { label: 'geometry', result: record.byGeometry, counts: chosen === 'geometry', against: null },
+    { label: 'taps', result: record.byTaps, counts: chosen === 'taps', against: record.byGeometry },
   ];
   const values = alignedColumn(lines.map(({ result }) => result && { value: result.value, spread: result.U, unit }));
   return (
     <SheetTable label="The other ways beside it">
+      <caption>The other ways beside it <span className="quiet">apart: from the line above, and in its standard uncertainties u</span></caption>
       <thead>
         <tr>
-          <th scope="col">Impulse bit</th>
+          <th scope="col">Impulse bit by</th>
           <th scope="col">Value ± U</th>
           <th scope="col">k</th>
-          <th scope="col">Apart from the line above</th>
-          <th scope="col">in u of that line</th>
+          <th scope="col">Apart</th>
+          <th scope="col">in u</th>
         </tr>
       </thead>
       <tbody>
@@ -63,7 +64,7 @@ function Apart({ line: { result, against } }: { readonly line: Line }) {
   const { relative, inU } = beside(against, result);
   return (
     <>
-      <td className="num">{relative === null ? '' : withPlusMinus(relative, 0, PERCENT)}</td>
+      <td className="num">{relative === null ? '' : plain(relative, PERCENT, 2)}</td>
       <td className="num">{inU === null ? '' : timesU(inU)}</td>
     </>
   );

@@ -1,6 +1,7 @@
 /** The chain that made a result: each step with its value, standard uncertainty, factor and equation. */
 import type { ChainStep } from '../../reduction/results.ts';
 import { chooseUnit } from '../../units/format.ts';
+import type { Dimension, Unit } from '../../units/units.ts';
 import { Aligned, alignedColumn } from '../stated/Aligned.tsx';
 import { EquationText } from './EquationText.tsx';
 import { correctingFactor } from '../stated/numberWords.ts';
@@ -8,15 +9,24 @@ import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
 import styles from './record.module.css';
 
-export function ChainTable({ chain }: { readonly chain: readonly ChainStep[] }) {
+interface Props {
+  readonly chain: readonly ChainStep[];
+  /** Unit of the impulse bits. */
+  readonly impulse: Unit;
+}
+
+export function ChainTable({ chain, impulse }: Props) {
   const steps = [...chain.filter(({ aside }) => aside === undefined), ...chain.filter(({ aside }) => aside === true)];
-  const values = alignedColumn(steps.map(({ stated, dimension }) => ({ value: stated.value, spread: stated.u, unit: chooseUnit([stated.value], dimension) })));
+  // One unit for all steps of a dimension, so that they can be held against each other.
+  const unitOf = (dimension: Dimension): Unit => dimension === 'impulse'
+    ? impulse
+    : chooseUnit(steps.filter((step) => step.dimension === dimension).map(({ stated }) => stated.value), dimension);
+  const values = alignedColumn(steps.map(({ stated, dimension }) => ({ value: stated.value, spread: stated.u, unit: unitOf(dimension) })));
   return (
     <SheetTable label="From reading to impulse bit">
       <thead>
         <tr>
           <th scope="col">Step, and its equation</th>
-          <th scope="col">Symbol</th>
           <th scope="col">Value ± u</th>
           <th scope="col">Factor</th>
         </tr>
@@ -24,11 +34,10 @@ export function ChainTable({ chain }: { readonly chain: readonly ChainStep[] }) 
       <tbody>
         {steps.map((step, row) => (
           <tr key={step.id} className={step.aside === true ? styles.aside : undefined}>
-            <th scope="row">
-              {step.aside === true ? <span className="quiet">beside: </span> : ''}{step.label}
+            <th scope="row" className={styles.step}>
+              {step.aside === true ? <span className="quiet">beside: </span> : ''}{step.label} <SymbolText symbol={step.symbol} />
               {step.equation !== '' && <span className={`quiet ${styles.equation}`}><EquationText equation={step.equation} /></span>}
             </th>
-            <td><SymbolText symbol={step.symbol} /></td>
             <td><Aligned column={values} row={row} /></td>
             <td className="num">{step.factor === undefined ? '' : `× ${correctingFactor(step.factor)}`}</td>
           </tr>

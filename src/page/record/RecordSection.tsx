@@ -75,7 +75,7 @@ function Chosen({ reduction, record }: Props) {
           {record.problems.map((one) => <li key={`${one.code} ${one.place.column ?? ''}`} className="look">{sentence(one)}</li>)}
         </ul>
       )}
-      {explained !== null && explained.chain.length > 0 && <ChainTable chain={explained.chain} />}
+      {explained !== null && explained.chain.length > 0 && <ChainTable chain={explained.chain} impulse={unit} />}
       {impulseBit !== null && <Beside record={record} reduction={reduction} unit={unit} />}
       {configuration !== null && record.angle !== null && record.launch !== null && (
         <SwingPicture angle={record.angle.value} launch={record.launch.value} dampingRatio={configuration.dampingRatio.value} period={configuration.period.value} />
@@ -121,7 +121,7 @@ function Standing({ record }: { readonly record: RecordResult }) {
   const [asking, setAsking] = useState(false);
   const name = recordName(record);
   return (
-    <p>
+    <div>
       {record.setAside === null
         ? <button type="button" className="plain-button" onClick={() => setAsking(true)}>Set aside…</button>
         : (
@@ -138,6 +138,6 @@ function Standing({ record }: { readonly record: RecordResult }) {
           onClose={() => setAsking(false)}
         />
       )}
-    </p>
+    </div>
   );
 }

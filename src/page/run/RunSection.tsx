@@ -52,7 +52,7 @@ function Run({ reduction }: { readonly reduction: Reduction }) {
           )}
         </>
       )}
-      {hasShots && <ShotsFigure reduction={reduction} />}
+      {hasShots && <ShotsFigure records={records} run={run} />}
       {aside.length > 0 && <SetAside records={aside} unit={unit} />}
       {blanks !== null && (
         <p>
@@ -129,11 +129,11 @@ function Composition({ run, withAside, unit }: CompositionProps) {
   );
 }
 
-function ShotsFigure({ reduction }: { readonly reduction: Reduction }) {
+function ShotsFigure({ records, run }: Pick<Reduction, 'records' | 'run'>) {
   const selected = useStore((state) => state.selected);
   const { select } = useActions();
   const inks = useInks();
-  const figure = useMemo(() => shotsFigure(reduction, inks), [reduction, inks]);
+  const figure = useMemo(() => shotsFigure({ records, run }, inks), [records, run, inks]);
   return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={() => goToElement('record')} />;
 }
 
@@ -159,8 +159,8 @@ function SetAside({ records, unit }: { readonly records: readonly RecordResult[]
             <td>{record.setAside}</td>
             <td className="num">{record.impulseBit === null ? '–' : withPlusMinus(record.impulseBit.value, record.impulseBit.U, unit)}</td>
             <td>
-              <button type="button" className="plain-button" aria-label={`Count ${recordName(record)} again`} onClick={() => change(`count ${recordName(record)} again`, countAgain(record.id))}>
-                count again
+              <button type="button" className="plain-button" onClick={() => change(`count ${recordName(record)} again`, countAgain(record.id))}>
+                count again<span className="visually-hidden">: {recordName(record)}</span>
               </button>
             </td>
           </tr>

@@ -23,9 +23,13 @@ export interface AlignedColumn {
 const wide = (text: string): number => (text.includes('.') ? text.length - 0.5 : text.length);
 const widest = (texts: readonly string[]): CSSProperties => ({ minWidth: `${Math.max(0, ...texts.map(wide))}ch` });
 
+/** An uncertainty smaller than this part of its value would make the whole column as wide as its own digits; it is left out. */
+const SHOWN_FROM = 1e-6;
+const shownSpread = ({ value, spread }: Cell): number => (spread < SHOWN_FROM * Math.abs(value) ? 0 : spread);
+
 /** The cells of one column, in order; null where there is none. */
 export function alignedColumn(cells: readonly (Cell | null)[]): AlignedColumn {
-  return columnOf(cells.map((cell) => (cell === null ? null : alignedParts(cell.value, cell.spread, cell.unit))));
+  return columnOf(cells.map((cell) => (cell === null ? null : alignedParts(cell.value, shownSpread(cell), cell.unit))));
 }
 
 /** A column of values (SI) without uncertainties, all to the decimals that two digits of `resolution` (SI) need. */
@@ -58,7 +62,7 @@ export function Aligned({ column, row, bare = false }: Props) {
       <span className={styles.whole} style={column.whole}>{parts.whole}</span>
       <span className={styles.fraction} style={column.fraction}>{parts.fraction}</span>
       {parts.spread !== '' && <span className={styles.spread} style={column.spread}>{' ± '}{parts.spread}</span>}
-      {!bare && parts.unit !== '' && <span className="unit">{' '}{parts.unit}</span>}
+      {!bare && parts.unit !== '' && <span className={`unit ${styles.unitAfter}`}>{' '}{parts.unit}</span>}
     </span>
   );
 }

@@ -17,7 +17,10 @@ export function degreesOfFreedom(dof: number): string {
 export const coverageFactor = (k: number): string => k.toFixed(2);
 
 /** "1.4", "−0.3": how many standard uncertainties. */
-export const timesU = (count: number): string => count.toFixed(1).replace('-', '−');
+export function timesU(count: number): string {
+  const text = count.toFixed(1);
+  return Number(text) === 0 ? '0.0' : text.replace('-', '−');
+}
 
 /** A correcting factor with the digits that a correction needs. */
 export const correctingFactor = (factor: number): string => factor.toFixed(5);

@@ -9,16 +9,17 @@ import { useInks } from '../plot/useInks.ts';
 import styles from './strip.module.css';
 
 export function RunStrip() {
-  const reduction = useStore((state) => state.reduction);
-  if (reduction === null || reduction.records.length === 0) return null;
-  return <Strip reduction={reduction} />;
+  const records = useStore((state) => state.reduction?.records);
+  const run = useStore((state) => state.reduction?.run ?? null);
+  if (records === undefined || records.length === 0) return null;
+  return <Strip records={records} run={run} />;
 }
 
-function Strip({ reduction }: { readonly reduction: Reduction }) {
+function Strip({ records, run }: Pick<Reduction, 'records' | 'run'>) {
   const selected = useStore((state) => state.selected);
   const { select } = useActions();
   const inks = useInks();
-  const figure = useMemo(() => runStrip(reduction, inks), [reduction, inks]);
+  const figure = useMemo(() => runStrip({ records, run }, inks), [records, run, inks]);
   return (
     <div className={styles.strip}>
       <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={() => goToElement('record')} slim />
