@@ -44,8 +44,8 @@ export function missedPeak(step: number): PeakReadLow {
   const sinc = Math.sin(half) / half;
   const square = step * step;
   const mean = step < SMALL_STEP ? -(square / 24) * (1 - square / 80) : sinc - 1;
-  // Variance x⁴/720 − x⁶/12096 + …
-  const variance = step < SMALL_STEP ? (square * square * (1 - (square * 5) / 84)) / 720 : 0.5 + Math.sin(step) / (2 * step) - sinc * sinc;
+  // Variance x⁴/720 − x⁶/20160 + …
+  const variance = step < SMALL_STEP ? (square * square * (1 - square / 28)) / 720 : 0.5 + Math.sin(step) / (2 * step) - sinc * sinc;
   return { worst: -2 * Math.sin(half / 2) ** 2, mean, deviation: Math.sqrt(variance) };
 }
 

@@ -125,7 +125,7 @@ const awayFromCritical = (zeta: number): number => (Math.abs(zeta - 1) < NEAR_CR
  * C and the time of the first maximum, for any damping.
  *
  * Valid: duration ≥ 0 s, ω_n > 0 rad/s, ζ ≥ 0 (exponential: ζ < 1). 'peakInsidePulse' where the maximum would not come
- * after the end of the pulse: τ > T/2 undamped, a little earlier with damping; the exponential, which has no end: τ_e > T/2.
+ * after the end of the pulse: τ > T_d/2 for the rectangular one; the exponential, which has no end: τ_e > T/2.
  * Source: derived; methods 1.6 (the rule "C at ω_n times D, time from the centroid" is its first order in ζ).
  * @throws RangeError outside.
  */

@@ -116,6 +116,8 @@ describe('of a small swing', () => {
     expect(peakTimeOfSmall(1)).toBe(1);
     expect(digits(peakTimeOfSmall(0.5), Math.PI / 3 / Math.sqrt(0.75))).toBeGreaterThan(15);
     expect(digits(peakTimeOfSmall(1.25), Math.log(2) / 0.75)).toBeGreaterThan(14);
+    // Inside the series, against arcsin s/s with s itself given.
+    for (const s of [0.001, 0.0095]) expect(digits(peakTimeOfSmall(Math.sqrt((1 - s) * (1 + s))), Math.asin(s) / s)).toBeGreaterThan(14);
     // Either side of where the series takes over, s² = 1 − ζ² = ±1e-4: the slope is −1/3, so 1e-9 in ζ moves it by 3e-10.
     for (const edge of [Math.sqrt(1 - 1e-4), Math.sqrt(1 + 1e-4)]) {
       const step = peakTimeOfSmall(edge + 1e-9) - peakTimeOfSmall(edge - 1e-9);

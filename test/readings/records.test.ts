@@ -1,6 +1,9 @@
 /** Rows to records: kinds, quantities, what is wrong in a cell, rows typed over and typed by hand. */
+import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { secondsOfClock } from '../../src/readings/cellReads.ts';
+import { readQuantity } from '../../src/units/quantity.ts';
+import type { Dimension } from '../../src/units/units.ts';
+import { readCell, secondsOfClock } from '../../src/readings/cellReads.ts';
 import { recordsOf } from '../../src/readings/records.ts';
 import type { SheetRecord } from '../../src/readings/records.ts';
 import { drop, fixture } from './fixture.ts';
@@ -73,6 +76,27 @@ describe('readings', () => {
     const { records } = drop('Shot,Rest (mm),First swing (mm),Note,Remark\n1,12.0,15.5,"=1+1; ""loud"", 12,5","±µ\n🙂"\n');
     expect(only(records).note).toBe('=1+1; "loud", 12,5; ±µ\n🙂');
     expect(records.flatMap(codesOf)).toEqual([]);
+  });
+});
+
+describe('plain numbers', () => {
+  test('the short way of reading gives what the long way gives, digit for digit', () => {
+    const digits = fc.stringMatching(/^-?\d{1,9}(\.\d{1,6})?$/);
+    const unit = fc.constantFrom<readonly ['rest' | 'voltage' | 'pressure' | 'time' | 'tapImpulse', string, Dimension]>(
+      ['rest', 'mm', 'length'], ['rest', 'in', 'length'], ['rest', '°', 'angle'], ['voltage', 'kV', 'voltage'], ['pressure', 'mTorr', 'pressure'], ['time', 'min', 'time'], ['tapImpulse', 'µN·s', 'impulse'],
+    );
+    fc.assert(fc.property(digits, unit, fc.constantFrom<'.' | ','>('.', ','), (number, [role, symbol, dimension], mark) => {
+      const text = number.replace('.', mark);
+      const long = readQuantity(text, dimension, symbol, mark);
+      if (!long.ok) throw new Error(`${text} is refused`);
+      expect(readCell(text, { role, unit: symbol, by: 'person' }, mark, false)).toEqual({ value: long.value, spread: null, decimals: long.decimals, unit: long.unit.symbol, text });
+    }));
+  });
+
+  test('a number beyond all measure is a slip', () => {
+    for (const text of ['999999999999999', '1e300', '9'.repeat(60)]) {
+      expect(readCell(text, { role: 'voltage', unit: 'V', by: 'person' }, '.', false)).toEqual({ code: 'cell-not-a-number', found: text });
+    }
   });
 });
 

@@ -61,6 +61,17 @@ describe('the run mean', () => {
     expect(same.uScatter).toBeGreaterThan(0);
   });
 
+  it('of a few shots that came out alike by chance has no narrower interval than their scatter makes', () => {
+    // Three shots, s a little below what the readings make: t(2) s/√3 is wider than 1.96 u_reading/√3.
+    const shots = [4.0e-5, 4.1e-5, 4.2e-5];
+    const alone = reduce(angles(shots), null).run!;
+    const readings = reduce(angles(shots, { readingSpread: entry('2 mrad') }), null).run!;
+    expect(readings.readingsInsteadOfScatter).toBe(true);
+    expect(readings.mean.U / alone.mean.U).toBeGreaterThan(1 - 1e-6);
+    // And where the readings make far more than the scatter, they are known as well as they are stated.
+    expect(reduce(angles(shots, { readingSpread: entry('20 mrad') }), null).run!.mean.k).toBeCloseTo(1.96, 2);
+  });
+
   it('has the u of its one shot where there is one, and no scatter', () => {
     const r = reduce(angles([4e-5], { readingSpread: entry('1 mrad'), leverArm: entry('0.25 m ± 1 %') }), null);
     expect(r.run!.scatter).toBeNull();

@@ -1,5 +1,6 @@
 /** Where on the sheet a problem is settled, and the way there. */
 import type { Problem, ProblemCode } from '../../problems/problems.ts';
+import { sheetElement } from '../readings/sheetRows.ts';
 
 /** Problems of the whole run carry no place of their own: the field, choice or section that settles them. */
 const SETTLED_AT: Partial<Record<ProblemCode, string>> = {
@@ -42,7 +43,7 @@ export const goToElement = (id: string): void => goTo(document.getElementById(id
 
 /** The faulty cell of the selected record, else its row, else the sheet. */
 function goToRow(sheet: string): void {
-  const article = document.querySelector<HTMLElement>(`[data-sheet="${CSS.escape(sheet)}"]`);
+  const article = document.getElementById(sheetElement(sheet));
   const row = article?.querySelector('tr[aria-selected="true"]');
   goTo(row?.querySelector<HTMLElement>('[aria-invalid="true"]') ?? row?.querySelector<HTMLElement>('[data-spot]') ?? article ?? document.getElementById('readings-heading'));
 }

@@ -73,8 +73,8 @@ describe('things to look at', () => {
     await dropFiles([new File([table], 'run.csv')]);
     const told = await screen.findByText(/ten/, { selector: '#look li > span' });
     await user.click(within(told.closest('li') ?? document.body).getByText(/^to the/));
-    await settled();
-    expect(document.activeElement?.closest('[data-sheet]')).not.toBeNull();
+    await waitFor(() => expect(document.activeElement).toHaveTextContent(/^ten$/));
+    expect(document.activeElement).toBeInvalid();
   });
 });
 
