@@ -50,27 +50,41 @@ const SAMPLES_A_PERIOD = 12;
 const FEWEST = 240;
 const MOST = 30_000;
 
+/** Σ amplitude · e^{−decay τ} sin(turning τ), by ascending frequency. */
 interface Vibration {
-  /** a_n/√(1 − ζ²) · decay ζω · damped frequency. */
   readonly amplitude: Float64Array;
   readonly decay: Float64Array;
   readonly turning: Float64Array;
+  /** a₁. */
+  readonly modeOne: number;
 }
 
+/**
+ * A ratio below 0 exists only for half-differences about 0, and e^{+|ζ|ωτ} of the highest modes would swamp the sum; the
+ * reflection 2 − e^{−|ζ|ωτ} has the same value and slope at 0 and stays bounded.
+ */
 function vibrationOf(modes: FilmModes, pulse: FilmPulse): Vibration {
   const { frequencies } = modes;
   const read = modesAt(modes, pulse.readAt);
   const struck = modesOver(modes, pulse.zoneFrom, pulse.zoneTo);
-  const [amplitude, decay, turning] = [0, 0, 0].map(() => new Float64Array(frequencies.length)) as [Float64Array, Float64Array, Float64Array];
+  const [amplitude, decay, turning]: [number[], number[], number[]] = [[], [], []];
+  const add = (a: number, d: number, w: number): void => {
+    amplitude.push(a);
+    decay.push(d);
+    turning.push(w);
+  };
+  let modeOne = 0;
   for (let n = 0; n < frequencies.length; n += 1) {
+    const frequency = frequencies[n]!;
     const ratio = n === 0 ? pulse.dampingRatio : pulse.dampingRatioAbove;
     const root = Math.sqrt(1 - ratio * ratio);
     // The shapes' modal mass is 1/ω².
-    amplitude[n] = (read[n]! * struck[n]! * frequencies[n]!) / root;
-    decay[n] = ratio * frequencies[n]!;
-    turning[n] = root * frequencies[n]!;
+    const a = read[n]! * struck[n]! * frequency;
+    if (n === 0) modeOne = a;
+    if (ratio < 0) add((2 * a) / root, 0, root * frequency);
+    add(ratio < 0 ? -a / root : a / root, Math.abs(ratio) * frequency, root * frequency);
   }
-  return { amplitude, decay, turning };
+  return { amplitude: Float64Array.from(amplitude), decay: Float64Array.from(decay), turning: Float64Array.from(turning), modeOne };
 }
 
 /** x m/(I √(L/g)) at τ. */
@@ -124,7 +138,7 @@ export function filmFirstMaximum(modes: FilmModes, pulse: FilmPulse): FilmFirstM
   return {
     largest,
     earliest: Math.abs(earliest.time - largest.time) < step ? largest : earliest,
-    modeOne: (vibration.amplitude[0]! * Math.sqrt(1 - pulse.dampingRatio ** 2)) / dampingFactor(pulse.dampingRatio),
+    modeOne: vibration.modeOne / dampingFactor(pulse.dampingRatio),
     frequency: modes.frequencies[0]!,
   };
 }

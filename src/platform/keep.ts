@@ -1,5 +1,6 @@
 /** Keeps the session on this device between visits (IndexedDB), and brings it back; what cannot be read is put by, never overwritten. */
-import { get, set } from 'idb-keyval';
+import { createStore, get, promisifyRequest } from 'idb-keyval';
+import type { UseStore } from 'idb-keyval';
 
 /** Where texts are kept by key; a rejected promise means that the device does not keep anything (private window, disk full). */
 export interface Shelf {
@@ -7,11 +8,24 @@ export interface Shelf {
   set(key: string, text: string): Promise<void>;
 }
 
-const deviceShelf: Shelf = { get: (key) => get<unknown>(key), set: (key, text) => set(key, text) };
+let opened: UseStore | null = null;
+const database = (): UseStore => (opened ??= createStore('firstswing', 'kept'));
 
-const SESSION_KEY = 'firstswing/session';
+/** Commits at once instead of when the page is next idle: a page that is going away is not idle again. */
+const deviceShelf: Shelf = {
+  get: (key) => get<unknown>(key, database()),
+  set: (key, text) =>
+    database()('readwrite', (store) => {
+      store.put(text, key);
+      const { transaction } = store;
+      transaction.commit();
+      return promisifyRequest(transaction);
+    }),
+};
+
+const SESSION_KEY = 'session';
 /** How long after a change the session is written, at the latest. */
-const WRITE_AFTER_MS = 600;
+const WRITE_AFTER_MS = 300;
 
 export type Found<Value> =
   | { readonly status: 'none' }
@@ -80,7 +94,8 @@ export function createKeeper({ onKept, onNotKept, shelf = deviceShelf, now = Dat
     if (waiting !== null) {
       const text = waiting();
       waiting = null;
-      writing = writing.then(() => write(text));
+      // Not behind an earlier write: those of one database are done in the order in which they are begun.
+      writing = Promise.all([writing, write(text)]).then(() => undefined);
     }
     return writing;
   }

@@ -56,6 +56,8 @@ const LARGE_RELATIVE = 0.3;
 /** SI. Beyond these nothing of a bench is measured, and squares of squares would leave the range of numbers. */
 export const GREATEST = 1e12;
 export const LEAST = 1e-18;
+/** A coverage factor below this is a slip of the keyboard. */
+const LEAST_COVERAGE = 1e-3;
 
 export function readBench(session: Session): BenchRead {
   const { used } = entriesInUse(session.choices);
@@ -112,7 +114,7 @@ function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choi
     return blank();
   }
   const k = typed.k.trim() === '' ? 2 : readNumber(typed.k);
-  if (typed.plusMinus === 'expanded' && !(k !== null && k > 0)) {
+  if (typed.plusMinus === 'expanded' && !(k !== null && k > LEAST_COVERAGE)) {
     problems.push(problem('entry-not-a-number', 'stops', place, { label: `${kind.label}, coverage factor k`, found: typed.k, unit: '1' }));
     return blank();
   }

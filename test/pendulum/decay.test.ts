@@ -120,7 +120,7 @@ describe('the choice of the damping law', () => {
     for (const [term, value] of CASES) {
       const choice = chooseDampingLaw(readingsOf({ first: 0.3, damping: { [term]: value }, count: 20, u: 3e-4 }, noise));
       expect(choice).toMatchObject({ status: 'told', best: term, possible: [term], mixed: null });
-      expect(choice.fits.map((fit) => fit.terms[0]).toSorted()).toEqual([...DAMPING_TERMS].toSorted());
+      expect(new Set(choice.fits.map((fit) => fit.terms[0]))).toEqual(new Set(DAMPING_TERMS));
     }
   });
 

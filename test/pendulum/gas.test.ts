@@ -40,7 +40,12 @@ describe('air', () => {
     const expected = expectedOf<readonly number[]>('f09-sutherland');
     [0, 15, 20, 25, 40, 100].forEach((celsius, i) => expect(off(airViscosity(celsius + 273.15), expected[i]!)).toBeLessThan(1e-12));
     const published = expectedOf<{ readonly geometric_published: Readonly<Record<string, readonly number[]>> }>('f06-ussa76').geometric_published;
-    for (const [T, , , , mu] of Object.values(published)) expect(off(airViscosity(T!), mu!)).toBeLessThan(1e-4);
+    const heights = Object.keys(published).filter((height) => height !== 'columns');
+    expect(heights.length).toBeGreaterThan(5);
+    for (const height of heights) {
+      const [T, , , , mu] = published[height]!;
+      expect(off(airViscosity(T!), mu!)).toBeLessThan(1e-4);
+    }
   });
 
   test('has a mean free path of 6.6 mm at 1 Pa', () => {

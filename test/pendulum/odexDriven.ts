@@ -45,7 +45,7 @@ function integrate(acceleration: Acceleration, from: State, end: number, stop?: 
   return last;
 }
 
-export const stateAt = integrate as (acceleration: Acceleration, from: State, end: number) => State;
+export const stateAt = (acceleration: Acceleration, from: State, end: number): State => integrate(acceleration, from, end);
 
 /** The next turning point of a motion whose speed has the sign of `sense` until then. */
 export function nextTurningPoint(acceleration: Acceleration, from: State, sense: 1 | -1): State {

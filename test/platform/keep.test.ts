@@ -3,7 +3,7 @@ import { createKeeper, flushOnLeaving, loadKept } from '../../src/platform/keep.
 import type { Shelf } from '../../src/platform/keep.ts';
 
 function memoryShelf(first?: unknown): Shelf & { readonly kept: Map<string, unknown> } {
-  const kept = new Map<string, unknown>(first === undefined ? [] : [['firstswing/session', first]]);
+  const kept = new Map<string, unknown>(first === undefined ? [] : [['session', first]]);
   return { kept, get: async (key) => kept.get(key), set: async (key, text) => void kept.set(key, text) };
 }
 const brokenShelf: Shelf = { get: () => Promise.reject(new Error('no storage')), set: () => Promise.reject(new Error('full')) };
@@ -25,7 +25,7 @@ describe('bringing back', () => {
     const keeper = createKeeper({ onKept: () => {}, onNotKept: () => {}, shelf });
     keeper.keep(() => 'good new');
     await keeper.flush();
-    expect(Object.fromEntries(shelf.kept)).toEqual({ 'firstswing/session': 'good new', 'firstswing/session/unreadable/42': 'spoiled' });
+    expect(Object.fromEntries(shelf.kept)).toEqual({ 'session': 'good new', 'session/unreadable/42': 'spoiled' });
   });
 
   test('something that is no text at all is put by as text', async () => {
@@ -46,7 +46,7 @@ describe('keeping', () => {
     for (const text of ['a', 'b', 'c']) keeper.keep(() => text);
     expect(set).not.toHaveBeenCalled();
     await vi.runAllTimersAsync();
-    expect(set.mock.calls).toEqual([['firstswing/session', 'c']]);
+    expect(set.mock.calls).toEqual([['session', 'c']]);
     expect(at).toEqual([7]);
   });
 
@@ -57,7 +57,7 @@ describe('keeping', () => {
     keeper.keep(() => 'on leaving');
     window.dispatchEvent(new Event('pagehide'));
     await keeper.flush();
-    expect(shelf.kept.get('firstswing/session')).toBe('on leaving');
+    expect(shelf.kept.get('session')).toBe('on leaving');
     stop();
   });
 

@@ -54,6 +54,8 @@ export interface Drawing {
 }
 
 const HEIGHT = 400;
+/** Widest swing that is drawn; beyond it everything is drawn smaller, its words are not. */
+const WIDEST_SWING = 200;
 const TOP = 34;
 const BOTTOM = 46;
 const LEFT = 168;
@@ -135,10 +137,12 @@ export function layDrawing(bench: BenchLengths): Drawing {
   const body = isLength(typedBody) ? typedBody : Math.max(0, ...lengths) || ASSUMED_BODY_M;
   const above = Math.max(0, ...bench.parts.map((part) => -(part.distance ?? 0)), -(typed.get('calibrationMassDistance') ?? 0));
   const down = Math.max(body, ...lengths);
-  const scale = (HEIGHT - TOP - BOTTOM) / (down + above);
-  const pivot = { x: LEFT, y: TOP + above * scale };
   const angle = Math.min(Math.abs(bench.throwAngle ?? 0), Math.PI / 2);
-  const swing = Math.sin(angle) * down * scale;
+  const wide = Math.sin(angle) * down;
+  const high = down + above;
+  const scale = Math.min((HEIGHT - TOP - BOTTOM) / high, wide > 0 ? WIDEST_SWING / wide : Infinity);
+  const pivot = { x: LEFT, y: TOP + above * scale };
+  const swing = wide * scale;
 
   const assumed: Partial<Record<DrawnEntry, number>> = { leverArm: body * 0.85, tapLeverArm: body * 0.7, rulerHeight: body * 1.04, calibrationMassDistance: body * 0.55 };
   const placed = names.map((entry) => {
@@ -161,7 +165,7 @@ export function layDrawing(bench: BenchLengths): Drawing {
 
   return {
     width: Math.max(firstLine + (lines.length - 1) * LINE_STEP, pivot.x + swing) + 22,
-    height: HEIGHT,
+    height: TOP + high * scale + BOTTOM,
     pivot,
     angle,
     bodyEnd: body * scale,

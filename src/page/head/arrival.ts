@@ -10,8 +10,9 @@ export function arrivalMessages(found: Found<SessionRead>, rest: SessionRead | n
   const opening = rest?.session == null
     ? 'The session kept on this device cannot be read, so the sheet begins empty. What was kept is put by and is not written over.'
     : 'A part of the session kept on this device cannot be read; the rest is here. What was kept is put by whole and is not written over.';
+  const more = (rest?.problems ?? []).filter(({ code }) => code === 'session-damaged' || code === 'session-newer');
   return [{
-    sentences: [opening, ...shortened((rest?.problems ?? []).map(sentence))],
+    sentences: [opening, ...shortened(more.map(sentence))],
     offer: { words: 'Save what was kept as a file', name: 'kept-session.txt', text: found.text },
   }];
 }
