@@ -14,6 +14,9 @@ export type SymmetricEigenResult =
 /** QL needs one to three turns an eigenvalue; ten times that is a matrix gone wrong. */
 const TURNS = 40;
 
+/** Of a matrix whose largest entry is near 1: what is smaller than this moves no place of any eigenvalue, and its square is still a number. */
+const NEGLIGIBLE = 1e-100;
+
 /**
  * A = Σ λ_k v_k v_kᵀ by Householder's reduction to three diagonals and implicitly shifted QL.
  *
@@ -26,10 +29,13 @@ const TURNS = 40;
 export function symmetricEigen(n: number, a: Float64Array): SymmetricEigenResult {
   if (!(Number.isInteger(n) && n > 0 && a.length === n * n)) throw new RangeError(`symmetricEigen: ${a.length} entries for n = ${n}`);
   if (!a.every(Number.isFinite)) return { status: 'notFinite' };
-  const { diagonal, beside, basis } = threeDiagonals(n, a);
+  const largest = a.reduce((most, entry) => Math.max(most, Math.abs(entry)), 0);
+  // A power of two, so that no digit changes.
+  const scale = largest === 0 ? 1 : 2 ** Math.floor(Math.log2(largest));
+  const { diagonal, beside, basis } = threeDiagonals(n, a.map((entry) => entry / scale));
   if (!diagonalise(diagonal, beside, basis)) return { status: 'limit' };
   const order = Array.from({ length: n }, (_, k) => k).sort((i, j) => diagonal[i]! - diagonal[j]!);
-  const values = Float64Array.from(order, (k) => diagonal[k]!);
+  const values = Float64Array.from(order, (k) => diagonal[k]! * scale);
   const vectors = new Float64Array(n * n);
   order.forEach((k, row) => vectors.set(basis.subarray(k * n, (k + 1) * n), row * n));
   return { status: 'found', values, vectors };
@@ -43,9 +49,8 @@ interface ThreeDiagonals {
   readonly basis: Float64Array;
 }
 
-/** QᵀAQ with three diagonals; the reflections are kept in the columns that they have emptied, then multiplied out. */
-function threeDiagonals(n: number, matrix: Float64Array): ThreeDiagonals {
-  const a = matrix.slice();
+/** QᵀAQ with three diagonals; A is used up: the reflections are kept in the columns that they have emptied, then multiplied out. */
+function threeDiagonals(n: number, a: Float64Array): ThreeDiagonals {
   for (let i = 0; i < n; i += 1) for (let j = 0; j < i; j += 1) a[j * n + i] = a[i * n + j]!;
   const diagonal = new Float64Array(n);
   const beside = new Float64Array(n);
@@ -56,7 +61,7 @@ function threeDiagonals(n: number, matrix: Float64Array): ThreeDiagonals {
     diagonal[k] = a[k * n + k]!;
     let sum = 0;
     for (let i = k + 1; i < n; i += 1) sum += a[k * n + i]! ** 2;
-    const norm = Math.sqrt(sum);
+    const norm = sum > NEGLIGIBLE ** 2 ? Math.sqrt(sum) : 0;
     const head = a[k * n + k + 1]!;
     const target = head > 0 ? -norm : norm;
     beside[k] = target;
@@ -105,7 +110,7 @@ function diagonalise(d: Float64Array, e: Float64Array, z: Float64Array): boolean
   for (let l = 0; l < n; l += 1) {
     for (let turn = 0; ; turn += 1) {
       let m = l;
-      while (m < n - 1 && Math.abs(e[m]!) > Number.EPSILON * (Math.abs(d[m]!) + Math.abs(d[m + 1]!))) m += 1;
+      while (m < n - 1 && Math.abs(e[m]!) > NEGLIGIBLE + Number.EPSILON * (Math.abs(d[m]!) + Math.abs(d[m + 1]!))) m += 1;
       if (m === l) break;
       if (turn === TURNS) return false;
       const half = (d[l + 1]! - d[l]!) / (2 * e[l]!);
@@ -117,7 +122,8 @@ function diagonalise(d: Float64Array, e: Float64Array, z: Float64Array): boolean
       for (let i = m - 1; i >= l; i -= 1) {
         const f = s * e[i]!;
         const b = c * e[i]!;
-        const r = Math.sqrt(f * f + g * g);
+        const square = f * f + g * g;
+        const r = square > NEGLIGIBLE ** 2 ? Math.sqrt(square) : Math.hypot(f, g);
         e[i + 1] = r;
         if (r === 0) {
           d[i + 1]! -= p;

@@ -15,7 +15,7 @@ export type FilmHold = 'clamped' | 'hinged';
 export interface HangingFilm {
   /** S = EI/(w′L³) · 1 · 0 or 1e-7 … 1e6. With S = 0 nothing holds a slope, and clamped is hinged. */
   readonly stiffnessNumber: number;
-  /** P = plate mass/film mass · 1 · ≥ 0. */
+  /** P = plate mass/film mass · 1 · 0 … 1e6 · a point at the tip. A plate of some height swings as a second pendulum (methods 1.18, 8): struck and read at its centre of mass it is near this model, at its edge it is not. */
   readonly plateRatio: number;
   readonly hold: FilmHold;
 }
@@ -46,6 +46,7 @@ const LOST = 1e-13;
  *
  * K v = λ M v is turned over to C⁻¹ M C⁻ᵀ u = λ⁻¹ u with K = C Cᵀ: rounding then falls on the highest modes, which do
  * not matter, instead of on the first, since the stiffness of the shortest elements is some 1e14 times that of mode 1.
+ * On a hinge that rounding still costs ω₁ some 1e-9 S, relative; at a clamp nothing.
  * @throws RangeError when S or P is out of its range
  */
 export function filmModes(film: HangingFilm, choice: MeshChoice = USUAL_MESH): FilmModes {

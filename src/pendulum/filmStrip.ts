@@ -132,7 +132,13 @@ export const coefficientWithHigherModes = (film: FilmInputs, hold: FilmHold, dam
 /** x/X and what makes an impulse of it; the coefficient may come from a table. */
 export type FilmReadingInputs = Numbers<'reading' | 'mass' | 'length' | 'gravity'>;
 
-/** I = m x/(X √(L/g)) = (m x/X) √(g/L) · N·s · x from rest, m, at the reading point; m the film's mass without its plate, kg. Valid: X, L, g > 0. */
+/**
+ * I = m x/(X √(L/g)) = (m x/X) √(g/L) · N·s · x from rest, m, at the reading point; m the film's mass without its plate, kg.
+ *
+ * Gas that moves with a bare film adds inertia and no weight: an even added mass of α times the film's makes it √(1 + α) I
+ * and every time √(1 + α) longer (derived; α in methods 1.13, an order of magnitude only at rough vacuum).
+ * Valid: X, L, g > 0.
+ */
 export const impulseOfCoefficient = ({ reading, mass, length, gravity, coefficient }: FilmReadingInputs & Numbers<'coefficient'>): number =>
   ((mass * reading) / coefficient) * Math.sqrt(gravity / length);
 

@@ -65,7 +65,7 @@ describe('eigenvalues of a symmetric matrix', () => {
   });
 
   test('the vectors are orthonormal and satisfy the equation for any matrix, its zeros included', () => {
-    const entry = fc.oneof(fc.constant(0), fc.double({ min: -1, max: 1, noNaN: true }), fc.constantFrom(1, -1, 1e-200, 1e-9));
+    const entry = fc.oneof(fc.constant(0), fc.double({ min: -1, max: 1, noNaN: true }), fc.constantFrom(1, -1, 1e-300, -1e-162, 1e-120, 1e-90, 1e-9));
     const matrix = fc.integer({ min: 1, max: 14 }).chain((n) => fc.array(entry, { minLength: n * n, maxLength: n * n }).map((all) => ({ n, all })));
     fc.assert(fc.property(matrix, ({ n, all }) => {
       const a = Float64Array.from(all, (_, at) => all[Math.max(at, (at % n) * n + Math.floor(at / n))]!);
@@ -75,6 +75,14 @@ describe('eigenvalues of a symmetric matrix', () => {
       expect(orthogonality).toBeLessThan(1e-14 * n);
       expect([...found.values]).toEqual([...found.values].sort((x, y) => x - y));
     }));
+  });
+
+  test('a matrix of very small or very large numbers is that of ordinary ones, scaled', () => {
+    for (const scale of [2 ** -1000, 2 ** 1000]) {
+      const { values } = solved(8, ROSSER.map((entry) => entry * scale));
+      solved(8, ROSSER).values.forEach((value, k) => expect(values[k]! / scale).toBe(value));
+    }
+    expect([...solved(3, new Float64Array(9)).values]).toEqual([0, 0, 0]);
   });
 
   test('the matrix given is left as it was, and only its lower triangle is read', () => {

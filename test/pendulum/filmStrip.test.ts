@@ -62,6 +62,14 @@ describe('a film’s behaviour', () => {
     expect(limp.staticTipStiffness).toBe(0);
   });
 
+  test('read as rigid in mode 1 overstates a limp film 1.260, 1.237 and 1.283 times: rigid ω, route B, route A (methods 1.2)', () => {
+    const { frequency, modalTipMass } = filmBehaviour({ ...FILM, stiffnessNumber: 0 }, 'hinged');
+    const impulse = modalTipMass * frequency;
+    expect(Math.sqrt(1.5) / 3 / impulse).toBeCloseTo(1.26, 3);
+    expect(frequency / 3 / impulse).toBeCloseTo(1.237, 3);
+    expect(1 / 2 / frequency / impulse).toBeCloseTo(1.283, 3);
+  });
+
   test('tells the effective mass, the period and the quarter', () => {
     const film = filmBehaviour(FILM, 'clamped');
     expect(film.effectiveMass * film.largest.coefficient * film.frequency).toBeCloseTo(1, 14);
@@ -114,7 +122,7 @@ describe('the impulse bit from a film’s first maximum', () => {
   });
 
   test('propagates by half-differences: each input has its line, those about an end included', () => {
-    const of = (symbol: string, estimate: number, u: number): Source => ({ id: symbol, label: symbol, symbol, dimension: 'ratio', estimate, u, distribution: 'normal', dof: Infinity });
+    const of = (symbol: string, estimate: number, u: number): Source => ({ id: symbol, label: symbol, symbol, dimension: 'number', estimate, u, distribution: 'normal', dof: Infinity });
     const u = { stiffnessNumber: 0.0004, dampingRatio: 0.005, zoneFrom: 0.03, zoneTo: 0.01, readAt: 0.005, reading: 0.0002, mass: 1e-6, length: 5e-4 };
     const all = { ...FILM, ...READ };
     const uncertain = Object.fromEntries(Object.entries(all).map(([name, value]) => [name, name in u ? ofSource(of(name, value, u[name as keyof typeof u])) : exact(value)])) as Record<keyof typeof all, ReturnType<typeof exact>>;
