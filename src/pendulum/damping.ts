@@ -27,6 +27,9 @@ export function ratioOfDecrement(logDecrement: number): number {
   return logDecrement / Math.hypot(2 * Math.PI, logDecrement);
 }
 
+/** q = e^{−δ/2}: half a cycle's decay of the amplitude, viscous. Valid: |ζ| < 1 (below 0 for half-differences). */
+export const ratioToHalfDecay = ({ ratio }: Readonly<Record<'ratio', number>>): number => Math.exp((-Math.PI * ratio) / Math.sqrt(1 - ratio * ratio));
+
 /**
  * Logarithmic decrement per cycle from two swings on one side: δ = ln(x₀/x_n)/n.
  *

@@ -33,7 +33,7 @@ export interface FilmTable {
 
 const FIRST_COLUMNS = 9;
 const FIRST_ROWS = 5;
-/** Sixty-five sets of modes take a third of a second; where 65 do not do, X has kinks (one crest overtaking another) that more would not smooth. */
+/** 65 columns and the middles that check them take one to two seconds; where they do not do, X has kinks (one crest overtaking another) that more would not smooth. */
 const MOST_COLUMNS = 65;
 const MOST_ROWS = 9;
 

@@ -42,7 +42,7 @@ export const PROBLEM_CODES = [
   // a cell
   'cell-not-a-number', 'cell-unknown-unit', 'cell-wrong-kind-of-unit', 'cell-kind-unknown', 'cell-empty',
   // a record
-  'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying',
+  'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
   // the whole run
   'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
   'damping-none', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',

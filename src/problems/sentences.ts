@@ -86,6 +86,8 @@ function words({ code, place, facts, weight }: Problem): string {
       return `the unit “${found}” is not known. Write the number in ${text('unit', 'a usual unit')}, or with another unit.`;
     case 'cell-wrong-kind-of-unit':
       return `“${found}” is not a unit for ${role}. Write the number in ${text('unit', 'the column’s unit')}.`;
+    case 'reading-wrong-kind-of-unit':
+      return `“${text('found', 'the reading')}” is in ${text('unit', 'another unit')}, and the stand is read in another kind of unit. Change the column’s unit, or how the stand is read.`;
     case 'cell-kind-unknown':
       return `“${found}” is none of shot, tap, blank, zero or free swing, so the kind is told from what is filled in. Write one of these words, or choose the kind in the table.`;
     case 'cell-empty':

@@ -7,6 +7,8 @@ export const ROLE_WORDS: Readonly<Record<string, string>> = {
   rest: 'rest reading',
   firstSwing: 'first swing',
   nextSwing: 'next swing',
+  restDown: 'rest, row in the picture',
+  firstSwingDown: 'first swing, row in the picture',
   time: 'time',
   voltage: 'charge voltage',
   pressure: 'pressure',

@@ -36,9 +36,11 @@ export type Proposal = ColumnMeaning & {
 
 /** What a role's numbers are measured in; readings are a length, or an angle. */
 export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
-  rest: ['length', 'angle'],
-  firstSwing: ['length', 'angle'],
-  nextSwing: ['length', 'angle'],
+  rest: ['length', 'angle', 'pixel', 'count'],
+  firstSwing: ['length', 'angle', 'pixel', 'count'],
+  nextSwing: ['length', 'angle', 'pixel', 'count'],
+  restDown: ['pixel'],
+  firstSwingDown: ['pixel'],
   time: ['time'],
   voltage: ['voltage'],
   pressure: ['pressure'],
@@ -51,7 +53,7 @@ export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
 
 /** Unit taken where none is written, told with the proposal. */
 export const USUAL_UNIT: Readonly<Record<Role, string>> = {
-  rest: 'mm', firstSwing: 'mm', nextSwing: 'mm', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s', kind: '', label: '', note: '', ignored: '',
+  rest: 'mm', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s', kind: '', label: '', note: '', ignored: '',
 };
 
 /** Where a column stands while the proposal is being made. */
@@ -168,7 +170,7 @@ function claimByUnit(table: TableRead, profile: ColumnProfile, claim: Claim, cla
   const role = ROLE_OF_DIMENSION[unit.dimension];
   const free = role !== undefined && !claims.some((other) => other.role === role);
   if (free) Object.assign(claim, { role, code: 'unit', facts: { ...claim.facts } });
-  else if (unit.dimension !== 'length' && unit.dimension !== 'angle') {
+  else if (unit.dimension !== 'length' && unit.dimension !== 'angle' && unit.dimension !== 'pixel' && unit.dimension !== 'count') {
     Object.assign(claim, { role: 'ignored', code: 'unit', facts: { ...claim.facts, wrongUnit: unit.symbol } });
   }
 }

@@ -5,9 +5,10 @@ export const RECORD_KINDS = ['shot', 'tap', 'blank', 'zero', 'freeSwing'] as con
 export type RecordKind = (typeof RECORD_KINDS)[number];
 
 export const ROLES = [
-  'kind', 'label', 'rest', 'firstSwing', 'nextSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'note', 'ignored',
+  'kind', 'label', 'rest', 'firstSwing', 'nextSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse', 'note', 'ignored',
 ] as const;
 /**
+ * restDown, firstSwingDown: the marker's row in a picture, counted downward, beside its column in rest and firstSwing.
  * nextSwing: the turning readings after the first swing, one column each, in order: the first such column is the
  * return swing (the other side), the second the same side again, and so on.
  */

@@ -32,6 +32,9 @@ export interface SheetRecord {
   readonly note: string;
   readonly rest: CellRead | null;
   readonly firstSwing: CellRead | null;
+  /** Rows in the picture, counted downward, where pivot and marker are tracked. */
+  readonly restDown: CellRead | null;
+  readonly firstSwingDown: CellRead | null;
   /** One a next-swing column, in order; null where blank or not readable. */
   readonly nextSwings: readonly (CellRead | null)[];
   readonly time: CellRead | null;
@@ -52,7 +55,7 @@ export interface RecordsRead {
   readonly problems: readonly Problem[];
 }
 
-const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse'];
+const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse'];
 
 interface Row {
   readonly line: string;
@@ -180,6 +183,8 @@ function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetP
   const readings = {
     rest: readAt(single.get('rest')),
     firstSwing: readAt(single.get('firstSwing')),
+    restDown: readAt(single.get('restDown')),
+    firstSwingDown: readAt(single.get('firstSwingDown')),
     nextSwings: bench.nextSwings.map(readAt),
     time: readAt(single.get('time')),
     voltage: readAt(single.get('voltage')),

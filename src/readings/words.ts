@@ -31,6 +31,8 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'ruhe|ruhelage|ruhestellung|null|nullage|nulllage|nullpunkt|vorher|anfang|repos|zero avant|position de repos|avant|equilibre|' +
     'reposo|cero|antes|equilibrio|posicion de reposo|riposo|prima del tiro|repouso|posicao de repouso|rust|ruststand|nulstand|nul|voor|' +
     'spoczynek|polozenie spoczynkowe|spoczynkow*|przed|klid|klidova poloha|klidov*|nula|pred|pokoj|покой|положение покоя|ноль|нуль|до выстрела|начальн*|静止|静止位置|零点|ゼロ|ゼロ点|初期|初期位置|静止读数|零位|初始|初值',
+  restDown: 'rest y|rest row|y0|y 0|v0|ruhe y|repos y',
+  firstSwingDown: 'first swing y|peak y|first y|y1|y 1|v1|ausschlag y|pic y',
   firstSwing:
     'first swing|first|first peak|first throw|first deflection|swing 1|swing|throw|deflection|peak|peak 1|1st swing|1st peak|max|maximum|kick|furthest|x1|x 1|a1|p1|right|rechts|droite|derecha|destra|direita|' +
     'erster ausschlag|1 ausschlag|ausschlag|erstausschlag|auslenkung|erste auslenkung|umkehrpunkt|spitze|maximal*|' +

@@ -2,7 +2,8 @@
 import { fromExpanded, fromLimits, type Distribution, type Source } from '../metrology/source.ts';
 import { anchor, exact, ofSource, type Uncertain } from '../metrology/uncertain.ts';
 import { problem, type Problem } from '../problems/problems.ts';
-import { ENTRIES, PART_ENTRIES, type EntryKind, type EntryName, type PartEntryName } from '../session/entries.ts';
+import { WAYS } from '../readings/ways.ts';
+import { ENTRIES, ENTRY_NAMES, PART_ENTRIES, type EntryKind, type EntryName, type PartEntryName } from '../session/entries.ts';
 import type { Choices, Entry, Session } from '../session/session.ts';
 import { readNumber, readQuantity } from '../units/quantity.ts';
 import type { Dimension } from '../units/units.ts';
@@ -24,16 +25,32 @@ export interface BenchRead {
   readonly sources: readonly Source[];
 }
 
+function entryNamed(name: string): EntryName {
+  const known = ENTRY_NAMES.find((entry) => entry === name);
+  if (known === undefined) throw new Error(`entries in use: no entry is named ${name}`);
+  return known;
+}
+
+/** The reading's scale has a plumb mark where its curvature makes one matter. */
+export const hasPlumbMark = ({ readingWay, swingMeasured }: Choices): boolean =>
+  WAYS[readingWay].reads === 'length' && swingMeasured === 'fromRest' && readingWay !== 'rise' && readingWay !== 'chord';
+
+/** Dimension in which the readings are written. */
+export const readingDimension = ({ readingWay }: Choices): Dimension => WAYS[readingWay].reads;
+const USUAL_READING_UNIT: Readonly<Record<string, string>> = { length: 'mm', angle: 'mrad', pixel: 'px', count: 'counts' };
+
 /** Entries that the present choices use; `needed` ones stop the road where they are missing. */
 export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<EntryName>; readonly needed: ReadonlySet<EntryName> } {
   const needed = new Set<EntryName>(['leverArm']);
   const used = new Set<EntryName>(['leverArm', 'flexureStiffness', 'scaleFactor', 'division', 'readingSpread', 'tapLeverArm', 'hammerFactor', 'tapSpread']);
   if (choices.form === 'pointBob') for (const name of ['bobMass', 'bobDistance'] as const) needed.add(name);
   if (choices.form === 'uniformStrip') for (const name of ['stripMass', 'stripLength'] as const) needed.add(name);
-  if (choices.readingWay === 'rulerAtTip') needed.add('readingRadius');
-  if (choices.readingWay === 'rulerUnderLine') needed.add('rulerHeight');
-  if (choices.readingWay === 'laserSpot') needed.add('screenDistance');
-  if (choices.readingWay !== 'angle') used.add('scaleMark');
+  const way = WAYS[choices.readingWay];
+  for (const name of way.needs) needed.add(entryNamed(name));
+  for (const name of Object.keys(way.mayHave)) if (name !== 'screenShape') used.add(entryNamed(name));
+  if (choices.readingWay === 'cameraPivotMarker') for (const name of ['pivotAcross', 'pivotDown'] as const) needed.add(name);
+  if (hasPlumbMark(choices)) used.add('scaleMark');
+  if (way.reads === 'length' && choices.readingWay.startsWith('ruler')) for (const name of ['parallaxGap', 'cameraDistance', 'eyeShift'] as const) used.add(name);
   if (choices.dampingWay === 'decrement') needed.add('logDecrement');
   if (choices.dampingWay === 'ratio') needed.add('dampingRatio');
   if (choices.gravityWay === 'typed') used.add('gravity');
@@ -49,7 +66,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown']);
 
 const LARGE_RELATIVE = 0.3;
 
@@ -92,8 +109,8 @@ export function readBench(session: Session): BenchRead {
 }
 
 function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choices: Choices, used: boolean, problems: Problem[]): ReadEntry {
-  const dimension: Dimension = kind.dimension === 'reading' ? (choices.readingWay === 'angle' ? 'angle' : 'length') : kind.dimension;
-  const unitIfNone = kind.dimension === 'reading' && choices.readingWay === 'angle' ? 'mrad' : kind.unit;
+  const dimension: Dimension = kind.dimension === 'reading' ? readingDimension(choices) : kind.dimension;
+  const unitIfNone = kind.dimension === 'reading' ? (USUAL_READING_UNIT[dimension] ?? kind.unit) : kind.unit;
   const text = typed?.text.trim() ?? '';
   const blank = (distribution: EntryRead['distribution'] = 'exact'): ReadEntry => ({
     read: { name, label: kind.label, symbol: kind.symbol, dimension, value: null, u: 0, unit: unitIfNone, distribution, used },

@@ -1,18 +1,18 @@
 /** One record opened: the chain from its readings to its impulse bit, each step with its value, uncertainty and equation. */
 import { exact, propagate, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingFactor } from '../pendulum/damping.ts';
+import { WAYS } from '../readings/ways.ts';
 import type { Dimension } from '../units/units.ts';
 import { stated } from './run.ts';
 import type { ChainStep } from './results.ts';
 import type { Form, Swing, Way } from './shots.ts';
 import type { Damping, Scale } from './swings.ts';
 
-const ANGLE_EQUATION: Readonly<Record<Scale['way'], { readonly marked: string; readonly plain: string }>> = {
-  rulerAtTip: { plain: 'θ_p = asin(s (x₁ − x₀)/R)', marked: 'θ_p = asin(s (x₁ − x_m)/R) − asin(s (x₀ − x_m)/R)' },
-  rulerUnderLine: { plain: 'θ_p = atan(s (x₁ − x₀)/H)', marked: 'θ_p = atan(s (x₁ − x_m)/H) − atan(s (x₀ − x_m)/H)' },
-  laserSpot: { plain: 'θ_p = ½ atan(s (x₁ − x₀)/D)', marked: 'θ_p = ½ atan(s (x₁ − x_m)/D) − ½ atan(s (x₀ − x_m)/D)' },
-  angle: { plain: 'θ_p = s (x₁ − x₀)', marked: 'θ_p = s (x₁ − x₀)' },
-};
+function angleEquation(scale: Scale): string {
+  const { equation } = WAYS[scale.way];
+  if (scale.sideToSide) return `${equation}, x the way from side to side shared as 1 : q, q = e^(−δ/2)`;
+  return scale.mark ? `${equation}; θ_p = θ(s (x₁ − x_m)) − θ(s (x₀ − x_m))` : `${equation}; θ_p = θ(s (x₁ − x₀))`;
+}
 
 export interface Explained {
   readonly swing: Swing;
@@ -32,7 +32,7 @@ export interface Explained {
 /** Chain of a record that has both readings; steps that could not be taken are left out. */
 export function chainOf(x: Explained): readonly ChainStep[] {
   const { swing, scale, damping, chosen } = x;
-  const reading: Dimension = scale.way === 'angle' ? 'angle' : 'length';
+  const reading: Dimension = scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads;
   const steps: ChainStep[] = [];
   const add = (id: string, label: string, symbol: string, equation: string, dimension: Dimension, y: Uncertain | null, more: { factor?: number; aside?: true } = {}): void => {
     if (y) steps.push({ id, label, symbol, equation, dimension, stated: stated(y), ...more });
@@ -43,7 +43,7 @@ export function chainOf(x: Explained): readonly ChainStep[] {
   if (swing.readings.rest && swing.readings.first) {
     add('throw', 'Throw', 'x₁ − x₀', 'reading less rest', reading, propagate(({ a, b }) => a - b, { a: swing.readings.first, b: swing.readings.rest }));
   }
-  add('angle', 'First-swing angle', 'θ_p', (scale.sense === -1 ? '−' : '') + ANGLE_EQUATION[scale.way][scale.mark ? 'marked' : 'plain'], 'angle', swing.angle);
+  add('angle', 'First-swing angle', 'θ_p', (scale.sense === -1 ? '−' : '') + angleEquation(scale), 'angle', swing.angle);
   if (!swing.angle || !swing.launch) return steps;
   const ratio = damping.ratio[swing.configuration];
   const D = propagate(({ z }) => dampingFactor(z), { z: ratio });

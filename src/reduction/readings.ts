@@ -1,12 +1,16 @@
 /** Third step: every reading of a record becomes a source of its own, with the division and the eye as its uncertainty. */
 import { sampleStandardDeviation } from '../numeric/samples.ts';
-import { fromResolution, type Family, type Source } from '../metrology/source.ts';
-import { anchor, combine, ofSource, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
+import { commonRounding } from '../metrology/rounding.ts';
+import { fromLimits, fromResolution, type Family, type Source } from '../metrology/source.ts';
+import { anchor, combine, exact, ofSource, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import type { CellRead } from '../readings/cellReads.ts';
 import type { RecordKind } from '../readings/meanings.ts';
 import { unitNamed, type Dimension } from '../units/units.ts';
-import type { BenchRead } from './entries.ts';
+import { pictureAngle } from '../readings/ways.ts';
+import type { Choices } from '../session/session.ts';
+import { readingDimension, type BenchRead } from './entries.ts';
+import { valueOf } from './stand.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
 
 export interface Readings {
@@ -71,26 +75,6 @@ const FAMILY: Readonly<Record<RecordKind, Family>> = {
 };
 export const familyOf = (kind: RecordKind): Family => FAMILY[kind];
 
-/** Harmonics of the rounding error that are summed; the tenth is below 1e-3 of the first even without any spread. */
-const HARMONICS = 40;
-
-/**
- * u of the part of the rounding error that is common to many readings of one division a, where the readings would
- * spread by σ before rounding: u² = Σ_k a²/(2π²k²) e^{−4π²k²σ²/a²}; a²/12 at σ = 0 (all on one division: it does not
- * average), nothing from σ ≈ a/2 on (the rounding errors are independent).
- *
- * Valid: a > 0, σ ≥ 0, Gaussian spread, position within the division unknown. Unit of a.
- * Source: derived from the characteristic function of the spread (quantisation theory, B. Widrow; from memory).
- */
-export function commonRounding(division: number, spread: number): number {
-  let sum = 0;
-  const x = 2 * Math.PI * (spread / division);
-  for (let k = 1; k <= HARMONICS; k++) sum += Math.exp(-((k * x) ** 2)) / (2 * Math.PI ** 2 * k * k);
-  // What the harmonics left out hold at σ = 0: the sum to infinity is 1/12.
-  if (x === 0) return division / Math.sqrt(12);
-  return division * Math.sqrt(Math.min(sum, 1 / 12));
-}
-
 /** The common part of the rounding of a group of readings: one source that each of them has, or none. */
 function commonDivision(id: string, label: string, symbol: string, cells: readonly CellRead[], spread: ReadingSpread, dimension: Dimension): Anchor | null {
   const rounded = cells.filter((cell) => cell.spread === null).map((cell) => cell.value);
@@ -124,37 +108,88 @@ function reading(record: SessionRecord, cell: CellRead, part: string, label: str
   return parts.length === 1 ? parts[0]! : combine(parts.map((part) => [1, part]));
 }
 
+/** Rest of the run at one record, by the zeros around it. */
+interface Zero {
+  readonly index: number;
+  readonly line: string;
+  readonly rest: Uncertain;
+  readonly time: number | null;
+}
+
+/** Half-width of what a rest may do between two zeros beside moving evenly, as a part of its whole move; judgement (methods 1.16). */
+const CURVATURE = 0.25;
+
+/** Rest between two zeros, by the time where both zeros and the record have one, else by the order; with what may lie between. */
+function between(a: Zero, b: Zero, index: number, time: number | null, record: SessionRecord, dimension: Dimension): Uncertain {
+  const timed = a.time !== null && b.time !== null && time !== null && b.time > a.time;
+  const f = timed ? (time - a.time!) / (b.time! - a.time!) : (index - a.index) / (b.index - a.index);
+  const bend: Source = {
+    id: `${record.id}.rest.bend`, label: 'Rest between two zeros, drift not even', symbol: 'x₀', dimension, estimate: 0,
+    u: fromLimits(CURVATURE * Math.abs(b.rest.value - a.rest.value)), distribution: 'rectangular', dof: Infinity, family: familyOf(record.kind),
+  };
+  return combine([[1 - f, a.rest], [f, b.rest], [1, ofSource(bend)]]);
+}
+
 /**
- * Readings of every record in the order of the run. A record without a rest reading takes the last zero
- * before it; that reading's source is then shared by all who take it.
+ * Readings of every record in the order of the run. A record without a rest reading takes the last zero before it, or
+ * where chosen the rest interpolated between the zeros on both sides; a zero's source is shared by all who take it.
  */
-export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpread, dimension: Dimension): { readonly byRecord: ReadonlyMap<string, Readings>; readonly problems: readonly Problem[] } {
+export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpread, choices: Choices, bench: BenchRead): { readonly byRecord: ReadonlyMap<string, Readings>; readonly problems: readonly Problem[] } {
+  const dimension = readingDimension(choices);
   const byRecord = new Map<string, Readings>();
   const problems: Problem[] = [];
+  const fitting = (record: SessionRecord, cell: CellRead | null, role: string): CellRead | null => {
+    if (!cell || unitNamed(cell.unit, dimension)) return cell;
+    problems.push(problem('reading-wrong-kind-of-unit', 'stops', placeOf(record), { found: cell.text, unit: cell.unit, role, dimension }));
+    return null;
+  };
   const common = commonDivisions(records, spread, dimension);
-  let lastZero: { readonly label: string; readonly line: string; readonly rest: Uncertain } | null = null;
-  for (const record of records) {
-    const place = placeOf(record);
-    const zeroCell = record.kind === 'zero' ? record.rest ?? record.firstSwing : record.rest;
-    let rest = zeroCell ? reading(record, zeroCell, 'rest', 'Rest reading', 'x₀', spread, dimension, common('rest', record.kind)) : null;
-    let restFrom: string | null = rest ? record.id : null;
+  const one = (record: SessionRecord, cell: CellRead | null, part: string, label: string, symbol: string): Uncertain | null =>
+    cell ? reading(record, cell, part, label, symbol, spread, dimension, part === 'rest' || part === 'first' ? common(part, record.kind) : null) : null;
+  const pictured = (record: SessionRecord, across: Uncertain | null, down: CellRead | null, part: string): Uncertain | null => {
+    if (choices.readingWay !== 'cameraPivotMarker' || !across) return across;
+    const rows = one(record, down, `${part}.down`, 'Row in the picture', 'v');
+    const pivotAcross = valueOf(bench, 'pivotAcross');
+    const pivotDown = valueOf(bench, 'pivotDown');
+    return rows && pivotAcross && pivotDown ? propagate(pictureAngle, { across, down: rows, pivotAcross, pivotDown }) : null;
+  };
+  const zeros: Zero[] = [];
+  const own = new Map<string, Uncertain | null>();
+  records.forEach((record, index) => {
+    const isZero = record.kind === 'zero';
+    const cell = fitting(record, isZero ? record.rest ?? record.firstSwing : record.rest, 'rest');
+    const rest = pictured(record, one(record, cell, 'rest', 'Rest reading', 'x₀'), isZero ? record.restDown ?? record.firstSwingDown : record.restDown, 'rest');
+    own.set(record.id, rest);
+    if (isZero && rest) zeros.push({ index, line: record.line, rest, time: record.time?.value ?? null });
+  });
+  records.forEach((record, index) => {
+    const ownRest = own.get(record.id) ?? null;
     if (record.kind === 'zero') {
-      if (rest) lastZero = { label: record.label, line: record.line, rest };
-      byRecord.set(record.id, { restFrom, rest, first: null, next: [] });
-      continue;
+      byRecord.set(record.id, { restFrom: ownRest ? record.id : null, rest: ownRest, first: null, next: [] });
+      return;
     }
+    const firstCell = fitting(record, record.firstSwing, 'firstSwing');
+    let rest = ownRest;
+    let restFrom: string | null = rest ? record.id : null;
     // A rest that was written and cannot be read is not the zero's: the rest may have moved since.
-    const spoiled = record.problems.some((p) => p.weight === 'stops' && p.facts['role'] === 'rest');
-    if (!rest && !spoiled && lastZero && record.firstSwing) {
-      rest = lastZero.rest;
-      restFrom = lastZero.line;
-      problems.push(problem('record-rest-from-zero', 'note', place, { zeroLine: lastZero.line }));
-    } else if (!rest && !spoiled && record.firstSwing && record.kind !== 'freeSwing') {
-      problems.push(problem('record-no-rest', 'stops', place, {}));
+    const spoiled = record.problems.some((p) => p.weight === 'stops' && p.facts['role'] === 'rest') || (record.rest !== null && rest === null);
+    if (choices.swingMeasured === 'sideToSide') {
+      rest = exact(0);
+    } else if (!rest && !spoiled && firstCell) {
+      const before = zeros.findLast((zero) => zero.index < index);
+      const after = choices.zeroTaken === 'interpolated' ? zeros.find((zero) => zero.index > index) : undefined;
+      if (before) {
+        rest = after ? between(before, after, index, record.time?.value ?? null, record, dimension) : before.rest;
+        restFrom = before.line;
+        problems.push(problem('record-rest-from-zero', 'note', placeOf(record), { zeroLine: after ? `${before.line} and ${after.line}` : before.line }));
+      } else if (record.kind !== 'freeSwing') problems.push(problem('record-no-rest', 'stops', placeOf(record), {}));
     }
-    const first = record.firstSwing ? reading(record, record.firstSwing, 'first', 'First swing', 'x₁', spread, dimension, common('first', record.kind)) : null;
-    const next = record.nextSwings.flatMap((cell, i) => (cell ? [{ number: i + 1, reading: reading(record, cell, `next${i + 1}`, `Turning point ${i + 2}`, `x${i + 2}`, spread, dimension) }] : []));
+    const first = pictured(record, one(record, firstCell, 'first', 'First swing', 'x₁'), record.firstSwingDown, 'first');
+    const next = record.nextSwings.flatMap((cell, i) => {
+      const turning = one(record, fitting(record, cell, 'nextSwing'), `next${i + 1}`, `Turning point ${i + 2}`, `x${i + 2}`);
+      return turning && choices.readingWay !== 'cameraPivotMarker' ? [{ number: i + 1, reading: turning }] : [];
+    });
     byRecord.set(record.id, { restFrom, rest, first, next });
-  }
+  });
   return { byRecord, problems };
 }

@@ -17,6 +17,7 @@ import { budgetOfRecord, runOf, stated, type Run } from './run.ts';
 import { readSheets, type SessionRecord } from './sheets.ts';
 import { calibrationFromTaps, geometryAnchor, impulseOfLaunch, swingOf, tapsOf, toFiring, type Form, type Swing, type TapCalibration, type TapKnown, type Way } from './shots.ts';
 import { missingEntries, periodOfBody, readStand, standByRoute, valueOf, type Body, type ConfigurationName, type Stand } from './stand.ts';
+import { scaleOf } from './scale.ts';
 import { dampingOf, type Damping, type Scale } from './swings.ts';
 
 type ByConfiguration<T> = Readonly<Record<ConfigurationName, T>>;
@@ -41,7 +42,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const scale = scaleOf(bench, choices);
 
   const spread = readingSpread(records, bench, problems);
-  const read = readingsOf(records, spread, choices.readingWay === 'angle' ? 'angle' : 'length');
+  const read = readingsOf(records, spread, choices, bench);
   problems.push(...read.problems);
 
   const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
@@ -101,14 +102,6 @@ export function reduce(session: Session, explain: string | null): Reduction {
     ranges: { taps: rangeOf(swings, 'tap', counts, form), shots: rangeOf(swings, 'shot', counts, form) },
     explained: opened && scale ? explainOf(opened, scale, damping, shares, arms, factors, impulse, form, way, taps, bench) : opened ? { record: opened.record.id, chain: [], budget: null } : null,
   };
-}
-
-function scaleOf(bench: BenchRead, choices: Choices): Scale | null {
-  const name = { rulerAtTip: 'readingRadius', rulerUnderLine: 'rulerHeight', laserSpot: 'screenDistance', angle: null } as const;
-  const entry = name[choices.readingWay];
-  const far = entry === null ? exact(1) : valueOf(bench, entry);
-  if (!far) return null;
-  return { way: choices.readingWay, far, scale: valueOf(bench, 'scaleFactor') ?? exact(1), mark: choices.readingWay === 'angle' ? null : valueOf(bench, 'scaleMark'), sense: choices.scaleRunsBackward ? -1 : 1 };
 }
 
 /** T₀ of the configuration in which the period was timed; null where none is typed, or the amplitude is none of a swing. */

@@ -6,7 +6,8 @@ import { dampingFactor } from '../pendulum/damping.ts';
 import { configurationChange } from '../pendulum/forms.ts';
 import { launchOfFirstSwing } from '../pendulum/launch.ts';
 import { problem, type Problem } from '../problems/problems.ts';
-import { swingFromMark, swingFromRest } from '../readings/angle.ts';
+import { swingFromMark, swingFromRest, swingFromSides } from '../readings/angle.ts';
+import { ratioToHalfDecay } from '../pendulum/damping.ts';
 import { LEAST, type BenchRead } from './entries.ts';
 import { valueOf } from './stand.ts';
 import { familyOf, type Readings } from './readings.ts';
@@ -44,8 +45,9 @@ export function swingOf(record: SessionRecord, readings: Readings, scale: Scale 
   if (!scale || !rest || !first || record.kind === 'zero' || record.kind === 'freeSwing') return none;
   const place = placeOf(record);
   try {
-    const inputs = { first, rest, far: scale.far, scale: scale.scale };
-    const unsigned = scale.mark ? propagate(swingFromMark[scale.way], { ...inputs, mark: scale.mark }) : propagate(swingFromRest[scale.way], inputs);
+    const inputs = { ...scale.stand, first, scale: scale.scale };
+    const unsigned = scale.sideToSide ? propagate(swingFromSides(scale.way), { ...inputs, halfDecay: propagate(ratioToHalfDecay, { ratio: damping.ratio[configuration] }) })
+      : scale.mark ? propagate(swingFromMark(scale.way), { ...inputs, rest, mark: scale.mark }) : propagate(swingFromRest(scale.way), { ...inputs, rest });
     const angle = scale.sense === 1 ? unsigned : combine([[-1, unsigned]]);
     if (Math.abs(angle.value) > UPRIGHT) {
       problems.push(problem('record-angle-too-large', 'stops', place, { degrees: (angle.value * 180) / Math.PI }));
@@ -56,7 +58,7 @@ export function swingOf(record: SessionRecord, readings: Readings, scale: Scale 
   } catch (failure) {
     if (!(failure instanceof RangeError)) throw failure;
     const out = Math.max(Math.abs(first.value - (scale.mark?.value ?? rest.value)), Math.abs(rest.value - (scale.mark?.value ?? rest.value)));
-    problems.push(problem('record-reading-beyond-radius', 'stops', place, { reading: out, radius: scale.far.value }));
+    problems.push(problem('record-reading-beyond-radius', 'stops', place, { reading: out, radius: (scale.stand['readingRadius'] ?? scale.stand['screenDistance'])?.value ?? 0 }));
     return none;
   }
 }

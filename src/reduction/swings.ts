@@ -5,11 +5,12 @@ import { anchor, exact, ofSource, propagate, standardUncertainty, withSensitivit
 import { ratioFromSwings, ratioOfDecrement, type TurningPoint } from '../pendulum/damping.ts';
 import { dampingCarried } from '../pendulum/forms.ts';
 import { problem, type Problem } from '../problems/problems.ts';
-import { angleOfReading, type ReadingWay } from '../readings/angle.ts';
+import { angleOfReading } from '../readings/angle.ts';
+import type { ReadingWay, StandNumbers } from '../readings/ways.ts';
 import type { Session } from '../session/session.ts';
 import { readQuantity } from '../units/quantity.ts';
 import { unitNamed } from '../units/units.ts';
-import { GREATEST, type BenchRead } from './entries.ts';
+import { GREATEST, readingDimension, type BenchRead } from './entries.ts';
 import type { Readings, ReadingSpread } from './readings.ts';
 import { factorOfBody, type ConfigurationName, type Stand } from './stand.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
@@ -21,10 +22,12 @@ export interface Damping {
   readonly records: number;
 }
 
-/** Scale of the stand: R, H or D, the ruler's scale and its plumb mark. */
+/** Scale of the stand: the lengths that the way of reading needs, the ruler's scale and its plumb mark. */
 export interface Scale {
   readonly way: ReadingWay;
-  readonly far: Uncertain;
+  /** By entry name; the shape of the screen stands among them as a number. */
+  readonly stand: Readonly<Record<string, Uncertain>>;
+  readonly sideToSide: boolean;
   readonly scale: Uncertain;
   readonly mark: Uncertain | null;
   /** −1 where the scale's numbers fall as the pendulum swings out. */
@@ -126,7 +129,8 @@ const PLUMB_STEPS = 12;
 function ratioOfRecord(rest: Uncertain | null, turning: readonly { readonly number: number; readonly reading: Uncertain }[], scale: Scale, gravityShare: number): Uncertain | null {
   const middle = (turning[0]!.reading.value + turning[1]!.reading.value) / 2;
   let mark = scale.mark?.value ?? rest?.value ?? middle;
-  const angle = (x: number): number => scale.sense * angleOfReading(scale.way, { x, mark, far: scale.far.value, scale: scale.scale.value });
+  const stand: StandNumbers = Object.fromEntries(Object.entries(scale.stand).map(([name, value]) => [name, value.value]));
+  const angle = (x: number): number => scale.sense * angleOfReading(scale.way, x, mark, scale.scale.value, stand);
   const slopeAt = (x: number, h: number): number => (h === 0 ? 0 : (angle(x + h) - angle(x - h)) / (2 * h));
   const fitFrom = (): ReturnType<typeof ratioFromSwings> => {
     const points: TurningPoint[] = turning.map(({ number, reading }) => ({ number, angle: angle(reading.value) }));
@@ -160,9 +164,9 @@ function ratioOfRecord(rest: Uncertain | null, turning: readonly { readonly numb
 function typedFreeSwing(session: Session, spread: ReadingSpread, problems: Problem[]): readonly Uncertain[] {
   const text = session.freeSwing.trim();
   if (text === '') return [];
-  const dimension = session.choices.readingWay === 'angle' ? 'angle' : 'length';
+  const dimension = readingDimension(session.choices);
   const cells = text.split(/[;\n\t]+|,\s+|\s+(?=[-−+]?[\d.,])/).map((cell) => cell.trim()).filter((cell) => cell !== '');
-  const unitIfNone = dimension === 'angle' ? 'mrad' : 'mm';
+  const unitIfNone = { length: 'mm', angle: 'mrad', pixel: 'px', count: 'counts' }[dimension as 'length'] ?? 'mm';
   const unitTyped = /[^\d.,\s+\-−()]+\S*$/.exec(cells.at(-1) ?? '')?.[0];
   // A unit that is none of this dimension is told by the last cell itself.
   const unitOfLast = (unitTyped === undefined ? null : unitNamed(unitTyped, dimension)?.symbol) ?? unitIfNone;

@@ -5,7 +5,7 @@ import { RECORD_KINDS, ROLES } from '../readings/meanings.ts';
 import type { ColumnMeaning } from '../readings/meanings.ts';
 import { ENTRY_NAMES, PART_ENTRIES } from './entries.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
-import { emptySession, FIRST_CHOICES } from './session.ts';
+import { CHOICE_VALUES, emptySession, FIRST_CHOICES } from './session.ts';
 import type { Choices, Entry, Mark, Part, Session, Sheet } from './session.ts';
 
 export interface SessionRead {
@@ -39,18 +39,6 @@ const isText = (value: unknown): value is string => typeof value === 'string';
 const isOneOf = <Value extends string>(values: readonly Value[]) => (value: unknown): value is Value =>
   values.some((known) => known === value);
 
-const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices[Name][] } = {
-  form: ['pointBob', 'uniformStrip', 'bodyOfParts'],
-  readingWay: ['rulerAtTip', 'rulerUnderLine', 'laserSpot', 'angle'],
-  scaleRunsBackward: [true, false],
-  dampingWay: ['swings', 'decrement', 'ratio', 'none'],
-  gravityWay: ['typed', 'place'],
-  route: ['masses', 'massesAndPeriod', 'inertiaAndPeriod'],
-  periodTimedAs: ['shots', 'taps'],
-  calibrationMassHung: ['never', 'taps', 'shots', 'always'],
-  calibration: ['geometry', 'taps'],
-  swingForm: ['full', 'smallAngle'],
-};
 const CHOICE_NAMES = Object.keys(CHOICE_VALUES) as readonly (keyof Choices)[];
 const PART_ENTRY_NAMES = Object.keys(PART_ENTRIES) as readonly PartEntryName[];
 

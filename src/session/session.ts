@@ -1,5 +1,6 @@
 /** The session: what the user gave, word for word, with choices and reasons. Nothing computed is in it. */
 import type { ColumnMeaning, RecordKind } from '../readings/meanings.ts';
+import { READING_WAYS, type ReadingWay } from '../readings/ways.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
 
 /** What the number after ± means (GUM 4.3): a standard uncertainty, limits ±a of a rectangular distribution, or U = k·u. */
@@ -21,7 +22,13 @@ export interface Part {
 
 export interface Choices {
   readonly form: 'pointBob' | 'uniformStrip' | 'bodyOfParts';
-  readonly readingWay: 'rulerAtTip' | 'rulerUnderLine' | 'laserSpot' | 'angle';
+  readonly readingWay: ReadingWay;
+  /** Laser: flat screen parallel to the pivot axis, flat screen square to the rest beam, or curved about the pivot. */
+  readonly screenShape: 'parallel' | 'square' | 'curved';
+  /** What the first-swing column holds: the first maximum, or the whole way from side to side (rest then plays no part). */
+  readonly swingMeasured: 'fromRest' | 'sideToSide';
+  /** Rest of a record without one of its own: the zero before it, or interpolated between the zeros before and after. */
+  readonly zeroTaken: 'before' | 'interpolated';
   /** The scale's numbers fall as the pendulum swings away from the thrust. */
   readonly scaleRunsBackward: boolean;
   readonly dampingWay: 'swings' | 'decrement' | 'ratio' | 'none';
@@ -81,6 +88,9 @@ export interface Session {
 export const FIRST_CHOICES: Choices = {
   form: 'uniformStrip',
   readingWay: 'rulerAtTip',
+  screenShape: 'parallel',
+  swingMeasured: 'fromRest',
+  zeroTaken: 'before',
   scaleRunsBackward: false,
   dampingWay: 'swings',
   gravityWay: 'typed',
@@ -91,6 +101,22 @@ export const FIRST_CHOICES: Choices = {
   swingForm: 'full',
 };
 
+/** Every value that a choice can take. */
+export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices[Name][] } = {
+  form: ['pointBob', 'uniformStrip', 'bodyOfParts'],
+  readingWay: READING_WAYS,
+  screenShape: ['parallel', 'square', 'curved'],
+  swingMeasured: ['fromRest', 'sideToSide'],
+  zeroTaken: ['before', 'interpolated'],
+  scaleRunsBackward: [true, false],
+  dampingWay: ['swings', 'decrement', 'ratio', 'none'],
+  gravityWay: ['typed', 'place'],
+  route: ['masses', 'massesAndPeriod', 'inertiaAndPeriod'],
+  periodTimedAs: ['shots', 'taps'],
+  calibrationMassHung: ['never', 'taps', 'shots', 'always'],
+  calibration: ['geometry', 'taps'],
+  swingForm: ['full', 'smallAngle'],
+};
 export function emptySession(): Session {
   return {
     format: 'firstswing-session',

