@@ -45,7 +45,7 @@ export const PROBLEM_CODES = [
   'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
   // the whole run
   'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
-  'damping-none', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
+  'damping-none', 'damping-laws-not-told-apart', 'damping-law-fits-badly', 'pulse-reaches-the-peak', 'background-swing-larger', 'momentum-factor-undeclared', 'capture-taken-as-all', 'propellant-too-heavy', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
   // a bench entry
   'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',
   'bench-unstable', 'bench-inertia-not-positive', 'gravity-assumed',

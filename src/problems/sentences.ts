@@ -138,6 +138,20 @@ function words({ code, place, facts, weight }: Problem): string {
       return weight === 'note'
         ? 'no damping is taken, as chosen; impulse bits come out too small by what the first quarter swing loses.'
         : 'there is no damping to be had from the readings or the entries, so none is taken, and impulse bits come out too small. Note the swings after the first, or type the log decrement.';
+    case 'damping-laws-not-told-apart':
+      return `The swings do not tell which damping law holds (${text('possible', 'several')} fit); ${text('used', 'viscous')} damping is taken. Note more swings of one free swing.`;
+    case 'damping-law-fits-badly':
+      return `No damping law fits the swings within their uncertainty; ${text('used', 'viscous')} damping, the nearest, is taken. Look for a misread turning point or a rubbing pivot.`;
+    case 'pulse-reaches-the-peak':
+      return 'The pulse lasts until the first maximum or beyond, so no impulse bit follows from a first swing. Shorten it, lengthen the period, or read it as thrust × time.';
+    case 'background-swing-larger':
+      return 'The swing before the shot is as large as the swing after it, so this record gives no impulse bit. Let the pendulum come to rest, or read its whole swing.';
+    case 'momentum-factor-undeclared':
+      return 'The plume is caught on a target whose momentum factor is not typed: it may lie anywhere from 1 to 2, which leaves 20 % common to all shots. Type what is known of the target, or report the momentum delivered to it.';
+    case 'capture-taken-as-all':
+      return 'Nothing is typed of how much of the plume meets the target; all of it is taken. Type the part caught, or the plume’s exponent and the target’s half-angle.';
+    case 'propellant-too-heavy':
+      return 'The propellant used is heavier than what swings. Check its mass and unit.';
     case 'damping-from-few':
       return `the damping rests on ${many('records', 'record')} with more than one swing. Note the return swing of more shots, or a free swing.`;
     case 'damping-carried-over':

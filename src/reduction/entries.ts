@@ -53,6 +53,17 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   if (way.reads === 'length' && choices.readingWay.startsWith('ruler')) for (const name of ['parallaxGap', 'cameraDistance', 'eyeShift'] as const) used.add(name);
   if (choices.dampingWay === 'decrement') needed.add('logDecrement');
   if (choices.dampingWay === 'ratio') needed.add('dampingRatio');
+  if (choices.dampingWay === 'quadratic') needed.add('quadraticDamping');
+  if (choices.dampingWay === 'friction') needed.add('frictionAngle');
+  const when = (switched: boolean, ...names: readonly EntryName[]): void => {
+    if (switched) for (const name of names) used.add(name);
+  };
+  when(choices.correctPulse, 'pulseDuration');
+  when(choices.correctAlignment, 'tiltInPlane', 'exitAhead', 'tiltOutOfPlane');
+  when(choices.correctSampling, 'exposure', 'frameInterval');
+  when(choices.correctBackground, 'backgroundSwing');
+  when(choices.correctPropellant, 'propellantUsed', 'propellantDistance');
+  when(choices.plume === 'caught', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle');
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
   for (const name of ['period', 'periodAmplitude', 'periodCycles'] as const) used.add(name);
@@ -66,7 +77,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'targetHalfAngle']);
 
 const LARGE_RELATIVE = 0.3;
 

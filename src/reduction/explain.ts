@@ -3,8 +3,10 @@ import { exact, propagate, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingFactor } from '../pendulum/damping.ts';
 import { WAYS } from '../readings/ways.ts';
 import type { Dimension } from '../units/units.ts';
-import { stated } from './run.ts';
-import type { ChainStep } from './results.ts';
+import { budgetOfRecord, stated } from './run.ts';
+import { expanded, finiteSources } from '../metrology/coverage.ts';
+import type { Road } from './road.ts';
+import type { ChainStep, Reduction } from './results.ts';
 import type { Form, Swing, Way } from './shots.ts';
 import type { Damping, Scale } from './swings.ts';
 
@@ -14,24 +16,28 @@ function angleEquation(scale: Scale): string {
   return scale.mark ? `${equation}; θ_p = θ(s (x₁ − x_m)) − θ(s (x₀ − x_m))` : `${equation}; θ_p = θ(s (x₁ − x₀))`;
 }
 
-export interface Explained {
-  readonly swing: Swing;
-  readonly scale: Scale;
-  readonly damping: Damping;
-  readonly share: Uncertain;
-  /** The lever arm that this record's impulse acts at: r_t, or r_h for a tap. */
-  readonly arm: Uncertain | null;
-  /** Calibration factor of the record's configuration, by each way. */
-  readonly factor: Readonly<Record<Way, Uncertain | null>>;
-  /** Impulse by form and way. */
-  readonly impulse: (form: Form, way: Way) => Uncertain | null;
-  readonly chosen: { readonly form: Form; readonly way: Way };
-  readonly known: Uncertain | null;
+const EQUATION_OF_MOTION: Readonly<Record<Damping['law'], string>> = {
+  viscous: 'φ = θ′(0⁺)/ω_n: θ″ + 2ζω_n θ′ + ω_n²[p sin θ + (1 − p)θ] = 0, solved back from θ_p',
+  quadratic: 'φ = θ′(0⁺)/ω_n: θ″ + β|θ′|θ′ + ω_n²[p sin θ + (1 − p)θ] = 0, solved back from θ_p',
+  friction: 'φ = θ′(0⁺)/ω_n: θ″ + ω_n²[θ_f sgn θ′ + p sin θ + (1 − p)θ] = 0, solved back from θ_p',
+};
+
+/** One record opened; its chain is empty where the stand is not known. */
+export function explained(swing: Swing, road: Road): NonNullable<Reduction['explained']> {
+  const y = road.impulse(swing, road.form, road.way);
+  return {
+    record: swing.record.id, chain: road.scale ? chainOf(swing, road.scale, road) : [],
+    budget: y ? budgetOfRecord(y, expanded(y, finiteSources([y])), road.bench.sources) : null,
+  };
 }
 
 /** Chain of a record that has both readings; steps that could not be taken are left out. */
-export function chainOf(x: Explained): readonly ChainStep[] {
-  const { swing, scale, damping, chosen } = x;
+function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
+  const { damping, corrections, reported } = road;
+  const chosen = { form: road.form, way: road.way };
+  const c = swing.configuration;
+  const factorBy = { geometry: road.factors[road.form].geometry[c], taps: road.factors[road.form].taps[c] };
+  const known = road.taps.find((tap) => tap.swing === swing)?.impulse ?? null;
   const reading: Dimension = scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads;
   const steps: ChainStep[] = [];
   const add = (id: string, label: string, symbol: string, equation: string, dimension: Dimension, y: Uncertain | null, more: { factor?: number; aside?: true } = {}): void => {
@@ -47,33 +53,45 @@ export function chainOf(x: Explained): readonly ChainStep[] {
   if (!swing.angle || !swing.launch) return steps;
   const ratio = damping.ratio[swing.configuration];
   const D = propagate(({ z }) => dampingFactor(z), { z: ratio });
-  add('ratio', 'Damping ratio', 'ζ', 'ζ = δ/√(4π² + δ²)', 'number', ratio);
-  add('damping', 'Damping of the first swing', 'D', 'D = exp[ζ arccos ζ/√(1 − ζ²)]', 'number', D, { factor: D.value });
+  if (damping.law === 'viscous') {
+    add('ratio', 'Damping ratio', 'ζ', 'ζ = δ/√(4π² + δ²)', 'number', ratio);
+    add('damping', 'Damping of the first swing', 'D', 'D = exp[ζ arccos ζ/√(1 − ζ²)]', 'number', D, { factor: D.value });
+  } else if (damping.law === 'quadratic') add('quadratic', 'Quadratic damping', 'β', 'J θ″ = −b|θ′|θ′ − …, β = b/J', 'number', damping.quadratic[swing.configuration]);
+  else add('friction', 'Friction of the pivot', 'θ_f', 'θ_f = τ_f/κ', 'angle', damping.friction[swing.configuration]);
   const other: Form = chosen.form === 'full' ? 'smallAngle' : 'full';
-  add('share', 'Gravity share of the stiffness', 'p', 'p = M g d/κ', 'number', x.share);
+  add('share', 'Gravity share of the stiffness', 'p', 'p = M g d/κ', 'number', road.shares[c]);
   const form = (f: Form, aside: boolean): void => {
     const y = swing.launch![f];
     const label = f === 'full' ? 'Launch, full pendulum' : 'Launch, small angle';
-    const equation = f === 'full' ? 'φ = θ′(0⁺)/ω_n: θ″ + 2ζω_n θ′ + ω_n²[p sin θ + (1 − p)θ] = 0, solved back from θ_p' : 'φ = D θ_p';
+    const equation = f === 'full' ? EQUATION_OF_MOTION[damping.law] : damping.law === 'viscous' ? 'φ = D θ_p' : 'the same with p = 0';
     const factor = swing.angle!.value === 0 ? 1 : y.value / swing.angle!.value;
     add(`launch.${f}`, label, 'φ', equation, 'angle', y, aside ? { factor, aside: true } : { factor });
   };
+  for (const one of corrections.reading) add(`correction.${one.id}`, one.label, one.symbol, one.equation, 'number', one.factor, { factor: one.factor.value });
   form(chosen.form, false);
   form(other, true);
   const way = (w: Way, aside: boolean): void => {
     const label = w === 'geometry' ? 'Calibration factor, geometry' : 'Calibration factor, taps';
     const equation = w === 'geometry' ? 'K = √(J κ)' : tap ? 'K = mean of s_h I_h r_h/φ over the taps' : 'K = (mean of s_h I_h r_h/φ over the taps) · √(J_f κ_f/(J_c κ_c))';
-    add(`factor.${w}`, label, 'K', equation, 'calibrationFactor', x.factor[w], aside ? { aside: true } : {});
+    add(`factor.${w}`, label, 'K', equation, 'calibrationFactor', factorBy[w], aside ? { aside: true } : {});
   };
   way(chosen.way, false);
   way(chosen.way === 'geometry' ? 'taps' : 'geometry', true);
-  const K = x.factor[chosen.way];
+  const K = factorBy[chosen.way];
   if (K) add('moment', 'Angular impulse', 'H', 'H = K φ', 'angularImpulse', propagate(({ k, f }) => k * f, { k: K, f: swing.launch[chosen.form] }));
-  add('arm', tap ? 'Lever arm of the tap' : 'Lever arm of the thrust', tap ? 'r_h' : 'r_t', '', 'length', x.arm);
-  const out = tap ? 'Impulse of the tap, as read' : 'Impulse bit';
-  add('impulse', out, 'I_bit', tap ? 'I = H/r_h' : 'I_bit = H/r_t', 'impulse', x.impulse(chosen.form, chosen.way));
-  add('impulse.otherForm', `${out}, ${other === 'full' ? 'full pendulum' : 'small angle'}`, 'I_bit', '', 'impulse', x.impulse(other, chosen.way), { aside: true });
-  add('impulse.otherWay', `${out}, by ${chosen.way === 'geometry' ? 'taps' : 'geometry'}`, 'I_bit', '', 'impulse', x.impulse(chosen.form, chosen.way === 'geometry' ? 'taps' : 'geometry'), { aside: true });
-  if (tap) add('known', 'Impulse of the tap, as stated', 'I_h', 's_h I_h', 'impulse', x.known ?? exact(0), { aside: true });
-  return x.known || !tap ? steps : steps.filter((s) => s.id !== 'known');
+  add('arm', tap ? 'Lever arm of the tap' : 'Lever arm of the thrust', tap ? 'r_h' : 'r_t', '', 'length', road.arms[c]);
+  const target = !tap && corrections.target.length > 0;
+  if (!tap) for (const one of corrections.impulse ?? []) add(`correction.${one.id}`, one.label, one.symbol, one.equation, 'number', one.factor, { factor: one.factor.value });
+  const all = !tap && (corrections.impulse ?? []).length > 0 ? ' · corrections' : '';
+  if (target) {
+    add('delivered', 'Momentum delivered to the target', 'I_tgt', `I_tgt = H/r_t${all}`, 'impulse', road.delivered(swing, chosen.form, chosen.way));
+    for (const one of corrections.target) add(`correction.${one.id}`, one.label, one.symbol, one.equation, 'number', one.factor, { factor: one.factor.value, ...(reported === 'delivered' ? { aside: true as const } : {}) });
+    add('thruster', 'Thruster impulse bit, inferred', 'I_bit', 'I_bit = I_tgt/(f_cap β_m)', 'impulse', road.thruster(swing), reported === 'delivered' ? { aside: true } : {});
+  }
+  const out = tap ? 'Impulse of the tap, as read' : target && reported === 'delivered' ? 'Momentum delivered, as reported' : 'Impulse bit';
+  add('impulse', out, 'I_bit', tap ? 'I = H/r_h' : target ? '' : `I_bit = H/r_t${all}`, 'impulse', road.impulse(swing, chosen.form, chosen.way));
+  add('impulse.otherForm', `${out}, ${other === 'full' ? 'full pendulum' : 'small angle'}`, 'I_bit', '', 'impulse', road.impulse(swing, other, chosen.way), { aside: true });
+  add('impulse.otherWay', `${out}, by ${chosen.way === 'geometry' ? 'taps' : 'geometry'}`, 'I_bit', '', 'impulse', road.impulse(swing, chosen.form, chosen.way === 'geometry' ? 'taps' : 'geometry'), { aside: true });
+  if (tap) add('known', 'Impulse of the tap, as stated', 'I_h', 's_h I_h', 'impulse', known ?? exact(0), { aside: true });
+  return known || !tap ? steps : steps.filter((s) => s.id !== 'known');
 }

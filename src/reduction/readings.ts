@@ -122,7 +122,7 @@ const CURVATURE = 0.25;
 /** Rest between two zeros, by the time where both zeros and the record have one, else by the order; with what may lie between. */
 function between(a: Zero, b: Zero, index: number, time: number | null, record: SessionRecord, dimension: Dimension): Uncertain {
   const timed = a.time !== null && b.time !== null && time !== null && b.time > a.time;
-  const f = timed ? (time - a.time!) / (b.time! - a.time!) : (index - a.index) / (b.index - a.index);
+  const f = timed ? (time - a.time) / (b.time - a.time) : (index - a.index) / (b.index - a.index);
   const bend: Source = {
     id: `${record.id}.rest.bend`, label: 'Rest between two zeros, drift not even', symbol: 'x₀', dimension, estimate: 0,
     u: fromLimits(CURVATURE * Math.abs(b.rest.value - a.rest.value)), distribution: 'rectangular', dof: Infinity, family: familyOf(record.kind),

@@ -110,6 +110,9 @@ export interface RecordResult {
   readonly byTaps: Result | null;
   /** The one that counts (chosen form and calibration). For a tap: the impulse at its own lever arm. */
   readonly impulseBit: Result | null;
+  /** I_bit before and after the target's momentum factor and capture, N·s; equal where the pendulum carries the thruster. */
+  readonly delivered: Result | null;
+  readonly thruster: Result | null;
   /** The part of u that is this record's own (readings), N·s: the thick part of the whisker. */
   readonly ownU: number;
   /** A tap's stated impulse, N·s. */
@@ -198,13 +201,20 @@ export interface Reduction {
   readonly gravity: Stated | null;
   readonly configurations: { readonly shots: Configuration | null; readonly taps: Configuration | null };
   /** Where ζ comes from, in a few words, and how many swings it rests on. */
-  readonly damping: { readonly way: 'swings' | 'decrement' | 'ratio' | 'none'; readonly ratio: Stated; readonly logDecrement: Stated; readonly records: number } | null;
+  readonly damping: { readonly way: 'swings' | 'decrement' | 'ratio' | 'quadratic' | 'friction' | 'none'; readonly law: 'viscous' | 'quadratic' | 'friction'; /** β, 1/rad, and θ_f, rad. */ readonly quadratic: Stated; readonly friction: Stated; readonly ratio: Stated; readonly logDecrement: Stated; readonly records: number } | null;
   readonly periodCheck: PeriodCheck | null;
   readonly calibrations: { readonly geometry: Calibration | null; readonly taps: Calibration | null };
   readonly chosen: 'geometry' | 'taps';
   readonly difference: Difference | null;
   readonly runs: { readonly geometry: RunResult | null; readonly taps: RunResult | null };
   readonly run: RunResult | null;
+  /** The run mean of the momentum delivered to the target and of the inferred impulse bit of the thruster; equal where the pendulum carries the thruster. */
+  readonly delivered: RunResult | null;
+  readonly thruster: RunResult | null;
+  readonly reported: 'thruster' | 'delivered';
+  readonly plume: 'carried' | 'caught';
+  /** Factors common to all shots, in the order in which they act. */
+  readonly corrections: readonly { readonly id: string; readonly label: string; readonly symbol: string; readonly equation: string; readonly factor: Stated }[];
   /** The chosen run with the set-aside shots counted too; null where none is set aside. */
   readonly runWithSetAside: RunResult | null;
   /** Blanks, same road: mean and scatter of the pseudo impulse bits; null without blanks. */

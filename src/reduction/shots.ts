@@ -4,7 +4,9 @@ import type { Source } from '../metrology/source.ts';
 import { anchor, combine, exact, ofSource, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingFactor } from '../pendulum/damping.ts';
 import { configurationChange } from '../pendulum/forms.ts';
+import { launchOfDampedSwing } from '../pendulum/dampingLaws.ts';
 import { launchOfFirstSwing } from '../pendulum/launch.ts';
+import { correctedLaunch, restOfFriction, type Corrections } from './corrections.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import { swingFromMark, swingFromRest, swingFromSides } from '../readings/angle.ts';
 import { ratioToHalfDecay } from '../pendulum/damping.ts';
@@ -27,9 +29,12 @@ export interface Swing {
   readonly launch: Readonly<Record<Form, Uncertain>> | null;
 }
 
-/** Small swing: φ = D(ζ) θ_p. */
-const smallLaunch = ({ angle, ratio }: Readonly<Record<'angle' | 'ratio', number>>): number => dampingFactor(ratio) * angle;
-const fullLaunch = ({ angle, ratio, share }: Readonly<Record<'angle' | 'ratio' | 'share', number>>): number => launchOfFirstSwing(angle, ratio, share).launch;
+type LaunchInputs = Readonly<Record<'angle' | 'ratio' | 'quadratic' | 'friction' | 'share', number>>;
+/** Small swing: φ = D(ζ) θ_p; with another damping law the same equation with a restoring torque that stays linear (p = 0). */
+const smallLaunch = ({ angle, ratio, quadratic, friction }: LaunchInputs): number =>
+  quadratic === 0 && friction === 0 ? dampingFactor(ratio) * angle : launchOfDampedSwing(angle, { ratio, quadratic, friction }, 0).launch;
+const fullLaunch = ({ angle, ratio, quadratic, friction, share }: LaunchInputs): number =>
+  quadratic === 0 && friction === 0 ? launchOfFirstSwing(angle, ratio, share).launch : launchOfDampedSwing(angle, { ratio, quadratic, friction }, share).launch;
 /** I_bit = K φ/r_t. */
 export const impulseOfLaunch = ({ factor, launch, arm }: Readonly<Record<'factor' | 'launch' | 'arm', number>>): number => (factor * launch) / arm;
 /** K = H/φ: calibration factor from one tap of angular impulse H = s_h I_h r_h. */
@@ -38,7 +43,7 @@ const angularImpulseOfTap = ({ hammer, impulse, arm }: Readonly<Record<'hammer' 
 
 const UPRIGHT = 0.95 * Math.PI;
 
-export function swingOf(record: SessionRecord, readings: Readings, scale: Scale | null, damping: Damping, shares: Readonly<Record<ConfigurationName, Anchor>>, problems: Problem[]): Swing {
+export function swingOf(record: SessionRecord, readings: Readings, scale: Scale | null, damping: Damping, shares: Readonly<Record<ConfigurationName, Anchor>>, corrections: Corrections, problems: Problem[]): Swing {
   const configuration: ConfigurationName = record.kind === 'tap' ? 'taps' : 'shots';
   const none: Swing = { record, configuration, readings, angle: null, launch: null };
   const { rest, first } = readings;
@@ -53,8 +58,13 @@ export function swingOf(record: SessionRecord, readings: Readings, scale: Scale 
       problems.push(problem('record-angle-too-large', 'stops', place, { degrees: (angle.value * 180) / Math.PI }));
       return none;
     }
-    const ratio = damping.ratio[configuration];
-    return { ...none, angle, launch: { full: propagate(fullLaunch, { angle, ratio, share: shares[configuration] }), smallAngle: propagate(smallLaunch, { angle, ratio }) } };
+    const friction = damping.friction[configuration];
+    const settled = friction.value > 0 ? combine([[1, angle], [1, restOfFriction(record, friction.value)]]) : angle;
+    const swung = { angle: settled, ratio: damping.ratio[configuration], quadratic: damping.quadratic[configuration], friction, share: shares[configuration] };
+    const raw = { full: propagate(fullLaunch, swung), smallAngle: propagate(smallLaunch, swung) };
+    const full = correctedLaunch(raw.full, record, corrections, problems);
+    const smallAngle = full && correctedLaunch(raw.smallAngle, record, corrections, []);
+    return { ...none, angle: settled, launch: full && smallAngle ? { full, smallAngle } : null };
   } catch (failure) {
     if (!(failure instanceof RangeError)) throw failure;
     const out = Math.max(Math.abs(first.value - (scale.mark?.value ?? rest.value)), Math.abs(rest.value - (scale.mark?.value ?? rest.value)));

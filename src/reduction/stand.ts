@@ -11,6 +11,7 @@ import type { Choices } from '../session/session.ts';
 import { entriesInUse, type BenchRead } from './entries.ts';
 
 export type ConfigurationName = 'shots' | 'taps';
+export type ByConfiguration<T> = Readonly<Record<ConfigurationName, T>>;
 
 /** J, κ and p of the pendulum in one configuration, each an anchor. */
 export interface Body {

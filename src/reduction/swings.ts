@@ -4,10 +4,12 @@ import { ownParts, pooledMean, weightsOf } from '../metrology/pooled.ts';
 import { anchor, exact, ofSource, propagate, standardUncertainty, withSensitivities, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { ratioFromSwings, ratioOfDecrement, type TurningPoint } from '../pendulum/damping.ts';
 import { dampingCarried } from '../pendulum/forms.ts';
-import { problem, type Problem } from '../problems/problems.ts';
+import { problem, type Place, type Problem } from '../problems/problems.ts';
 import { angleOfReading } from '../readings/angle.ts';
 import type { ReadingWay, StandNumbers } from '../readings/ways.ts';
-import type { Session } from '../session/session.ts';
+import type { EntryName } from '../session/entries.ts';
+import type { Choices, Session } from '../session/session.ts';
+import { carriedTerm, lawOf, termFromSwings, type Law } from './decayLaws.ts';
 import { readQuantity } from '../units/quantity.ts';
 import { unitNamed } from '../units/units.ts';
 import { GREATEST, readingDimension, type BenchRead } from './entries.ts';
@@ -17,9 +19,24 @@ import { placeOf, type SessionRecord } from './sheets.ts';
 
 export interface Damping {
   readonly ratio: Readonly<Record<ConfigurationName, Anchor>>;
-  readonly way: 'swings' | 'decrement' | 'ratio' | 'none';
-  /** Records (or typed free swings) that the ratio rests on. */
+  /** β, per radian, and θ_f, rad; exactly 0 unless their law holds. */
+  readonly quadratic: Readonly<Record<ConfigurationName, Anchor>>;
+  readonly friction: Readonly<Record<ConfigurationName, Anchor>>;
+  readonly law: Law;
+  readonly way: Choices['dampingWay'];
+  /** Records (or typed free swings) that the damping rests on. */
   readonly records: number;
+}
+
+/** One swing's turning points as angles with the slope ∂θ/∂reading of each. */
+export interface Turning {
+  readonly configuration: ConfigurationName;
+  readonly place: Place;
+  readonly rest: { readonly reading: Uncertain; readonly angle: number; readonly slope: number } | null;
+  readonly points: readonly { readonly number: number; readonly reading: Uncertain; readonly angle: number }[];
+  readonly slopes: readonly number[];
+  readonly gravityShare: number;
+  readonly ratio: Uncertain | null;
 }
 
 /** Scale of the stand: the lengths that the way of reading needs, the ruler's scale and its plumb mark. */
@@ -37,38 +54,50 @@ export interface Scale {
 /** Fewer swings than this leave the damping to chance. */
 const FEW = 3;
 
+const both = (value: Anchor): Readonly<Record<ConfigurationName, Anchor>> => ({ shots: value, taps: value });
+
 export function dampingOf(
   session: Session, bench: BenchRead, stand: Stand, scale: Scale | null, records: readonly SessionRecord[], readings: ReadonlyMap<string, Readings>,
   spread: ReadingSpread, counts: (record: SessionRecord) => boolean, problems: Problem[],
 ): Damping {
-  const { dampingWay } = session.choices;
-  const typedRatio = bench.entries.get('dampingRatio')?.value;
-  const typedDecrement = bench.entries.get('logDecrement')?.value;
-  if (dampingWay === 'ratio' && typedRatio) return { ratio: carried(typedRatio, stand), way: 'ratio', records: 0 };
-  if (dampingWay === 'decrement' && typedDecrement) return { ratio: carried(propagate(({ d }) => ratioOfSigned(d), { d: typedDecrement }), stand), way: 'decrement', records: 0 };
-  const none = { shots: anchor(exact(0)), taps: anchor(exact(0)) };
-  if (dampingWay !== 'swings' || !scale) {
-    problems.push(problem('damping-none', dampingWay === 'none' ? 'note' : 'doubt', {}, {}));
-    return { ratio: none, way: 'none', records: 0 };
+  const { dampingWay: way, dampingLaw } = session.choices;
+  const zero = both(anchor(exact(0)));
+  const undamped: Damping = { ratio: zero, quadratic: zero, friction: zero, law: 'viscous', way: 'none', records: 0 };
+  const typed = (name: EntryName): Uncertain | null => bench.entries.get(name)?.value ?? null;
+  const [ratio, decrement, quadratic, friction] = [typed('dampingRatio'), typed('logDecrement'), typed('quadraticDamping'), typed('frictionAngle')];
+  if (way === 'ratio' && ratio) return { ...undamped, ratio: carried(ratio, stand), way };
+  if (way === 'decrement' && decrement) return { ...undamped, ratio: carried(propagate(({ d }) => ratioOfSigned(d), { d: decrement }), stand), way };
+  if (way === 'quadratic' && quadratic) return { ...undamped, quadratic: carriedByBody(anchor(quadratic), stand, 'inertia'), law: 'quadratic', way };
+  if (way === 'friction' && friction) return { ...undamped, friction: carriedByBody(anchor(friction), stand, 'stiffness'), law: 'friction', way };
+  const found = way === 'swings' && scale ? swingsFound(session, stand, scale, records, readings, spread, counts, problems) : [];
+  if (found.length === 0) {
+    if (way === 'none' || records.length > 0) problems.push(problem('damping-none', way === 'none' ? 'note' : 'doubt', {}, {}));
+    return undamped;
   }
-  const found = swingsByConfiguration(session, stand, scale, records, readings, spread, counts, problems);
-  const total = found.shots.length + found.taps.length;
-  if (total === 0) {
-    problems.push(problem('damping-none', 'doubt', {}, {}));
-    return { ratio: none, way: 'none', records: 0 };
-  }
-  if (total < FEW) problems.push(problem('damping-from-few', 'note', {}, { records: total }));
-  const oneConfiguration = !stand.masses || stand.masses.shots === stand.masses.taps;
-  if (oneConfiguration) {
-    const ratio = pooledRatio([...found.shots, ...found.taps], 'all', problems);
-    return { ratio: { shots: ratio, taps: ratio }, way: 'swings', records: total };
-  }
-  if (found.shots.length > 0 && found.taps.length > 0) {
-    return { ratio: { shots: pooledRatio(found.shots, 'shots', problems), taps: pooledRatio(found.taps, 'taps', problems) }, way: 'swings', records: total };
-  }
-  const from: ConfigurationName = found.shots.length > 0 ? 'shots' : 'taps';
+  if (found.length < FEW) problems.push(problem('damping-from-few', 'note', {}, { records: found.length }));
+  const law = lawOf(dampingLaw, found, problems);
+  if (law === 'viscous') return { ...undamped, ratio: ratioByConfiguration(found, stand, problems), way, records: found.length };
+  const from: ConfigurationName = found.some((swing) => swing.configuration === 'shots') ? 'shots' : 'taps';
+  const term = termFromSwings(law, stand.masses && stand.masses.shots !== stand.masses.taps ? found.filter((swing) => swing.configuration === from) : found, problems);
+  if (!term) return undamped;
+  return { ...undamped, [law]: carriedByBody(term, stand, law === 'quadratic' ? 'inertia' : 'stiffness', from), law, way, records: found.length };
+}
+
+function carriedByBody(term: Anchor, stand: Stand, by: 'inertia' | 'stiffness', from: ConfigurationName = 'shots'): Readonly<Record<ConfigurationName, Anchor>> {
+  const masses = stand.masses;
+  if (!masses) return both(term);
+  const to = (name: ConfigurationName): Anchor => carriedTerm(term, masses[from][by], masses[name][by]);
+  return { shots: to('shots'), taps: to('taps') };
+}
+
+function ratioByConfiguration(found: readonly Turning[], stand: Stand, problems: Problem[]): Readonly<Record<ConfigurationName, Anchor>> {
+  const of = (name: ConfigurationName): readonly Uncertain[] => found.flatMap((swing) => (swing.configuration === name && swing.ratio ? [swing.ratio] : []));
+  const [shots, taps] = [of('shots'), of('taps')];
+  if (!stand.masses || stand.masses.shots === stand.masses.taps) return both(pooledRatio([...shots, ...taps], 'all', problems));
+  if (shots.length > 0 && taps.length > 0) return { shots: pooledRatio(shots, 'shots', problems), taps: pooledRatio(taps, 'taps', problems) };
+  const from: ConfigurationName = shots.length > 0 ? 'shots' : 'taps';
   problems.push(problem('damping-carried-over', 'note', {}, { from }));
-  return { ratio: carried(pooledRatio(found[from], from, problems), stand, from), way: 'swings', records: total };
+  return carried(pooledRatio(from === 'shots' ? shots : taps, from, problems), stand, from);
 }
 
 /** Half-differences may step below zero; the ratio stays odd there. */
@@ -96,37 +125,41 @@ function pooledRatio(items: readonly Uncertain[], id: string, problems: Problem[
   return anchor(pooled.mean);
 }
 
-type Found = Record<ConfigurationName, Uncertain[]>;
-
-function swingsByConfiguration(
+/** Every swing with enough turning points, of the records that count and of the free swing typed. */
+function swingsFound(
   session: Session, stand: Stand, scale: Scale, records: readonly SessionRecord[], readings: ReadonlyMap<string, Readings>,
   spread: ReadingSpread, counts: (record: SessionRecord) => boolean, problems: Problem[],
-): Found {
-  const found: Found = { shots: [], taps: [] };
+): readonly Turning[] {
+  const found: Turning[] = [];
+  const needsRatio = session.choices.dampingLaw !== 'quadratic' && session.choices.dampingLaw !== 'friction';
+  const take = (place: Place, configuration: ConfigurationName, rest: Uncertain | null, points: readonly Point[]): void => {
+    const share = stand.masses?.[configuration].gravityShare.value ?? stand.shareUnknown;
+    const turning = turningOf(rest, points, scale, share);
+    if (!turning || (needsRatio && !turning.ratio)) problems.push(problem('swings-not-decaying', 'note', place, {}));
+    else found.push({ ...turning, configuration, place, gravityShare: share });
+  };
   for (const record of records) {
     const r = readings.get(record.id);
-    if (!r || record.kind === 'zero' || !counts(record)) continue;
-    const turning = [...(r.first ? [{ number: 0, reading: r.first }] : []), ...r.next];
-    if (turning.length < 2 || turning.length + (r.rest ? 1 : 0) < 3) continue;
-    const configuration: ConfigurationName = record.kind === 'tap' ? 'taps' : 'shots';
-    const ratio = ratioOfRecord(r.rest, turning, scale, stand.masses?.[configuration].gravityShare.value ?? stand.shareUnknown);
-    if (ratio) found[configuration].push(ratio);
-    else problems.push(problem('swings-not-decaying', 'note', placeOf(record), {}));
+    if (!r || record.kind === 'zero' || scale.sideToSide || !counts(record)) continue;
+    const points = [...(r.first ? [{ number: 0, reading: r.first }] : []), ...r.next];
+    if (points.length < 2 || points.length + (r.rest ? 1 : 0) < 3) continue;
+    take(placeOf(record), record.kind === 'tap' ? 'taps' : 'shots', r.rest, points);
   }
   const typed = typedFreeSwing(session, spread, problems);
-  if (typed.length >= 3) {
-    const ratio = ratioOfRecord(null, typed.map((reading, number) => ({ number, reading })), scale, stand.masses?.shots.gravityShare.value ?? stand.shareUnknown);
-    if (ratio) found.shots.push(ratio);
-    else problems.push(problem('swings-not-decaying', 'note', { entry: 'freeSwing' }, {}));
-  }
+  if (typed.length >= 3) take({ entry: 'freeSwing' }, 'shots', null, typed.map((reading, number) => ({ number, reading })));
   return found;
+}
+
+interface Point {
+  readonly number: number;
+  readonly reading: Uncertain;
 }
 
 /** Secant steps in which the plumb point of a free swing is found from the swing itself; five reach the last digits of the widest. */
 const PLUMB_STEPS = 12;
 
-/** ζ of one record, with its readings' contributions by the fit's sensitivities; null where the swings do not decay. */
-function ratioOfRecord(rest: Uncertain | null, turning: readonly { readonly number: number; readonly reading: Uncertain }[], scale: Scale, gravityShare: number): Uncertain | null {
+/** One swing's angles about its plumb point and its viscous ratio with its readings' contributions; null where no swing decays so. */
+function turningOf(rest: Uncertain | null, turning: readonly Point[], scale: Scale, gravityShare: number): Pick<Turning, 'rest' | 'points' | 'slopes' | 'ratio'> | null {
   const middle = (turning[0]!.reading.value + turning[1]!.reading.value) / 2;
   let mark = scale.mark?.value ?? rest?.value ?? middle;
   const stand: StandNumbers = Object.fromEntries(Object.entries(scale.stand).map(([name, value]) => [name, value.value]));
@@ -151,9 +184,14 @@ function ratioOfRecord(rest: Uncertain | null, turning: readonly { readonly numb
         mark = next;
       }
     }
-    if (fit.status !== 'found') return null;
+    const slopeOf = (x: Uncertain): number => slopeAt(x.value, standardUncertainty(x));
     const inputs = [...(rest ? [rest] : []), ...turning.map((t) => t.reading)];
-    return withSensitivities(fit.dampingRatio, inputs.map((x, i) => [fit.sensitivities[i]! * slopeAt(x.value, standardUncertainty(x)), x] as const));
+    return {
+      rest: rest && { reading: rest, angle: angle(rest.value), slope: slopeOf(rest) },
+      points: turning.map(({ number, reading }) => ({ number, reading, angle: angle(reading.value) })),
+      slopes: turning.map(({ reading }) => slopeOf(reading)),
+      ratio: fit.status === 'found' ? withSensitivities(fit.dampingRatio, inputs.map((x, i) => [fit.sensitivities[i]! * slopeOf(x), x] as const)) : null,
+    };
   } catch (failure) {
     if (failure instanceof RangeError) return null;
     throw failure;

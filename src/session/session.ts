@@ -31,7 +31,19 @@ export interface Choices {
   readonly zeroTaken: 'before' | 'interpolated';
   /** The scale's numbers fall as the pendulum swings away from the thrust. */
   readonly scaleRunsBackward: boolean;
-  readonly dampingWay: 'swings' | 'decrement' | 'ratio' | 'none';
+  readonly dampingWay: 'swings' | 'decrement' | 'ratio' | 'quadratic' | 'friction' | 'none';
+  /** Law that the swings are fitted with; byDecay: the one that the way the amplitude falls tells. */
+  readonly dampingLaw: 'viscous' | 'quadratic' | 'friction' | 'byDecay';
+  readonly pulseShape: 'rectangular' | 'halfSine' | 'triangle' | 'versedSine' | 'exponential';
+  /** Thruster carried by the pendulum, or its plume caught on a target that hangs there. */
+  readonly plume: 'carried' | 'caught';
+  /** What the run mean is of: the momentum delivered to the target, or the thruster's impulse bit inferred from it. */
+  readonly reported: 'thruster' | 'delivered';
+  readonly correctPulse: boolean;
+  readonly correctAlignment: boolean;
+  readonly correctSampling: boolean;
+  readonly correctBackground: boolean;
+  readonly correctPropellant: boolean;
   readonly gravityWay: 'typed' | 'place';
   /** How stiffness and inertia are known (methods: routes A and B; 'masses' leaves a period as a check only). */
   readonly route: 'masses' | 'massesAndPeriod' | 'inertiaAndPeriod';
@@ -93,6 +105,15 @@ export const FIRST_CHOICES: Choices = {
   zeroTaken: 'before',
   scaleRunsBackward: false,
   dampingWay: 'swings',
+  dampingLaw: 'viscous',
+  pulseShape: 'rectangular',
+  plume: 'carried',
+  reported: 'thruster',
+  correctPulse: true,
+  correctAlignment: true,
+  correctSampling: true,
+  correctBackground: true,
+  correctPropellant: true,
   gravityWay: 'typed',
   route: 'masses',
   periodTimedAs: 'shots',
@@ -109,7 +130,16 @@ export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices
   swingMeasured: ['fromRest', 'sideToSide'],
   zeroTaken: ['before', 'interpolated'],
   scaleRunsBackward: [true, false],
-  dampingWay: ['swings', 'decrement', 'ratio', 'none'],
+  dampingWay: ['swings', 'decrement', 'ratio', 'quadratic', 'friction', 'none'],
+  dampingLaw: ['viscous', 'quadratic', 'friction', 'byDecay'],
+  pulseShape: ['rectangular', 'halfSine', 'triangle', 'versedSine', 'exponential'],
+  plume: ['carried', 'caught'],
+  reported: ['thruster', 'delivered'],
+  correctPulse: [true, false],
+  correctAlignment: [true, false],
+  correctSampling: [true, false],
+  correctBackground: [true, false],
+  correctPropellant: [true, false],
   gravityWay: ['typed', 'place'],
   route: ['masses', 'massesAndPeriod', 'inertiaAndPeriod'],
   periodTimedAs: ['shots', 'taps'],

@@ -79,6 +79,8 @@ const WAYS: Readonly<Record<NonNullable<Reduction['damping']>['way'], string>> =
   swings: 'from successive swings',
   decrement: 'from the typed log decrement',
   ratio: 'from the typed damping ratio',
+  quadratic: 'from the typed quadratic damping',
+  friction: 'from the typed friction of the pivot',
   none: 'taken as none',
 };
 

@@ -1,0 +1,53 @@
+/** From a corrected launch to the impulse: K φ over the lever arm, the pulse, the alignment, the propellant gone, and the target. */
+import { propagate, type Uncertain } from '../metrology/uncertain.ts';
+import { WAYS } from '../readings/ways.ts';
+import type { Choices } from '../session/session.ts';
+import { propellantFactor, type Correction, type Corrections } from './corrections.ts';
+import type { BenchRead } from './entries.ts';
+import type { Factors } from './factors.ts';
+import type { ImpulseOf } from './road.ts';
+import { impulseOfLaunch, type Form, type Swing } from './shots.ts';
+import { valueOf, type ConfigurationName } from './stand.ts';
+import type { Scale } from './swings.ts';
+
+const times = (y: Uncertain, factor: Uncertain): Uncertain => propagate(({ a, f }) => a * f, { a: y, f: factor });
+const throughAll = (y: Uncertain, corrections: readonly Correction[]): Uncertain => corrections.reduce((so, { factor }) => times(so, factor), y);
+
+export function impulses(
+  swings: readonly Swing[], factors: Readonly<Record<Form, Factors>>, arms: Readonly<Record<ConfigurationName, Uncertain | null>>, corrections: Corrections, choices: Choices,
+): { readonly delivered: ImpulseOf; readonly impulse: ImpulseOf } {
+  const order = new Map(swings.filter((s) => s.record.kind === 'shot').map((s, i, all) => [s.record.id, all.length < 2 ? 0 : i / (all.length - 1)]));
+  const delivered: ImpulseOf = (swing, form, way) => {
+    const factor = factors[form][way][swing.configuration];
+    const arm = arms[swing.configuration];
+    if (!swing.launch || !factor || !arm) return null;
+    const bare = propagate(impulseOfLaunch, { factor, launch: swing.launch[form], arm });
+    if (swing.record.kind === 'tap') return bare;
+    if (corrections.impulse === null) return null;
+    const y = throughAll(bare, corrections.impulse);
+    const done = order.get(swing.record.id);
+    return corrections.propellant && done ? times(y, propellantFactor(corrections.propellant, done)) : y;
+  };
+  const impulse: ImpulseOf = (swing, form, way) => {
+    const y = delivered(swing, form, way);
+    return choices.reported === 'thruster' ? toThruster(y, swing, corrections) : y;
+  };
+  return { delivered, impulse };
+}
+
+/** I_thruster = I_delivered/(f_cap β_m); a tap strikes the pendulum itself. */
+export const toThruster = (delivered: Uncertain | null, swing: Swing, corrections: Corrections): Uncertain | null =>
+  delivered && swing.record.kind !== 'tap' ? throughAll(delivered, corrections.target) : delivered;
+
+/** Amplitude before the shot as an angle, from its amplitude on the scale. */
+export function backgroundAngle(bench: BenchRead, scale: Scale | null): number {
+  const typed = valueOf(bench, 'backgroundSwing');
+  if (!typed || !scale || typed.value === 0) return 0;
+  const stand = Object.fromEntries(Object.entries(scale.stand).map(([name, value]) => [name, value.value]));
+  try {
+    return Math.abs(WAYS[scale.way].angle(scale.scale.value * typed.value, stand));
+  } catch (failure) {
+    if (failure instanceof RangeError) return 0;
+    throw failure;
+  }
+}
