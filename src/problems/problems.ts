@@ -48,7 +48,7 @@ export const PROBLEM_CODES = [
   'damping-none', 'damping-laws-not-told-apart', 'damping-law-fits-badly', 'pulse-reaches-the-peak', 'background-swing-larger', 'momentum-factor-undeclared', 'capture-taken-as-all', 'propellant-too-heavy', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
   // a bench entry
   'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',
-  'bench-unstable', 'bench-inertia-not-positive', 'gravity-assumed',
+  'bench-unstable', 'film-model-alone', 'film-regime', 'film-out-of-range', 'film-needs-displacement', 'stiffness-missing', 'bench-inertia-not-positive', 'gravity-assumed',
   // the session file
   'session-not-json', 'session-not-ours', 'session-newer', 'session-damaged',
 ] as const;

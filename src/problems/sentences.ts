@@ -138,6 +138,16 @@ function words({ code, place, facts, weight }: Problem): string {
       return weight === 'note'
         ? 'no damping is taken, as chosen; impulse bits come out too small by what the first quarter swing loses.'
         : 'there is no damping to be had from the readings or the entries, so none is taken, and impulse bits come out too small. Note the swings after the first, or type the log decrement.';
+    case 'film-model-alone':
+      return `The figure leans on the model of the film alone: its spread is ${figure('percent', 2)} %, common to all shots, and read as a rigid strip it would come out ${figure('overRigid', 3)} times this. Tap it in place on the plume’s line, stiffen it, or hang an end plate of at least three times the film’s mass.`;
+    case 'film-regime':
+      return `The film is ${text('regime')} (stiffness number ${figure('stiffness', 2)}): its first maximum comes at ${figure('quarters', 2)} of a quarter period, and its period does not show that it is no rigid strip.`;
+    case 'film-out-of-range':
+      return 'The film’s measures give no stiffness number that the model covers, or the struck zone lies beyond the film. Check thickness, modulus, length and zone, and their units.';
+    case 'film-needs-displacement':
+      return 'A film is reduced from the displacement of one of its points. Read it with a ruler, a sensor or a camera marker, and type how far below the clamp that point is.';
+    case 'stiffness-missing':
+      return 'The stiffness is missing: type it as torque per angle, or as the pull per deflection with its lever arm and the reading radius.';
     case 'damping-laws-not-told-apart':
       return `The swings do not tell which damping law holds (${text('possible', 'several')} fit); ${text('used', 'viscous')} damping is taken. Note more swings of one free swing.`;
     case 'damping-law-fits-badly':

@@ -44,7 +44,20 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   const needed = new Set<EntryName>(['leverArm']);
   const used = new Set<EntryName>(['leverArm', 'flexureStiffness', 'scaleFactor', 'division', 'readingSpread', 'tapLeverArm', 'hammerFactor', 'tapSpread']);
   if (choices.form === 'pointBob') for (const name of ['bobMass', 'bobDistance'] as const) needed.add(name);
-  if (choices.form === 'uniformStrip') for (const name of ['stripMass', 'stripLength'] as const) needed.add(name);
+  if (choices.form === 'uniformStrip' || choices.form === 'stripWithPlate') for (const name of ['stripMass', 'stripLength'] as const) needed.add(name);
+  if (choices.form === 'stripWithPlate') for (const name of ['plateMass', 'plateDistance'] as const) needed.add(name);
+  if (choices.form === 'stripWithPlate') used.add('plateInertia');
+  if (choices.form === 'periodAndStiffness') {
+    needed.add('period');
+    for (const name of ['staticStiffness', 'forcePerDeflection', 'pullArm', 'gravityPart'] as const) used.add(name);
+    used.delete('flexureStiffness');
+  }
+  if (choices.form === 'filmStrip') {
+    for (const name of ['filmThickness', 'filmWidth', 'filmLength', 'filmDensity', 'filmModulus', 'zoneFrom', 'zoneTo'] as const) needed.add(name);
+    for (const name of ['filmMass', 'plateMass'] as const) used.add(name);
+    used.delete('flexureStiffness');
+  }
+  if (choices.restoring === 'flexureAlone' && choices.form !== 'periodAndStiffness' && choices.form !== 'filmStrip') needed.add('flexureStiffness');
   const way = WAYS[choices.readingWay];
   for (const name of way.needs) needed.add(entryNamed(name));
   for (const name of Object.keys(way.mayHave)) if (name !== 'screenShape') used.add(entryNamed(name));
@@ -67,7 +80,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
   for (const name of ['period', 'periodAmplitude', 'periodCycles'] as const) used.add(name);
-  if (choices.route !== 'masses') needed.add('period');
+  if (choices.route !== 'masses' && choices.form !== 'filmStrip') needed.add('period');
   if (choices.calibrationMassHung !== 'never') {
     for (const name of ['calibrationMass', 'calibrationMassDistance'] as const) needed.add(name);
     used.add('calibrationMassInertia');
@@ -77,7 +90,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'targetHalfAngle']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'targetHalfAngle']);
 
 const LARGE_RELATIVE = 0.3;
 

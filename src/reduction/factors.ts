@@ -15,9 +15,9 @@ export interface Factors {
   readonly change: Uncertain | null;
 }
 
-export function factorsOf(bodies: ByConfiguration<Body> | null, stand: Stand, taps: readonly TapKnown[], choices: Choices): Readonly<Record<Form, Factors>> {
+export function factorsOf(bodies: ByConfiguration<Body> | null, film: ByConfiguration<Anchor | null> | null, stand: Stand, taps: readonly TapKnown[], choices: Choices): Readonly<Record<Form, Factors>> {
   const shots = bodies ? geometryAnchor(bodies.shots) : null;
-  const geometry = { shots, taps: bodies ? (bodies.taps === bodies.shots ? shots : geometryAnchor(bodies.taps)) : null };
+  const geometry = film ?? { shots, taps: bodies ? (bodies.taps === bodies.shots ? shots : geometryAnchor(bodies.taps)) : null };
   const hungDiffers = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots';
   const known = bodies ?? (choices.route === 'masses' ? stand.masses : null);
   const of = (form: Form): Factors => {

@@ -9,6 +9,7 @@ import type { Choices, Session } from '../session/session.ts';
 import { correctionsOf } from './corrections.ts';
 import { readBench, type BenchRead } from './entries.ts';
 import { explained } from './explain.ts';
+import { filmOf } from './film.ts';
 import { calibrationResult, factorsOf } from './factors.ts';
 import { backgroundAngle, impulses, toThruster } from './impulse.ts';
 import { readingSpread, readingsOf } from './readings.ts';
@@ -48,17 +49,18 @@ export function reduce(session: Session, explain: string | null): Reduction {
 
   const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
   const period = timedPeriod(session, bench, stand, damping, problems);
-  const bodies = standByRoute(stand, choices, period, problems);
+  const film = choices.form === 'filmStrip' && records.length > 0 ? filmOf(bench, choices, stand.gravity, damping.ratio, problems) : null;
+  const bodies = standByRoute(bench, stand, choices, period, problems);
   const unknown = anchor(exact(stand.shareUnknown));
   const shares: ByConfiguration<Anchor> = bodies
     ? { shots: bodies.shots.gravityShare, taps: bodies.taps.gravityShare }
     : stand.masses ? { shots: stand.masses.shots.gravityShare, taps: stand.masses.taps.gravityShare } : { shots: unknown, taps: unknown };
 
-  const frequency = bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
+  const frequency = film ? exact((2 * Math.PI) / film.told.period) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
   const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, backgroundAngle(bench, scale), problems);
-  const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, damping, shares, corrections, problems));
+  const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, film ? undampedOf(damping) : damping, shares, corrections, problems));
   const taps = tapsOf(swings, bench, problems);
-  const factors = factorsOf(bodies, stand, taps.filter((tap) => counts(tap.swing.record)), choices);
+  const factors = factorsOf(bodies, film?.factors ?? null, stand, taps.filter((tap) => counts(tap.swing.record)), choices);
 
   const arms: ByConfiguration<Uncertain | null> = { shots: valueOf(bench, 'leverArm'), taps: valueOf(bench, 'tapLeverArm') };
   const form = choices.swingForm;
@@ -90,6 +92,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     entries: bench.all,
     sheets: sheets.sheets,
     records: withProblems(results, problems),
+    film: film?.told ?? null,
     gravity: stand.gravity ? stated(stand.gravity) : null,
     configurations: { shots: configuration('shots', bodies, damping), taps: configuration('taps', bodies, damping) },
     damping: { way: damping.way, law: damping.law, quadratic: stated(damping.quadratic.shots), friction: stated(damping.friction.shots), ratio: stated(damping.ratio.shots), logDecrement: stated(propagate(({ z }) => Math.sign(z) * decrementOfRatio(Math.min(Math.abs(z), 0.999)), { z: damping.ratio.shots })), records: damping.records },
@@ -112,6 +115,13 @@ export function reduce(session: Session, explain: string | null): Reduction {
     ranges: { taps: rangeOf(road, 'tap'), shots: rangeOf(road, 'shot') },
     explained: opened ? explained(opened, road) : null,
   };
+}
+
+/** The film's modes carry the damping of its first maximum themselves. */
+function undampedOf(damping: Damping): Damping {
+  const zero = anchor(exact(0));
+  const both = { shots: zero, taps: zero };
+  return { ...damping, ratio: both, quadratic: both, friction: both };
 }
 
 /** T₀ of the configuration in which the period was timed; null where none is typed, or the amplitude is none of a swing. */

@@ -3,6 +3,7 @@ import type { Dimension } from '../units/units.ts';
 import type { Problem } from '../problems/problems.ts';
 import type { RecordKind, Role } from '../readings/meanings.ts';
 import type { Session } from '../session/session.ts';
+import type { FilmTold } from './film.ts';
 
 /** A value with its standard uncertainty, SI. */
 export interface Stated {
@@ -198,6 +199,8 @@ export interface Reduction {
   readonly entries: readonly EntryRead[];
   readonly sheets: readonly SheetResult[];
   readonly records: readonly RecordResult[];
+  /** The film strip's own figures; null for any other stand. */
+  readonly film: FilmTold | null;
   readonly gravity: Stated | null;
   readonly configurations: { readonly shots: Configuration | null; readonly taps: Configuration | null };
   /** Where ζ comes from, in a few words, and how many swings it rests on. */

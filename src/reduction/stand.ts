@@ -45,13 +45,13 @@ export function readStand(bench: BenchRead, choices: Choices): Stand {
   const problems: Problem[] = [];
   const gravity = readGravity(bench, choices, problems);
   const flexure = valueOf(bench, 'flexureStiffness') ?? exact(0);
-  const shareUnknown = 1;
+  const shareUnknown = choices.form === 'periodAndStiffness' ? valueOf(bench, 'gravityPart')?.value ?? 1 : choices.form === 'filmStrip' || choices.restoring === 'flexureAlone' ? 0 : 1;
   const body = gravity && bareBody(bench, choices, problems);
   if (!gravity || !body) return { gravity, masses: null, problems, shareUnknown };
   const extra = calibrationMass(bench, choices, gravity);
   const of = (name: ConfigurationName): Body | null => {
     const inertia = anchor(combine([[1, body.inertia], ...(extra[name] ? [[1, extra[name].inertia] as const] : [])]));
-    const moment = combine([[1, body.moment], ...(extra[name] ? [[1, extra[name].moment] as const] : [])]);
+    const moment = combine(choices.restoring === 'flexureAlone' ? [] : [[1, body.moment], ...(extra[name] ? [[1, extra[name].moment] as const] : [])]);
     const kappa = anchor(propagate(stiffness, { moment, g: gravity, flexure }));
     if (!(inertia.value > 0)) {
       problems.push(problem('bench-inertia-not-positive', 'stops', {}, { configuration: name, value: inertia.value }));
@@ -62,7 +62,7 @@ export function readStand(bench: BenchRead, choices: Choices): Stand {
       return null;
     }
     // Without a flexure gravity does all the work; p = 1 then, exactly.
-    const share = flexure.value === 0 ? exact(1) : propagate(gravityShare, { moment, g: gravity, stiffness: kappa });
+    const share = choices.restoring === 'flexureAlone' ? exact(0) : flexure.value === 0 ? exact(1) : propagate(gravityShare, { moment, g: gravity, stiffness: kappa });
     return { inertia, stiffness: kappa, gravityShare: anchor(share) };
   };
   const shots = of('shots');
@@ -102,8 +102,20 @@ function bareBody(bench: BenchRead, choices: Choices, problems: Problem[]): Bare
       const L = valueOf(bench, 'stripLength');
       return m && L ? { inertia: propagate(stripInertia, { m, L }), moment: propagate(stripMoment, { m, L }) } : null;
     }
+    case 'stripWithPlate': {
+      const [m, L, plate, r] = [valueOf(bench, 'stripMass'), valueOf(bench, 'stripLength'), valueOf(bench, 'plateMass'), valueOf(bench, 'plateDistance')];
+      if (!m || !L || !plate || !r) return null;
+      const J = valueOf(bench, 'plateInertia') ?? exact(0);
+      return {
+        inertia: combine([[1, propagate(stripInertia, { m, L })], [1, propagate(partInertia, { m: plate, r, J })]]),
+        moment: combine([[1, propagate(stripMoment, { m, L })], [1, propagate(partMoment, { m: plate, r })]]),
+      };
+    }
     case 'bodyOfParts':
       return sumOfParts(bench, problems);
+    case 'periodAndStiffness':
+    case 'filmStrip':
+      return null;
   }
 }
 
@@ -149,7 +161,8 @@ function calibrationMass(bench: BenchRead, choices: Choices, gravity: Anchor): E
  * Route A keeps κ of the masses and takes J from the period, route B keeps J and takes κ; the other configuration
  * follows by the calibration mass, whose own J and κ are known.
  */
-export function standByRoute(stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[]): Readonly<Record<ConfigurationName, Body>> | null {
+export function standByRoute(bench: BenchRead, stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[]): Readonly<Record<ConfigurationName, Body>> | null {
+  if (choices.form === 'periodAndStiffness') return bodiesOfPeriod(bench, stand, choices, period, problems);
   const masses = stand.masses;
   if (!masses) return null;
   if (choices.route === 'masses' || !period) return choices.route === 'masses' ? masses : null;
@@ -176,6 +189,41 @@ export function standByRoute(stand: Stand, choices: Choices, period: Uncertain |
   const shots = of('shots');
   const taps = masses.taps === masses.shots ? shots : of('taps');
   return shots && taps ? { shots, taps } : null;
+}
+
+/**
+ * A body known only by its period and its static stiffness (route C): J = κ T₀²/4π². κ as typed, or from the pull per
+ * deflection: κ = (dF/dx) r_w R, small deflections. The other configuration differs by the calibration mass.
+ */
+function bodiesOfPeriod(bench: BenchRead, stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[]): ByConfiguration<Body> | null {
+  const typed = valueOf(bench, 'staticStiffness') ?? stiffnessOfPull(bench);
+  if (!typed) problems.push(problem('stiffness-missing', 'stops', { entry: 'staticStiffness' }, {}));
+  if (!typed || !period || !stand.gravity) return null;
+  const inertia = propagate(inertiaOfPeriod, { stiffness: typed, period });
+  const extra = calibrationMass(bench, choices, stand.gravity);
+  const share = anchor(valueOf(bench, 'gravityPart') ?? exact(1));
+  const timed = choices.periodTimedAs;
+  const of = (name: ConfigurationName): Body => {
+    const change = (sign: 1 | -1, part: Bare | null): readonly (readonly [number, Bare])[] => (part ? [[sign, part]] : []);
+    const moved = name === timed ? [] : [...change(1, extra[name]), ...change(-1, extra[timed])];
+    const weight = (part: Bare): Uncertain => (choices.restoring === 'flexureAlone' ? exact(0) : propagate(({ m, g }) => m * g, { m: part.moment, g: stand.gravity! }));
+    return {
+      inertia: anchor(combine([[1, inertia], ...moved.map(([sign, part]) => [sign, part.inertia] as const)])),
+      stiffness: anchor(combine([[1, typed], ...moved.map(([sign, part]) => [sign, weight(part)] as const)])),
+      gravityShare: share,
+    };
+  };
+  const shots = of('shots');
+  const bodies = { shots, taps: extra.same ? shots : of('taps') };
+  const bad = [bodies.shots, bodies.taps].find((body) => !(body.inertia.value > 0 && body.stiffness.value > 0));
+  if (!bad) return bodies;
+  problems.push(problem('bench-inertia-not-positive', 'stops', { entry: 'period' }, { configuration: bad === shots ? 'shots' : 'taps', value: bad.inertia.value }));
+  return null;
+}
+
+function stiffnessOfPull(bench: BenchRead): Uncertain | null {
+  const [slope, arm, radius] = [valueOf(bench, 'forcePerDeflection'), valueOf(bench, 'pullArm'), valueOf(bench, 'readingRadius') ?? valueOf(bench, 'rulerHeight') ?? valueOf(bench, 'sensorHeight')];
+  return slope && arm && radius ? propagate(({ k, a, r }) => k * a * r, { k: slope, a: arm, r: radius }) : null;
 }
 
 export const factorOfBody = (body: Body): Uncertain => propagate(geometryFactor, { inertia: body.inertia, stiffness: body.stiffness });

@@ -21,7 +21,9 @@ export interface Part {
 }
 
 export interface Choices {
-  readonly form: 'pointBob' | 'uniformStrip' | 'bodyOfParts';
+  readonly form: 'pointBob' | 'uniformStrip' | 'stripWithPlate' | 'bodyOfParts' | 'periodAndStiffness' | 'filmStrip';
+  /** What brings the pendulum back: gravity (with a flexure if there is one), or a flexure or torsion spring alone about an upright axis. */
+  readonly restoring: 'gravity' | 'flexureAlone';
   readonly readingWay: ReadingWay;
   /** Laser: flat screen parallel to the pivot axis, flat screen square to the rest beam, or curved about the pivot. */
   readonly screenShape: 'parallel' | 'square' | 'curved';
@@ -99,6 +101,7 @@ export interface Session {
 
 export const FIRST_CHOICES: Choices = {
   form: 'uniformStrip',
+  restoring: 'gravity',
   readingWay: 'rulerAtTip',
   screenShape: 'parallel',
   swingMeasured: 'fromRest',
@@ -124,7 +127,8 @@ export const FIRST_CHOICES: Choices = {
 
 /** Every value that a choice can take. */
 export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices[Name][] } = {
-  form: ['pointBob', 'uniformStrip', 'bodyOfParts'],
+  form: ['pointBob', 'uniformStrip', 'stripWithPlate', 'bodyOfParts', 'periodAndStiffness', 'filmStrip'],
+  restoring: ['gravity', 'flexureAlone'],
   readingWay: READING_WAYS,
   screenShape: ['parallel', 'square', 'curved'],
   swingMeasured: ['fromRest', 'sideToSide'],

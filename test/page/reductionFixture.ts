@@ -111,6 +111,7 @@ export const REDUCTION: Reduction = {
   entries: [],
   sheets: [],
   records: RECORDS,
+  film: null,
   gravity: stated(9.80665, 0),
   configurations: { shots: configuration('shots', 2.0e-3), taps: configuration('taps', 2.08e-3) },
   damping: { way: 'swings', law: 'viscous', quadratic: stated(0, 0), friction: stated(0, 0), ratio: stated(0.01, 4e-4), logDecrement: stated(0.06283, 2.5e-3), records: 6 },

@@ -7,13 +7,24 @@ type Options<Name extends keyof Choices> = readonly { readonly value: Choices[Na
 export const FORMS: Options<'form'> = [
   { value: 'pointBob', words: 'point bob' },
   { value: 'uniformStrip', words: 'uniform rigid strip' },
+  { value: 'stripWithPlate', words: 'rigid strip with a plate or bob' },
   { value: 'bodyOfParts', words: 'body of parts' },
+  { value: 'periodAndStiffness', words: 'known by period and static stiffness' },
+  { value: 'filmStrip', words: 'hanging film', more: 'neither rigid nor quite limp' },
 ];
 
 export const READING_WAYS: Options<'readingWay'> = [
   { value: 'rulerAtTip', words: 'flat ruler, read at the tip', more: 'sin θ = x/R' },
   { value: 'rulerUnderLine', words: 'ruler crossed by a line', more: 'tan θ = x/H' },
-  { value: 'laserSpot', words: 'laser spot on a flat screen', more: 'tan 2θ = x/D' },
+  { value: 'arcRuler', words: 'ruler on an arc', more: 'θ = s/R' },
+  { value: 'chord', words: 'chord, a tape drawn out', more: 'θ = 2 asin(c/2R)' },
+  { value: 'rise', words: 'rise of the bob', more: 'θ = acos(1 − h/R)' },
+  { value: 'laserSpot', words: 'laser spot on a screen', more: 'tan 2θ = x/D' },
+  { value: 'cameraMarker', words: 'camera, marker alone', more: 'sin θ = (u/S)/R' },
+  { value: 'cameraPivotMarker', words: 'camera, pivot and marker', more: 'no scale needed' },
+  { value: 'sensorOnFace', words: 'displacement sensor on a flat face', more: 'tan θ = x/H' },
+  { value: 'sensorOnPoint', words: 'displacement sensor on a point', more: 'sin θ = x/R' },
+  { value: 'encoder', words: 'rotary encoder', more: 'counts' },
   { value: 'angle', words: 'angle' },
 ];
 
@@ -21,7 +32,55 @@ export const DAMPING_WAYS: Options<'dampingWay'> = [
   { value: 'swings', words: 'swings of the readings' },
   { value: 'decrement', words: 'log decrement, typed' },
   { value: 'ratio', words: 'damping ratio, typed' },
+  { value: 'quadratic', words: 'quadratic, typed' },
+  { value: 'friction', words: 'pivot friction, typed' },
   { value: 'none', words: 'none' },
+];
+
+export const DAMPING_LAWS: Options<'dampingLaw'> = [
+  { value: 'viscous', words: 'viscous', more: 'ln A falls evenly' },
+  { value: 'quadratic', words: 'quadratic', more: '1/A rises evenly' },
+  { value: 'friction', words: 'pivot friction', more: 'A falls evenly' },
+  { value: 'byDecay', words: 'as the swings tell' },
+];
+
+export const RESTORING: Options<'restoring'> = [
+  { value: 'gravity', words: 'gravity, with a flexure if there is one' },
+  { value: 'flexureAlone', words: 'a flexure or torsion spring alone', more: 'upright axis' },
+];
+
+export const SCREENS: Options<'screenShape'> = [
+  { value: 'parallel', words: 'flat, parallel to the pivot axis' },
+  { value: 'square', words: 'flat, square to the rest beam' },
+  { value: 'curved', words: 'curved about the pivot' },
+];
+
+export const SWING_MEASURED: Options<'swingMeasured'> = [
+  { value: 'fromRest', words: 'from rest to the first maximum' },
+  { value: 'sideToSide', words: 'from side to side', more: 'the whole way' },
+];
+
+export const ZERO_TAKEN: Options<'zeroTaken'> = [
+  { value: 'before', words: 'the zero before it' },
+  { value: 'interpolated', words: 'between the zeros before and after' },
+];
+
+export const PLUME: Options<'plume'> = [
+  { value: 'carried', words: 'thruster carried by the pendulum' },
+  { value: 'caught', words: 'plume caught on a target' },
+];
+
+export const REPORTED: Options<'reported'> = [
+  { value: 'thruster', words: 'thruster impulse bit, inferred' },
+  { value: 'delivered', words: 'momentum delivered to the target' },
+];
+
+export const PULSE_SHAPES: Options<'pulseShape'> = [
+  { value: 'rectangular', words: 'rectangular' },
+  { value: 'halfSine', words: 'half sine' },
+  { value: 'triangle', words: 'triangle' },
+  { value: 'versedSine', words: 'versed sine' },
+  { value: 'exponential', words: 'exponential decay' },
 ];
 
 export const GRAVITY_WAYS: Options<'gravityWay'> = [
@@ -47,14 +106,21 @@ export const MASS_HUNG: Options<'calibrationMassHung'> = [
   { value: 'always', words: 'always' },
 ];
 
-export type GroupName = 'Pendulum' | 'Thrust' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
+export type GroupName = 'Pendulum' | 'Thrust' | 'Corrections' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
 
 /** Every entry of the bench, in the order of the work. */
 export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = {
-  Pendulum: ['bobMass', 'bobDistance', 'stripMass', 'stripLength', 'flexureStiffness'],
-  Thrust: ['leverArm'],
-  Reading: ['readingRadius', 'rulerHeight', 'screenDistance', 'scaleMark', 'scaleFactor', 'division', 'readingSpread'],
-  Damping: ['logDecrement', 'dampingRatio'],
+  Pendulum: [
+    'bobMass', 'bobDistance', 'stripMass', 'stripLength', 'filmThickness', 'filmWidth', 'filmLength', 'filmDensity', 'filmModulus', 'filmMass', 'zoneFrom', 'zoneTo',
+    'plateMass', 'plateDistance', 'plateInertia', 'staticStiffness', 'forcePerDeflection', 'pullArm', 'gravityPart', 'flexureStiffness',
+  ],
+  Thrust: ['leverArm', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle'],
+  Corrections: ['pulseDuration', 'tiltOutOfPlane', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance'],
+  Reading: [
+    'readingRadius', 'rulerHeight', 'sensorHeight', 'faceOffset', 'screenDistance', 'screenTilt', 'mirrorRadius', 'beamIncidence', 'beamOutOfPlane', 'windowThickness', 'windowIndex',
+    'pixelScale', 'pivotAcross', 'pivotDown', 'countsPerTurn', 'scaleMark', 'scaleFactor', 'parallaxGap', 'cameraDistance', 'eyeShift', 'division', 'readingSpread',
+  ],
+  Damping: ['logDecrement', 'dampingRatio', 'quadraticDamping', 'frictionAngle'],
   'Local g': ['gravity', 'latitude', 'height'],
   'Timed period': ['period', 'periodAmplitude', 'periodCycles'],
   'Calibration mass': ['calibrationMass', 'calibrationMassDistance', 'calibrationMassInertia'],

@@ -23,6 +23,8 @@ export interface RowWindow {
   readonly onScroll: () => void;
   /** Scrolls the frame, and only the frame, until the row is in sight. */
   readonly bring: (row: number) => void;
+  /** The row is about to be so far out of sight that it is not rendered any more. */
+  readonly isFarOff: (row: number) => boolean;
 }
 
 export function useRowWindow(rows: number): RowWindow {
@@ -53,7 +55,14 @@ export function useRowWindow(rows: number): RowWindow {
     if (windowed) look(element);
   }
 
-  return { frame, first, last, windowed, rowHeight: ROW_HEIGHT, page: Math.max(1, Math.floor(height / ROW_HEIGHT) - 2), onScroll, bring };
+  function isFarOff(row: number): boolean {
+    const element = frame.current;
+    if (!windowed || element === null) return false;
+    const from = row * ROW_HEIGHT - element.scrollTop;
+    return from < -BEYOND * ROW_HEIGHT || from > element.clientHeight + (BEYOND - 1) * ROW_HEIGHT;
+  }
+
+  return { frame, first, last, windowed, rowHeight: ROW_HEIGHT, page: Math.max(1, Math.floor(height / ROW_HEIGHT) - 2), onScroll, bring, isFarOff };
 }
 
 /** True from just before the browser prints until after. */
