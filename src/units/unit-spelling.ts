@@ -36,6 +36,7 @@ const ATOMS: Readonly<Record<string, readonly string[]>> = {
   nN: ['nanonewton', 'nanonewtons'],
   dyn: ['dyne', 'dynes'],
   gf: ['pond'],
+  mgf: [],
   kgf: [],
   lbf: [],
   ozf: [],
@@ -44,6 +45,8 @@ const ATOMS: Readonly<Record<string, readonly string[]>> = {
   mPa: ['millipascal', 'millipascals'],
   hPa: ['hectopascal', 'hectopascals'],
   kPa: ['kilopascal', 'kilopascals'],
+  MPa: ['megapascal', 'megapascals'],
+  GPa: ['gigapascal', 'gigapascals'],
   bar: ['bars'],
   mbar: ['millibar', 'millibars', 'mb'],
   ubar: ['microbar', 'microbars'],
@@ -62,6 +65,9 @@ const ATOMS: Readonly<Record<string, readonly string[]>> = {
   '%': ['percent', 'pct', 'per cent'],
   '‰': ['permille', 'permil'],
   ppm: [],
+  px: ['pixel', 'pixels'],
+  counts: ['count', 'cts', 'steps'],
+  C: ['degc', 'celsius'],
   S: [],
 };
 
@@ -85,7 +91,7 @@ const FOLDED: ReadonlyMap<string, readonly string[]> = (() => {
 /** A capital M may be mega, and n may be nano: only where neither is in doubt do the capitals not count. */
 function capitalsMayDiffer(text: string, symbol: string): boolean {
   if (symbol.endsWith('N')) return text.endsWith('N') && !text.startsWith('M');
-  if (symbol === 'mPa') return false;
+  if (symbol === 'mPa' || symbol === 'MPa') return false;
   if (symbol === 'mV') return !text.startsWith('M');
   if (text.length > 1 && text.startsWith('M') && symbol.startsWith('m')) return text === text.toUpperCase();
   return true;

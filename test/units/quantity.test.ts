@@ -80,7 +80,7 @@ describe('a quantity as people write it', () => {
   test.each<[string, string, string]>([
     ['', 'empty', ''], ['   ', 'empty', ''], ['abc', 'notANumber', 'abc'], ['mm', 'notANumber', 'mm'], ['± 3 mm', 'notANumber', '± 3 mm'],
     ['1.2.3 mm', 'notANumber', '1.2.3 mm'], ['12-15 mm', 'notANumber', '12-15 mm'], ['12 13 mm', 'notANumber', '12 13 mm'],
-    ['118 px', 'unknownUnit', 'px'], ['118 Mm', 'unknownUnit', 'Mm'], ['118 mm or so', 'unknownUnit', 'mm or so'], ['(118 mm ± 1) mm', 'unknownUnit', 'mm'], ['118 200 mm', 'notANumber', '118 200 mm'],
+    ['118 px', 'wrongDimension', 'px'], ['118 Mm', 'unknownUnit', 'Mm'], ['118 mm or so', 'unknownUnit', 'mm or so'], ['(118 mm ± 1) mm', 'unknownUnit', 'mm'], ['118 200 mm', 'notANumber', '118 200 mm'],
     ['118 g', 'wrongDimension', 'g'], ['118 ± 1 g', 'wrongDimension', 'g'], ['118 mm ± 1 g', 'wrongDimension', 'g'], ['5 %', 'wrongDimension', '%'],
     ['118 ± -1 mm', 'badSpread', '-1 mm'], ['118 ± x mm', 'badSpread', 'x mm'], ['118 mm ±', 'badSpread', '118 mm ±'], ['118.0(3) ± 1 mm', 'badSpread', '1 mm'],
     ['118 ± −0.3 mm', 'badSpread', '-0.3 mm'], ['118.0(1.2.3) mm', 'badSpread', '1.2.3'],

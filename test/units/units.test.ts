@@ -87,7 +87,7 @@ describe('units in the spellings of the bench', () => {
     expect(unitNamed(text)?.symbol ?? null).toBe(symbol);
   });
 
-  test.each(['MN·s', 'MNs', 'Mm', 'Mg', 'Mrad', 'Mbar', 'MV', 'MPa', 'mpa', 'ns', 'NM', 'gr', 'px', '', ' ', 'N·m/rad·s', 'furlong', 'N²', 'mm·', '·', '/', '1/'])(
+  test.each(['MN·s', 'MNs', 'Mm', 'Mg', 'Mrad', 'Mbar', 'MV', 'mpa', 'ns', 'NM', 'gr', '', ' ', 'N·m/rad·s', 'furlong', 'N²', 'mm·', '·', '/', '1/'])(
     '%s is no unit: mega, nano and what the table does not have are never guessed', (text) => {
       expect(unitNamed(text)).toBeNull();
     });
