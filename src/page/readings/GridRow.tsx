@@ -114,7 +114,7 @@ export const GridRow = memo(function GridRow(props: GridRowProps) {
             <button
               type="button"
               className="plain-button"
-              aria-label={setAside === undefined ? `Set aside ${name}` : `Count ${name} again`}
+              aria-label={setAside === undefined ? `Set aside ${name}` : `Count it again: ${name}`}
               onClick={() => (setAside === undefined ? acts.askReason(row) : acts.countAgain(row))}
               {...spot(at)}
             >

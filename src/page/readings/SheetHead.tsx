@@ -87,7 +87,7 @@ export function SheetHead({ sheet, table, rows, isFirst, isLast, headingId }: Sh
         <button type="button" className="plain-button" disabled={isLast} aria-label={`Move ${sheet.name} later in the run`} onClick={() => change(`move ${sheet.name} later`, moveSheet(sheet.id, 1))}>
           later
         </button>
-        <button type="button" className="plain-button" aria-label={`Remove ${sheet.name}`} onClick={() => change(`remove ${sheet.name}`, removeSheet(sheet.id))}>
+        <button type="button" className="plain-button" aria-label={`Remove sheet ${sheet.name}`} onClick={() => change(`remove ${sheet.name}`, removeSheet(sheet.id))}>
           remove sheet
         </button>
       </div>

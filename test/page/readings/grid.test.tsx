@@ -112,7 +112,7 @@ test('a record is set aside with a reason, stays in the sheet, and counts again'
   expect(page.session().marks['s1/4']?.setAside).toEqual({ reason: 'double discharge' });
   expect(page.cell('4', 'Rest')).toHaveTextContent('12.41');
   expect(screen.getByRole('rowheader', { name: 'line 4, shot, set aside' })).toBeVisible();
-  await page.user.click(screen.getByRole('button', { name: 'Count line 4 again' }));
+  await page.user.click(screen.getByRole('button', { name: 'Count it again: line 4' }));
   expect(page.session().marks).toEqual({});
 });
 
@@ -164,7 +164,7 @@ test('sheets follow one another in the run, and change places', async () => {
   await page.user.click(screen.getByRole('button', { name: 'Move taps.csv earlier in the run' }));
   await page.user.selectOptions(within(screen.getByRole('article', { name: 'taps.csv' })).getByLabelText('records'), 'all taps');
   expect(page.session().sheets.map(({ name, kindOfAll }) => [name, kindOfAll])).toEqual([['taps.csv', 'tap'], ['shots.csv', null]]);
-  await page.user.click(screen.getByRole('button', { name: 'Remove taps.csv' }));
+  await page.user.click(screen.getByRole('button', { name: 'Remove sheet taps.csv' }));
   expect(page.session().sheets.map(({ name }) => name)).toEqual(['shots.csv']);
 });
 
