@@ -124,6 +124,10 @@ function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
   const written = writtenUnit(table, profile);
   // One letter with a foreign unit ("C (mN s)") is a name, not a word.
   if (read === null || (read.phrase.length <= 2 && written.from === 'header' && !fitsRole(written.unit, read.role))) return claim;
+  // "Tap (mN·s)": a unit that only impulses have says more than a word that also numbers taps.
+  if (read.role === 'label' && written.from === 'header' && fitsRole(written.unit, 'tapImpulse')) {
+    return { role: 'tapImpulse', code: 'unit', facts: { word: read.phrase }, strength: 1, sure: false };
+  }
   claim.facts = { word: read.phrase };
   claim.strength = read.covers + read.phrase.length / 1000;
   const { role } = read;

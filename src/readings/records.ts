@@ -198,7 +198,9 @@ function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetP
   }
   const hasText = (role: Role): boolean => !isNoReading(textAt(single.get(role)));
   const anySwing = hasText('firstSwing') || bench.nextSwings.some((i) => !isNoReading(textAt(i)));
-  const filledIn: RecordKind = hasText('tapImpulse') ? 'tap' : hasText('rest') && !anySwing && !hasText('voltage') ? 'zero' : 'shot';
+  // A row of nothing, just added by hand, is not yet a shot.
+  const isBare = row.cells.every(isNoReading);
+  const filledIn: RecordKind = isBare ? 'zero' : hasText('tapImpulse') ? 'tap' : hasText('rest') && !anySwing && !hasText('voltage') ? 'zero' : 'shot';
   const headed = filledIn === 'shot' ? kindOfHeader(headers[single.get('label') ?? -1] ?? '') : null;
   const [kind, kindBy] =
     marked !== undefined ? ([marked, 'person'] as const)

@@ -83,10 +83,10 @@ export function demoSession(): Session {
     sheets: [{
       id: 'demo', name: 'invented-run.csv', origin: 'file', text: TEXT, sha256: '',
       columns: [
-        { role: 'label', unit: '', by: 'proposal' }, { role: 'kind', unit: '', by: 'proposal' }, { role: 'time', unit: 's', by: 'proposal' },
-        { role: 'voltage', unit: 'V', by: 'proposal' }, { role: 'rest', unit: 'mm', by: 'proposal' }, { role: 'firstSwing', unit: 'mm', by: 'proposal' },
-        { role: 'nextSwing', unit: 'mm', by: 'proposal' }, { role: 'nextSwing', unit: 'mm', by: 'proposal' }, { role: 'tapImpulse', unit: 'mN·s', by: 'proposal' },
-        { role: 'pressure', unit: 'Pa', by: 'proposal' }, { role: 'note', unit: '', by: 'proposal' },
+        { role: 'label', unit: '', by: 'person' }, { role: 'kind', unit: '', by: 'person' }, { role: 'time', unit: 's', by: 'person' },
+        { role: 'voltage', unit: 'V', by: 'person' }, { role: 'rest', unit: 'mm', by: 'person' }, { role: 'firstSwing', unit: 'mm', by: 'person' },
+        { role: 'nextSwing', unit: 'mm', by: 'person' }, { role: 'nextSwing', unit: 'mm', by: 'person' }, { role: 'tapImpulse', unit: 'mN·s', by: 'person' },
+        { role: 'pressure', unit: 'Pa', by: 'person' }, { role: 'note', unit: '', by: 'person' },
       ],
       kindOfAll: null, edits: {}, added: [],
     }],
