@@ -75,7 +75,13 @@ export function covariance(y: Uncertain, z: Uncertain): number {
 }
 
 /** Combined standard uncertainty u_c(y) · unit of y · JCGM 100:2008 5.1.2, sources independent. */
-export const standardUncertainty = (y: Uncertain): number => Math.sqrt(Math.max(0, covariance(y, y)));
+export function standardUncertainty(y: Uncertain): number {
+  if (y.own.size === 0 && y.through.size === 1) {
+    // Most inputs of a shot are one anchor each, whose own u is asked for again and again.
+    for (const [a, c] of y.through) return Math.abs(c) * Math.sqrt(Math.max(0, anchorCovariance(a, a)));
+  }
+  return Math.sqrt(Math.max(0, covariance(y, y)));
+}
 
 /** Linear combination Σ c_j y_j, exact in the sources. */
 export function combine(terms: readonly (readonly [c: number, y: Uncertain])[]): Uncertain {

@@ -17,7 +17,7 @@ export function impulses(
   swings: readonly Swing[], factors: Readonly<Record<Form, Factors>>, arms: Readonly<Record<ConfigurationName, Uncertain | null>>, corrections: Corrections, choices: Choices,
 ): { readonly delivered: ImpulseOf; readonly impulse: ImpulseOf } {
   const order = new Map(swings.filter((s) => s.record.kind === 'shot').map((s, i, all) => [s.record.id, all.length < 2 ? 0 : i / (all.length - 1)]));
-  const delivered: ImpulseOf = (swing, form, way) => {
+  const delivered = once((swing, form, way) => {
     const factor = factors[form][way][swing.configuration];
     const arm = arms[swing.configuration];
     if (!swing.launch || !factor || !arm) return null;
@@ -27,12 +27,22 @@ export function impulses(
     const y = throughAll(bare, corrections.impulse);
     const done = order.get(swing.record.id);
     return corrections.propellant && done ? times(y, propellantFactor(corrections.propellant, done)) : y;
-  };
-  const impulse: ImpulseOf = (swing, form, way) => {
-    const y = delivered(swing, form, way);
-    return choices.reported === 'thruster' ? toThruster(y, swing, corrections) : y;
-  };
+  });
+  const impulse = choices.reported === 'thruster' && corrections.target.length > 0 ? once((swing, form, way) => toThruster(delivered(swing, form, way), swing, corrections)) : delivered;
   return { delivered, impulse };
+}
+
+/** The runs, the records and the chain ask for the same impulses again. */
+function once(of: ImpulseOf): ImpulseOf {
+  const kept = new Map<Swing, Map<string, Uncertain | null>>();
+  return (swing, form, way) => {
+    let own = kept.get(swing);
+    if (!own) kept.set(swing, (own = new Map()));
+    const key = `${form}.${way}`;
+    let y = own.get(key);
+    if (y === undefined) own.set(key, (y = of(swing, form, way)));
+    return y;
+  };
 }
 
 /** I_thruster = I_delivered/(f_cap β_m); a tap strikes the pendulum itself. */

@@ -8,7 +8,8 @@ import type { Road } from './road.ts';
 import { runOf, stated } from './run.ts';
 import type { Form, Way } from './shots.ts';
 
-export function recordResults({ swings, damping, taps, delivered, thruster, impulse, factors, form, way, setAside }: Road): readonly RecordResult[] {
+export function recordResults({ swings, damping, taps, delivered, thruster, impulse, factors, corrections, form, way, setAside }: Road): readonly RecordResult[] {
+  const hasTarget = corrections.target.length > 0;
   const knownOf = new Map(taps.map((tap) => [tap.swing.record.id, tap]));
   const anchors = [factors.full, factors.smallAngle].flatMap((f) => [f.geometry.shots, f.geometry.taps, f.taps.shots, f.taps.taps]).filter((a): a is Anchor => a !== null);
   const finite = finiteSources([...anchors, damping.ratio.shots, damping.ratio.taps]);
@@ -40,8 +41,8 @@ export function recordResults({ swings, damping, taps, delivered, thruster, impu
       byGeometry: way === 'geometry' ? chosenResult : otherResult,
       byTaps: way === 'taps' ? chosenResult : otherResult,
       impulseBit: chosenResult,
-      delivered: result(delivered(swing, form, way)),
-      thruster: result(swing.record.kind === 'tap' ? null : thruster(swing)),
+      delivered: hasTarget ? result(delivered(swing, form, way)) : chosenResult,
+      thruster: swing.record.kind === 'tap' ? null : hasTarget ? result(thruster(swing)) : chosenResult,
       ownU: own[i]!,
       knownImpulse: known ? stated(known.impulse) : null,
       angularImpulse: moment ? stated(moment) : null,

@@ -76,9 +76,12 @@ export function reduce(session: Session, explain: string | null): Reduction {
     return runOf(items, shots.length, bench.sources);
   };
   const runs = { geometry: run('geometry', false), taps: run('taps', false) };
-  const runOfDelivered = runOf(shots.filter((s) => counts(s.record)).map((s) => delivered(s, form, way)).filter((y): y is Uncertain => y !== null), shots.length, bench.sources);
-  const runOfThruster = choices.plume === 'carried' ? runOfDelivered : runOf(shots.filter((s) => counts(s.record)).map(thruster).filter((y): y is Uncertain => y !== null), shots.length, bench.sources);
   const chosenRun = runs[way];
+  const hasTarget = corrections.target.length > 0;
+  const counted = shots.filter((s) => counts(s.record));
+  const runBy = (of: (s: Swing) => Uncertain | null): Run | null => runOf(counted.map(of).filter((y): y is Uncertain => y !== null), shots.length, bench.sources);
+  const runOfDelivered = hasTarget ? runBy((s) => delivered(s, form, way)) : chosenRun;
+  const runOfThruster = hasTarget ? runBy(thruster) : chosenRun;
   const anyAside = shots.some((s) => !counts(s.record));
 
   const results = recordResults(road);

@@ -189,6 +189,9 @@ const FAMILIES: Readonly<Record<Dimension, readonly [usual: string, ...family: s
   celsius: ['°C', '°C'],
   density: ['kg/m³', 'kg/m³'],
   modulus: ['GPa', 'Pa', 'kPa', 'MPa', 'GPa'],
+  capacitance: ['µF', 'nF', 'µF', 'mF', 'F'],
+  resistance: ['Ω', 'mΩ', 'Ω', 'kΩ'],
+  magneticFluxDensity: ['µT', 'µT', 'mT', 'T'],
 };
 
 /** The unit in which the median magnitude of the values (SI, zeros and non-finite ones left out) lies in 1 … 1000. */

@@ -68,6 +68,16 @@ const ATOMS: Readonly<Record<string, readonly string[]>> = {
   px: ['pixel', 'pixels'],
   counts: ['count', 'cts', 'steps'],
   C: ['degc', 'celsius'],
+  F: ['farad', 'farads'],
+  mF: ['millifarad', 'millifarads'],
+  uF: ['microfarad', 'microfarads'],
+  nF: ['nanofarad', 'nanofarads'],
+  ohm: ['ohms'],
+  mohm: ['milliohm', 'milliohms'],
+  kohm: ['kiloohm', 'kiloohms', 'kilohm', 'kilohms'],
+  T: ['tesla'],
+  mT: ['millitesla'],
+  uT: ['microtesla'],
   S: [],
 };
 
@@ -139,7 +149,7 @@ type Powers = ReadonlyMap<string, number>;
  * Source: SI Brochure (9th ed.), 5.4.2.
  */
 export function unitKeys(text: string): readonly string[] {
-  let plain = plainText(text).replace(/μ/g, 'u').replace(/′/g, "'");
+  let plain = plainText(text).replace(/μ/g, 'u').replace(/Ω/g, 'ohm').replace(/′/g, "'");
   const bracketed = /^\[(.*)\]$/.exec(plain) ?? /^\(([^()]*)\)$/.exec(plain);
   if (bracketed?.[1] !== undefined) plain = bracketed[1].trim();
   plain = plain.replace(/(?<=[A-Za-z])\.$/, '');
@@ -147,7 +157,8 @@ export function unitKeys(text: string): readonly string[] {
   if (plain === '1') return ['1'];
   const whole = NAMES.get(plain.toLowerCase());
   if (whole !== undefined) return [keyOf(new Map([[whole, 1]]))];
-  return product(plain).map(keyOf);
+  // "-kPa": counted down from the outside pressure.
+  return plain.startsWith('-') ? product(plain.slice(1)).map((powers) => `-${keyOf(powers)}`) : product(plain).map(keyOf);
 }
 
 function keyOf(powers: Powers): string {

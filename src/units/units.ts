@@ -4,7 +4,7 @@ import { unitKeys } from './unit-spelling.ts';
 export type Dimension =
   | 'length' | 'mass' | 'angle' | 'latitude' | 'time' | 'impulse' | 'angularImpulse' | 'pressure' | 'voltage'
   | 'momentOfInertia' | 'rotationalStiffness' | 'angularFrequency' | 'calibrationFactor' | 'acceleration' | 'number'
-  | 'pixel' | 'count' | 'pixelScale' | 'stiffness' | 'force' | 'celsius' | 'density' | 'modulus';
+  | 'pixel' | 'count' | 'pixelScale' | 'stiffness' | 'force' | 'celsius' | 'density' | 'modulus' | 'capacitance' | 'resistance' | 'magneticFluxDensity';
 
 /** One unit; value in SI units = value × times / per, so that decimal factors are correctly rounded. */
 export interface Unit {
@@ -56,6 +56,8 @@ const ROWS: Readonly<Record<Dimension, readonly Row[]>> = {
     ['bar', 1e5, 1], ['mbar', 100, 1], ['µbar', 1, 10],
     ['Torr', 101325, 760], ['mTorr', 101325, 760e3], ['mmHg', 133322387415, 1e9, 'mm Hg'], ['inHg', 133322387415 * 25.4, 1e9, 'in Hg'],
     ['atm', 101325, 1], ['psi', LBF_TIMES, LBF_PER * 0.0254 ** 2, 'lbf/in²', 'lb/in²'],
+    // A dial that counts down from the outside pressure, hence the negative factors.
+    ['−kPa', -1e3, 1], ['−mbar', -100, 1], ['−mmHg', -133322387415, 1e9], ['−inHg', -133322387415 * 25.4, 1e9],
   ],
   voltage: [['V', 1, 1], ['kV', 1e3, 1], ['mV', 1, 1e3]],
   momentOfInertia: [
@@ -78,6 +80,9 @@ const ROWS: Readonly<Record<Dimension, readonly Row[]>> = {
   stiffness: [['N/m', 1, 1], ['mN/m', 1, 1e3], ['N/mm', 1e3, 1], ['mN/mm', 1, 1], ['µN/mm', 1, 1e3]],
   force: [['N', 1, 1], ['mN', 1, 1e3], ['µN', 1, 1e6], ['gf', 980665, 1e8], ['mgf', 980665, 1e11]],
   celsius: [['°C', 1, 1, 'C']],
+  capacitance: [['F', 1, 1], ['mF', 1, 1e3], ['µF', 1, 1e6], ['nF', 1, 1e9]],
+  resistance: [['Ω', 1, 1, 'ohm'], ['mΩ', 1, 1e3, 'mohm'], ['kΩ', 1e3, 1, 'kohm']],
+  magneticFluxDensity: [['T', 1, 1], ['mT', 1, 1e3], ['µT', 1, 1e6]],
   density: [['kg/m³', 1, 1], ['g/cm³', 1e3, 1]],
   modulus: [['Pa', 1, 1], ['kPa', 1e3, 1], ['MPa', 1e6, 1], ['GPa', 1e9, 1], ['N/mm²', 1e6, 1]],
   // South counts negative, hence the negative factor.
@@ -119,6 +124,20 @@ const BY_KEY: ReadonlyMap<string, readonly Unit[]> = (() => {
  * share is the first of length, mass, angle, time, … that has it.
  */
 export function unitNamed(text: string, dimension?: Dimension): Unit | null {
+  const asked = `${dimension ?? ''}|${text}`;
+  const known = ASKED.get(asked);
+  if (known !== undefined) return known;
+  const found = unitSpelled(text, dimension);
+  if (ASKED.size >= ASKED_KEPT) ASKED.clear();
+  ASKED.set(asked, found);
+  return found;
+}
+
+/** A table asks for the unit of every cell, and there are few of them. */
+const ASKED = new Map<string, Unit | null>();
+const ASKED_KEPT = 2000;
+
+function unitSpelled(text: string, dimension?: Dimension): Unit | null {
   for (const key of unitKeys(text)) {
     const unit = BY_KEY.get(key)?.find((one) => dimension === undefined || one.dimension === dimension);
     if (unit !== undefined) return unit;
