@@ -29,9 +29,7 @@ function reason(role: string, { code, facts }: ProposalShape['because']): string
     case 'unit':
       if (facts['wrongUnit'] === undefined) return 'by its unit';
       if (wanted === '') return `as nothing here is measured in ${facts['wrongUnit']}`;
-      return facts['wrongUnit'] === '%' && facts['wanted'] === 'pressure'
-        ? 'as a vacuum in % is no pressure without the barometer reading'
-        : `as ${word} in the header says ${wanted}, but ${facts['wrongUnit']} is not a unit for it`;
+      return `as ${word} in the header says ${wanted}, but ${facts['wrongUnit']} is not a unit for it`;
     case 'values':
       return seenInWords(String(facts['seen'] ?? ''), word);
     case 'position':

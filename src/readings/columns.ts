@@ -1,7 +1,7 @@
 /** Proposes what each column of a table means and in which unit, always with the reason. */
 import { problem } from '../problems/problems.ts';
 import type { Place, Problem } from '../problems/problems.ts';
-import { unitNamed } from '../units/units.ts';
+import { unitNamed, unitsOf } from '../units/units.ts';
 import type { Dimension, Unit } from '../units/units.ts';
 import { profileColumn } from './columnProfile.ts';
 import type { ColumnProfile } from './columnProfile.ts';
@@ -43,13 +43,20 @@ export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
   firstSwingDown: ['pixel'],
   time: ['time'],
   voltage: ['voltage'],
-  pressure: ['pressure'],
+  // A number is percent on a vacuum dial.
+  pressure: ['pressure', 'number'],
   tapImpulse: ['impulse'],
   kind: [],
   label: [],
   note: [],
   ignored: [],
 };
+
+/** Of plain numbers a column takes percent alone. */
+const isOfColumns = (unit: Unit): boolean => unit.dimension !== 'number' || unit.symbol === '%';
+
+/** Units in which a role's numbers can be written. */
+export const unitsOfRole = (role: Role): readonly Unit[] => ROLE_DIMENSIONS[role].flatMap((dimension) => unitsOf(dimension)).filter(isOfColumns);
 
 /** Unit taken where none is written, told with the proposal. */
 export const USUAL_UNIT: Readonly<Record<Role, string>> = {
@@ -111,7 +118,7 @@ function proposeAfresh(table: TableRead): Proposal[] {
 
 const MOSTLY = 0.8;
 
-const fitsRole = (unit: Unit | null, role: Role): boolean => unit !== null && ROLE_DIMENSIONS[role].some((d) => unitNamed(unit.symbol, d) !== null);
+const fitsRole = (unit: Unit | null, role: Role): boolean => unit !== null && isOfColumns(unit) && ROLE_DIMENSIONS[role].some((d) => unitNamed(unit.symbol, d) !== null);
 
 function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
   const claim: Claim = { role: null, code: 'nothing', facts: {}, strength: 0, sure: false };

@@ -7,6 +7,7 @@ import reference from '../reference/units.json' with { type: 'json' };
 const DIMENSIONS: readonly Dimension[] = [
   'length', 'mass', 'angle', 'latitude', 'time', 'impulse', 'angularImpulse', 'pressure', 'voltage',
   'momentOfInertia', 'rotationalStiffness', 'angularFrequency', 'calibrationFactor', 'acceleration', 'number',
+  'pixel', 'count', 'pixelScale', 'stiffness', 'force', 'celsius', 'density', 'modulus', 'capacitance', 'resistance', 'magneticFluxDensity',
 ];
 const ALL = DIMENSIONS.flatMap((dimension) => unitsOf(dimension));
 
@@ -34,6 +35,7 @@ describe('conversion factors agree with NIST SP 811 App. B and the SI Brochure',
   // SI Brochure and NIST SP 811 App. B.8, from memory; the last is lbf/in² from the exact definitions.
   test.each([
     ['Torr', 101325 / 760], ['mTorr', 0.101325 / 0.76], ['inHg', 3386.388640341], ['mbar', 100], ['µbar', 0.1], ['psi', 6894.757293168361],
+    ['−kPa', -1000], ['−inHg', -3386.388640341], ['mΩ', 1e-3], ['µF', 1e-6], ['µT', 1e-6],
     ['ft', 0.3048], ['oz', 0.028349523125], ['Gal', 0.01], ['mGal', 1e-5], ['g·cm/s', 1e-5], ['g·mm²', 1e-9], ['g·cm²', 1e-7],
     ['N·mm/rad', 1e-3], ['N·m/°', 180 / Math.PI], ['′', Math.PI / 10800], ['″', Math.PI / 648000],
   ])('one %s is %d SI units, by its definition', (symbol, si) => {

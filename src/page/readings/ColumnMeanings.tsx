@@ -1,13 +1,13 @@
 /** What each column of a sheet means and in which unit: proposed with the reason, to be checked and changed. */
 import { useState } from 'react';
-import { ROLE_DIMENSIONS, USUAL_UNIT, proposeColumns } from '../../readings/columns.ts';
+import { ROLE_DIMENSIONS, USUAL_UNIT, proposeColumns, unitsOfRole } from '../../readings/columns.ts';
 import { ROLES } from '../../readings/meanings.ts';
 import type { Role } from '../../readings/meanings.ts';
 import type { TableRead } from '../../readings/table.ts';
 import { sentenceForProposal } from '../../problems/proposals.ts';
 import { setColumn, setColumns } from '../../session/edits.ts';
 import type { Sheet } from '../../session/session.ts';
-import { unitNamed, unitsOf } from '../../units/units.ts';
+import { unitNamed } from '../../units/units.ts';
 import { useActions } from '../../store/hooks.tsx';
 import type { ShownColumn, ShownSheet } from './sheetRows.ts';
 import { ROLE_LABELS } from './tradeWords.ts';
@@ -24,7 +24,7 @@ const SAMPLES = 3;
 
 const isRole = (text: string): text is Role => ROLES.some((role) => role === text);
 
-const unitChoices = (role: Role): readonly string[] => ROLE_DIMENSIONS[role].flatMap((dimension) => unitsOf(dimension).map(({ symbol }) => symbol));
+const unitChoices = (role: Role): readonly string[] => unitsOfRole(role).map(({ symbol }) => symbol);
 
 /** The unit that a column has in a new role: the one written at it or chosen before where it fits, else the usual one. */
 function unitIn(role: Role, candidates: readonly (string | null | undefined)[]): string {
