@@ -70,7 +70,8 @@ function columnsOf(session: Session, reduction: Reduction): readonly Column[] {
     text('setAside', 'set aside because', (r) => r.setAside ?? ''),
     number('time', 'time', seconds, (r) => r.readings.time),
     number('voltage', 'charge voltage', siUnit('voltage'), (r) => r.readings.voltage),
-    number('pressure', 'pressure', siUnit('pressure'), (r) => r.readings.pressure),
+    number('pressure', 'absolute pressure', siUnit('pressure'), value((r) => r.pressure)),
+    number('uPressure', 'u of absolute pressure', siUnit('pressure'), u((r) => r.pressure)),
     number('rest', 'rest reading', reading, (r) => r.readings.rest),
     number('firstSwing', 'first swing', reading, (r) => r.readings.firstSwing),
     number('angle', 'first-swing angle', angle, value((r) => r.angle)),
@@ -133,6 +134,7 @@ function conditions(session: Session, reduction: Reduction): readonly string[] {
   lines.push(`form of the swing: ${choices.swingForm === 'full' ? 'full pendulum, solved back from the first maximum' : 'small angle'}; damping from ${reduction.damping?.way ?? 'none'}`);
   if (reduction.run) lines.push(...runLines(reduction.run, reduction));
   if (reduction.runWithSetAside) lines.push(`with the shots set aside counted too: ${meanText(reduction.runWithSetAside)}`);
+  if (reduction.pressure) lines.push(pressureLine(reduction.pressure));
   for (const read of reduction.entries) {
     if (read.used && read.value !== null) lines.push(`${read.label} ${read.symbol}: typed ${quote(typedText(session, read.name))}, u ${tenDigits(read.u)} ${siUnit(read.dimension).symbol}, ${read.distribution}`);
   }
@@ -145,6 +147,14 @@ function conditions(session: Session, reduction: Reduction): readonly string[] {
 const isOpen = (p: Problem): boolean => p.weight !== 'note';
 const oneLine = (text: string): string => text.replace(/\s+/g, ' ').trim();
 const quote = (text: string): string => `“${oneLine(text)}”`;
+
+const GAUGE = { absolute: 'an absolute gauge', gauge: 'a gauge against the outside pressure', percentOfScale: 'a dial in percent of a fixed full scale', percentOfOutside: 'a dial in percent of the outside pressure' } as const;
+
+function pressureLine({ meaning, absolute, least, largest, outside, outsideFrom, likeVacuum }: NonNullable<Reduction['pressure']>): string {
+  const range = largest > least ? `, ${tenDigits(least)} to ${tenDigits(largest)} Pa` : '';
+  const against = outside ? `, outside ${tenDigits(outside.value)} Pa, u ${tenDigits(outside.u)} Pa, by ${outsideFrom === 'height' ? 'the height and the standard atmosphere' : 'barometer'}` : '';
+  return `absolute pressure of the shots ${tenDigits(absolute.value)} Pa, u ${tenDigits(absolute.u)} Pa${range}, by ${GAUGE[meaning]}${against}${likeVacuum ? '' : '; not a vacuum figure'}`;
+}
 
 function typedText(session: Session, name: string): string {
   const [, part, field] = /^part\.([^.]+)\.(.+)$/.exec(name) ?? [];

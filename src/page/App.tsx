@@ -14,7 +14,7 @@ import { looksLikeSession, openSessionFile, saveSessionFile } from './head/sessi
 import type { Message } from './head/sessionFiles.ts';
 import { Start } from './head/Start.tsx';
 import { useSheetEvents } from './head/useSheetEvents.ts';
-import { BudgetSection, CalibrationSection, fetchSections, RecordSection, RunSection, RunStrip, TableSection } from './later.ts';
+import { AtTheBenchSection, BudgetSection, CalibrationSection, fetchSections, RecordSection, RunSection, RunStrip, TableSection } from './later.ts';
 import { ReadingsSection } from './readings/ReadingsSection.tsx';
 import { useReadingsIntake } from './readings/intake.ts';
 
@@ -89,6 +89,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
               <CalibrationSection />
               <RunSection />
               <BudgetSection />
+              <AtTheBenchSection />
               <TableSection />
             </FollowLater>
           </Suspense>

@@ -6,6 +6,7 @@ const fetchRecord = () => import('./record/RecordSection.tsx');
 const fetchCalibration = () => import('./calibration/CalibrationSection.tsx');
 const fetchRun = () => import('./run/RunSection.tsx');
 const fetchBudget = () => import('./budget/BudgetSection.tsx');
+const fetchAtTheBench = () => import('./atTheBench/AtTheBenchSection.tsx');
 const fetchTable = () => import('./table/TableSection.tsx');
 
 export const RunStrip = lazy(async () => ({ default: (await fetchStrip()).RunStrip }));
@@ -13,9 +14,10 @@ export const RecordSection = lazy(async () => ({ default: (await fetchRecord()).
 export const CalibrationSection = lazy(async () => ({ default: (await fetchCalibration()).CalibrationSection }));
 export const RunSection = lazy(async () => ({ default: (await fetchRun()).RunSection }));
 export const BudgetSection = lazy(async () => ({ default: (await fetchBudget()).BudgetSection }));
+export const AtTheBenchSection = lazy(async () => ({ default: (await fetchAtTheBench()).AtTheBenchSection }));
 export const TableSection = lazy(async () => ({ default: (await fetchTable()).TableSection }));
 
 /** Fetches all of them, so that nothing is missing where the place that served the page is gone later. */
 export async function fetchSections(): Promise<void> {
-  await Promise.all([fetchStrip(), fetchRecord(), fetchCalibration(), fetchRun(), fetchBudget(), fetchTable()]);
+  await Promise.all([fetchStrip(), fetchRecord(), fetchCalibration(), fetchRun(), fetchBudget(), fetchAtTheBench(), fetchTable()]);
 }

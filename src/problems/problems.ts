@@ -46,6 +46,8 @@ export const PROBLEM_CODES = [
   // the whole run
   'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
   'damping-none', 'damping-laws-not-told-apart', 'damping-law-fits-badly', 'pulse-reaches-the-peak', 'background-swing-larger', 'momentum-factor-undeclared', 'capture-taken-as-all', 'propellant-too-heavy', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
+  'not-a-vacuum-figure', 'gauge-meaning-unclear', 'pressure-beyond-dial', 'pressure-below-zero', 'pressure-above-outside', 'outside-pressure-missing', 'barometer-at-sea-level', 'height-beyond-atmosphere',
+  'air-needs-width', 'air-on-strip', 'air-not-reckoned',
   // a bench entry
   'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',
   'bench-unstable', 'film-model-alone', 'film-regime', 'film-out-of-range', 'film-needs-displacement', 'stiffness-missing', 'bench-inertia-not-positive', 'gravity-assumed',

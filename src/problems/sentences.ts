@@ -171,6 +171,38 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'pressures-mixed':
       return `the shots were fired between ${quantity('low', 'pressure')} and ${quantity('high', 'pressure')}, and one mean is taken over all. Treat them as several runs if the pressure matters.`;
 
+    case 'not-a-vacuum-figure': {
+      const at = `the shots were fired at up to ${quantity('pressure', 'pressure')}, above the ${quantity('below', 'pressure')} up to which a figure here counts as a vacuum one`;
+      const what = text('plume') === 'caught' ? 'what swings the target is also the gas that the plume drives at it' : 'the plume pushes against the gas about it, and drives it at what stands near';
+      return number('pressure') >= 1000
+        ? `${at}. At such a pressure the plume stops within centimetres and ${text('plume') === 'caught' ? 'what strikes the target is a blast of driven gas' : 'what swings the pendulum is the push on a blast of driven gas'}: this is not a vacuum impulse bit, and says nothing of one. Report the pressure with it, and do not set it beside vacuum figures.`
+        : `${at}: ${what}, so the figure is not a vacuum impulse bit. Report the pressure with it.`;
+    }
+    case 'gauge-meaning-unclear':
+      return text('unit') === '%'
+        ? 'the pressure is in %, and nobody has said of what: percent of a fixed full scale (most dials), or percent of the outside pressure. Choose it with the pressure on the bench; until then no absolute pressure is had.'
+        : `the pressure is in ${text('unit', 'a unit of pressure')}, but the gauge is said to show percent. Choose what the gauge shows, or the column’s unit.`;
+    case 'pressure-beyond-dial':
+      return `the dial shows ${figure('percent')} %, which is not on a dial of 0 to 100 %. Check the reading and the unit of the column.`;
+    case 'pressure-below-zero':
+      return `the absolute pressure comes out as ${quantity('pressure', 'pressure')}${number('u') > 0 ? ` with u = ${quantity('u', 'pressure')}` : ''}, which cannot be. ${text('meaning') === 'absolute' ? 'If the gauge counts from the outside pressure, say so.' : 'Check what the dial means, its zero and the barometer; near full scale such a dial hardly tells the pressure.'}`;
+    case 'pressure-above-outside':
+      return `the gauge reads above the outside pressure, ${quantity('pressure', 'pressure')} against ${quantity('outside', 'pressure')} absolute. If it counts down from the outside pressure, write the numbers as negative, or in −kPa.`;
+    case 'outside-pressure-missing':
+      return 'this gauge counts from the outside pressure, and neither a barometer reading nor the height is given, so there is no absolute pressure. Write one of them; the barometer’s as read at the station.';
+    case 'barometer-at-sea-level':
+      return `the barometer reading, ${quantity('barometer', 'pressure')}, is well above the ${quantity('station', 'pressure')} that the height makes: it may have been reduced to sea level, as forecasts are. Write the pressure at the station.`;
+    case 'height-beyond-atmosphere':
+      return 'the height is outside the −500 m to 11 km of the standard atmosphere, so no outside pressure follows from it. Write the barometer reading.';
+    case 'air-needs-width':
+      return has('taps')
+        ? `the taps were made at ${quantity('taps', 'pressure')} and the shots fired at ${quantity('shots', 'pressure')}; a light strip carries air along, more of it where the pressure is higher, so the calibration changes between them. Write the width of the strip, or tap at the pressure of the shots.`
+        : `at ${quantity('shots', 'pressure')} a light strip carries air along, which adds to its inertia and is left out here. Write the width of the strip.`;
+    case 'air-on-strip':
+      return `at ${quantity('pressure', 'pressure')} the air that the strip carries along amounts to ${figure('percent', 2)} % of its inertia. ${text('use') === 'correction' ? 'It is added, with what its viscosity leaves open.' : 'The air is too viscous there for the formula to correct by; it stands in the budget as an uncertainty. Tap at the pressure of the shots.'}`;
+    case 'air-not-reckoned':
+      return 'the air on the strip is left out: the strip is wider than long, or lighter than the air that it displaces. Check its measures.';
+
     case 'entry-missing':
       return `${entry} is missing. Write it with its unit and uncertainty.`;
     case 'entry-not-a-number':

@@ -56,7 +56,7 @@ function readingCorrections(bench: BenchRead, choices: Choices, frequency: Uncer
   if (choices.correctSampling && frequency) {
     const exposure = valueOf(bench, 'exposure');
     if (exposure && exposure.value > 0) {
-      reading.push({ id: 'exposure', label: 'Exposure of the frames', symbol: 'C_e', equation: 'C_e = (ω t_e/2)/sin(ω t_e/2)', factor: propagate(({ w, t }) => 1 / exposureFactor((w * t) / 2), { w: frequency, t: exposure }) });
+      reading.push({ id: 'exposure', label: 'Exposure of the frames', symbol: 'C_e', equation: 'C_e = (ω t_e/2)/sin(ω t_e/2)', factor: propagate(({ w, t }) => 1 / exposureFactor(w * t), { w: frequency, t: exposure }) });
     }
     const interval = valueOf(bench, 'frameInterval');
     if (interval && interval.value > 0) {

@@ -37,6 +37,9 @@ export const hasPlumbMark = ({ readingWay, swingMeasured }: Choices): boolean =>
 
 /** Dimension in which the readings are written. */
 export const readingDimension = ({ readingWay }: Choices): Dimension => WAYS[readingWay].reads;
+/** Percent on the dial, or a pressure. */
+export const gaugeDimension = ({ gaugeMeaning }: Choices): Dimension => (gaugeMeaning === 'percentOfScale' || gaugeMeaning === 'percentOfOutside' ? 'number' : 'pressure');
+export const GAUGE_UNIT: Readonly<Record<Choices['gaugeMeaning'], string>> = { absolute: 'Pa', gauge: 'kPa', percentOfScale: '%', percentOfOutside: '%' };
 const USUAL_READING_UNIT: Readonly<Record<string, string>> = { length: 'mm', angle: 'mrad', pixel: 'px', count: 'counts' };
 
 /** Entries that the present choices use; `needed` ones stop the road where they are missing. */
@@ -77,6 +80,13 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   when(choices.correctBackground, 'backgroundSwing');
   when(choices.correctPropellant, 'propellantUsed', 'propellantDistance');
   when(choices.plume === 'caught', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle');
+  for (const name of ['pressure', 'tapPressure', 'vacuumBelow', 'dialClass'] as const) used.add(name);
+  when(choices.gaugeMeaning !== 'absolute', 'barometer', 'height');
+  when(choices.gaugeMeaning !== 'percentOfOutside', 'dialFullScale');
+  const light = choices.form === 'uniformStrip' || choices.form === 'stripWithPlate';
+  when(choices.correctAir && (light || choices.form === 'filmStrip'), 'airTemperature');
+  when(choices.correctAir && light, 'stripWidth', 'stripThickness');
+  when(choices.plume === 'carried', 'capacitance', 'leadResistance');
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
   for (const name of ['period', 'periodAmplitude', 'periodCycles'] as const) used.add(name);
@@ -90,7 +100,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'targetHalfAngle']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle']);
 
 const LARGE_RELATIVE = 0.3;
 
@@ -133,8 +143,8 @@ export function readBench(session: Session): BenchRead {
 }
 
 function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choices: Choices, used: boolean, problems: Problem[]): ReadEntry {
-  const dimension: Dimension = kind.dimension === 'reading' ? readingDimension(choices) : kind.dimension;
-  const unitIfNone = kind.dimension === 'reading' ? (USUAL_READING_UNIT[dimension] ?? kind.unit) : kind.unit;
+  const dimension: Dimension = kind.dimension === 'reading' ? readingDimension(choices) : kind.dimension === 'gauge' ? gaugeDimension(choices) : kind.dimension;
+  const unitIfNone = kind.dimension === 'reading' ? (USUAL_READING_UNIT[dimension] ?? kind.unit) : kind.dimension === 'gauge' ? GAUGE_UNIT[choices.gaugeMeaning] : kind.unit;
   const text = typed?.text.trim() ?? '';
   const blank = (distribution: EntryRead['distribution'] = 'exact'): ReadEntry => ({
     read: { name, label: kind.label, symbol: kind.symbol, dimension, value: null, u: 0, unit: unitIfNone, distribution, used },

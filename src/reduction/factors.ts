@@ -1,6 +1,6 @@
 /** The calibration factor by each way, of each configuration, for each form of the swing. */
 import { expanded, finiteSources } from '../metrology/coverage.ts';
-import type { Anchor, Uncertain } from '../metrology/uncertain.ts';
+import { anchor, propagate, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import type { Choices } from '../session/session.ts';
 import type { Calibration } from './results.ts';
 import { stated } from './run.ts';
@@ -15,14 +15,20 @@ export interface Factors {
   readonly change: Uncertain | null;
 }
 
-export function factorsOf(bodies: ByConfiguration<Body> | null, film: ByConfiguration<Anchor | null> | null, stand: Stand, taps: readonly TapKnown[], choices: Choices): Readonly<Record<Form, Factors>> {
+/** A film's K of each configuration, and K_f/K_c where its air differs. */
+export interface FilmFactors {
+  readonly geometry: ByConfiguration<Anchor | null>;
+  readonly change: Uncertain | null;
+}
+
+export function factorsOf(bodies: ByConfiguration<Body> | null, film: FilmFactors | null, stand: Stand, taps: readonly TapKnown[], choices: Choices): Readonly<Record<Form, Factors>> {
   const shots = bodies ? geometryAnchor(bodies.shots) : null;
-  const geometry = film ?? { shots, taps: bodies ? (bodies.taps === bodies.shots ? shots : geometryAnchor(bodies.taps)) : null };
-  const hungDiffers = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots';
+  const geometry = film?.geometry ?? { shots, taps: bodies ? (bodies.taps === bodies.shots ? shots : geometryAnchor(bodies.taps)) : null };
   const known = bodies ?? (choices.route === 'masses' ? stand.masses : null);
+  const differs = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots' || (known !== null && known.shots !== known.taps);
   const of = (form: Form): Factors => {
     const tapCalibration = calibrationFromTaps(taps, form);
-    const firing = tapCalibration && toFiring(tapCalibration.asTaken, known, hungDiffers);
+    const firing = tapCalibration && (film?.change ? { factor: anchor(propagate(({ k, c }) => k * c, { k: tapCalibration.asTaken, c: film.change })), change: film.change } : toFiring(tapCalibration.asTaken, known, differs));
     return { geometry, taps: { taps: tapCalibration?.asTaken ?? null, shots: firing?.factor ?? null }, tapCalibration, change: firing?.change ?? null };
   };
   return { full: of('full'), smallAngle: of('smallAngle') };

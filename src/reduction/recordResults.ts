@@ -4,11 +4,12 @@ import { ownParts } from '../metrology/pooled.ts';
 import { exact, propagate, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import type { Problem } from '../problems/problems.ts';
 import type { RecordResult, Reduction, RunResult } from './results.ts';
+import { unitNamed } from '../units/units.ts';
 import type { Road } from './road.ts';
 import { runOf, stated } from './run.ts';
 import type { Form, Way } from './shots.ts';
 
-export function recordResults({ swings, damping, taps, delivered, thruster, impulse, factors, corrections, form, way, setAside }: Road): readonly RecordResult[] {
+export function recordResults({ swings, damping, taps, delivered, thruster, impulse, factors, corrections, pressures, form, way, setAside }: Road): readonly RecordResult[] {
   const hasTarget = corrections.target.length > 0;
   const knownOf = new Map(taps.map((tap) => [tap.swing.record.id, tap]));
   const anchors = [factors.full, factors.smallAngle].flatMap((f) => [f.geometry.shots, f.geometry.taps, f.taps.shots, f.taps.taps]).filter((a): a is Anchor => a !== null);
@@ -25,6 +26,7 @@ export function recordResults({ swings, damping, taps, delivered, thruster, impu
     const otherResult = result(impulse(swing, form, other));
     const otherFormResult = result(impulse(swing, otherForm, way));
     const known = knownOf.get(record.id);
+    const pressure = pressures.get(record.id);
     const factor = factors[form][way][swing.configuration];
     const moment = known ? known.angularImpulse : swing.launch && factor ? propagate(({ k, f }) => k * f, { k: factor, f: swing.launch[form] }) : null;
     return {
@@ -32,8 +34,9 @@ export function recordResults({ swings, damping, taps, delivered, thruster, impu
       setAside: setAside(record), problems: [],
       readings: {
         rest: swing.readings.rest?.value ?? null, firstSwing: swing.readings.first?.value ?? null, nextSwings: record.nextSwings.map((cell) => cell?.value ?? null),
-        time: record.time?.value ?? null, voltage: record.voltage?.value ?? null, pressure: record.pressure?.value ?? null, tapImpulse: record.tapImpulse?.value ?? null,
+        time: record.time?.value ?? null, voltage: record.voltage?.value ?? null, pressure: record.pressure && unitNamed(record.pressure.unit, 'pressure') ? record.pressure.value : null, tapImpulse: record.tapImpulse?.value ?? null,
       },
+      pressure: pressure ? stated(pressure) : null,
       angle: swing.angle ? stated(swing.angle) : null,
       launch: swing.launch ? stated(swing.launch[form]) : null,
       full: form === 'full' ? chosenResult : otherFormResult,

@@ -6,12 +6,15 @@ import { undampedSmallPeriod } from '../pendulum/period.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import { ENTRIES } from '../session/entries.ts';
 import type { Choices, Session } from '../session/session.ts';
+import { airOf, filmInAir, stripInAir } from './air.ts';
+import { benchEffectsOf } from './benchEffects.ts';
 import { correctionsOf } from './corrections.ts';
 import { readBench, type BenchRead } from './entries.ts';
 import { explained } from './explain.ts';
 import { filmOf } from './film.ts';
 import { calibrationResult, factorsOf } from './factors.ts';
 import { backgroundAngle, impulses, toThruster } from './impulse.ts';
+import { gasDiffers, pressuresOf } from './pressure.ts';
 import { readingSpread, readingsOf } from './readings.ts';
 import { blanksOf, rangeOf, recordResults, withProblems } from './recordResults.ts';
 import { differenceOf, remarksOnRun } from './remarks.ts';
@@ -39,7 +42,10 @@ export function reduce(session: Session, explain: string | null): Reduction {
   if (records.length > 0) {
     for (const name of missingEntries(bench, choices)) problems.push(problem('entry-missing', 'stops', { entry: name }, { label: ENTRIES[name].label }));
   }
-  const stand = readStand(bench, choices);
+  const pressures = pressuresOf(bench, choices, records, counts, problems);
+  const strip = stripInAir(bench, choices);
+  const air = airOf(bench, choices, strip, pressures, problems);
+  const stand = readStand(bench, choices, air, gasDiffers(pressures));
   problems.push(...stand.problems);
   const scale = scaleOf(bench, choices);
 
@@ -50,17 +56,18 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
   const period = timedPeriod(session, bench, stand, damping, problems);
   const film = choices.form === 'filmStrip' && records.length > 0 ? filmOf(bench, choices, stand.gravity, damping.ratio, problems) : null;
+  const filmFactors = film && strip && filmInAir(film.factors, air, strip, valueOf(bench, 'plateMass'));
   const bodies = standByRoute(bench, stand, choices, period, problems);
   const unknown = anchor(exact(stand.shareUnknown));
   const shares: ByConfiguration<Anchor> = bodies
     ? { shots: bodies.shots.gravityShare, taps: bodies.taps.gravityShare }
     : stand.masses ? { shots: stand.masses.shots.gravityShare, taps: stand.masses.taps.gravityShare } : { shots: unknown, taps: unknown };
 
-  const frequency = film ? exact((2 * Math.PI) / film.told.period) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
+  const frequency = film ? exact((2 * Math.PI) / (film.told.period * (filmFactors?.stretch ?? 1))) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
   const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, backgroundAngle(bench, scale), problems);
   const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, film ? undampedOf(damping) : damping, shares, corrections, problems));
   const taps = tapsOf(swings, bench, problems);
-  const factors = factorsOf(bodies, film?.factors ?? null, stand, taps.filter((tap) => counts(tap.swing.record)), choices);
+  const factors = factorsOf(bodies, filmFactors, stand, taps.filter((tap) => counts(tap.swing.record)), choices);
 
   const arms: ByConfiguration<Uncertain | null> = { shots: valueOf(bench, 'leverArm'), taps: valueOf(bench, 'tapLeverArm') };
   const form = choices.swingForm;
@@ -68,7 +75,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const { delivered, impulse } = impulses(swings, factors, arms, corrections, choices);
   const thruster = (s: Swing): Uncertain | null => toThruster(delivered(s, form, way), s, corrections);
   const reported = choices.plume === 'carried' ? 'thruster' : choices.reported;
-  const road: Road = { bench, scale, damping, shares, arms, factors, swings, taps, corrections, delivered, impulse, thruster, form, way, reported, setAside };
+  const road: Road = { bench, scale, damping, pressures: pressures.byRecord, shares, arms, factors, swings, taps, corrections, delivered, impulse, thruster, form, way, reported, setAside };
 
   const shots = swings.filter((s) => s.record.kind === 'shot');
   const run = (which: Way, all: boolean): Run | null => {
@@ -96,6 +103,9 @@ export function reduce(session: Session, explain: string | null): Reduction {
     sheets: sheets.sheets,
     records: withProblems(results, problems),
     film: film?.told ?? null,
+    pressure: pressures.told,
+    air: { shots: air.shots?.told ?? null, taps: air.taps?.told ?? null },
+    benchEffects: benchEffectsOf(bench, choices, { body: bodies?.shots ?? null, gravity: stand.gravity, records: results, run: chosenRun?.result ?? null }),
     gravity: stand.gravity ? stated(stand.gravity) : null,
     configurations: { shots: configuration('shots', bodies, damping), taps: configuration('taps', bodies, damping) },
     damping: { way: damping.way, law: damping.law, quadratic: stated(damping.quadratic.shots), friction: stated(damping.friction.shots), ratio: stated(damping.ratio.shots), logDecrement: stated(propagate(({ z }) => Math.sign(z) * decrementOfRatio(Math.min(Math.abs(z), 0.999)), { z: damping.ratio.shots })), records: damping.records },

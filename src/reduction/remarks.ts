@@ -3,6 +3,7 @@ import { propagate, standardUncertainty, type Uncertain } from '../metrology/unc
 import { problem, type Place, type Problem } from '../problems/problems.ts';
 import type { Choices } from '../session/session.ts';
 import type { BenchRead } from './entries.ts';
+import { PRESSURE_RATIO } from './pressure.ts';
 import type { ReadingSpread } from './readings.ts';
 import type { Difference, PeriodCheck, RecordResult, RunResult, SheetResult } from './results.ts';
 import { placeOf } from './sheets.ts';
@@ -15,8 +16,6 @@ const WORTH_A_SENTENCE = 2;
 const BEYOND_TAPS = 0.1;
 /** Fewer shots than this make a scatter of little weight. */
 const FEW_SHOTS = 5;
-/** Pressures that differ by more than this ratio are not one condition. */
-const PRESSURE_RATIO = 1.5;
 
 /**
  * Taps against geometry: both ways reduce the same shots, so the run means differ as their calibration factors do,
@@ -118,7 +117,7 @@ function calibrationRemarks(x: RunFacts, counted: readonly RecordResult[], shots
 }
 
 function pressureRemarks(shots: readonly RecordResult[]): Problem[] {
-  const pressures = shots.map((r) => r.readings.pressure).filter((p): p is number => p !== null && p > 0);
+  const pressures = shots.map((r) => r.pressure?.value ?? null).filter((p): p is number => p !== null);
   if (pressures.length < 2) return [];
   const [low, high] = [Math.min(...pressures), Math.max(...pressures)];
   return high > PRESSURE_RATIO * low ? [problem('pressures-mixed', 'doubt', {}, { low, high })] : [];

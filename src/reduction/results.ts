@@ -3,6 +3,9 @@ import type { Dimension } from '../units/units.ts';
 import type { Problem } from '../problems/problems.ts';
 import type { RecordKind, Role } from '../readings/meanings.ts';
 import type { Session } from '../session/session.ts';
+import type { BenchEffectId } from '../problems/benchEffects.ts';
+import type { AirLayer } from '../pendulum/gas.ts';
+import type { GaugeMeaning } from '../pendulum/pressure.ts';
 import type { FilmTold } from './film.ts';
 
 /** A value with its standard uncertainty, SI. */
@@ -80,6 +83,7 @@ export interface RecordReadings {
   readonly nextSwings: readonly (number | null)[];
   readonly time: number | null;
   readonly voltage: number | null;
+  /** As the gauge showed it, Pa; null where it showed percent. The absolute pressure stands with the record. */
   readonly pressure: number | null;
   readonly tapImpulse: number | null;
 }
@@ -99,6 +103,8 @@ export interface RecordResult {
   readonly setAside: string | null;
   readonly problems: readonly Problem[];
   readonly readings: RecordReadings;
+  /** Absolute pressure, Pa; null where it is not known. */
+  readonly pressure: Stated | null;
   /** First-swing angle from rest, θ_p, rad. */
   readonly angle: Stated | null;
   /** Damping-corrected, small-angle-equivalent first swing φ = θ′(0⁺)/ω_n, rad, by the full pendulum. */
@@ -178,6 +184,50 @@ export interface Difference {
   readonly inU: number;
 }
 
+/** Pressure of the run, absolute, Pa. */
+export interface PressureResult {
+  readonly meaning: GaugeMeaning;
+  /** Mean of the shots that count, with their range in its u; of mixed pressures it is of no one condition. */
+  readonly absolute: Stated;
+  readonly least: number;
+  readonly largest: number;
+  readonly mixed: boolean;
+  /** Of the taps; null where it is that of the shots. */
+  readonly taps: Stated | null;
+  readonly outside: Stated | null;
+  readonly outsideFrom: 'barometer' | 'height' | null;
+  /** No shot was fired above the pressure up to which a figure counts as a vacuum one. */
+  readonly likeVacuum: boolean;
+}
+
+/** What the air about a light strip does in one configuration. */
+export interface AirResult {
+  readonly use: AirLayer['use'];
+  readonly pressure: Stated;
+  /** kg/m³. */
+  readonly density: Stated;
+  /** √(2ν/ω), m. */
+  readonly layer: number;
+  /** kg·m², as J takes it: corrected, or 0 with its uncertainty. */
+  readonly addedInertia: Stated;
+  readonly buoyancy: Stated;
+  /** The formula's added inertia over the strip's own. */
+  readonly ofInertia: number;
+}
+
+/** One thing that fools people at the bench, sized for this bench. */
+export interface BenchEffect {
+  readonly id: BenchEffectId;
+  readonly size: { readonly value: number; readonly dimension: Dimension };
+  readonly share: { readonly of: 'impulse' | 'firstSwing' | 'stiffness'; readonly value: number };
+  /** Largest part of the impulse bit that it makes by the present calibration and route. */
+  readonly ofImpulse: number;
+  /** Typical values taken for what is not typed, SI; in problems/benchEffects.ts by name. */
+  readonly taken: readonly { readonly what: string; readonly value: number; readonly dimension: Dimension }[];
+  /** More than a fifth of the run's relative u, or more than half a percent. */
+  readonly matters: boolean;
+}
+
 /** A column as found in a sheet, with what was proposed and why. */
 export interface SheetColumn {
   readonly header: string;
@@ -201,6 +251,10 @@ export interface Reduction {
   readonly records: readonly RecordResult[];
   /** The film strip's own figures; null for any other stand. */
   readonly film: FilmTold | null;
+  readonly pressure: PressureResult | null;
+  readonly air: { readonly shots: AirResult | null; readonly taps: AirResult | null };
+  /** Largest first; empty without a run mean. */
+  readonly benchEffects: readonly BenchEffect[];
   readonly gravity: Stated | null;
   readonly configurations: { readonly shots: Configuration | null; readonly taps: Configuration | null };
   /** Where ζ comes from, in a few words, and how many swings it rests on. */

@@ -14,6 +14,8 @@ export interface Road {
   readonly bench: BenchRead;
   readonly scale: Scale | null;
   readonly damping: Damping;
+  /** Absolute, Pa, by record id. */
+  readonly pressures: ReadonlyMap<string, Uncertain>;
   readonly shares: ByConfiguration<Anchor>;
   readonly arms: ByConfiguration<Uncertain | null>;
   readonly factors: Readonly<Record<Form, Factors>>;

@@ -8,6 +8,7 @@ import { GRAVITY_ANOMALY, normalGravity } from '../pendulum/gravity.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import type { EntryName, PartEntryName } from '../session/entries.ts';
 import type { Choices } from '../session/session.ts';
+import type { AirEffect } from './air.ts';
 import { entriesInUse, type BenchRead } from './entries.ts';
 
 export type ConfigurationName = 'shots' | 'taps';
@@ -28,6 +29,8 @@ export interface Stand {
   readonly problems: readonly Problem[];
   /** Gravity share to use where masses are unknown: 1 without a flexure. */
   readonly shareUnknown: number;
+  /** Shots and taps swing in gas of different pressure, which damps them differently. */
+  readonly gasDiffers: boolean;
 }
 
 /** Standard gravity, CGPM 1901, taken where nothing is typed, with limits that hold everywhere at sea level to 3 km. */
@@ -41,17 +44,18 @@ export function missingEntries(bench: BenchRead, choices: Choices): readonly Ent
   return [...entriesInUse(choices).needed].filter((name) => bench.entries.get(name)?.value === null);
 }
 
-export function readStand(bench: BenchRead, choices: Choices): Stand {
+export function readStand(bench: BenchRead, choices: Choices, air: ByConfiguration<AirEffect | null>, gasDiffers: boolean): Stand {
   const problems: Problem[] = [];
   const gravity = readGravity(bench, choices, problems);
   const flexure = valueOf(bench, 'flexureStiffness') ?? exact(0);
   const shareUnknown = choices.form === 'periodAndStiffness' ? valueOf(bench, 'gravityPart')?.value ?? 1 : choices.form === 'filmStrip' || choices.restoring === 'flexureAlone' ? 0 : 1;
   const body = gravity && bareBody(bench, choices, problems);
-  if (!gravity || !body) return { gravity, masses: null, problems, shareUnknown };
+  if (!gravity || !body) return { gravity, masses: null, problems, shareUnknown, gasDiffers };
   const extra = calibrationMass(bench, choices, gravity);
   const of = (name: ConfigurationName): Body | null => {
-    const inertia = anchor(combine([[1, body.inertia], ...(extra[name] ? [[1, extra[name].inertia] as const] : [])]));
-    const moment = combine(choices.restoring === 'flexureAlone' ? [] : [[1, body.moment], ...(extra[name] ? [[1, extra[name].moment] as const] : [])]);
+    const [hung, gas] = [extra[name], air[name]];
+    const inertia = anchor(combine([[1, body.inertia], ...(hung ? [[1, hung.inertia] as const] : []), ...(gas ? [[1, gas.inertia] as const] : [])]));
+    const moment = combine(choices.restoring === 'flexureAlone' ? [] : [[1, body.moment], ...(hung ? [[1, hung.moment] as const] : []), ...(gas ? [[-1, momentBorne(bench, gas)] as const] : [])]);
     const kappa = anchor(propagate(stiffness, { moment, g: gravity, flexure }));
     if (!(inertia.value > 0)) {
       problems.push(problem('bench-inertia-not-positive', 'stops', {}, { configuration: name, value: inertia.value }));
@@ -66,8 +70,14 @@ export function readStand(bench: BenchRead, choices: Choices): Stand {
     return { inertia, stiffness: kappa, gravityShare: anchor(share) };
   };
   const shots = of('shots');
-  const taps = extra.same ? shots : of('taps');
-  return { gravity, masses: shots && taps ? { shots, taps } : null, problems, shareUnknown };
+  const taps = extra.same && air.shots === air.taps ? shots : of('taps');
+  return { gravity, masses: shots && taps ? { shots, taps } : null, problems, shareUnknown, gasDiffers };
+}
+
+/** Part of the strip's static moment that the air bears: (1 − b) m L/2. */
+function momentBorne(bench: BenchRead, air: AirEffect): Uncertain {
+  const [m, L] = [valueOf(bench, 'stripMass'), valueOf(bench, 'stripLength')];
+  return m && L ? propagate(({ m: mass, L: length, b }) => stripMoment({ m: mass, L: length }) * (1 - b), { m, L, b: air.buoyancy }) : exact(0);
 }
 
 function readGravity(bench: BenchRead, choices: Choices, problems: Problem[]): Anchor | null {

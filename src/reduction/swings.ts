@@ -78,7 +78,7 @@ export function dampingOf(
   const law = lawOf(dampingLaw, found, problems);
   if (law === 'viscous') return { ...undamped, ratio: ratioByConfiguration(found, stand, problems), way, records: found.length };
   const from: ConfigurationName = found.some((swing) => swing.configuration === 'shots') ? 'shots' : 'taps';
-  const term = termFromSwings(law, stand.masses && stand.masses.shots !== stand.masses.taps ? found.filter((swing) => swing.configuration === from) : found, problems);
+  const term = termFromSwings(law, differ(stand) ? found.filter((swing) => swing.configuration === from) : found, problems);
   if (!term) return undamped;
   return { ...undamped, [law]: carriedByBody(term, stand, law === 'quadratic' ? 'inertia' : 'stiffness', from), law, way, records: found.length };
 }
@@ -90,10 +90,13 @@ function carriedByBody(term: Anchor, stand: Stand, by: 'inertia' | 'stiffness', 
   return { shots: to('shots'), taps: to('taps') };
 }
 
+/** The two configurations are damped differently. */
+const differ = (stand: Stand): boolean => stand.gasDiffers || (stand.masses !== null && stand.masses.shots !== stand.masses.taps);
+
 function ratioByConfiguration(found: readonly Turning[], stand: Stand, problems: Problem[]): Readonly<Record<ConfigurationName, Anchor>> {
   const of = (name: ConfigurationName): readonly Uncertain[] => found.flatMap((swing) => (swing.configuration === name && swing.ratio ? [swing.ratio] : []));
   const [shots, taps] = [of('shots'), of('taps')];
-  if (!stand.masses || stand.masses.shots === stand.masses.taps) return both(pooledRatio([...shots, ...taps], 'all', problems));
+  if (!differ(stand)) return both(pooledRatio([...shots, ...taps], 'all', problems));
   if (shots.length > 0 && taps.length > 0) return { shots: pooledRatio(shots, 'shots', problems), taps: pooledRatio(taps, 'taps', problems) };
   const from: ConfigurationName = shots.length > 0 ? 'shots' : 'taps';
   problems.push(problem('damping-carried-over', 'note', {}, { from }));

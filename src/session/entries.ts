@@ -4,8 +4,11 @@ import type { Dimension } from '../units/units.ts';
 export interface EntryKind {
   readonly label: string;
   readonly symbol: string;
-  /** 'reading' takes the dimension of the ruler readings: a length, or an angle where the reading is an angle. */
-  readonly dimension: Dimension | 'reading';
+  /**
+   * 'reading' takes the dimension of the ruler readings: a length, or an angle where the reading is an angle.
+   * 'gauge' is a pressure, or percent where the vacuum dial shows percent.
+   */
+  readonly dimension: Dimension | 'reading' | 'gauge';
   /** Unit taken where none is typed. */
   readonly unit: string;
   readonly range: 'positive' | 'notNegative' | 'any';
@@ -82,6 +85,17 @@ export const ENTRIES = {
   period: { label: 'Timed period', symbol: 'T', dimension: 'time', unit: 's', range: 'positive', hint: 'one full cycle, there and back' },
   periodAmplitude: { label: 'Amplitude while timing', symbol: 'A', dimension: 'angle', unit: '°', range: 'notNegative', hint: 'at the start of the timing; empty: small' },
   periodCycles: { label: 'Cycles timed', symbol: 'N', dimension: 'number', unit: '1', range: 'positive', hint: 'full cycles in one timing; empty: few' },
+  pressure: { label: 'Pressure while firing', symbol: 'p', dimension: 'gauge', unit: 'Pa', range: 'any', hint: 'as the gauge shows it, of every record without one of its own' },
+  tapPressure: { label: 'Pressure while tapping', symbol: 'p_c', dimension: 'gauge', unit: 'Pa', range: 'any', hint: 'as the gauge shows it; empty: the same as while firing' },
+  barometer: { label: 'Barometer', symbol: 'p_out', dimension: 'pressure', unit: 'kPa', range: 'positive', hint: 'station pressure, not the forecast’s sea-level one; empty: from the height' },
+  dialFullScale: { label: 'Full scale of the dial', symbol: 'p_FS', dimension: 'pressure', unit: 'kPa', range: 'positive', hint: 'empty: 101.325 kPa (29.92 inHg)' },
+  dialClass: { label: 'Class of the dial', symbol: 'c_d', dimension: 'number', unit: '%', range: 'notNegative', hint: 'limits as a part of full scale, 1.6 or 2.5 % say; common to all readings' },
+  vacuumBelow: { label: 'Counts as vacuum below', symbol: 'p_v', dimension: 'pressure', unit: 'Pa', range: 'positive', hint: 'a judgement; empty: 0.1 Pa' },
+  stripWidth: { label: 'Width of the strip', symbol: 'b', dimension: 'length', unit: 'mm', range: 'positive', hint: 'across, for the air that it moves; empty: air left out' },
+  stripThickness: { label: 'Thickness of the strip', symbol: 'h', dimension: 'length', unit: 'µm', range: 'positive', hint: 'for its buoyancy alone' },
+  airTemperature: { label: 'Temperature of the gas', symbol: 't_g', dimension: 'celsius', unit: '°C', range: 'any', hint: 'empty: 20 ± 5 °C' },
+  capacitance: { label: 'Capacitance of the bank', symbol: 'C', dimension: 'capacitance', unit: 'µF', range: 'positive', hint: 'for what to check at the bench alone' },
+  leadResistance: { label: 'Resistance of the discharge circuit', symbol: 'R_d', dimension: 'resistance', unit: 'mΩ', range: 'positive', hint: 'all of it; for what to check at the bench alone' },
   calibrationMass: { label: 'Calibration mass', symbol: 'm_x', dimension: 'mass', unit: 'g', range: 'positive', hint: 'hung on the pendulum for a part of the run only' },
   calibrationMassDistance: { label: 'Pivot to calibration mass', symbol: 'r_x', dimension: 'length', unit: 'mm', range: 'any', hint: 'below the pivot; above it negative' },
   calibrationMassInertia: { label: 'Its own inertia', symbol: 'J_x', dimension: 'momentOfInertia', unit: 'g·mm²', range: 'notNegative', hint: 'about its own centre of mass; empty: 0' },

@@ -1,5 +1,6 @@
 /** The session: what the user gave, word for word, with choices and reasons. Nothing computed is in it. */
 import type { ColumnMeaning, RecordKind } from '../readings/meanings.ts';
+import type { GaugeMeaning } from '../pendulum/pressure.ts';
 import { READING_WAYS, type ReadingWay } from '../readings/ways.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
 
@@ -46,6 +47,10 @@ export interface Choices {
   readonly correctSampling: boolean;
   readonly correctBackground: boolean;
   readonly correctPropellant: boolean;
+  /** Air that a light strip moves and that bears it. */
+  readonly correctAir: boolean;
+  /** What the pressure gauge shows; percent on a dial says nothing until a person has said of what. */
+  readonly gaugeMeaning: GaugeMeaning;
   readonly gravityWay: 'typed' | 'place';
   /** How stiffness and inertia are known (methods: routes A and B; 'masses' leaves a period as a check only). */
   readonly route: 'masses' | 'massesAndPeriod' | 'inertiaAndPeriod';
@@ -117,6 +122,8 @@ export const FIRST_CHOICES: Choices = {
   correctSampling: true,
   correctBackground: true,
   correctPropellant: true,
+  correctAir: true,
+  gaugeMeaning: 'absolute',
   gravityWay: 'typed',
   route: 'masses',
   periodTimedAs: 'shots',
@@ -144,6 +151,8 @@ export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices
   correctSampling: [true, false],
   correctBackground: [true, false],
   correctPropellant: [true, false],
+  correctAir: [true, false],
+  gaugeMeaning: ['absolute', 'gauge', 'percentOfScale', 'percentOfOutside'],
   gravityWay: ['typed', 'place'],
   route: ['masses', 'massesAndPeriod', 'inertiaAndPeriod'],
   periodTimedAs: ['shots', 'taps'],

@@ -59,7 +59,8 @@ describe.each([['the invented bench of the tests', demoLike({ calibration: 'taps
     ['rest reading (mm)', 1e3, (x) => x.readings.rest ?? undefined],
     ['first swing (mm)', 1e3, (x) => x.readings.firstSwing ?? undefined],
     ['charge voltage (V)', 1, (x) => x.readings.voltage ?? undefined],
-    ['pressure (Pa)', 1, (x) => x.readings.pressure ?? undefined],
+    ['absolute pressure (Pa)', 1, (x) => x.pressure?.value],
+    ['u of absolute pressure (Pa)', 1, (x) => x.pressure?.u],
   ])('reads back as the reduction’s numbers to ten digits: %s', (header, factor, of) => {
     const found = cells(table, header);
     const isRight = (cell: string, value: number | undefined): boolean => {

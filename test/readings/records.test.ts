@@ -23,7 +23,8 @@ describe('readings', () => {
     expect(first.firstSwing?.value).toBeCloseTo(0.0155, 15);
     expect(first.nextSwings.map((cell) => cell?.value)).toEqual([expect.closeTo(0.0086, 15)]);
     expect(first.voltage?.value).toBe(1500);
-    expect([first.time, first.pressure, first.tapImpulse]).toEqual([null, null, null]);
+    expect(first.pressure).toMatchObject({ value: 0.95, unit: '%' });
+    expect([first.time, first.tapImpulse]).toEqual([null, null]);
   });
 
   test('a misfire with a rest, a voltage and no swing stays a shot, and says so', () => {

@@ -3,7 +3,7 @@ import { useMemo, useState } from 'react';
 import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
-import { entriesInUse } from '../../reduction/entries.ts';
+import { entriesInUse, GAUGE_UNIT } from '../../reduction/entries.ts';
 import type { EntryRead } from '../../reduction/results.ts';
 import { setChoice, setEntry, setFreeSwing } from '../../session/edits.ts';
 import { ENTRIES } from '../../session/entries.ts';
@@ -17,6 +17,7 @@ import { EntryField } from './EntryField.tsx';
 import { CAUTIONS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, READING_WAYS, ROUTES } from './groups.ts';
 import type { GroupName } from './groups.ts';
 import { PartsTable } from './PartsTable.tsx';
+import { PressureGroup } from './PressureGroup.tsx';
 
 const NO_PROBLEMS: readonly Problem[] = [];
 
@@ -40,6 +41,8 @@ export function BenchSection() {
   const freeSwing = useStore((state) => state.session.freeSwing);
   const readings = useStore((state) => state.reduction?.entries);
   const problems = useStore((state) => state.reduction?.problems);
+  const pressure = useStore((state) => state.reduction?.pressure ?? null);
+  const air = useStore((state) => state.reduction?.air.shots ?? null);
   const [focused, setFocused] = useState<string | null>(null);
 
   const reads = useMemo(() => new Map(readings?.map((read) => [read.name, read])), [readings]);
@@ -57,7 +60,7 @@ export function BenchSection() {
         <EntryField
           key={name}
           name={name}
-          kind={kind.dimension === 'reading' && choices.readingWay === 'angle' ? { ...kind, unit: 'mrad' } : kind}
+          kind={kind.dimension === 'gauge' ? { ...kind, unit: GAUGE_UNIT[choices.gaugeMeaning] } : kind.dimension === 'reading' && choices.readingWay === 'angle' ? { ...kind, unit: 'mrad' } : kind}
           entry={entries[name]}
           read={readOf(name)}
           problems={used.has(name) ? problemsOf(name) : NO_PROBLEMS}
@@ -86,6 +89,11 @@ export function BenchSection() {
           <Group name="Thrust">
             {fields('Thrust')}
             <Caution words={CAUTIONS.charge} />
+          </Group>
+          <Group name="Pressure">
+            <PressureGroup choices={choices} pressure={pressure} air={air} onGauge={choose('gaugeMeaning', 'what the gauge shows')} onAir={choose('correctAir', 'air on the strip')}>
+              {fields('Pressure')}
+            </PressureGroup>
             <Caution words={CAUTIONS.vacuum} />
           </Group>
           <Group name="Reading">

@@ -106,15 +106,23 @@ export const MASS_HUNG: Options<'calibrationMassHung'> = [
   { value: 'always', words: 'always' },
 ];
 
-export type GroupName = 'Pendulum' | 'Thrust' | 'Corrections' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
+export const GAUGE_MEANINGS: Options<'gaugeMeaning'> = [
+  { value: 'absolute', words: 'absolute pressure' },
+  { value: 'gauge', words: 'pressure against the outside', more: 'negative below it' },
+  { value: 'percentOfScale', words: 'percent of a fixed full scale', more: 'most vacuum dials, 100 % at 101.325 kPa (29.92 inHg) below the outside' },
+  { value: 'percentOfOutside', words: 'percent of the outside pressure', more: '100 % is no pressure at all' },
+];
+
+export type GroupName = 'Pendulum' | 'Thrust' | 'Pressure' | 'Corrections' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
 
 /** Every entry of the bench, in the order of the work. */
 export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = {
   Pendulum: [
-    'bobMass', 'bobDistance', 'stripMass', 'stripLength', 'filmThickness', 'filmWidth', 'filmLength', 'filmDensity', 'filmModulus', 'filmMass', 'zoneFrom', 'zoneTo',
+    'bobMass', 'bobDistance', 'stripMass', 'stripLength', 'stripWidth', 'stripThickness', 'filmThickness', 'filmWidth', 'filmLength', 'filmDensity', 'filmModulus', 'filmMass', 'zoneFrom', 'zoneTo',
     'plateMass', 'plateDistance', 'plateInertia', 'staticStiffness', 'forcePerDeflection', 'pullArm', 'gravityPart', 'flexureStiffness',
   ],
-  Thrust: ['leverArm', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle'],
+  Thrust: ['leverArm', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle', 'capacitance', 'leadResistance'],
+  Pressure: ['pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'airTemperature'],
   Corrections: ['pulseDuration', 'tiltOutOfPlane', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance'],
   Reading: [
     'readingRadius', 'rulerHeight', 'sensorHeight', 'faceOffset', 'screenDistance', 'screenTilt', 'mirrorRadius', 'beamIncidence', 'beamOutOfPlane', 'windowThickness', 'windowIndex',
@@ -129,7 +137,7 @@ export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = 
 
 export const CAUTIONS = {
   charge: 'Stored charge: a bank holds its charge after the supply is off and can recover some after a discharge. Discharge, short and earth it before reaching in; your site’s high-voltage rules and a licensed person decide.',
-  vacuum: 'Vacuum: glass and acrylic can implode. Guard them, and keep to the vessel’s rating and local codes.',
+  vacuum: 'Vacuum: glass and acrylic can implode. Shield them, use no flat panes that were not made for it, and keep to the vessel’s rating and local codes.',
   laser: 'Laser: keep the beam off eye level and end it at the screen; class, eyewear and interlocks by local codes and your laser safety officer.',
   hammer: 'Hammer: eyes and fingers out of its path, nothing brittle or under vacuum behind it.',
 } as const;

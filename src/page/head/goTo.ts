@@ -18,6 +18,9 @@ const SETTLED_AT: Partial<Record<ProblemCode, string>> = {
   'shots-beyond-taps': 'calibration',
   'taps-scatter-more-than-stated': 'calibration',
   'calibrations-differ': 'calibration',
+  'pressures-mixed': 'choice-gaugeMeaning',
+  'gauge-meaning-unclear': 'choice-gaugeMeaning',
+  'not-a-vacuum-figure': 'choice-gaugeMeaning',
 };
 
 const isOfACell = ({ code, place }: Problem): boolean => place.sheet !== undefined && (code.startsWith('cell-') || place.record === undefined);

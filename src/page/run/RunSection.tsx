@@ -14,6 +14,7 @@ import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
 import { Aligned, alignedTo } from '../stated/Aligned.tsx';
 import { coverageFactor, degreesOfFreedom, roundedAs } from '../stated/numberWords.ts';
+import { FiredAt } from '../stated/FiredAt.tsx';
 import { Quantity } from '../stated/Quantity.tsx';
 import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
@@ -30,7 +31,7 @@ export function RunSection() {
 }
 
 function Run({ reduction }: { readonly reduction: Reduction }) {
-  const { run, runWithSetAside, records, blanks } = reduction;
+  const { run, runWithSetAside, records, blanks, pressure } = reduction;
   const unit = impulseUnit(reduction);
   const aside = records.filter(({ setAside }) => setAside !== null);
   const hasShots = records.some(({ kind, impulseBit }) => kind === 'shot' && impulseBit !== null);
@@ -42,6 +43,7 @@ function Run({ reduction }: { readonly reduction: Reduction }) {
             Mean impulse bit <Quantity value={run.mean.value} spread={run.mean.U} unit={unit} />
           </p>
           <p className="quiet">± is U, the expanded uncertainty at 95 %, k = {coverageFactor(run.mean.k)}; {run.n} of {run.of} shots count.</p>
+          {pressure !== null && <p><FiredAt pressure={pressure} /></p>}
           <Composition run={run} withAside={runWithSetAside} unit={unit} />
           <p className={styles.reason}>
             Only the scatter of the shots is divided by √n. The common part (lever arm, inertia, scale, calibration) pushes every shot the same way,

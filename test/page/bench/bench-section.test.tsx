@@ -80,7 +80,7 @@ describe('the bench', () => {
   test('where work can hurt a caution stands in its place', async () => {
     const { user } = await onSheet(<BenchSection />);
     expect(group('Thrust').getByText(/^Stored charge:/)).toBeVisible();
-    expect(group('Thrust').getByText(/^Vacuum:/)).toBeVisible();
+    expect(group('Pressure').getByText(/^Vacuum:/)).toBeVisible();
     expect(group('Taps').getByText(/^Hammer:/)).toBeVisible();
     expect(screen.queryByText(/^Laser:/)).not.toBeInTheDocument();
     await user.click(screen.getByRole('radio', { name: /^laser spot/ }));
