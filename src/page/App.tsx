@@ -14,7 +14,7 @@ import { looksLikeSession, openSessionFile, saveSessionFile } from './head/sessi
 import type { Message } from './head/sessionFiles.ts';
 import { Start } from './head/Start.tsx';
 import { useSheetEvents } from './head/useSheetEvents.ts';
-import { AtTheBenchSection, BudgetSection, CalibrationSection, fetchSections, RecordSection, RunSection, RunStrip, TableSection } from './later.ts';
+import { AtTheBenchSection, BudgetSection, CalibrationSection, fetchSections, PlanSection, RecordSection, RunSection, RunStrip, TableSection } from './later.ts';
 import { ReadingsSection } from './readings/ReadingsSection.tsx';
 import { useReadingsIntake } from './readings/intake.ts';
 
@@ -24,6 +24,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
   const now = useStateNow();
   const intake = useReadingsIntake();
   const hasSheets = useStore((state) => state.session.sheets.length > 0);
+  const plans = useStore(({ session: { sheets, entries } }) => sheets.length === 0 || entries.guessedImpulse !== undefined || entries.scaleReach !== undefined);
   const chooser = useRef<HTMLInputElement>(null);
   const [help, setHelp] = useState(false);
   const [messages, setMessages] = useState<readonly Message[]>(() => arrival.map((message, index) => ({ ...message, id: index })));
@@ -78,10 +79,9 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
         <ResultLine />
         {hasSheets && <Suspense><RunStrip /></Suspense>}
         <Start onChoose={choose} onDemo={openDemo} />
-        <div className={hasSheets ? `${styles.pair} ${styles.withRecord}` : styles.pair}>
-          <BenchSection />
-          {hasSheets && <div className={styles.beside}><Suspense><RecordSection /></Suspense></div>}
-        </div>
+        {hasSheets && <Suspense><RecordSection /></Suspense>}
+        <BenchSection />
+        {plans && <Suspense><PlanSection /></Suspense>}
         <ReadingsSection />
         {hasSheets && (
           <Suspense>

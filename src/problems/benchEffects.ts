@@ -58,7 +58,7 @@ export const BENCH_EFFECT_WORDS: Readonly<Record<BenchEffectId, BenchEffectWords
     toDo: 'Time the period, or tap, at the temperature of the shots.',
   },
   yaw: {
-    name: 'Yaw of a body on two wires', does: 'a push off the centre of mass adds a yaw, read as',
+    name: 'Yaw, where it hangs on two wires', does: 'a push off the centre of mass adds a yaw, read as',
     toDo: 'Push and tap on the line of the centre of mass, and read there. One wire alone does not hold it.',
   },
   doublePendulum: {
@@ -70,7 +70,7 @@ export const BENCH_EFFECT_WORDS: Readonly<Record<BenchEffectId, BenchEffectWords
     toDo: 'Look where it strikes, before and after. At random it scatters the shots; a receding propellant makes a trend.',
   },
   feedHose: {
-    name: 'Hose of a gas feed', does: 'a drop of the feed’s pressure, in a hose along the thrust, pushes with',
+    name: 'Hose of a gas feed, where there is one', does: 'a drop of the feed’s pressure, in a hose along the thrust, pushes with',
     toDo: 'Lead the hose in along the pivot axis, and fire blanks with the valve alone.',
   },
 };

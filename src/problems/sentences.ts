@@ -181,7 +181,9 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'gauge-meaning-unclear':
       return text('unit') === '%'
         ? 'the pressure is in %, and nobody has said of what: percent of a fixed full scale (most dials), or percent of the outside pressure. Choose it with the pressure on the bench; until then no absolute pressure is had.'
-        : `the pressure is in ${text('unit', 'a unit of pressure')}, but the gauge is said to show percent. Choose what the gauge shows, or the column’s unit.`;
+        : text('unit').startsWith('−')
+          ? `the pressure is in ${text('unit')}, counted down from the outside, but the gauge is not said to show that. Choose “pressure against the outside” with the pressure on the bench; until then no absolute pressure is had.`
+          : `the pressure is in ${text('unit', 'a unit of pressure')}, but the gauge is said to show percent. Choose what the gauge shows, or the column’s unit.`;
     case 'pressure-beyond-dial':
       return `the dial shows ${figure('percent')} %, which is not on a dial of 0 to 100 %. Check the reading and the unit of the column.`;
     case 'pressure-below-zero':
@@ -201,7 +203,7 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'air-on-strip':
       return `at ${quantity('pressure', 'pressure')} the air that the strip carries along amounts to ${figure('percent', 2)} % of its inertia. ${text('use') === 'correction' ? 'It is added, with what its viscosity leaves open.' : 'The air is too viscous there for the formula to correct by; it stands in the budget as an uncertainty. Tap at the pressure of the shots.'}`;
     case 'air-not-reckoned':
-      return 'the air on the strip is left out: the strip is wider than long, or lighter than the air that it displaces. Check its measures.';
+      return 'the air on the strip is left out: the strip is wider than long, or lighter than the air that it displaces, or the gas is colder than can be. Check its measures and the temperature.';
 
     case 'entry-missing':
       return `${entry} is missing. Write it with its unit and uncertainty.`;

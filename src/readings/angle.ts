@@ -24,9 +24,9 @@ export const swingFromSides = (way: ReadingWay) => (n: StandNumbers): number => 
   const total = n['scale']! * n['first']!;
   const q = n['halfDecay']!;
   const excess = (theta: number): number => WAYS[way].reading(theta, n) - WAYS[way].reading(-q * theta, n) - total;
-  const root = rootBetween(excess, -WIDEST, WIDEST);
+  const root = rootBetween(excess, -WIDEST_FROM_SIDES, WIDEST_FROM_SIDES);
   if (root.status !== 'found') throw new RangeError(`side to side: no swing reads ${total}`);
   return root.x;
 };
 /** Laser and line geometries run away at a quarter turn of the beam; wider swings are not read from side to side. */
-const WIDEST = 0.78;
+export const WIDEST_FROM_SIDES = 0.78;

@@ -84,10 +84,11 @@ export function airOf(bench: BenchRead, choices: Choices, strip: StripInAir | nu
   if (!choices.correctAir || !strip || !shots) return NONE;
   const differs = taps !== null && gasDiffers(pressures);
   const { width } = strip;
+  const entry: EntryName = choices.form === 'filmStrip' ? 'filmWidth' : 'stripWidth';
   if (!width) {
     const most = Math.max(shots.value, taps?.value ?? 0);
     if (most >= WORTH_A_WORD && (differs || choices.calibration === 'geometry')) {
-      problems.push(problem('air-needs-width', differs ? 'doubt' : 'note', { entry: 'stripWidth' }, differs ? { shots: shots.value, taps: taps.value } : { shots: shots.value }));
+      problems.push(problem('air-needs-width', differs ? 'doubt' : 'note', { entry }, differs ? { shots: shots.value, taps: taps.value } : { shots: shots.value }));
     }
     return NONE;
   }
@@ -96,12 +97,12 @@ export function airOf(bench: BenchRead, choices: Choices, strip: StripInAir | nu
     const fired = of(shots);
     const effects = { shots: fired, taps: !taps || taps === shots ? fired : alike(fired, of(taps), strip) };
     if (fired && fired.told.ofInertia > ALIKE) {
-      problems.push(problem('air-on-strip', 'note', { entry: 'stripWidth' }, { use: fired.use, percent: 100 * fired.told.ofInertia, pressure: shots.value }));
+      problems.push(problem('air-on-strip', 'note', { entry }, { use: fired.use, percent: 100 * fired.told.ofInertia, pressure: shots.value }));
     }
     return effects;
   } catch (failure) {
     if (!(failure instanceof RangeError)) throw failure;
-    problems.push(problem('air-not-reckoned', 'doubt', { entry: choices.form === 'filmStrip' ? 'filmWidth' : 'stripWidth' }, {}));
+    problems.push(problem('air-not-reckoned', 'doubt', { entry }, {}));
     return NONE;
   }
 }

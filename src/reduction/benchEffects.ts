@@ -104,7 +104,7 @@ function discharge(bench: BenchRead, choices: Choices, pendulum: effects.Bench, 
   const R = typed.resistance ?? TYPICAL.resistance;
   const atVoltage = voltage === null ? [taken('charge voltage', V, 'voltage')] : [];
   const charged = [...(typed.capacitance ? [] : [taken('capacitance', C, 'capacitance')]), ...atVoltage];
-  const near = [taken('face of', Math.sqrt(TYPICAL.face), 'length'), taken('on each side, opposite at', TYPICAL.gap, 'length'), ...atVoltage];
+  const near = [taken('square face of', Math.sqrt(TYPICAL.face), 'length'), taken('opposite at', TYPICAL.gap, 'length'), ...atVoltage];
   const pull = effects.electrostaticPull(pendulum, { area: TYPICAL.face, voltage: V, gap: TYPICAL.gap });
   // The worse of the two ways in which it may be drawn.
   const lost = effects.chargedRestChange(-pull.share);

@@ -42,6 +42,10 @@ export const gaugeDimension = ({ gaugeMeaning }: Choices): Dimension => (gaugeMe
 export const GAUGE_UNIT: Readonly<Record<Choices['gaugeMeaning'], string>> = { absolute: 'Pa', gauge: 'kPa', percentOfScale: '%', percentOfOutside: '%' };
 const USUAL_READING_UNIT: Readonly<Record<string, string>> = { length: 'mm', angle: 'mrad', pixel: 'px', count: 'counts' };
 
+/** Entries of the plan alone: they reach no result and stand in no budget. */
+const PLANNING: readonly EntryName[] = ['guessedImpulse', 'scaleReach'];
+const isPlanning = (name: string): boolean => PLANNING.some((one) => one === name);
+
 /** Entries that the present choices use; `needed` ones stop the road where they are missing. */
 export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<EntryName>; readonly needed: ReadonlySet<EntryName> } {
   const needed = new Set<EntryName>(['leverArm']);
@@ -80,13 +84,14 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   when(choices.correctBackground, 'backgroundSwing');
   when(choices.correctPropellant, 'propellantUsed', 'propellantDistance');
   when(choices.plume === 'caught', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle');
-  for (const name of ['pressure', 'tapPressure', 'vacuumBelow', 'dialClass'] as const) used.add(name);
-  when(choices.gaugeMeaning !== 'absolute', 'barometer', 'height');
-  when(choices.gaugeMeaning !== 'percentOfOutside', 'dialFullScale');
+  for (const name of ['pressure', 'tapPressure', 'vacuumBelow'] as const) used.add(name);
+  when(choices.gaugeMeaning !== 'absolute', 'barometer', 'height', 'dialClass');
+  when(choices.gaugeMeaning === 'gauge' || choices.gaugeMeaning === 'percentOfScale', 'dialFullScale');
   const light = choices.form === 'uniformStrip' || choices.form === 'stripWithPlate';
   when(choices.correctAir && (light || choices.form === 'filmStrip'), 'airTemperature');
   when(choices.correctAir && light, 'stripWidth', 'stripThickness');
   when(choices.plume === 'carried', 'capacitance', 'leadResistance');
+  for (const name of PLANNING) used.add(name);
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
   for (const name of ['period', 'periodAmplitude', 'periodCycles'] as const) used.add(name);
@@ -100,7 +105,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'guessedImpulse', 'scaleReach']);
 
 const LARGE_RELATIVE = 0.3;
 
@@ -117,7 +122,7 @@ export function readBench(session: Session): BenchRead {
   const sources: Source[] = [];
   const note = (entry: ReadEntry, inUse: boolean): void => {
     all.push(entry.read);
-    if (inUse && entry.source && entry.source.u > 0) sources.push(entry.source);
+    if (inUse && entry.source && entry.source.u > 0 && !isPlanning(entry.read.name)) sources.push(entry.source);
   };
   const entries = new Map<EntryName, ReadEntry>();
   for (const name of Object.keys(ENTRIES) as EntryName[]) {
@@ -175,7 +180,7 @@ function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choi
   if (got.ambiguousComma) problems.push(problem('entry-decimal-ambiguous', 'note', place, { label: kind.label, found: text }));
   if (got.unitAssumed && dimension !== 'number') problems.push(problem('entry-unit-assumed', 'note', place, { label: kind.label, found: text, unit: unitIfNone }));
   if (spread === null && !QUIET.has(name.split('.').at(-1)!)) problems.push(problem('entry-no-uncertainty', 'note', place, { label: kind.label, found: text }));
-  if (!kind.isSpread && got.value !== 0 && kind.range !== 'any' && u / Math.abs(got.value) > LARGE_RELATIVE) {
+  if (!kind.isSpread && got.value !== 0 && kind.range !== 'any' && !isPlanning(name) && u / Math.abs(got.value) > LARGE_RELATIVE) {
     problems.push(problem('entry-uncertainty-large', 'doubt', place, { label: kind.label, found: text, percent: (100 * u) / Math.abs(got.value) }));
   }
   const read: EntryRead = { name, label: kind.label, symbol: kind.symbol, dimension, value: kind.isSpread ? u : got.value, u: kind.isSpread ? 0 : u, unit: got.unit.symbol, distribution, used };

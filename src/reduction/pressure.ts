@@ -26,6 +26,9 @@ export interface Pressures {
 /** Shots and taps whose pressures differ by more than this ratio swing in different gas. */
 export const PRESSURE_RATIO = 1.5;
 
+/** Means that differ by no more than rounding are one pressure. */
+const SAME = 1e-9;
+
 type Gauge = Model<'reading' | 'outside' | 'fullScale' | 'dial'>;
 const gauge = (meaning: GaugeMeaning): Gauge => ({ reading, outside, fullScale, dial }) =>
   absolutePressure({ meaning, reading: meaning === 'percentOfScale' || meaning === 'percentOfOutside' ? 100 * reading : reading, outside, fullScale }).pressure + dial;
@@ -82,11 +85,12 @@ interface Shown {
 class Dial {
   private readonly outside: Outside;
   private readonly fullScale: Uncertain;
-  private readonly scaleTyped: boolean;
   private readonly meaning: GaugeMeaning;
-  private readonly classes: number;
+  /** What its class leaves open, common to all its readings: a part of full scale, of a ratio dial of the outside pressure. */
+  private readonly error: Uncertain;
   private readonly kept = new Map<string, Anchor | null>();
-  private readonly dials = new Map<string, Anchor>();
+  /** Units whose meaning was asked about. */
+  private readonly asked = new Set<string>();
   private readonly problems: Problem[];
 
   constructor(bench: BenchRead, choices: Choices, needsOutside: boolean, problems: Problem[]) {
@@ -94,26 +98,15 @@ class Dial {
     this.meaning = choices.gaugeMeaning;
     this.outside = outsideOf(bench, needsOutside, problems);
     this.fullScale = valueOf(bench, 'dialFullScale') ?? exact(STANDARD_ATMOSPHERE);
-    this.scaleTyped = valueOf(bench, 'dialFullScale') !== null;
-    this.classes = 100 * (valueOf(bench, 'dialClass')?.value ?? 0);
+    const scale = this.meaning === 'percentOfOutside' ? this.outside.pressure?.value : this.fullScale.value;
+    const accuracyClass = this.meaning === 'absolute' ? 0 : 100 * (valueOf(bench, 'dialClass')?.value ?? 0);
+    this.error = accuracyClass === 0 || scale === undefined ? exact(0) : anchor(ofSource({
+      id: 'gauge.class', label: 'Class of the dial', symbol: 'c_d', dimension: 'pressure', estimate: 0, u: dialUncertainty({ accuracyClass, fullScale: scale }), distribution: 'rectangular', dof: Infinity,
+    }));
   }
 
   get outsideStated(): Pick<PressureResult, 'outside' | 'outsideFrom'> {
     return { outside: this.outside.pressure && stated(this.outside.pressure), outsideFrom: this.outside.from };
-  }
-
-  /** Class of the dial, common to all its readings: a part of full scale, of a ratio dial of the outside pressure. */
-  private dial(meaning: GaugeMeaning): Uncertain {
-    // An absolute gauge has no usual full scale.
-    if (this.classes === 0 || (meaning === 'absolute' && !this.scaleTyped)) return exact(0);
-    const scale = meaning === 'percentOfOutside' ? this.outside.pressure!.value : this.fullScale.value;
-    const u = dialUncertainty({ accuracyClass: this.classes, fullScale: scale });
-    const key = String(u);
-    const known = this.dials.get(key);
-    if (known) return known;
-    const made = anchor(ofSource({ id: `gauge.class.${key}`, label: 'Class of the dial', symbol: 'c_d', dimension: 'pressure', estimate: 0, u, distribution: 'rectangular', dof: Infinity }));
-    this.dials.set(key, made);
-    return made;
   }
 
   /** Readings that are alike share their rounding, and are told of once. */
@@ -132,9 +125,10 @@ class Dial {
 
   absolute({ reading, unit, place }: Shown): Anchor | null {
     const percent = unit === '%';
-    const meaning: GaugeMeaning = countsDown(unit) ? 'gauge' : this.meaning;
-    if (percent !== isPercent(meaning)) {
-      this.problems.push(problem('gauge-meaning-unclear', 'doubt', {}, { unit, meaning }));
+    const { meaning } = this;
+    if (percent !== isPercent(meaning) || (countsDown(unit) && meaning !== 'gauge')) {
+      if (!this.asked.has(unit)) this.problems.push(problem('gauge-meaning-unclear', 'doubt', {}, { unit, meaning }));
+      this.asked.add(unit);
       return null;
     }
     if (meaning !== 'absolute' && !this.outside.pressure) return null;
@@ -144,7 +138,7 @@ class Dial {
       return null;
     }
     const outside = this.outside.pressure ?? exact(STANDARD_ATMOSPHERE);
-    const p = propagate(GAUGES[meaning], { reading, outside, fullScale: this.fullScale, dial: this.dial(meaning) });
+    const p = propagate(GAUGES[meaning], { reading, outside, fullScale: this.fullScale, dial: this.error });
     if (!(p.value > 0)) {
       this.problems.push(problem('pressure-below-zero', 'doubt', place, { pressure: p.value, u: standardUncertainty(p), meaning }));
       return null;
@@ -162,9 +156,8 @@ export function pressuresOf(bench: BenchRead, choices: Choices, records: readonl
     return { reading: countsDown(unit) ? propagate(({ x }) => -Math.abs(x), { x: entry.value }) : entry.value, unit, place: { entry: name } };
   };
   const [entry, entryOfTaps] = [typed('pressure'), typed('tapPressure')];
-  const shownUnits = [entry?.unit, entryOfTaps?.unit, ...records.map((record) => record.pressure?.unit)].filter((unit) => unit !== undefined);
-  const needsOutside = shownUnits.length > 0 && (choices.gaugeMeaning !== 'absolute' || shownUnits.some(countsDown));
-  const dial = new Dial(bench, choices, needsOutside, problems);
+  const shown = entry !== null || entryOfTaps !== null || records.some((record) => record.pressure !== null);
+  const dial = new Dial(bench, choices, shown && choices.gaugeMeaning !== 'absolute', problems);
   const ofEntry = entry && dial.absolute(entry);
   const ofTapEntry = entryOfTaps && dial.absolute(entryOfTaps);
   const byRecord = new Map<string, Uncertain>();
@@ -178,7 +171,8 @@ export function pressuresOf(bench: BenchRead, choices: Choices, records: readonl
     records.filter((r) => counts(r) && (name === 'taps' ? r.kind === 'tap' && own.has(r.id) : r.kind === 'shot')).flatMap((r) => byRecord.get(r.id) ?? []);
   const [fired, tapped] = [of('shots'), of('taps')];
   const shots = meanOf(fired, 'shots') ?? ofEntry;
-  const taps = meanOf(tapped, 'taps') ?? ofTapEntry ?? shots;
+  const apart = meanOf(tapped, 'taps') ?? ofTapEntry;
+  const taps = apart && !(shots && Math.abs(apart.value - shots.value) <= SAME * shots.value) ? apart : shots;
   if (!shots) return { byRecord, shots: null, taps, told: null };
   const values = fired.length > 0 ? fired.map((p) => p.value) : [shots.value];
   const [least, largest] = [Math.min(...values), Math.max(...values)];

@@ -16,6 +16,7 @@ import { calibrationResult, factorsOf } from './factors.ts';
 import { backgroundAngle, impulses, toThruster } from './impulse.ts';
 import { gasDiffers, pressuresOf } from './pressure.ts';
 import { readingSpread, readingsOf } from './readings.ts';
+import { planOf } from './plan.ts';
 import { blanksOf, rangeOf, recordResults, withProblems } from './recordResults.ts';
 import { differenceOf, remarksOnRun } from './remarks.ts';
 import type { Configuration, PeriodCheck, Reduction } from './results.ts';
@@ -39,7 +40,8 @@ export function reduce(session: Session, explain: string | null): Reduction {
 
   const bench = readBench(session);
   problems.push(...bench.problems);
-  if (records.length > 0) {
+  const asked = records.length > 0 || valueOf(bench, 'guessedImpulse') !== null;
+  if (asked) {
     for (const name of missingEntries(bench, choices)) problems.push(problem('entry-missing', 'stops', { entry: name }, { label: ENTRIES[name].label }));
   }
   const pressures = pressuresOf(bench, choices, records, counts, problems);
@@ -55,7 +57,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
 
   const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
   const period = timedPeriod(session, bench, stand, damping, problems);
-  const film = choices.form === 'filmStrip' && records.length > 0 ? filmOf(bench, choices, stand.gravity, damping.ratio, problems) : null;
+  const film = choices.form === 'filmStrip' && asked ? filmOf(bench, choices, stand.gravity, damping.ratio, problems) : null;
   const filmFactors = film && strip && filmInAir(film.factors, air, strip, valueOf(bench, 'plateMass'));
   const bodies = standByRoute(bench, stand, choices, period, problems);
   const unknown = anchor(exact(stand.shareUnknown));
@@ -65,7 +67,8 @@ export function reduce(session: Session, explain: string | null): Reduction {
 
   const frequency = film ? exact((2 * Math.PI) / (film.told.period * (filmFactors?.stretch ?? 1))) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
   const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, backgroundAngle(bench, scale), problems);
-  const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, film ? undampedOf(damping) : damping, shares, corrections, problems));
+  const swung = film ? undampedOf(damping) : damping;
+  const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
   const taps = tapsOf(swings, bench, problems);
   const factors = factorsOf(bodies, filmFactors, stand, taps.filter((tap) => counts(tap.swing.record)), choices);
 
@@ -106,6 +109,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     pressure: pressures.told,
     air: { shots: air.shots?.told ?? null, taps: air.taps?.told ?? null },
     benchEffects: benchEffectsOf(bench, choices, { body: bodies?.shots ?? null, gravity: stand.gravity, records: results, run: chosenRun?.result ?? null }),
+    plan: planOf(bench, choices, { scale, spread, damping: swung, shares, corrections, factors, arms, bodies, gravity: stand.gravity, records }),
     gravity: stand.gravity ? stated(stand.gravity) : null,
     configurations: { shots: configuration('shots', bodies, damping), taps: configuration('taps', bodies, damping) },
     damping: { way: damping.way, law: damping.law, quadratic: stated(damping.quadratic.shots), friction: stated(damping.friction.shots), ratio: stated(damping.ratio.shots), logDecrement: stated(propagate(({ z }) => Math.sign(z) * decrementOfRatio(Math.min(Math.abs(z), 0.999)), { z: damping.ratio.shots })), records: damping.records },

@@ -7,6 +7,7 @@ import type { BenchEffectId } from '../problems/benchEffects.ts';
 import type { AirLayer } from '../pendulum/gas.ts';
 import type { GaugeMeaning } from '../pendulum/pressure.ts';
 import type { FilmTold } from './film.ts';
+import type { Plan } from './plan.ts';
 
 /** A value with its standard uncertainty, SI. */
 export interface Stated {
@@ -255,6 +256,8 @@ export interface Reduction {
   readonly air: { readonly shots: AirResult | null; readonly taps: AirResult | null };
   /** Largest first; empty without a run mean. */
   readonly benchEffects: readonly BenchEffect[];
+  /** What a guessed impulse bit would show; null without a guess, or where the bench does not tell. */
+  readonly plan: Plan | null;
   readonly gravity: Stated | null;
   readonly configurations: { readonly shots: Configuration | null; readonly taps: Configuration | null };
   /** Where ζ comes from, in a few words, and how many swings it rests on. */

@@ -41,7 +41,8 @@ export const impulseOfLaunch = ({ factor, launch, arm }: Readonly<Record<'factor
 const factorOfTap = ({ moment, launch }: Readonly<Record<'moment' | 'launch', number>>): number => moment / launch;
 const angularImpulseOfTap = ({ hammer, impulse, arm }: Readonly<Record<'hammer' | 'impulse' | 'arm', number>>): number => hammer * impulse * arm;
 
-const UPRIGHT = 0.95 * Math.PI;
+/** Wider first swings are refused, rad. */
+export const UPRIGHT = 0.95 * Math.PI;
 
 export function swingOf(record: SessionRecord, readings: Readings, scale: Scale | null, damping: Damping, shares: Readonly<Record<ConfigurationName, Anchor>>, corrections: Corrections, problems: Problem[]): Swing {
   const configuration: ConfigurationName = record.kind === 'tap' ? 'taps' : 'shots';

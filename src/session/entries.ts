@@ -102,6 +102,8 @@ export const ENTRIES = {
   tapLeverArm: { label: 'Lever arm of the tap', symbol: 'r_h', dimension: 'length', unit: 'mm', range: 'positive', hint: 'pivot axis to the point that the hammer strikes' },
   hammerFactor: { label: 'Hammer calibration', symbol: 's_h', dimension: 'number', unit: '1', range: 'positive', hint: 'true impulse per impulse stated, common to all taps: 1 ± 2 %' },
   tapSpread: { label: 'Each tap by itself', symbol: 'u_tap', dimension: 'number', unit: '%', range: 'notNegative', hint: 'uncertainty of one tap’s impulse that the next tap does not share, as a part of it', isSpread: true },
+  guessedImpulse: { label: 'Guessed impulse bit', symbol: 'I_g', dimension: 'impulse', unit: 'µN·s', range: 'positive', hint: 'of one shot, as well as you know it; for what to expect before there are readings' },
+  scaleReach: { label: 'Scale ends at', symbol: 'x_e', dimension: 'reading', unit: 'mm', range: 'positive', hint: 'from rest to the end of the ruler, screen, picture or sensor’s range; empty: as far as the geometry goes' },
 } as const satisfies Record<string, EntryKind>;
 
 export type EntryName = keyof typeof ENTRIES;

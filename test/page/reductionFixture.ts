@@ -116,6 +116,7 @@ export const REDUCTION: Reduction = {
   pressure: null,
   air: { shots: null, taps: null },
   benchEffects: [],
+  plan: null,
   gravity: stated(9.80665, 0),
   configurations: { shots: configuration('shots', 2.0e-3), taps: configuration('taps', 2.08e-3) },
   damping: { way: 'swings', law: 'viscous', quadratic: stated(0, 0), friction: stated(0, 0), ratio: stated(0.01, 4e-4), logDecrement: stated(0.06283, 2.5e-3), records: 6 },

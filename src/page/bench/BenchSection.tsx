@@ -75,64 +75,70 @@ export function BenchSection() {
   return (
     <section id="bench" aria-labelledby="bench-heading" className={styles.bench}>
       <h2 id="bench-heading" tabIndex={-1}>Bench</h2>
-      <p className="quiet">
+      <p className={`quiet ${styles.how}`}>
         Type each quantity with its unit and its uncertainty: <span className="num">118.0 ± 0.3 mm</span>, <span className="num">118.0(3) mm</span>, <span className="num">12,5 g</span>.
       </p>
       <div className={styles.columns}>
         <BenchDrawing choices={choices} parts={parts} reads={reads} focused={focused} />
         <div className={styles.groups}>
-          <Group name="Pendulum">
-            <ChoiceField name="form" legend="Form" value={choices.form} options={FORMS} onChoose={choose('form', 'form of the pendulum')} />
-            {choices.form === 'bodyOfParts' && <PartsTable parts={parts} readOf={readOf} problemsOf={problemsOf} change={change} />}
-            {fields('Pendulum')}
-          </Group>
-          <Group name="Thrust">
-            {fields('Thrust')}
-            <Caution words={CAUTIONS.charge} />
-          </Group>
-          <Group name="Pressure">
-            <PressureGroup choices={choices} pressure={pressure} air={air} onGauge={choose('gaugeMeaning', 'what the gauge shows')} onAir={choose('correctAir', 'air on the strip')}>
-              {fields('Pressure')}
-            </PressureGroup>
-            <Caution words={CAUTIONS.vacuum} />
-          </Group>
-          <Group name="Reading">
-            <ChoiceField name="readingWay" legend="Read as" value={choices.readingWay} options={READING_WAYS} onChoose={choose('readingWay', 'way of reading')} />
-            {choices.readingWay === 'laserSpot' && <Caution words={CAUTIONS.laser} />}
-            {fields('Reading')}
-            <label className={styles.check} id="choice-scaleRunsBackward" tabIndex={-1}>
-              <input
-                type="checkbox"
-                checked={choices.scaleRunsBackward}
-                onChange={(event) => change('direction of the scale', setChoice('scaleRunsBackward', event.target.checked))}
-              />
-              The scale’s numbers fall as the pendulum swings away from the thrust
-            </label>
-          </Group>
-          <Group name="Damping">
-            <ChoiceField name="dampingWay" legend="Damping from" value={choices.dampingWay} options={DAMPING_WAYS} onChoose={choose('dampingWay', 'damping from')} />
-            {fields('Damping')}
-            {(choices.dampingWay === 'swings' || freeSwing !== '') && (
-              <FreeSwing text={freeSwing} problems={problemsOf('freeSwing')} onChange={(text) => change('free swing', setFreeSwing(text), 'freeSwing')} />
-            )}
-          </Group>
-          <Group name="Local g">
-            <ChoiceField name="gravityWay" legend="Known" value={choices.gravityWay} options={GRAVITY_WAYS} onChoose={choose('gravityWay', 'local g')} />
-            {fields('Local g')}
-          </Group>
-          <Group name="Timed period">
-            <ChoiceField name="route" legend="Stiffness and inertia from" value={choices.route} options={ROUTES} onChoose={choose('route', 'route')} />
-            {fields('Timed period')}
-            <ChoiceField name="periodTimedAs" legend="Timed with the pendulum" value={choices.periodTimedAs} options={PERIOD_TIMED} onChoose={choose('periodTimedAs', 'period timed as')} />
-          </Group>
-          <Group name="Calibration mass">
-            <ChoiceField name="calibrationMassHung" legend="Hung on the pendulum" value={choices.calibrationMassHung} options={MASS_HUNG} onChoose={choose('calibrationMassHung', 'calibration mass hung')} />
-            {fields('Calibration mass')}
-          </Group>
-          <Group name="Taps">
-            {fields('Taps')}
-            <Caution words={CAUTIONS.hammer} />
-          </Group>
+          <div className={styles.groupColumns}>
+            <div className={styles.column}>
+              <Group name="Pendulum">
+                <ChoiceField name="form" legend="Form" value={choices.form} options={FORMS} onChoose={choose('form', 'form of the pendulum')} />
+                {choices.form === 'bodyOfParts' && <PartsTable parts={parts} readOf={readOf} problemsOf={problemsOf} change={change} />}
+                {fields('Pendulum')}
+              </Group>
+              <Group name="Local g">
+                <ChoiceField name="gravityWay" legend="Known" value={choices.gravityWay} options={GRAVITY_WAYS} onChoose={choose('gravityWay', 'local g')} />
+                {fields('Local g')}
+              </Group>
+              <Group name="Thrust">
+                {fields('Thrust')}
+                <Caution words={CAUTIONS.charge} />
+              </Group>
+              <Group name="Pressure">
+                <PressureGroup choices={choices} pressure={pressure} air={air} onGauge={choose('gaugeMeaning', 'what the gauge shows')} onAir={choose('correctAir', 'air on the strip')}>
+                  {fields('Pressure')}
+                </PressureGroup>
+                <Caution words={CAUTIONS.vacuum} />
+              </Group>
+            </div>
+            <div className={styles.column}>
+              <Group name="Reading">
+                <ChoiceField name="readingWay" legend="Read as" value={choices.readingWay} options={READING_WAYS} onChoose={choose('readingWay', 'way of reading')} />
+                {choices.readingWay === 'laserSpot' && <Caution words={CAUTIONS.laser} />}
+                {fields('Reading')}
+                <label className={styles.check} id="choice-scaleRunsBackward" tabIndex={-1}>
+                  <input
+                    type="checkbox"
+                    checked={choices.scaleRunsBackward}
+                    onChange={(event) => change('direction of the scale', setChoice('scaleRunsBackward', event.target.checked))}
+                  />
+                  The scale’s numbers fall as the pendulum swings away from the thrust
+                </label>
+              </Group>
+              <Group name="Damping">
+                <ChoiceField name="dampingWay" legend="Damping from" value={choices.dampingWay} options={DAMPING_WAYS} onChoose={choose('dampingWay', 'damping from')} />
+                {fields('Damping')}
+                {(choices.dampingWay === 'swings' || freeSwing !== '') && (
+                  <FreeSwing text={freeSwing} problems={problemsOf('freeSwing')} onChange={(text) => change('free swing', setFreeSwing(text), 'freeSwing')} />
+                )}
+              </Group>
+              <Group name="Timed period">
+                <ChoiceField name="route" legend="Stiffness and inertia from" value={choices.route} options={ROUTES} onChoose={choose('route', 'route')} />
+                {fields('Timed period')}
+                <ChoiceField name="periodTimedAs" legend="Timed with the pendulum" value={choices.periodTimedAs} options={PERIOD_TIMED} onChoose={choose('periodTimedAs', 'period timed as')} />
+              </Group>
+              <Group name="Calibration mass">
+                <ChoiceField name="calibrationMassHung" legend="Hung on the pendulum" value={choices.calibrationMassHung} options={MASS_HUNG} onChoose={choose('calibrationMassHung', 'calibration mass hung')} />
+                {fields('Calibration mass')}
+              </Group>
+              <Group name="Taps">
+                {fields('Taps')}
+                <Caution words={CAUTIONS.hammer} />
+              </Group>
+            </div>
+          </div>
         </div>
       </div>
     </section>
@@ -160,7 +166,7 @@ interface FreeSwingProps {
 
 function FreeSwing({ text, problems, onChange }: FreeSwingProps) {
   return (
-    <div className={styles.freeSwing}>
+    <div className={text.trim() === '' ? `${styles.freeSwing} ${styles.empty}` : styles.freeSwing}>
       <label htmlFor="entry-freeSwing">Free swing</label>
       <textarea
         id="entry-freeSwing"
@@ -172,7 +178,7 @@ function FreeSwing({ text, problems, onChange }: FreeSwingProps) {
         onChange={(event) => onChange(event.target.value)}
       />
       <div id="entry-freeSwing-below" className="quiet">
-        turning readings of one free swing, side after side, with the unit; empty: the swings of the records alone
+        <span className="unprinted">turning readings of one free swing, side after side, with the unit; empty: the swings of the records alone</span>
         {problems.map((problem) => <p key={problem.code} className="look">{sentence(problem)}</p>)}
       </div>
     </div>

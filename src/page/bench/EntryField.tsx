@@ -36,6 +36,12 @@ const SPREAD: readonly (readonly [PlusMinus, string])[] = [
   ['expanded', 'as U, k ='],
 ];
 
+/** What the ± means, for paper: "± is u", "± is U, k = 2". */
+function meaningWords({ plusMinus, k }: Entry, isSpread: boolean): string {
+  const words = (isSpread ? SPREAD : PLUS_MINUS).find(([value]) => value === plusMinus)?.[1] ?? '';
+  return plusMinus === 'expanded' ? `${words} ${k === '' ? '2' : k}` : words;
+}
+
 /** The echo says "exact" already, and what cannot be read need not be called missing too. */
 const isSaid = ({ code }: Problem, all: readonly Problem[]): boolean =>
   code !== 'entry-no-uncertainty' && (code !== 'entry-missing' || all.every((other) => other.code === code || other.weight !== 'stops'));
@@ -44,11 +50,12 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
   const id = `entry-${name}`;
   const below = `${id}-below`;
   const isSpread = kind.isSpread === true;
-  const echo = read === undefined || entry.text.trim() === '' ? null : echoOf(read, isSpread);
+  const isEmpty = entry.text.trim() === '';
+  const echo = read === undefined || isEmpty ? null : echoOf(read, isSpread);
   const said = problems.filter((problem) => isSaid(problem, problems));
-  const stopped = entry.text.trim() !== '' && problems.some((problem) => problem.weight === 'stops');
+  const stopped = !isEmpty && problems.some((problem) => problem.weight === 'stops');
   return (
-    <div className={unused ? `${styles.row} ${styles.unused}` : styles.row}>
+    <div className={[styles.row, unused ? styles.unused : '', isEmpty ? styles.empty : ''].join(' ')}>
       <label className={styles.label} htmlFor={id}>
         {kind.label} <span className={styles.symbol}><SymbolText symbol={kind.symbol} /></span>
       </label>
@@ -92,7 +99,9 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
         )}
       </span>
       <div id={below} className={styles.below}>
-        <span className={echo === null ? styles.hint : 'num'}>{echo ?? kind.hint}</span>
+        <span className="printed">{entry.text}{isEmpty ? '' : `, ${meaningWords(entry, isSpread)}`}{echo === null ? '' : '; '}</span>
+        {echo !== null && <span className="num">{echo}</span>}
+        {kind.hint !== '' && <span className={styles.hint}>{echo === null ? '' : ' · '}{kind.hint}</span>}
         {unused && <span> · not used by the present choices</span>}
         {said.map((problem) => (
           <p key={problem.code} className={problem.weight === 'note' ? styles.note : 'look'}>{sentence(problem)}</p>

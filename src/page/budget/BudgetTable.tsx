@@ -2,7 +2,7 @@
 import type { Budget, BudgetLine } from '../../reduction/results.ts';
 import { chooseUnit, plain } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
-import { Aligned, alignedTo } from '../stated/Aligned.tsx';
+import { Aligned, alignedTo, alignedWords } from '../stated/Aligned.tsx';
 import { coverageFactor, degreesOfFreedom, roundedAs } from '../stated/numberWords.ts';
 import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
@@ -32,14 +32,17 @@ export function totalShare(lines: readonly BudgetLine[]): string {
 const unitOf = (line: BudgetLine): Unit => chooseUnit(line.estimate === null || line.estimate === 0 ? [line.u ?? 0] : [line.estimate], line.dimension);
 
 /** ∂I/∂x per unit of x, "12.5 mN·s/mm". */
-function sensitivityText(line: BudgetLine, x: Unit, impulse: Unit): string {
-  if (line.sensitivity === null) return '–';
+function sensitivityText(line: BudgetLine, x: Unit, impulse: Unit): string | null {
+  if (line.sensitivity === null) return null;
   const perUnit = plain(line.sensitivity * x.factor, impulse, 3);
   return x.symbol === '1' ? perUnit : `${perUnit}/${/[·/]/.test(x.symbol) ? `(${x.symbol})` : x.symbol}`;
 }
 
-const inItsUnit = (line: BudgetLine, value: number | null, digits: number): string =>
-  value === null ? '–' : plain(value, unitOf(line), digits);
+const inItsUnit = (line: BudgetLine, value: number | null, digits: number): string | null =>
+  value === null ? null : plain(value, unitOf(line), digits);
+
+/** A scatter and the common part of a rounding are deviations: nothing is estimated, though their best value is 0. */
+const isDeviation = ({ id, estimate }: BudgetLine): boolean => estimate === 0 && /^division\.|scatter/.test(id);
 
 /** Length for the eye, beside the number that says the same. */
 function ShareBar({ share }: { readonly share: number }) {
@@ -49,6 +52,9 @@ function ShareBar({ share }: { readonly share: number }) {
 export function BudgetTable({ budget, of, unit, brief = false }: Props) {
   const { lines } = budget;
   const small = chooseUnit([budget.of.u], 'impulse');
+  const estimates = alignedWords([...lines.map((line) => (isDeviation(line) ? null : inItsUnit(line, line.estimate, 6))), roundedAs(budget.of.value, budget.of.u, unit)]);
+  const uncertainties = alignedWords([...lines.map((line) => inItsUnit(line, line.u, 2)), plain(budget.of.u, small, 2)]);
+  const coefficients = alignedWords(lines.map((line) => sensitivityText(line, unitOf(line), unit)));
   const contributions = alignedTo([...lines.map(({ contribution }) => contribution), budget.of.u], budget.of.u / 10, small);
   return (
     <SheetTable label={`Budget of the ${of}`}>
@@ -56,16 +62,16 @@ export function BudgetTable({ budget, of, unit, brief = false }: Props) {
         <tr>
           <th scope="col">Quantity</th>
           {!brief && <th scope="col">Estimate</th>}
-          <th scope="col">{brief ? 'u' : 'Standard uncertainty u'}</th>
+          <th scope="col">{brief ? 'u' : <>Standard<br />uncertainty u</>}</th>
           {!brief && (
             <>
               <th scope="col">Distribution</th>
               <th scope="col" className={stated.right}>ν</th>
-              <th scope="col">Sensitivity coefficient c</th>
+              <th scope="col">Sensitivity<br />coefficient c</th>
             </>
           )}
-          <th scope="col">Contribution c·u ({small.symbol})</th>
-          <th scope="col" className={stated.right}>Share of u²</th>
+          <th scope="col">Contribution<br />c·u ({small.symbol})</th>
+          <th scope="col" className={stated.right}>Share<br />of u²</th>
           <th scope="col"><span className="visually-hidden">Share, drawn</span></th>
           <th scope="col">Reaches</th>
         </tr>
@@ -73,14 +79,14 @@ export function BudgetTable({ budget, of, unit, brief = false }: Props) {
       <tbody>
         {lines.map((line, index) => (
           <tr key={line.id} className={styles[line.scope]}>
-            <th scope="row">{line.label} <SymbolText symbol={line.symbol} /></th>
-            {!brief && <td className="num">{inItsUnit(line, line.estimate, 6)}</td>}
-            <td className="num">{inItsUnit(line, line.u, 2)}</td>
+            <th scope="row" className={styles.quantity}>{line.label} <SymbolText symbol={line.symbol} /></th>
+            {!brief && <td><Aligned column={estimates} row={index} /></td>}
+            <td><Aligned column={uncertainties} row={index} /></td>
             {!brief && (
               <>
                 <td className={stated.words}>{line.distribution}</td>
                 <td className={`num ${stated.right}`}>{degreesOfFreedom(line.dof)}</td>
-                <td className="num">{sensitivityText(line, unitOf(line), unit)}</td>
+                <td><Aligned column={coefficients} row={index} /></td>
               </>
             )}
             <td><Aligned column={contributions} row={index} bare /></td>
@@ -93,8 +99,8 @@ export function BudgetTable({ budget, of, unit, brief = false }: Props) {
       <tfoot>
         <tr>
           <th scope="row">{of.charAt(0).toUpperCase() + of.slice(1)}</th>
-          {!brief && <td className="num">{roundedAs(budget.of.value, budget.of.u, unit)}</td>}
-          <td className="num">{plain(budget.of.u, small, 2)}</td>
+          {!brief && <td><Aligned column={estimates} row={lines.length} /></td>}
+          <td><Aligned column={uncertainties} row={lines.length} /></td>
           {!brief && (
             <>
               <td>combined</td>
@@ -105,7 +111,11 @@ export function BudgetTable({ budget, of, unit, brief = false }: Props) {
           <td><Aligned column={contributions} row={lines.length} bare /></td>
           <td className={`num ${stated.right}`}>{totalShare(lines)} %</td>
           <td />
-          <td className="num">U = {plain(budget.of.U, small, 2)} (k = {coverageFactor(budget.of.k)})</td>
+          <td />
+        </tr>
+        <tr>
+          <th scope="row">Expanded, 95 %</th>
+          <td colSpan={brief ? 5 : 9} className="num">U = {plain(budget.of.U, small, 2)} (k = {coverageFactor(budget.of.k)})</td>
         </tr>
       </tfoot>
     </SheetTable>

@@ -4,6 +4,7 @@ import type { Problem, Weight } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
 import { goToProblem, placeWords } from './goTo.ts';
+import { problemsDue } from './problemsDue.ts';
 import styles from './head.module.css';
 
 const WEIGHTS: readonly Weight[] = ['stops', 'doubt', 'note'];
@@ -20,12 +21,12 @@ const keyOf = ({ code, place }: Problem, index: number): string =>
   [code, place.sheet, place.line, place.column, place.record, place.entry, index].join('|');
 
 export function LookList() {
-  const problems = useStore((state) => state.reduction?.problems);
+  const problems = useStore(problemsDue);
   const groups = useMemo(
-    () => WEIGHTS.map((weight) => ({ weight, found: (problems ?? []).filter((problem) => problem.weight === weight).toSorted(byEffect) })),
+    () => WEIGHTS.map((weight) => ({ weight, found: problems.filter((problem) => problem.weight === weight).toSorted(byEffect) })),
     [problems],
   );
-  const count = problems?.length ?? 0;
+  const count = problems.length;
   return (
     <section id="look" aria-labelledby="look-heading">
       <h2 id="look-heading" tabIndex={-1}>Things to look at</h2>

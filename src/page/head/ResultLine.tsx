@@ -8,6 +8,7 @@ import { coverageFactor } from '../stated/numberWords.ts';
 import { Quantity } from '../stated/Quantity.tsx';
 import { goToElement } from './goTo.ts';
 import styles from './head.module.css';
+import { problemsDue } from './problemsDue.ts';
 
 export function ResultLine() {
   const reduction = useStore((state) => state.reduction);
@@ -27,7 +28,7 @@ export function ResultLine() {
       <p className={styles.answer} role="status">
         <span className={styles.answerName}>Mean impulse bit</span> <Mean reduction={reduction} />
       </p>
-      <LookCount reduction={reduction} />
+      <LookCount />
     </div>
   );
 }
@@ -56,8 +57,8 @@ function whyNone({ records, problems }: Reduction): string {
   return 'no shot gives one yet';
 }
 
-function LookCount({ reduction }: { readonly reduction: Reduction | null }) {
-  const count = reduction?.problems.length ?? 0;
+function LookCount() {
+  const count = useStore(problemsDue).length;
   if (count === 0) return null;
   return (
     <button type="button" className={`plain-button ${styles.lookCount}`} onClick={() => goToElement('look')}>

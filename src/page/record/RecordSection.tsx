@@ -1,5 +1,5 @@
 /** The selected record opened: its chain from reading to impulse bit, the other ways beside it, its swing, its budget. */
-import { useState } from 'react';
+import { useLayoutEffect, useRef, useState } from 'react';
 import type { Budget, RecordResult, Reduction } from '../../reduction/results.ts';
 import { countAgain, setAside } from '../../session/edits.ts';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
@@ -20,13 +20,34 @@ export function RecordSection() {
   const reduction = useStore((state) => state.reduction);
   const selected = useStore((state) => state.selected);
   const record = reduction?.records.find(({ id }) => id === selected) ?? null;
+  const section = useRef<HTMLElement>(null);
+  useStillBelow(section);
   return (
-    <section id="record" className={styles.section} aria-labelledby="record-heading">
+    <section id="record" ref={section} className={styles.section} aria-labelledby="record-heading">
       {reduction === null || record === null
-        ? <Unchosen reduction={reduction} />
+        ? <div className={styles.unchosen}><Unchosen reduction={reduction} /></div>
         : <Chosen reduction={reduction} record={record} />}
     </section>
   );
+}
+
+/**
+ * A record opens above what is being read or typed further down, which must not move. Where the browser keeps it still by
+ * itself (scroll anchoring), nothing is done.
+ */
+function useStillBelow(section: { readonly current: HTMLElement | null }) {
+  useLayoutEffect(() => {
+    const watched = section.current;
+    if (watched === null || 'overflowAnchor' in watched.style) return undefined;
+    let height = watched.offsetHeight;
+    const observer = new ResizeObserver(() => {
+      const grown = watched.offsetHeight - height;
+      height += grown;
+      if (watched.getBoundingClientRect().bottom - grown < 0) window.scrollBy({ top: grown, behavior: 'instant' });
+    });
+    observer.observe(watched);
+    return () => observer.disconnect();
+  }, [section]);
 }
 
 function Unchosen({ reduction }: { readonly reduction: Reduction | null }) {
@@ -40,7 +61,7 @@ function Unchosen({ reduction }: { readonly reduction: Reduction | null }) {
         ? <p className="quiet">No readings yet; a record opens here into the chain that made its impulse bit.</p>
         : (
           <p className="quiet">
-            Choose a record in the run strip, a figure or the table, and the chain that made its impulse bit opens here.{' '}
+            Choose a record in the run above, and the chain that made its impulse bit opens here.{' '}
             <button type="button" className="plain-button" onClick={() => select(first.id)}>Open {recordName(first)}</button>
           </p>
         )}
@@ -75,14 +96,18 @@ function Chosen({ reduction, record }: Props) {
           {record.problems.map((one) => <li key={`${one.code} ${one.place.column ?? ''}`} className="look">{sentence(one)}</li>)}
         </ul>
       )}
-      {explained !== null && explained.chain.length > 0 && <ChainTable chain={explained.chain} impulse={unit} />}
-      {impulseBit !== null && <Beside record={record} reduction={reduction} unit={unit} />}
-      {configuration !== null && record.angle !== null && record.launch !== null && (
-        <SwingPicture angle={record.angle.value} launch={record.launch.value} dampingRatio={configuration.dampingRatio.value} period={configuration.period.value} />
-      )}
-      {explained !== null && explained.budget !== null && (
-        <Contributions budget={explained.budget} of={name.charAt(0).toLowerCase() + name.slice(1)} unit={unit} />
-      )}
+      <div className={styles.open}>
+        {explained !== null && explained.chain.length > 0 && <div className={styles.chain}><ChainTable chain={explained.chain} impulse={unit} /></div>}
+        <div className={styles.evidence}>
+          {configuration !== null && record.angle !== null && record.launch !== null && (
+            <SwingPicture angle={record.angle.value} launch={record.launch.value} dampingRatio={configuration.dampingRatio.value} period={configuration.period.value} />
+          )}
+          {impulseBit !== null && <Beside record={record} reduction={reduction} unit={unit} />}
+          {explained !== null && explained.budget !== null && (
+            <Contributions budget={explained.budget} of={name.charAt(0).toLowerCase() + name.slice(1)} unit={unit} />
+          )}
+        </div>
+      </div>
     </>
   );
 }

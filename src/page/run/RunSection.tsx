@@ -59,7 +59,7 @@ function Run({ reduction }: { readonly reduction: Reduction }) {
       {blanks !== null && (
         <p>
           Blanks, reduced like shots: mean <Quantity value={blanks.mean.value} spread={blanks.mean.u} unit={unit} /> (± u), {blanks.n} {blanks.n === 1 ? 'blank' : 'blanks'}
-          {blanks.scatter !== null && <>, scatter s = {plain(blanks.scatter, unit, 2)}</>}. They are not taken off the shots.
+          {blanks.scatter !== null && (blanks.scatter === 0 ? ', all with the same readings' : <>, scatter s = {plain(blanks.scatter, unit, 2)}</>)}. They are not taken off the shots.
         </p>
       )}
     </>

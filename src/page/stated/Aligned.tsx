@@ -37,6 +37,16 @@ export function alignedTo(values: readonly (number | null)[], resolution: number
   return columnOf(values.map((value) => (value === null ? null : { ...alignedParts(value, resolution, unit), spread: '' })));
 }
 
+const NUMBER_AND_UNIT = /^(?<whole>[^.×\u00A0]*)(?<fraction>[^\u00A0]*)(?:\u00A0(?<unit>.*))?$/u;
+
+/** A column of numbers that are words already, "380 mm", "7.3×10⁻⁴", each in its own unit; null where there is none. */
+export function alignedWords(words: readonly (string | null)[]): AlignedColumn {
+  return columnOf(words.map((word) => {
+    const { whole = '', fraction = '', unit = '' } = NUMBER_AND_UNIT.exec(word?.replaceAll(' ', '\u00A0') ?? '')?.groups ?? {};
+    return word === null ? null : { whole, fraction, spread: '', unit };
+  }));
+}
+
 function columnOf(parts: readonly (AlignedParts | null)[]): AlignedColumn {
   const there = parts.filter((part) => part !== null);
   return {
@@ -61,8 +71,8 @@ export function Aligned({ column, row, bare = false }: Props) {
     <span className={`num ${styles.aligned}`}>
       <span className={styles.whole} style={column.whole}>{parts.whole}</span>
       <span className={styles.fraction} style={column.fraction}>{parts.fraction}</span>
-      {parts.spread !== '' && <span className={styles.spread} style={column.spread}>{' ± '}{parts.spread}</span>}
-      {!bare && parts.unit !== '' && <span className={`unit ${styles.unitAfter}`}>{' '}{parts.unit}</span>}
+      {parts.spread !== '' && <span className={styles.spread} style={column.spread}>{'\u00A0±\u00A0'}{parts.spread}</span>}
+      {!bare && parts.unit !== '' && <span className={`unit ${styles.unitAfter}`}>{/^[°′″]$/.test(parts.unit) ? '' : '\u00A0'}{parts.unit}</span>}
     </span>
   );
 }
