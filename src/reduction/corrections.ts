@@ -42,7 +42,7 @@ export interface Corrections {
 
 export function correctionsOf(bench: BenchRead, choices: Choices, shots: { readonly body: Body | null; readonly frequency: Uncertain | null; readonly ratio: Anchor; readonly gravity: Anchor | null }, background: number, problems: Problem[]): Corrections {
   return {
-    ...readingCorrections(bench, choices, shots.frequency),
+    ...samplingCorrections(bench, choices, shots.frequency, problems),
     background: choices.correctBackground ? background : 0,
     impulse: impulseCorrections(bench, choices, shots.frequency, shots.ratio, problems),
     target: targetCorrections(bench, choices, problems),
@@ -65,6 +65,16 @@ function readingCorrections(bench: BenchRead, choices: Choices, frequency: Uncer
     }
   }
   return { reading, missedPeak: missed };
+}
+
+function samplingCorrections(bench: BenchRead, choices: Choices, frequency: Uncertain | null, problems: Problem[]): Pick<Corrections, 'reading' | 'missedPeak'> {
+  try {
+    return readingCorrections(bench, choices, frequency);
+  } catch (failure) {
+    if (!(failure instanceof RangeError)) throw failure;
+    problems.push(problem('frames-too-slow', 'stops', { entry: 'frameInterval' }, {}));
+    return { reading: [], missedPeak: 0 };
+  }
 }
 
 function impulseCorrections(bench: BenchRead, choices: Choices, frequency: Uncertain | null, ratio: Anchor, problems: Problem[]): readonly Correction[] | null {

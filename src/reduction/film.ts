@@ -78,6 +78,7 @@ function withModes(
   const plain: FilmInputs = { ...values, dampingRatio: Math.max(0, values.dampingRatio) };
   // S and its uncertainty go through the propagation; the hold is told by the period once bending carries part of it.
   const spread = filmModelSpread({ ...plain, hold: 'clamped', holdKnown: x.S.value > LIMP_BELOW, relativeStiffness: 0 }).standard;
+  if (!Number.isFinite(spread)) throw new RangeError('film: the model has no spread here');
   const model = anchor(ofSource({ id: 'film.model', label: 'Model of the film (judgement)', symbol: 'X', dimension: 'number', estimate: 1, u: spread, distribution: 'rectangular', dof: Infinity }));
   const coefficient = anchor(propagate(clampedCoefficient, shots));
   const factorOf = (name: ConfigurationName): Anchor | null => {

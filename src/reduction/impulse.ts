@@ -37,7 +37,7 @@ function once(of: ImpulseOf): ImpulseOf {
   const kept = new Map<Swing, Map<string, Uncertain | null>>();
   return (swing, form, way) => {
     let own = kept.get(swing);
-    if (!own) kept.set(swing, (own = new Map()));
+    if (!own) kept.set(swing, (own = new Map<string, Uncertain | null>()));
     const key = `${form}.${way}`;
     let y = own.get(key);
     if (y === undefined) own.set(key, (y = of(swing, form, way)));

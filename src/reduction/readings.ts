@@ -7,7 +7,7 @@ import { problem, type Problem } from '../problems/problems.ts';
 import type { CellRead } from '../readings/cellReads.ts';
 import type { RecordKind } from '../readings/meanings.ts';
 import { unitNamed, type Dimension } from '../units/units.ts';
-import { pictureAngle } from '../readings/ways.ts';
+import { parallaxOfEye, pictureAngle } from '../readings/ways.ts';
 import type { Choices } from '../session/session.ts';
 import { readingDimension, type BenchRead } from './entries.ts';
 import { valueOf } from './stand.ts';
@@ -53,8 +53,15 @@ export function divisionOfReadings(cells: readonly CellRead[]): number | null {
   return step * unit.factor;
 }
 
+/** u of one reading where the eye moves in front of a pointer that stands off its ruler. */
+function movingEye(bench: BenchRead): number {
+  const [gap, cameraDistance, shift] = (['parallaxGap', 'cameraDistance', 'eyeShift'] as const).map((name) => bench.entries.get(name));
+  if (!gap?.read.used || !gap.value || !cameraDistance?.value || !shift?.value) return 0;
+  return fromLimits(parallaxOfEye({ gap: gap.value.value, cameraDistance: cameraDistance.value.value, shift: shift.value.value }));
+}
+
 export function readingSpread(records: readonly SessionRecord[], bench: BenchRead, problems: Problem[]): ReadingSpread {
-  const eye = bench.entries.get('readingSpread')?.read.value ?? 0;
+  const eye = Math.hypot(bench.entries.get('readingSpread')?.read.value ?? 0, movingEye(bench));
   const typed = bench.entries.get('division')?.value?.value ?? null;
   if (typed !== null) return { division: typed, divisionTyped: true, eye };
   const cells = records.flatMap((r) => [r.rest, r.firstSwing, ...r.nextSwings]).filter((cell): cell is CellRead => cell !== null && cell.spread === null);

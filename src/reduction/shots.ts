@@ -120,7 +120,7 @@ export function calibrationFromTaps(taps: readonly TapKnown[], form: Form): TapC
   const factors: Uncertain[] = [];
   for (const { swing, angularImpulse } of taps) {
     const launch = swing.launch?.[form];
-    if (!launch || Math.abs(launch.value) <= LEAST_THROW * standardUncertainty(launch) || Math.abs(angularImpulse.value) < LEAST) continue;
+    if (!launch || Math.abs(launch.value) < LEAST || Math.abs(launch.value) <= LEAST_THROW * standardUncertainty(launch) || Math.abs(angularImpulse.value) < LEAST) continue;
     factors.push(propagate(factorOfTap, { moment: angularImpulse, launch }));
   }
   if (factors.length === 0) return null;
