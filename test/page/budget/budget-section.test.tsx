@@ -13,11 +13,11 @@ test('each line has the GUM’s columns', async () => {
   expect(cells(/^Scatter of the shots/)).toEqual(['–', '–', 't', '3', '–', '6.5', '16.8 %', '', 'scatter']);
 });
 
-test('shares total 100.0 % exactly, and the last row tells u from U', async () => {
+test('shares total 100.0 % exactly, and the last row tells U from u', async () => {
   await withReduction(<BudgetSection />);
   const total = screen.getByRole('row', { name: /^Run mean/ });
   expect(total).toHaveTextContent('100.0 %');
-  expect(total).toHaveTextContent('U = 31 µN·s (k = 1.97)');
+  expect(screen.getByRole('row', { name: /^Expanded, 95 %/ })).toHaveTextContent('U = 31 µN·s (k = 1.97)');
   expect(screen.getByText(/All uncertainties in this table are standard uncertainties u/)).toBeVisible();
 });
 
