@@ -4,7 +4,7 @@ import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { entriesInUse, GAUGE_UNIT } from '../../reduction/entries.ts';
-import type { EntryRead } from '../../reduction/results.ts';
+import type { EntryRead, Reduction } from '../../reduction/results.ts';
 import { setChoice, setEntry, setFreeSwing } from '../../session/edits.ts';
 import { ENTRIES } from '../../session/entries.ts';
 import type { EntryKind, EntryName } from '../../session/entries.ts';
@@ -13,12 +13,15 @@ import { useActions, useStore } from '../../store/hooks.tsx';
 import styles from './bench.module.css';
 import { BenchDrawing } from './BenchDrawing.tsx';
 import { ChoiceField } from './ChoiceField.tsx';
+import { CorrectionsGroup } from './CorrectionsGroup.tsx';
 import { EntryField } from './EntryField.tsx';
-import { CAUTIONS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, READING_WAYS, ROUTES } from './groups.ts';
+import { FilmWords } from './FilmWords.tsx';
+import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, RESTORING, ROUTES, SCREENS, SWING_MEASURED, ZERO_TAKEN } from './groups.ts';
 import type { GroupName } from './groups.ts';
 import { PartsTable } from './PartsTable.tsx';
 import { PressureGroup } from './PressureGroup.tsx';
 
+const NO_CORRECTIONS: Reduction['corrections'] = [];
 const NO_PROBLEMS: readonly Problem[] = [];
 
 function byEntry(problems: readonly Problem[]): ReadonlyMap<string, readonly Problem[]> {
@@ -41,6 +44,8 @@ export function BenchSection() {
   const freeSwing = useStore((state) => state.session.freeSwing);
   const readings = useStore((state) => state.reduction?.entries);
   const problems = useStore((state) => state.reduction?.problems);
+  const corrections = useStore((state) => state.reduction?.corrections);
+  const film = useStore((state) => state.reduction?.film ?? null);
   const pressure = useStore((state) => state.reduction?.pressure ?? null);
   const air = useStore((state) => state.reduction?.air.shots ?? null);
   const [focused, setFocused] = useState<string | null>(null);
@@ -85,16 +90,26 @@ export function BenchSection() {
             <div className={styles.column}>
               <Group name="Pendulum">
                 <ChoiceField name="form" legend="Form" value={choices.form} options={FORMS} onChoose={choose('form', 'form of the pendulum')} />
+                {choices.form !== 'periodAndStiffness' && choices.form !== 'filmStrip' && <ChoiceField name="restoring" legend="Brought back by" value={choices.restoring} options={RESTORING} onChoose={choose('restoring', 'what brings it back')} />}
                 {choices.form === 'bodyOfParts' && <PartsTable parts={parts} readOf={readOf} problemsOf={problemsOf} change={change} />}
                 {fields('Pendulum')}
+                <FilmWords film={film} />
               </Group>
               <Group name="Local g">
                 <ChoiceField name="gravityWay" legend="Known" value={choices.gravityWay} options={GRAVITY_WAYS} onChoose={choose('gravityWay', 'local g')} />
                 {fields('Local g')}
               </Group>
               <Group name="Thrust">
+                <ChoiceField name="plume" legend="Thruster" value={choices.plume} options={PLUME} onChoose={choose('plume', 'thruster carried or plume caught')} />
+                {choices.plume === 'caught' && <ChoiceField name="reported" legend="The run reports" value={choices.reported} options={REPORTED} onChoose={choose('reported', 'what the run reports')} />}
                 {fields('Thrust')}
                 <Caution words={CAUTIONS.charge} />
+              </Group>
+              <Group name="Corrections">
+                <CorrectionsGroup choices={choices} corrections={corrections ?? NO_CORRECTIONS} onSwitch={(name, what, on) => change(what, setChoice(name, on))}>
+                  {fields('Corrections')}
+                  {entries.pulseDuration !== undefined && <ChoiceField name="pulseShape" legend="Shape of the pulse" value={choices.pulseShape} options={PULSE_SHAPES} onChoose={choose('pulseShape', 'shape of the pulse')} />}
+                </CorrectionsGroup>
               </Group>
               <Group name="Pressure">
                 <PressureGroup choices={choices} pressure={pressure} air={air} onGauge={choose('gaugeMeaning', 'what the gauge shows')} onAir={choose('correctAir', 'air on the strip')}>
@@ -107,6 +122,9 @@ export function BenchSection() {
               <Group name="Reading">
                 <ChoiceField name="readingWay" legend="Read as" value={choices.readingWay} options={READING_WAYS} onChoose={choose('readingWay', 'way of reading')} />
                 {choices.readingWay === 'laserSpot' && <Caution words={CAUTIONS.laser} />}
+                {choices.readingWay === 'laserSpot' && <ChoiceField name="screenShape" legend="Screen" value={choices.screenShape} options={SCREENS} onChoose={choose('screenShape', 'shape of the screen')} />}
+                <ChoiceField name="swingMeasured" legend="The first-swing column holds the swing" value={choices.swingMeasured} options={SWING_MEASURED} onChoose={choose('swingMeasured', 'what the first swing holds')} />
+                <ChoiceField name="zeroTaken" legend="Rest of a record without one" value={choices.zeroTaken} options={ZERO_TAKEN} onChoose={choose('zeroTaken', 'rest between zeros')} />
                 {fields('Reading')}
                 <label className={styles.check} id="choice-scaleRunsBackward" tabIndex={-1}>
                   <input
@@ -119,6 +137,7 @@ export function BenchSection() {
               </Group>
               <Group name="Damping">
                 <ChoiceField name="dampingWay" legend="Damping from" value={choices.dampingWay} options={DAMPING_WAYS} onChoose={choose('dampingWay', 'damping from')} />
+                {choices.dampingWay === 'swings' && <ChoiceField name="dampingLaw" legend="Damping law" value={choices.dampingLaw} options={DAMPING_LAWS} onChoose={choose('dampingLaw', 'damping law')} />}
                 {fields('Damping')}
                 {(choices.dampingWay === 'swings' || freeSwing !== '') && (
                   <FreeSwing text={freeSwing} problems={problemsOf('freeSwing')} onChange={(text) => change('free swing', setFreeSwing(text), 'freeSwing')} />
