@@ -72,7 +72,7 @@ export function sharesOfHundred(shares: readonly number[]): readonly number[] {
   const tenths = shares.map((share) => (1000 * share) / sum);
   const floor = tenths.map(Math.floor);
   let left = 1000 - floor.reduce((a, b) => a + b, 0);
-  const order = tenths.map((t, i) => [t - floor[i]!, i] as const).sort((a, b) => b[0] - a[0] || a[1] - b[1]);
+  const order = tenths.map((t, i) => [t - floor[i]!, i] as const).sort((a, b) => b[0] - a[0] || shares[b[1]]! - shares[a[1]]! || a[1] - b[1]);
   for (const [, i] of order) {
     if (left <= 0) break;
     floor[i]! += 1;

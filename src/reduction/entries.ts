@@ -41,6 +41,7 @@ export const readingDimension = ({ readingWay }: Choices): Dimension => WAYS[rea
 export const gaugeDimension = ({ gaugeMeaning }: Choices): Dimension => (gaugeMeaning === 'percentOfScale' || gaugeMeaning === 'percentOfOutside' ? 'number' : 'pressure');
 export const GAUGE_UNIT: Readonly<Record<Choices['gaugeMeaning'], string>> = { absolute: 'Pa', gauge: 'kPa', percentOfScale: '%', percentOfOutside: '%' };
 const USUAL_READING_UNIT: Readonly<Record<string, string>> = { length: 'mm', angle: 'mrad', pixel: 'px', count: 'counts' };
+export const usualReadingUnit = (choices: Choices): string => USUAL_READING_UNIT[readingDimension(choices)] ?? 'mm';
 
 /** Entries of the plan alone: they reach no result and stand in no budget. */
 const PLANNING: readonly EntryName[] = ['guessedImpulse', 'scaleReach'];

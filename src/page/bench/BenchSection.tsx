@@ -3,7 +3,7 @@ import { useMemo, useState } from 'react';
 import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
-import { entriesInUse, GAUGE_UNIT } from '../../reduction/entries.ts';
+import { entriesInUse, GAUGE_UNIT, usualReadingUnit } from '../../reduction/entries.ts';
 import type { EntryRead, Reduction } from '../../reduction/results.ts';
 import { setChoice, setEntry, setFreeSwing } from '../../session/edits.ts';
 import { ENTRIES } from '../../session/entries.ts';
@@ -65,7 +65,7 @@ export function BenchSection() {
         <EntryField
           key={name}
           name={name}
-          kind={kind.dimension === 'gauge' ? { ...kind, unit: GAUGE_UNIT[choices.gaugeMeaning] } : kind.dimension === 'reading' && choices.readingWay === 'angle' ? { ...kind, unit: 'mrad' } : kind}
+          kind={kind.dimension === 'gauge' ? { ...kind, unit: GAUGE_UNIT[choices.gaugeMeaning] } : kind.dimension === 'reading' ? { ...kind, unit: usualReadingUnit(choices) } : kind}
           entry={entries[name]}
           read={readOf(name)}
           problems={used.has(name) ? problemsOf(name) : NO_PROBLEMS}
