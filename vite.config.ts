@@ -55,7 +55,7 @@ export default defineConfig({
           name: 'core',
           environment: 'node',
           include: [`test/{${PURE_FOLDERS}}/**/*.test.ts`, 'test/house.test.ts'],
-          setupFiles: ['test/setup/silence.ts'],
+          setupFiles: ['test/setup/seed.ts', 'test/setup/silence.ts'],
         },
       },
       {
@@ -64,7 +64,7 @@ export default defineConfig({
           name: 'page',
           environment: 'jsdom',
           include: [`test/{${PAGE_FOLDERS}}/**/*.test.{ts,tsx}`],
-          setupFiles: ['test/setup/silence.ts', 'test/setup/browser-parts.ts'],
+          setupFiles: ['test/setup/seed.ts', 'test/setup/silence.ts', 'test/setup/browser-parts.ts'],
         },
       },
       {
