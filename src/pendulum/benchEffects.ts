@@ -52,6 +52,9 @@ function check(bench: Bench, positive: Readonly<Record<string, number>> = {}): v
   if (!(bench.impulse !== 0 && bench.firstSwing !== 0)) throw new RangeError('bench effect: impulse bit and first swing are needed');
 }
 
+/** Energy stored in a capacitor bank: E = ½ C V² · J. Valid: C ≥ 0 F; V in V. Source: any physics handbook; methods 4. */
+export const storedEnergy = ({ capacitance, voltage }: Readonly<Record<'capacitance' | 'voltage', number>>): number => 0.5 * capacitance * voltage * voltage;
+
 /**
  * Discharge leads from a capacitor off the arm push with ½ i² dL/dx: ½ L′ E/R, since ∫ i² dt = E/R.
  *

@@ -110,7 +110,7 @@ function discharge(bench: BenchRead, choices: Choices, pendulum: effects.Bench, 
   const lost = effects.chargedRestChange(-pull.share);
   if (choices.plume === 'caught') return [ofRest('chargedTarget', pull, near, lost)];
   return [
-    ofImpulse('leads', effects.leadsImpulse(pendulum, { inductancePerLength: TYPICAL.inductance, energy: (C * V * V) / 2, resistance: R }),
+    ofImpulse('leads', effects.leadsImpulse(pendulum, { inductancePerLength: TYPICAL.inductance, energy: effects.storedEnergy({ capacitance: C, voltage: V }), resistance: R }),
       [...charged, ...(typed.resistance ? [] : [taken('circuit of', R, 'resistance')])]),
     ofImpulse('earthField', effects.earthFieldImpulse(pendulum, { charge: C * V, length: TYPICAL.leadLength, field: TYPICAL.field }),
       [...charged, taken('lead of', TYPICAL.leadLength, 'length'), taken('field of', TYPICAL.field, 'magneticFluxDensity')]),

@@ -100,3 +100,8 @@ test('a bench without stiffness, lever arm, impulse bit or swing has no sizes', 
   expect(() => effects.pivotFriction(bench, -1)).toThrow(RangeError);
   expect(() => effects.electrostaticPull(bench, { area: 1, voltage: 1, gap: 0 })).toThrow(RangeError);
 });
+
+// Common practice, no source: 0.5 µF at 8 kV; 0.04 µF at 12 kV; 0.0011 µF at 10 kV. Methods 4: 10 µF at 1500 V.
+test.each([[0.5e-6, 8e3, 16], [0.04e-6, 12e3, 2.88], [0.0011e-6, 10e3, 0.055], [10e-6, 1500, 11.25]])('a bank of %d F at %d V holds %d J', (capacitance, voltage, energy) => {
+  expect(effects.storedEnergy({ capacitance, voltage }) / energy).toBeCloseTo(1, 12);
+});
