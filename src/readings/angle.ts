@@ -24,9 +24,13 @@ export const swingFromSides = (way: ReadingWay) => (n: StandNumbers): number => 
   const total = n['scale']! * n['first']!;
   const q = n['halfDecay']!;
   const excess = (theta: number): number => WAYS[way].reading(theta, n) - WAYS[way].reading(-q * theta, n) - total;
-  const root = rootBetween(excess, -WIDEST_FROM_SIDES, WIDEST_FROM_SIDES);
-  if (root.status !== 'found') throw new RangeError(`side to side: no swing reads ${total}`);
-  return root.x;
+  // A tilted screen ends before the widest swing; beyond its end the spot comes from infinity on the other side.
+  for (let reach = WIDEST_FROM_SIDES; reach > LEAST_REACH; reach *= 0.8) {
+    const root = rootBetween(excess, -reach, reach);
+    if (root.status === 'found' && Math.abs(excess(root.x)) <= 1e-9 * Math.abs(total)) return root.x;
+  }
+  throw new RangeError(`side to side: no swing reads ${total}`);
 };
+const LEAST_REACH = 1e-3;
 /** Laser and line geometries run away at a quarter turn of the beam; wider swings are not read from side to side. */
 export const WIDEST_FROM_SIDES = 0.78;
