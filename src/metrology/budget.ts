@@ -8,12 +8,17 @@ export interface Line {
   readonly label: string;
   readonly symbol: string;
   readonly dimension: Dimension;
+  /** null for a line that merges many readings. */
   readonly estimate: number | null;
+  /** Standard uncertainty of the quantity, SI; null for a merged line. */
   readonly u: number | null;
   readonly distribution: string;
   readonly dof: number;
+  /** Sensitivity coefficient ∂y/∂x, SI; null for a merged line. */
   readonly sensitivity: number | null;
+  /** Signed c·u in the result's unit; a merged line has the root of the sum of squares. */
   readonly contribution: number;
+  /** Share of the variance, in percent with one decimal, rounded so that a budget's shares total exactly 100.0. */
   readonly share: number;
   /** Number of sources merged in this line. */
   readonly sources: number;

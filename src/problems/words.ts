@@ -1,7 +1,7 @@
 /** What sentences call the columns and the kinds of record. */
 
 /** By role of a column (readings/meanings.ts). */
-export const ROLE_WORDS: Readonly<Record<string, string>> = {
+export const ROLE_NAMES = {
   kind: 'kind of record',
   label: 'shot number',
   rest: 'rest reading',
@@ -15,13 +15,15 @@ export const ROLE_WORDS: Readonly<Record<string, string>> = {
   tapImpulse: 'tap impulse',
   note: 'note',
   ignored: 'not used',
-};
+} as const;
+export const ROLE_WORDS: Readonly<Record<string, string>> = ROLE_NAMES;
 
 /** By kind of record. */
-export const KIND_WORDS: Readonly<Record<string, string>> = {
+export const KIND_NAMES = {
   shot: 'shot',
   tap: 'tap',
   blank: 'blank',
   zero: 'zero',
   freeSwing: 'free swing',
-};
+} as const;
+export const KIND_WORDS: Readonly<Record<string, string>> = KIND_NAMES;

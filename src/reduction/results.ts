@@ -1,4 +1,5 @@
 /** What the road returns: plain values in SI units that survive a trip from a worker; screens and exports read this and nothing else. */
+import type { Line } from '../metrology/budget.ts';
 import type { Dimension } from '../units/units.ts';
 import type { Problem } from '../problems/problems.ts';
 import type { RecordKind, Role } from '../readings/meanings.ts';
@@ -52,23 +53,7 @@ export interface ChainStep {
 }
 
 /** One row of an uncertainty budget (GUM columns). */
-export interface BudgetLine {
-  readonly id: string;
-  readonly label: string;
-  readonly symbol: string;
-  readonly dimension: Dimension;
-  /** null for a line that merges many readings. */
-  readonly estimate: number | null;
-  /** Standard uncertainty of the quantity, SI; null for a merged line. */
-  readonly u: number | null;
-  readonly distribution: string;
-  readonly dof: number;
-  /** Sensitivity coefficient ∂I/∂x, SI; null for a merged line. */
-  readonly sensitivity: number | null;
-  /** Signed c·u in the result's unit (N·s); a merged line has the root of the sum of squares. */
-  readonly contribution: number;
-  /** Share of the variance, in percent with one decimal, rounded so that a budget's shares total exactly 100.0. */
-  readonly share: number;
+export interface BudgetLine extends Omit<Line, 'sources'> {
   readonly scope: 'common' | 'own' | 'scatter';
 }
 

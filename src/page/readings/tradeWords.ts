@@ -1,30 +1,11 @@
 /** What the readings section calls the roles of columns, the kinds of record, and the usual reasons for setting one aside. */
+import { KIND_NAMES, ROLE_NAMES } from '../../problems/words.ts';
 import type { RecordKind, Role } from '../../readings/meanings.ts';
 import type { RecordResult } from '../../reduction/results.ts';
 
-export const ROLE_LABELS: Readonly<Record<Role, string>> = {
-  kind: 'kind of record',
-  label: 'shot number',
-  rest: 'rest reading',
-  firstSwing: 'first swing',
-  nextSwing: 'next swing',
-  restDown: 'rest, row in the picture',
-  firstSwingDown: 'first swing, row in the picture',
-  time: 'time',
-  voltage: 'charge voltage',
-  pressure: 'pressure',
-  tapImpulse: 'tap impulse',
-  note: 'note',
-  ignored: 'not used',
-};
+export const ROLE_LABELS: Readonly<Record<Role, string>> = ROLE_NAMES;
 
-export const KIND_LABELS: Readonly<Record<RecordKind, string>> = {
-  shot: 'shot',
-  tap: 'tap',
-  blank: 'blank',
-  zero: 'zero',
-  freeSwing: 'free swing',
-};
+export const KIND_LABELS: Readonly<Record<RecordKind, string>> = KIND_NAMES;
 
 export const KINDS_LABELS: Readonly<Record<RecordKind, string>> = {
   shot: 'shots',
