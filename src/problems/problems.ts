@@ -44,7 +44,7 @@ export const PROBLEM_CODES = [
   // a record
   'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
   // the whole run
-  'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
+  'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'change-needs-the-body', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
   'damping-none', 'damping-laws-not-told-apart', 'damping-law-fits-badly', 'pulse-reaches-the-peak', 'frames-too-slow', 'background-swing-larger', 'momentum-factor-undeclared', 'capture-taken-as-all', 'propellant-too-heavy', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
   'not-a-vacuum-figure', 'gauge-meaning-unclear', 'pressure-beyond-dial', 'pressure-below-zero', 'pressure-above-outside', 'outside-pressure-missing', 'barometer-at-sea-level', 'height-beyond-atmosphere',
   'air-needs-width', 'air-on-strip', 'air-not-reckoned',

@@ -154,6 +154,8 @@ function words({ code, place, facts, weight }: Problem): string {
       return `No damping law fits the swings within their uncertainty; ${text('used', 'viscous')} damping, the nearest, is taken. Look for a misread turning point or a rubbing pivot.`;
     case 'pulse-reaches-the-peak':
       return 'The pulse lasts until the first maximum or beyond, so no impulse bit follows from a first swing. Shorten it, lengthen the period, or read it as thrust × time.';
+    case 'change-needs-the-body':
+      return 'The calibration mass hung there for a part of the run only, and without the pendulum’s inertia and stiffness the taps cannot be carried over to the shots. Type its masses and lengths, or tap it as it was fired.';
     case 'frames-too-slow':
       return 'The exposure or the time between frames is longer than half a period of the swing, so the frames do not show it; they are left uncorrected. Check both, and their units.';
     case 'background-swing-larger':

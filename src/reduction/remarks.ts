@@ -102,6 +102,8 @@ function calibrationRemarks(x: RunFacts, counted: readonly RecordResult[], shots
     const beyond = shotThrows.filter((t) => t > high * (1 + BEYOND_TAPS) || t < low * (1 - BEYOND_TAPS)).length;
     if (beyond > 0) found.push(problem('shots-beyond-taps', 'doubt', {}, { shots: beyond, of: shotThrows.length, largest: Math.max(...shotThrows) / high, smallest: Math.min(...shotThrows) / low }));
   }
+  const hungDiffers = x.choices.calibrationMassHung === 'taps' || x.choices.calibrationMassHung === 'shots';
+  if (x.choices.calibration === 'taps' && x.taps && hungDiffers && !x.run && shotThrows.length > 0) found.push(problem('change-needs-the-body', 'stops', { entry: 'calibrationMass' }, {}));
   const pooled = x.taps?.pooled;
   if (pooled && pooled.scatter !== null && pooled.n > 2 && pooled.scatter > 1.5 * pooled.expected) {
     found.push(problem('taps-scatter-more-than-stated', 'note', {}, { seen: (100 * pooled.scatter) / Math.abs(x.taps.asTaken.value), stated: (100 * pooled.expected) / Math.abs(x.taps.asTaken.value), taps: pooled.n }));

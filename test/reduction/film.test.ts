@@ -52,4 +52,11 @@ describe('a hanging film', () => {
     expect(bit.u / bit.value).toBeLessThan(0.01);
     expect(r.problems.map((p) => p.code)).not.toContain('film-model-alone');
   });
+
+  it('tapped with a mass that did not hang there while firing says why there is no figure', () => {
+    const base = filmSession('taps', `no;rest;first;tap\nT1;0;${(1e3 * reading).toFixed(6)};4\n${row}\n`);
+    const r = reduce({ ...base, entries: { ...base.entries, calibrationMass: entry('1 g'), calibrationMassDistance: entry('180 mm') }, choices: { ...base.choices, calibrationMassHung: 'taps' } }, null);
+    expect(r.run).toBeNull();
+    expect(r.problems.map((p) => p.code)).toContain('change-needs-the-body');
+  });
 });
