@@ -43,6 +43,11 @@ export function useStore<Piece>(selector: (state: State) => Piece): Piece {
   return useZustand(useSeen().shown, selector);
 }
 
+/** The same, without waiting in a section that follows later: for what a person has just chosen there. */
+export function useStoreAtOnce<Piece>(selector: (state: State) => Piece): Piece {
+  return useZustand(useSeen().store.state, selector);
+}
+
 /** The actions, the same object for the life of the page. */
 export function useActions(): Actions {
   return useSeen().store.actions;

@@ -46,10 +46,8 @@ test('a dropped run becomes the table that its reduction says, byte for byte', a
     ['Strip mass', '12,00 ± 0,02 g'], ['Strip length', '310.0 ± 0.5 mm'], ['Lever arm of the thrust', '290(1) mm'],
     ['Pivot to reading point', '310.0 ± 0.5 mm'], ['Local g', '9.8118 m/s²'], ['Lever arm of the tap', '280 ± 1 mm'], ['Hammer calibration', '1 ± 2 %'],
   ] as const) await page.getByRole('textbox', { name: label }).first().fill(text);
-  // The result sections follow a moment later than what is typed, and the choice shows with them.
-  const byTaps = page.getByRole('radio', { name: /by taps/ });
-  await byTaps.click();
-  await expect.poll(async () => byTaps.isChecked()).toBe(true);
+  // check() also asserts that the choice shows at once, before the results that follow it.
+  await page.getByRole('radio', { name: /by taps/ }).check();
 
   const mean = page.locator('text=/n = 6 of 6/').first();
   await mean.waitFor();

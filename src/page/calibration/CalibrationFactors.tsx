@@ -3,7 +3,7 @@ import { useId } from 'react';
 import type { Calibration, Difference, Reduction } from '../../reduction/results.ts';
 import { setChoice } from '../../session/edits.ts';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
-import { useActions, useStore } from '../../store/hooks.tsx';
+import { useActions, useStoreAtOnce } from '../../store/hooks.tsx';
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
 import { Aligned, alignedColumn } from '../stated/Aligned.tsx';
@@ -26,7 +26,7 @@ const WHAT: Readonly<Record<Way, string>> = {
 
 export function CalibrationFactors({ reduction }: { readonly reduction: Reduction }) {
   const { calibrations, runs, difference } = reduction;
-  const choice = useStore((state) => state.session.choices.calibration);
+  const choice = useStoreAtOnce((state) => state.session.choices.calibration);
   const { change } = useActions();
   const group = useId();
   const unit = impulseUnit(reduction);

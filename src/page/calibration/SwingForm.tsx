@@ -5,7 +5,7 @@ import type { Reduction } from '../../reduction/results.ts';
 import { setChoice } from '../../session/edits.ts';
 import type { Choices } from '../../session/session.ts';
 import { recordName } from '../../plots/recordWords.ts';
-import { useActions, useStore } from '../../store/hooks.tsx';
+import { useActions, useStoreAtOnce } from '../../store/hooks.tsx';
 import { timesU } from '../stated/numberWords.ts';
 import styles from './calibration.module.css';
 
@@ -23,7 +23,7 @@ function gapSentence(name: string, inU: number): string {
 }
 
 export function SwingForm({ reduction }: { readonly reduction: Reduction }) {
-  const choice = useStore((state) => state.session.choices.swingForm);
+  const choice = useStoreAtOnce((state) => state.session.choices.swingForm);
   const { change } = useActions();
   const group = useId();
   const gap = widestFormGap(reduction.records);
