@@ -1,4 +1,5 @@
 /** The per-shot impulse table: columns with their units, one row a record, and the whole as a CSV with its conditions on top. */
+import { WAY_RESTS_ON } from '../reduction/wayWords.ts';
 import type { RecordResult, Reduction, Result, RunResult, Stated } from '../reduction/results.ts';
 import { sentence } from '../problems/sentences.ts';
 import type { Problem } from '../problems/problems.ts';
@@ -120,7 +121,6 @@ export function perShotTabs(session: Session, reduction: Reduction): string {
   return [table.columns.map((c) => c.header), ...table.rows.map((row) => row.map(plain))].map((row) => `${row.join('\t')}\n`).join('');
 }
 
-const CALIBRATION = { geometry: 'geometry and masses', taps: 'taps of known impulse' } as const;
 const ROUTE = {
   masses: 'masses and lengths alone', massesAndPeriod: 'route A: masses, centre of mass and timed period', inertiaAndPeriod: 'route B: moment of inertia and timed period',
 } as const;
@@ -130,7 +130,7 @@ function conditions(session: Session, reduction: Reduction): readonly string[] {
   const lines: string[] = ['Per-shot impulse table, written by Firstswing'];
   if (session.demo) lines.push('DEMO: an invented bench and invented readings, not a measurement');
   for (const [what, text] of [['session', title.name], ['place', title.place], ['date', title.date], ['remark', title.remark]] as const) if (text.trim() !== '') lines.push(`${what}: ${oneLine(text)}`);
-  lines.push(`calibration: ${CALIBRATION[reduction.chosen]}; stiffness and inertia by ${ROUTE[choices.route]}`);
+  lines.push(`calibration: ${WAY_RESTS_ON[reduction.chosen]}; stiffness and inertia by ${ROUTE[choices.route]}`);
   lines.push(`form of the swing: ${choices.swingForm === 'full' ? 'full pendulum, solved back from the first maximum' : 'small angle'}; damping from ${reduction.damping?.way ?? 'none'}`);
   if (reduction.run) lines.push(...runLines(reduction.run, reduction));
   if (reduction.runWithSetAside) lines.push(`with the shots set aside counted too: ${meanText(reduction.runWithSetAside)}`);
@@ -175,7 +175,7 @@ function runLines(run: RunResult, reduction: Reduction): readonly string[] {
   ];
   if (run.scatter !== null) lines.push(`standard deviation of the shots ${tenDigits(run.scatter)} ${SI}`);
   for (const calibration of [reduction.calibrations.geometry, reduction.calibrations.taps]) {
-    if (calibration) lines.push(`calibration factor by ${CALIBRATION[calibration.way]}: ${tenDigits(calibration.factor.value)} N·m·s/rad, u ${tenDigits(calibration.factor.u)} N·m·s/rad`);
+    if (calibration) lines.push(`calibration factor by ${WAY_RESTS_ON[calibration.way]}: ${tenDigits(calibration.factor.value)} N·m·s/rad, u ${tenDigits(calibration.factor.u)} N·m·s/rad`);
   }
   return lines;
 }

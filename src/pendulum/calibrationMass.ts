@@ -1,4 +1,5 @@
 /** A calibration mass hung on the pendulum: the period with it, where it leaves the period as it is, and J back from the two periods. */
+import { leastSquares } from '../numeric/linearAlgebra.ts';
 import { smallPeriod } from './forms.ts';
 
 type Numbers<Name extends string> = Readonly<Record<Name, number>>;
@@ -50,4 +51,23 @@ export function twoPeriodSensitivity(hung: HungMass): TwoPeriodSensitivity {
   const ratio = (periodWithMass(hung) / smallPeriod(hung)) ** 2;
   const toWithout = (2 * ratio) / (ratio - 1);
   return { toWithout, toWith: -toWithout * (1 + (hung.mass * hung.g * hung.distance) / hung.stiffness) };
+}
+
+/** One timing: T₀ with a mass m at r (m = 0: without). */
+export type TimedMass = Numbers<'period' | 'mass' | 'radius' | 'ownInertia'>;
+
+export type BodyOfPeriods = { readonly status: 'found'; readonly inertia: number; readonly stiffness: number } | { readonly status: 'tooFew' | 'notTold' };
+
+/**
+ * J and κ from periods with several masses: T_i²(κ + m_i g r_i) = 4π²(J + m_i r_i² + J_c), linear in J and κ, least squares with each
+ * equation over T_i². For two timings it is inertiaOfTwoPeriods. `inertia` may come out negative where the timings tell it badly.
+ *
+ * Source: methods 1.8 (b), (d), derived.
+ */
+export function bodyOfPeriods(timings: readonly TimedMass[], g: number): BodyOfPeriods {
+  if (timings.length < 2) return { status: 'tooFew' };
+  const rows = timings.map(({ period }) => [-(((2 * Math.PI) / period) ** 2), 1]);
+  const right = timings.map(({ period, mass, radius, ownInertia }) => ((2 * Math.PI) / period) ** 2 * (mass * radius * radius + ownInertia) - mass * g * radius);
+  const solved = leastSquares(rows, right);
+  return solved.status === 'solved' ? { status: 'found', inertia: solved.x[0]!, stiffness: solved.x[1]! } : { status: 'notTold' };
 }

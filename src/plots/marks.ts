@@ -34,7 +34,9 @@ export function inkOf(kind: RecordKind, inks: Inks): string {
     case 'tap': return inks.tap;
     case 'blank':
     case 'zero':
-    case 'freeSwing': return inks.blank;
+    case 'freeSwing':
+    case 'weight':
+    case 'period': return inks.blank;
   }
 }
 
@@ -65,6 +67,13 @@ export function traceSign(path: Path2D, mark: Mark, x: number, y: number, size: 
       break;
     case 'blank':
       path.rect(x - 0.9 * size, y - 0.9 * size, 1.8 * size, 1.8 * size);
+      break;
+    case 'weight':
+      path.rect(x - 0.9 * size, y - 0.4 * size, 1.8 * size, 1.3 * size);
+      break;
+    case 'period':
+      path.moveTo(x + size, y);
+      path.arc(x, y, size, 0, 2 * Math.PI);
       break;
     case 'zero':
       path.moveTo(x, y - 1.4 * size);

@@ -5,7 +5,7 @@ import { withPlusMinus } from '../units/format.ts';
 import type { Unit } from '../units/units.ts';
 
 export const KIND_WORDS: Readonly<Record<RecordKind, string>> = {
-  shot: 'Shot', tap: 'Tap', blank: 'Blank', zero: 'Zero', freeSwing: 'Free swing',
+  shot: 'Shot', tap: 'Tap', blank: 'Blank', zero: 'Zero', freeSwing: 'Free swing', weight: 'Weight', period: 'Period',
 };
 
 /** "Shot 4", "Tap T2"; a record without a label is named by its place in the run. */

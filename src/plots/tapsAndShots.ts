@@ -1,7 +1,8 @@
 /** Taps and shots in one picture: angular impulse against damping-corrected first swing, with the calibration line and the taps' range. */
 import { placeInTapRange } from '../reduction/beside.ts';
 import type { TapRange } from '../reduction/beside.ts';
-import type { Calibration, RecordResult, Reduction } from '../reduction/results.ts';
+import type { RecordResult, Reduction } from '../reduction/results.ts';
+import { WAY_WORDS } from '../reduction/wayWords.ts';
 import { chooseUnit, withPlusMinus } from '../units/format.ts';
 import { fromSi, siUnit, unitNamed } from '../units/units.ts';
 import type { Unit } from '../units/units.ts';
@@ -98,15 +99,15 @@ function fromZeroUp({ low, high }: Range): Range {
 const slopeIn = (factor: number, unit: Unit): number => fromSi(factor, unit) / fromSi(1, SWING_UNIT);
 
 /** What the figure is drawn from. */
-type Calibrated = Pick<Reduction, 'records' | 'chosen' | 'calibrations' | 'ranges'>;
+type Calibrated = Pick<Reduction, 'records' | 'chosen' | 'calibrations' | 'ranges' | 'chosenFactor'>;
 
 /** φ in mrad along, angular impulse up; the line is K·φ of the chosen calibration with ± U of K. */
-export function tapsAndShots({ records, chosen, calibrations, ranges }: Calibrated, inks: Inks): Figure {
+export function tapsAndShots({ records, chosen, calibrations, ranges, chosenFactor }: Calibrated, inks: Inks): Figure {
   const placed = records.filter(isPlaced).sort((a, b) => a.launch.value - b.launch.value);
   const unit = chooseUnit(placed.map((record) => record.angularImpulse.value), 'angularImpulse');
   const marks = placed.map((record) => placedMark(record, unit));
   const { columns, series } = markSeries(marks, inks);
-  const line: Calibration | null = calibrations[chosen];
+  const line = chosenFactor;
   const asTaken = calibrations.taps;
   const isOtherLine = asTaken !== null && Math.abs(asTaken.change.value - 1) > SAME_LINE;
   const counting = marks.filter((mark) => !mark.setAside);
@@ -118,7 +119,7 @@ export function tapsAndShots({ records, chosen, calibrations, ranges }: Calibrat
     title: 'Taps and shots',
     summary: [
       tapRangeSentence(placeInTapRange(ranges.taps, ranges.shots)),
-      line === null ? '' : `Line: angular impulse per swing ${chosen === 'taps' ? 'by taps' : 'by geometry'}, band ± U of its factor; shots stand on it.`,
+      line === null ? '' : `Line: angular impulse per swing by ${WAY_WORDS[chosen]}, band ± U of its factor; shots stand on it.`,
       isOtherLine ? 'Dashed: the taps’ own line, in the configuration they were struck in.' : '',
       'Bars: 2u; thick: the record’s own part.',
       aside.some((mark) => mark.x < x.low || mark.x > x.high || mark.y < y.low || mark.y > y.high) ? 'What is set aside and lies far off is drawn at the edge.' : '',
@@ -136,7 +137,7 @@ export function tapsAndShots({ records, chosen, calibrations, ranges }: Calibrat
         drawAxes: [
           (u) => {
             if (line !== null) {
-              rayBand(u, { slope: slopeIn(line.factor.value, unit), half: slopeIn(line.factor.U, unit), dashed: false, ink: inks.shot }, inks);
+              rayBand(u, { slope: slopeIn(line.value, unit), half: slopeIn(line.U, unit), dashed: false, ink: inks.shot }, inks);
             }
             if (isOtherLine) rayBand(u, { slope: slopeIn(asTaken.asTaken.value, unit), half: 0, dashed: true, ink: inks.tap }, inks);
             if (taps !== null) {

@@ -43,6 +43,9 @@ export const PROBLEM_CODES = [
   'cell-not-a-number', 'cell-unknown-unit', 'cell-wrong-kind-of-unit', 'cell-kind-unknown', 'cell-empty',
   // a record
   'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
+  'hammer-angle-too-wide', 'hammer-entry-missing', 'tap-force-without-time', 'tap-both-rebound-and-follow',
+  // evidence of the calibration
+  'timing-spread-missing', 'timing-without-place', 'timing-not-positive', 'weights-too-few', 'weights-wrong-way', 'taps-one-size', 'taps-drifted', 'taps-intercept', 'taps-curved', 'masses-tell-little', 'masses-inertia-negative', 'evidence-contradicts', 'chosen-evidence-missing',
   // the whole run
   'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'change-needs-the-body', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
   'damping-none', 'damping-laws-not-told-apart', 'damping-law-fits-badly', 'pulse-reaches-the-peak', 'frames-too-slow', 'background-swing-larger', 'momentum-factor-undeclared', 'capture-taken-as-all', 'propellant-too-heavy', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',

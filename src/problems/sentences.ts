@@ -234,6 +234,41 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'gravity-assumed':
       return `no local g is given; ${quantity('value', 'acceleration')} ± ${quantity('limits', 'acceleration')} is taken. Write it, or latitude and height.`;
 
+    case 'hammer-angle-too-wide':
+      return `the hammer stood at ${figure('degrees', 3)}°; beyond 90° it does not swing as it was drawn, so this tap has no known impulse. Check the angle and its unit.`;
+    case 'hammer-entry-missing':
+      return `the hammer’s angles are there, but not ${text('label')}. Write it on the bench, under Taps.`;
+    case 'tap-force-without-time':
+      return 'a force and its length make an impulse; one of the two is missing here, so this tap has none.';
+    case 'tap-both-rebound-and-follow':
+      return 'the hammer cannot come back and go on through at once; both angles are filled in, so this tap has no known impulse. Blank the one that was not seen.';
+    case 'timing-spread-missing':
+      return `nothing says how well the ${many('timings', 'period')} were started and stopped; only the last digit of the times counts. Write one start or stop, by hand about 0.1 s.`;
+    case 'timing-without-place':
+      return 'a mass hung while this was timed, but not both its mass and its radius are known; the timing is left out. Write both in the table, or as the calibration mass.';
+    case 'timing-not-positive':
+      return 'the time, its cycles or the amplitude are none of a swing; the timing is left out.';
+    case 'weights-too-few':
+      return `known weights of ${many('sizes', 'size')} make no line; three readings of at least two weights are needed.`;
+    case 'weights-wrong-way':
+      return 'the reading does not go up with the known weights, so they give no stiffness. Check the direction of the scale and the columns.';
+    case 'taps-one-size':
+      return `all ${many('taps', 'tap')} are of one size: that they lie on a line through the origin is taken, not seen. Tap at two or three sizes that span the shots.`;
+    case 'taps-drifted':
+      return `the calibration moved from ${text('from')} to ${text('to')} the firings by ${figure('percent', 2)} %, ${figure('inU', 2)} times the uncertainty of that difference. Take the mean with its limits, or interpolate, under Calibration; and look for what changed.`;
+    case 'taps-intercept':
+      return `the taps’ line misses the origin by ${figure('t', 2)} times its uncertainty (chance ${figure('percent', 2)} %): a zero that is off, an offset of the hammer, or friction. The line with an intercept is under Calibration.`;
+    case 'taps-curved':
+      return `the taps bend away from a straight line by ${figure('t', 2)} times the uncertainty of the bend (chance ${figure('percent', 2)} %): look at the largest ones, at the reading’s geometry, and at the hammer.`;
+    case 'masses-tell-little':
+      return `hung where it was, the mass changes the period so little that the moment of inertia is known to ${figure('percent', 2)} % only. ${has('better') ? `At ${quantity('better', 'length')} the same timings would tell it to ${figure('betterPercent', 2)} %.` : 'A heavier mass, well above or below that place, would tell it.'}`;
+    case 'masses-inertia-negative':
+      return 'the periods with masses hung give a moment of inertia that is not above zero: a time or a radius is wrong, or the mass hung near the place where the period does not change.';
+    case 'evidence-contradicts':
+      return `the evidence of the calibration does not agree within its uncertainties (χ² = ${figure('chiSquared', 3)} for ${text('dof')}, chance ${figure('percent', 2)} %). ${has('item') ? `“${text('item')}” pulls most, by ${figure('deviation', 2)} times the uncertainty. ` : ''}Nothing is widened for it: find which is wrong.`;
+    case 'chosen-evidence-missing':
+      return `the calibration is to be known ${text('way')}, but that evidence is not complete. Choose another way under Calibration, or add what is missing.`;
+
     case 'session-not-json':
       return 'this file cannot be read as a session: it is damaged, or of another kind. Open the file that was saved here.';
     case 'session-not-ours':

@@ -13,6 +13,19 @@ export const ROLE_NAMES = {
   voltage: 'charge voltage',
   pressure: 'pressure',
   tapImpulse: 'tap impulse',
+  hammerIn: 'hammer, drawn back to',
+  hammerRebound: 'hammer, rebounds back to',
+  hammerFollow: 'hammer, goes on through to',
+  tapForce: 'force of a tap',
+  tapDuration: 'length of that force',
+  weight: 'known weight',
+  loading: 'reading while loading',
+  unloading: 'reading while unloading',
+  swingsTime: 'time of the cycles',
+  cycles: 'cycles timed',
+  amplitude: 'amplitude at the start',
+  massHung: 'mass hung for timing',
+  massHungAt: 'radius of the mass hung',
   note: 'note',
   ignored: 'not used',
 } as const;
@@ -25,5 +38,7 @@ export const KIND_NAMES = {
   blank: 'blank',
   zero: 'zero',
   freeSwing: 'free swing',
+  weight: 'known weight',
+  period: 'timed period',
 } as const;
 export const KIND_WORDS: Readonly<Record<string, string>> = KIND_NAMES;

@@ -46,6 +46,19 @@ export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
   // A number is percent on a vacuum dial.
   pressure: ['pressure', 'number'],
   tapImpulse: ['impulse'],
+  hammerIn: ['angle'],
+  hammerRebound: ['angle'],
+  hammerFollow: ['angle'],
+  tapForce: ['force'],
+  tapDuration: ['time'],
+  weight: ['mass', 'force'],
+  loading: ['length', 'angle', 'pixel', 'count'],
+  unloading: ['length', 'angle', 'pixel', 'count'],
+  swingsTime: ['time'],
+  cycles: ['count'],
+  amplitude: ['angle'],
+  massHung: ['mass'],
+  massHungAt: ['length'],
   kind: [],
   label: [],
   note: [],
@@ -60,7 +73,8 @@ export const unitsOfRole = (role: Role): readonly Unit[] => ROLE_DIMENSIONS[role
 
 /** Unit taken where none is written, told with the proposal. */
 export const USUAL_UNIT: Readonly<Record<Role, string>> = {
-  rest: 'mm', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s', kind: '', label: '', note: '', ignored: '',
+  rest: 'mm', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s',
+  hammerIn: '°', hammerRebound: '°', hammerFollow: '°', tapForce: 'mN', tapDuration: 'ms', weight: 'mg', loading: 'mm', unloading: 'mm', swingsTime: 's', cycles: 'counts', amplitude: '°', massHung: 'g', massHungAt: 'mm', kind: '', label: '', note: '', ignored: '',
 };
 
 /** Where a column stands while the proposal is being made. */
@@ -73,7 +87,7 @@ export interface Claim {
   sure: boolean;
 }
 
-const READINGS: readonly Role[] = ['rest', 'firstSwing', 'nextSwing'];
+const READINGS: readonly Role[] = ['rest', 'firstSwing', 'nextSwing', 'loading', 'unloading'];
 export const isReading = (role: Role | null): boolean => role !== null && READINGS.includes(role);
 
 /** The unit of a column as written in its header, a units row or its cells. */
@@ -108,6 +122,7 @@ function proposeAfresh(table: TableRead): Proposal[] {
   const profiles = table.headers.map((_, i) => profileColumn(table, i));
   const claims = profiles.map((profile) => claimByHeader(table, profile));
   settleRivals(table, claims);
+  settleEvidence(claims);
   profiles.forEach((profile, i) => {
     const claim = claims[i];
     if (claim !== undefined && claim.role === null) claimByUnit(table, profile, claim, claims);
@@ -154,7 +169,9 @@ function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
   return { ...claim, role, code: 'header', sure: true };
 }
 
-const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse'];
+const SINGLE: readonly Role[] = [
+  'kind', 'label', 'rest', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt',
+];
 
 /** Of two columns with one role the better named keeps it; a second first swing is a next swing, any other is left aside, with the reason. */
 function settleRivals(table: TableRead, claims: readonly Claim[]): void {
@@ -171,6 +188,26 @@ function settleRivals(table: TableRead, claims: readonly Claim[]): void {
       claim.code = 'position';
     }
   }
+}
+
+/** Roles of a table of shots or taps; beside them a weight is a remark. */
+const OF_FIRINGS: readonly Role[] = ['rest', 'nextSwing', 'voltage', 'tapImpulse', 'hammerIn'];
+
+/** A weight is one of a calibration only where deflections stand beside it; a radius only beside a mass that hung there. */
+function settleEvidence(claims: readonly Claim[]): void {
+  const has = (...roles: readonly Role[]): boolean => claims.some(({ role }) => role !== null && roles.includes(role));
+  const leave = (role: Role): void => {
+    const to = role === 'weight' ? { role: 'ignored', code: 'nothing', facts: { seen: 'noSign' } } : { role: null, code: 'nothing', facts: {}, sure: false };
+    for (const claim of claims) if (claim.role === role) Object.assign(claim, to);
+  };
+  if (has('weight') && !has('loading', 'unloading')) {
+    const deflection = has(...OF_FIRINGS) ? undefined : claims.find(({ role }) => role === 'firstSwing');
+    if (deflection) deflection.role = 'loading';
+    else leave('weight');
+  }
+  if (!has('weight')) for (const role of ['loading', 'unloading'] as const) leave(role);
+  if (!has('massHung')) leave('massHungAt');
+  if (!has('swingsTime')) for (const role of ['cycles', 'amplitude'] as const) leave(role);
 }
 
 const ROLE_OF_DIMENSION: Readonly<Partial<Record<Dimension, Role>>> = { voltage: 'voltage', pressure: 'pressure', impulse: 'tapImpulse', time: 'time' };

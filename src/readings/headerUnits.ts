@@ -7,7 +7,7 @@ const BRACKETED = /[([{]\s*([^()[\]{}]+?)\s*[)\]}]\s*$/u;
 const AFTER_MARK = /(?:\s*\/\s+|\s+\/\s*|,\s*|\sin\s+|\sen\s+|:\s*|_|\s[–-]\s+)([^\s,]+(?:\s?Hg)?)\s*$/u;
 
 /** Dimensions that a column of readings can have. */
-const COLUMN_DIMENSIONS: readonly Dimension[] = ['length', 'angle', 'voltage', 'pressure', 'impulse', 'time', 'mass', 'angularImpulse', 'number'];
+const COLUMN_DIMENSIONS: readonly Dimension[] = ['length', 'angle', 'voltage', 'pressure', 'impulse', 'time', 'mass', 'angularImpulse', 'force', 'pixel', 'count', 'number'];
 
 /** No unit of the table is spelled with more characters. */
 const LONGEST_UNIT = 40;

@@ -20,6 +20,8 @@ const WORDS: Readonly<Record<RecordKind, string>> = {
     'free swing|free|swing|ring down|ringdown|ringing down|decay|freischwingung|freie schwingung|ausschwingen|oscillation libre|libre|amortissement|oscilacion libre|' +
     'oscillazione libera|oscilacao livre|livre|vrije slinger|vrije slingering|uitslingeren|swobodne|drgania swobodne|volne kmity|volny kmit|свободные колебания|затухание|' +
     '自由振動|減衰振動|自由摆动|自由衰减',
+  weight: 'weight|known weight|load|gewicht|gewichtsstuck|poids|peso|pesa|ciezarek|odwaznik|zavazi|гиря|分銅|おもり|砝码',
+  period: 'period|timing|timed|timed swings|periode|schwingungsdauer|periodo|oscilaciones|oscillazioni|okres|perioda|период|周期',
 };
 
 const KIND_BY_WORDS: ReadonlyMap<string, RecordKind> = new Map(

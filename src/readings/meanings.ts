@@ -1,16 +1,20 @@
 /** What a column of a readings table can mean, and what kinds of record there are. */
 
-export const RECORD_KINDS = ['shot', 'tap', 'blank', 'zero', 'freeSwing'] as const;
-/** shot · tap · blank (discharge with the plume blocked, or a dummy load) · zero (rest reading alone) · free swing. */
+export const RECORD_KINDS = ['shot', 'tap', 'blank', 'zero', 'freeSwing', 'weight', 'period'] as const;
+/** shot · tap · blank (discharge with the plume blocked, or a dummy load) · zero (rest reading alone) · free swing · weight (deflection by a known weight) · period (timed swings). */
 export type RecordKind = (typeof RECORD_KINDS)[number];
 
 export const ROLES = [
-  'kind', 'label', 'rest', 'firstSwing', 'nextSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse', 'note', 'ignored',
+  'kind', 'label', 'rest', 'firstSwing', 'nextSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse',
+  'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'note', 'ignored',
 ] as const;
 /**
  * restDown, firstSwingDown: the marker's row in a picture, counted downward, beside its column in rest and firstSwing.
  * nextSwing: the turning readings after the first swing, one column each, in order: the first such column is the
  * return swing (the other side), the second the same side again, and so on.
+ * hammerIn, hammerRebound, hammerFollow: a swinging hammer’s angle before the blow, back up on the side that it came from, and on
+ * through beyond the contact. loading, unloading: the reading with a known weight on, while weights are put on and while they are taken off.
+ * swingsTime: time of `cycles` full cycles, `amplitude` at their start, with `massHung` at the radius `massHungAt`.
  */
 export type Role = (typeof ROLES)[number];
 

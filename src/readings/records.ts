@@ -41,6 +41,21 @@ export interface SheetRecord {
   readonly voltage: CellRead | null;
   readonly pressure: CellRead | null;
   readonly tapImpulse: CellRead | null;
+  readonly hammerIn: CellRead | null;
+  readonly hammerRebound: CellRead | null;
+  readonly hammerFollow: CellRead | null;
+  readonly tapForce: CellRead | null;
+  readonly tapDuration: CellRead | null;
+  /** kg, or N where it is written as a force: the cell's unit tells. */
+  readonly weight: CellRead | null;
+  readonly loading: CellRead | null;
+  readonly unloading: CellRead | null;
+  readonly swingsTime: CellRead | null;
+  /** Full cycles in that time, from their column or the header ("Time for 20 swings"); 1 where neither says. */
+  readonly cycles: number;
+  readonly amplitude: CellRead | null;
+  readonly massHung: CellRead | null;
+  readonly massHungAt: CellRead | null;
   /** What is wrong in this row, each with its place. */
   readonly problems: readonly Problem[];
   /** As shown: edits applied. */
@@ -55,7 +70,10 @@ export interface RecordsRead {
   readonly problems: readonly Problem[];
 }
 
-const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse'];
+/** Roles beyond the readings of a swing, each of one column. */
+const EVIDENCE = ['tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'amplitude', 'massHung', 'massHungAt'] as const;
+
+const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', ...EVIDENCE, 'cycles'];
 
 interface Row {
   readonly line: string;
@@ -80,7 +98,8 @@ interface Bench {
  * The records of one sheet, in the order of its rows, hand-typed rows last.
  *
  * The kind of a record is what a person marked, else what the kind column says, else that of the whole sheet, else told from what is filled in:
- * a tap impulse makes a tap; a rest without any swing and without a voltage makes a zero; else the header of the numbers ("Tap") tells;
+ * a tap impulse, a hammer’s angle or a force pulse makes a tap; a known weight with a deflection a weight; a time of swings without a swing a
+ * period; a rest without any swing and without a voltage makes a zero; else the header of the numbers ("Tap") tells;
  * anything else is a shot.
  *
  * @param kinds a person's marks by record id
@@ -125,10 +144,12 @@ function columnProblems({ sheet, headers, single }: Bench, place: Place): Proble
 /** Without a first-swing column rows look like zeros; they count as such without a word only where someone has said so. */
 function missingColumns({ single }: Bench, records: readonly SheetRecord[], place: Place): Problem[] {
   const found: Problem[] = [];
-  const swung = records.some(({ kind }) => kind !== 'zero' && kind !== 'freeSwing');
+  const swings = records.filter(({ kind }) => kind !== 'weight' && kind !== 'period');
+  if (swings.length === 0) return found;
+  const swung = swings.some(({ kind }) => kind !== 'zero' && kind !== 'freeSwing');
   const guessed = records.some(({ kind, kindBy }) => kind === 'zero' && kindBy === 'filledIn');
   if (!single.has('firstSwing') && (swung || guessed)) found.push(problem('column-missing', swung ? 'stops' : 'doubt', place, { role: 'firstSwing' }));
-  if (!single.has('rest') && records.length > 0) found.push(problem('column-missing', 'doubt', place, { role: 'rest' }));
+  if (!single.has('rest')) found.push(problem('column-missing', 'doubt', place, { role: 'rest' }));
   return found;
 }
 
@@ -164,6 +185,13 @@ function kindOfHeader(header: string): RecordKind | null {
   return kindOfWord(header.replace(/(?:\s|^)(?:no|nr|number|n°|№)\.?\s*$/iu, ''));
 }
 
+/** "Time for 20 swings": the number of cycles that a header tells; 1 where it tells none. */
+function cyclesOfHeader(header: string): number {
+  const found = /(\d+)\s*(?:x\s*)?\p{L}{2,}/u.exec(header.replace(/[([{][^)\]}]*[)\]}]/gu, ' '));
+  const n = Number(found?.[1] ?? 1);
+  return n >= 1 && n <= 10_000 ? n : 1;
+}
+
 function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetPlace: Place): SheetRecord {
   const { sheet, headers, single } = bench;
   const id = `${sheet.id}/${row.line}`;
@@ -189,7 +217,8 @@ function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetP
     time: readAt(single.get('time')),
     voltage: readAt(single.get('voltage')),
     pressure: readAt(single.get('pressure')),
-    tapImpulse: readAt(single.get('tapImpulse')),
+    ...(Object.fromEntries(EVIDENCE.map((role) => [role, readAt(single.get(role))])) as Record<(typeof EVIDENCE)[number], CellRead | null>),
+    cycles: readAt(single.get('cycles'))?.value ?? cyclesOfHeader(headers[single.get('swingsTime') ?? -1] ?? ''),
   };
   const kindText = textAt(single.get('kind'));
   const kindInColumn = kindOfWord(kindText);
@@ -200,7 +229,10 @@ function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetP
   const anySwing = hasText('firstSwing') || bench.nextSwings.some((i) => !isNoReading(textAt(i)));
   // A row of nothing, just added by hand, is not yet a shot.
   const isBare = row.cells.every(isNoReading);
-  const filledIn: RecordKind = isBare ? 'zero' : hasText('tapImpulse') ? 'tap' : hasText('rest') && !anySwing && !hasText('voltage') ? 'zero' : 'shot';
+  const isTap = hasText('tapImpulse') || hasText('hammerIn') || (hasText('tapForce') && hasText('tapDuration'));
+  const filledIn: RecordKind = isBare ? 'zero' : isTap ? 'tap'
+    : hasText('weight') && (hasText('loading') || hasText('unloading')) ? 'weight'
+    : hasText('swingsTime') && !anySwing ? 'period' : hasText('rest') && !anySwing && !hasText('voltage') ? 'zero' : 'shot';
   const headed = filledIn === 'shot' ? kindOfHeader(headers[single.get('label') ?? -1] ?? '') : null;
   const [kind, kindBy] =
     marked !== undefined ? ([marked, 'person'] as const)

@@ -64,12 +64,41 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'hammer impulse|tap impulse|impulse|hammer|known impulse|hammerimpuls|schlagimpuls|impuls|hammer impuls|kraftstoss|impulsion|impulsion du marteau|marteau|' +
     'impulso|impulso del martillo|martillo|impulso del martello|martello|impulso do martelo|martelo|hamer|hamerimpuls|impuls mlotka|mlotek|impuls kladivka|kladivko|' +
     'импульс|импульс молотка|молоток|удар|ハンマー|打撃力積|力積|打撃|锤|锤击冲量|冲量',
+  hammerIn:
+    'hammer drawn to|drawn to|hammer angle|hammer angle in|hammer in|angle in|drawn back to|hammer raised to|hammer ausgelenkt|hammerwinkel|angle du marteau|angulo del martillo|angolo del martello|' +
+    'angulo do martelo|hamerhoek|kat mlotka|uhel kladivka|угол молотка|ハンマー角度|锤角',
+  hammerRebound:
+    'rebound|rebound angle|rebounds to|hammer rebound|bounced back to|ruckprall|ruckprallwinkel|rebond|angle de rebond|rebote|rimbalzo|ressalto|terugslag hamer|odbicie|odraz|отскок|反発角|反発|回弹',
+  hammerFollow:
+    'follow through|follow through angle|followed through|follows through to|hammer follow through|hammer out|durchschwung|nachlauf|suite du marteau|paso tras el golpe|prosegue|doorzwaai|проход|通過角|随动',
+  tapForce: 'tap force|pulse force|coil force|electrostatic force|calibration force|pulskraft|spulenkraft|force d impulsion|fuerza del pulso|forza dell impulso',
+  tapDuration: 'tap duration|force duration|coil pulse length|force pulse length|calibration pulse length|kraftpulsdauer|duree de la force|duracion de la fuerza|durata della forza',
+  weight:
+    'weight|weights|known weight|load|gewicht|gewichtsstuck|last|poids|poids connu|peso|pesa|pesas|pesi|pesos|gewichten|last|ciezarek|odwaznik|zavazi|гиря|вес гири|分銅|おもり|砝码',
+  loading:
+    'reading up|loading|up|loading up|going up|reading loading|belastung|ablesung auf|aufwarts|en montant|chargement|charge croissante|lecture montee|subiendo|lectura subida|carga creciente|in salita|carico crescente|' +
+    'a subir|op|belasten|w gore|pri zatizeni|вверх|нагрузка|負荷増|加载',
+  unloading:
+    'reading down|unloading|down|unloading down|going down|reading unloading|entlastung|ablesung ab|abwarts|en descendant|dechargement|charge decroissante|lecture descente|bajando|lectura bajada|carga decreciente|in discesa|carico decrescente|' +
+    'a descer|neer|ontlasten|w dol|pri odlehceni|вниз|разгрузка|負荷減|卸载',
+  swingsTime:
+    'time for|time of swings|time of cycles|timed|timing|period|periods|swing period|swings time|zeit fur|dauer von|schwingungsdauer|schwingungszeit|periode|periodendauer|temps pour|duree de|tiempo de oscilaciones|tiempo para|periodo|' +
+    'tempo per|tempo para|tijd voor|slingertijd|trillingstijd|czas wahniec|okres|doba kmitu|perioda|период|время колебаний|周期|振動時間|摆动时间',
+  cycles:
+    'cycles|swings|no of swings|number of swings|number of cycles|swings timed|cycles timed|oscillations|schwingungen|anzahl schwingungen|perioden|nombre d oscillations|numero de oscilaciones|oscilaciones|numero di oscillazioni|oscillazioni|' +
+    'oscilacoes|aantal slingeringen|liczba wahniec|pocet kmitu|число колебаний|колебаний|振動回数|摆动次数',
+  amplitude: 'start amplitude|starting amplitude|amplitude at start|amplitude while timing|anfangsamplitude|startamplitude|amplitude initiale|amplitud inicial|ampiezza iniziale|amplitude inicial|beginamplitude|начальная амплитуда|初期振幅|初始振幅',
+  massHung:
+    'mass hung|hung mass|added mass|mass added|extra mass|calibration mass|zusatzmasse|angehangte masse|masse ajoutee|masse suspendue|masa anadida|masa colgada|massa aggiunta|massa appesa|massa adicionada|toegevoegde massa|' +
+    'masa dodatkowa|pridana hmotnost|добавленная масса|付加質量|附加质量',
+  massHungAt:
+    'hung at|mass at|at radius|radius|radius of the mass|mass radius|distance of mass|place of the mass|radius der masse|abstand der masse|a la distance|rayon|radio|raggio|raio|straal|promien|polomer|радиус|半径',
   note:
     'note|notes|remark|remarks|comment|comments|seen|bemerkung|bemerkungen|notiz|anmerkung|kommentar|remarque|remarques|commentaire|observation|observations|' +
     'nota|notas|comentario|comentarios|observacion|observaciones|commento|osservazioni|observacao|observacoes|opmerking|opmerkingen|uwaga|uwagi|poznamka|poznamky|' +
     'примечание|примечания|замечание|заметка|備考|メモ|注記|备注|说明|注',
   ignored:
-    'impulse bit|i bit|ibit|hammer drawn to|drawn to|hammer angle|rebound|time for|mass|weight|temperature|temp|energy|capacitance|current|date|zero after|rest after|after|' +
+    'impulse bit|i bit|ibit|mass|temperature|temp|energy|capacitance|current|date|zero after|rest after|after|' +
     'datum|masse|temperatur|energie|kapazitat|strom|ruhelage nachher|null nachher|nachher|fecha|masa|temperatura|energia|data|massa|zero apres|apres|repos apres|despues|dopo|depois|na afloop|po strzale|po vystrelu|после|после выстрела|дата|日付|質量|温度|日期|质量',
 };
 

@@ -92,6 +92,8 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   when(choices.correctAir && (light || choices.form === 'filmStrip'), 'airTemperature');
   when(choices.correctAir && light, 'stripWidth', 'stripThickness');
   when(choices.plume === 'carried', 'capacitance', 'leadResistance');
+  for (const name of ['timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightFactor', 'weightSpread', 'pullArm', 'hammerMass', 'hammerLength', 'hammerAngleSpread', 'hammerZero'] as const) used.add(name);
+  when(choices.hammerForm === 'compound', 'hammerContact', 'hammerPeriod', 'hammerInertia');
   for (const name of PLANNING) used.add(name);
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
@@ -106,7 +108,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'guessedImpulse', 'scaleReach']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
 
 const LARGE_RELATIVE = 0.3;
 

@@ -5,9 +5,11 @@ import { WAYS } from '../readings/ways.ts';
 import type { Dimension } from '../units/units.ts';
 import { budgetOfRecord, stated } from './run.ts';
 import { expanded, finiteSources } from '../metrology/coverage.ts';
+import { factorAt, launchAt } from './factors.ts';
 import type { Road } from './road.ts';
 import type { ChainStep, Reduction } from './results.ts';
 import type { Form, Swing, Way } from './shots.ts';
+import { WAY_WORDS } from './wayWords.ts';
 import type { Damping, Scale } from './swings.ts';
 
 function angleEquation(scale: Scale): string {
@@ -21,6 +23,16 @@ const EQUATION_OF_MOTION: Readonly<Record<Damping['law'], string>> = {
   quadratic: 'φ = θ′(0⁺)/ω_n: θ″ + β|θ′|θ′ + ω_n²[p sin θ + (1 − p)θ] = 0, solved back from θ_p',
   friction: 'φ = θ′(0⁺)/ω_n: θ″ + ω_n²[θ_f sgn θ′ + p sin θ + (1 − p)θ] = 0, solved back from θ_p',
 };
+
+function factorEquation(way: Way, tap: boolean): string {
+  switch (way) {
+    case 'geometry': return 'K = √(J κ)';
+    case 'taps': return tap ? 'K = mean of s_h I_h r_h/φ over the taps' : 'K = (mean of s_h I_h r_h/φ over the taps) · √(J_f κ_f/(J_c κ_c))';
+    case 'addedMasses': return 'K = √(J κ), J and κ from T_i²(κ + m_i g r_i) = 4π²(J + m_i r_i²)';
+    case 'weights': return 'K = κ T_0/2π, κ from known weights';
+    case 'adjustment': return 'K = √(J κ), J and κ by least squares over all evidence';
+  }
+}
 
 /** One record opened; its chain is empty where the stand is not known. */
 export function explained(swing: Swing, road: Road): NonNullable<Reduction['explained']> {
@@ -36,7 +48,7 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   const { damping, corrections, reported } = road;
   const chosen = { form: road.form, way: road.way };
   const c = swing.configuration;
-  const factorBy = { geometry: road.factors[road.form].geometry[c], taps: road.factors[road.form].taps[c] };
+  const factorBy = (w: Way): Uncertain | null => factorAt(road.factors[road.form], w, swing);
   const known = road.taps.find((tap) => tap.swing === swing)?.impulse ?? null;
   const reading: Dimension = scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads;
   const steps: ChainStep[] = [];
@@ -71,14 +83,14 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   form(chosen.form, false);
   form(other, true);
   const way = (w: Way, aside: boolean): void => {
-    const label = w === 'geometry' ? 'Calibration factor, geometry' : 'Calibration factor, taps';
-    const equation = w === 'geometry' ? 'K = √(J κ)' : tap ? 'K = mean of s_h I_h r_h/φ over the taps' : 'K = (mean of s_h I_h r_h/φ over the taps) · √(J_f κ_f/(J_c κ_c))';
-    add(`factor.${w}`, label, 'K', equation, 'calibrationFactor', factorBy[w], aside ? { aside: true } : {});
+    add(`factor.${w}`, `Calibration factor, ${WAY_WORDS[w]}`, 'K', factorEquation(w, tap), 'calibrationFactor', factorBy(w), aside ? { aside: true } : {});
   };
   way(chosen.way, false);
   way(chosen.way === 'geometry' ? 'taps' : 'geometry', true);
-  const K = factorBy[chosen.way];
-  if (K) add('moment', 'Angular impulse', 'H', 'H = K φ', 'angularImpulse', propagate(({ k, f }) => k * f, { k: K, f: swing.launch[chosen.form] }));
+  const K = factorBy(chosen.way);
+  const intercept = chosen.way === 'taps' ? road.factors[chosen.form].tapCalibration?.intercept ?? null : null;
+  add('intercept', 'Intercept of the taps’ line', 'a', 'φ = a + H/K over the taps', 'angle', intercept);
+  if (K) add('moment', 'Angular impulse', 'H', intercept ? 'H = K (φ − a)' : 'H = K φ', 'angularImpulse', propagate(({ k, f }) => k * f, { k: K, f: launchAt(road.factors[chosen.form], chosen.way, swing.launch[chosen.form]) }));
   add('arm', tap ? 'Lever arm of the tap' : 'Lever arm of the thrust', tap ? 'r_h' : 'r_t', '', 'length', road.arms[c]);
   const target = !tap && corrections.target.length > 0;
   if (!tap) for (const one of corrections.impulse ?? []) add(`correction.${one.id}`, one.label, one.symbol, one.equation, 'number', one.factor, { factor: one.factor.value });
@@ -91,7 +103,7 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   const out = tap ? 'Impulse of the tap, as read' : target && reported === 'delivered' ? 'Momentum delivered, as reported' : 'Impulse bit';
   add('impulse', out, 'I_bit', tap ? 'I = H/r_h' : target ? '' : `I_bit = H/r_t${all}`, 'impulse', road.impulse(swing, chosen.form, chosen.way));
   add('impulse.otherForm', `${out}, ${other === 'full' ? 'full pendulum' : 'small angle'}`, 'I_bit', '', 'impulse', road.impulse(swing, other, chosen.way), { aside: true });
-  add('impulse.otherWay', `${out}, by ${chosen.way === 'geometry' ? 'taps' : 'geometry'}`, 'I_bit', '', 'impulse', road.impulse(swing, chosen.form, chosen.way === 'geometry' ? 'taps' : 'geometry'), { aside: true });
+  add('impulse.otherWay', `${out}, by ${WAY_WORDS[chosen.way === 'geometry' ? 'taps' : 'geometry']}`, 'I_bit', '', 'impulse', road.impulse(swing, chosen.form, chosen.way === 'geometry' ? 'taps' : 'geometry'), { aside: true });
   if (tap) add('known', 'Impulse of the tap, as stated', 'I_h', 's_h I_h', 'impulse', known ?? exact(0), { aside: true });
   return known || !tap ? steps : steps.filter((s) => s.id !== 'known');
 }

@@ -4,7 +4,7 @@ import { WAYS } from '../readings/ways.ts';
 import type { Choices } from '../session/session.ts';
 import { propellantFactor, type Correction, type Corrections } from './corrections.ts';
 import type { BenchRead } from './entries.ts';
-import type { Factors } from './factors.ts';
+import { factorAt, launchAt, type Factors } from './factors.ts';
 import type { ImpulseOf } from './road.ts';
 import { impulseOfLaunch, type Form, type Swing } from './shots.ts';
 import { valueOf, type ConfigurationName } from './stand.ts';
@@ -18,10 +18,10 @@ export function impulses(
 ): { readonly delivered: ImpulseOf; readonly impulse: ImpulseOf } {
   const order = new Map(swings.filter((s) => s.record.kind === 'shot').map((s, i, all) => [s.record.id, all.length < 2 ? 0 : i / (all.length - 1)]));
   const delivered = once((swing, form, way) => {
-    const factor = factors[form][way][swing.configuration];
+    const factor = factorAt(factors[form], way, swing);
     const arm = arms[swing.configuration];
     if (!swing.launch || !factor || !arm) return null;
-    const bare = propagate(impulseOfLaunch, { factor, launch: swing.launch[form], arm });
+    const bare = propagate(impulseOfLaunch, { factor, launch: launchAt(factors[form], way, swing.launch[form]), arm });
     if (swing.record.kind === 'tap') return bare;
     if (corrections.impulse === null) return null;
     const y = throughAll(bare, corrections.impulse);

@@ -125,7 +125,8 @@ type Ready = PlanFacts & { readonly scale: Scale };
 
 const planned = (kind: RecordKind): SessionRecord => ({
   id: `plan.${kind}`, line: '', kind, kindBy: 'person', label: '', note: '', rest: null, firstSwing: null, restDown: null, firstSwingDown: null, nextSwings: [], time: null, voltage: null, pressure: null,
-  tapImpulse: null, problems: [], cells: [], edited: [], sheet: 'plan', sheetName: '',
+  tapImpulse: null, hammerIn: null, hammerRebound: null, hammerFollow: null, tapForce: null, tapDuration: null,
+  weight: null, loading: null, unloading: null, swingsTime: null, cycles: 1, amplitude: null, massHung: null, massHungAt: null, problems: [], cells: [], edited: [], sheet: 'plan', sheetName: '',
 });
 
 /** The road of one record that was never read: readings x from a rest of 0 to an impulse. */
@@ -162,7 +163,7 @@ function bareFacts(facts: Ready): Ready {
   const both = (y: ByConfiguration<Anchor>): ByConfiguration<Anchor> => ({ shots: bare(y.shots), taps: bare(y.taps) });
   const known = (y: ByConfiguration<Uncertain | null>): ByConfiguration<Anchor | null> => ({ shots: y.shots && bare(y.shots), taps: y.taps && bare(y.taps) });
   const list = (corrections: readonly Correction[]): readonly Correction[] => corrections.map((one) => ({ ...one, factor: bare(one.factor) }));
-  const of = (f: Factors): Factors => ({ ...f, geometry: known(f.geometry), taps: known(f.taps) });
+  const of = (f: Factors): Factors => ({ ...f, geometry: known(f.geometry), taps: known(f.taps), addedMasses: known(f.addedMasses), weights: known(f.weights), adjustment: known(f.adjustment), tapCalibration: null });
   const { scale, damping, corrections, factors } = facts;
   return {
     ...facts,

@@ -79,6 +79,8 @@ const FAMILY: Readonly<Record<RecordKind, Family>> = {
   blank: { id: 'readings.blanks', label: 'Readings of the blanks' },
   zero: { id: 'readings.zeros', label: 'Zeros taken as rest' },
   freeSwing: { id: 'readings.freeSwings', label: 'Readings of the free swings' },
+  weight: { id: 'readings.weights', label: 'Readings of the known weights' },
+  period: { id: 'readings.timings', label: 'Timed periods: starts and stops, and their scatter' },
 };
 export const familyOf = (kind: RecordKind): Family => FAMILY[kind];
 

@@ -5,6 +5,7 @@ import { exact, propagate, type Anchor, type Uncertain } from '../metrology/unce
 import type { Problem } from '../problems/problems.ts';
 import type { RecordResult, Reduction, RunResult } from './results.ts';
 import { unitNamed } from '../units/units.ts';
+import { factorAt, launchAt } from './factors.ts';
 import type { Road } from './road.ts';
 import { runOf, stated } from './run.ts';
 import type { Form, Way } from './shots.ts';
@@ -12,7 +13,7 @@ import type { Form, Way } from './shots.ts';
 export function recordResults({ swings, damping, taps, delivered, thruster, impulse, factors, corrections, pressures, form, way, setAside }: Road): readonly RecordResult[] {
   const hasTarget = corrections.target.length > 0;
   const knownOf = new Map(taps.map((tap) => [tap.swing.record.id, tap]));
-  const anchors = [factors.full, factors.smallAngle].flatMap((f) => [f.geometry.shots, f.geometry.taps, f.taps.shots, f.taps.taps]).filter((a): a is Anchor => a !== null);
+  const anchors = [factors.full, factors.smallAngle].flatMap((f) => [f.geometry, f.taps, f[way]]).flatMap((k) => [k.shots, k.taps]).filter((a): a is Anchor => a !== null);
   const finite = finiteSources([...anchors, damping.ratio.shots, damping.ratio.taps]);
   const result = (y: Uncertain | null): ReturnType<typeof expanded> | null => (y ? expanded(y, finite) : null);
   const impulses = swings.map((swing) => impulse(swing, form, way));
@@ -20,15 +21,14 @@ export function recordResults({ swings, damping, taps, delivered, thruster, impu
   return swings.map((swing, i): RecordResult => {
     const { record } = swing;
     const chosen = impulses[i]!;
-    const other: Way = way === 'geometry' ? 'taps' : 'geometry';
+    const by = (asked: Way): ReturnType<typeof result> => (asked === way ? chosenResult : result(impulse(swing, form, asked)));
     const otherForm: Form = form === 'full' ? 'smallAngle' : 'full';
     const chosenResult = result(chosen);
-    const otherResult = result(impulse(swing, form, other));
     const otherFormResult = result(impulse(swing, otherForm, way));
     const known = knownOf.get(record.id);
     const pressure = pressures.get(record.id);
-    const factor = factors[form][way][swing.configuration];
-    const moment = known ? known.angularImpulse : swing.launch && factor ? propagate(({ k, f }) => k * f, { k: factor, f: swing.launch[form] }) : null;
+    const factor = factorAt(factors[form], way, swing);
+    const moment = known ? known.angularImpulse : swing.launch && factor ? propagate(({ k, f }) => k * f, { k: factor, f: launchAt(factors[form], way, swing.launch[form]) }) : null;
     return {
       id: record.id, sheet: record.sheet, line: record.line, order: i + 1, kind: record.kind, kindBy: record.kindBy, label: record.label, note: record.note,
       setAside: setAside(record), problems: [],
@@ -41,8 +41,8 @@ export function recordResults({ swings, damping, taps, delivered, thruster, impu
       launch: swing.launch ? stated(swing.launch[form]) : null,
       full: form === 'full' ? chosenResult : otherFormResult,
       smallAngle: form === 'full' ? otherFormResult : chosenResult,
-      byGeometry: way === 'geometry' ? chosenResult : otherResult,
-      byTaps: way === 'taps' ? chosenResult : otherResult,
+      byGeometry: by('geometry'),
+      byTaps: by('taps'),
       impulseBit: chosenResult,
       delivered: hasTarget ? result(delivered(swing, form, way)) : chosenResult,
       thruster: swing.record.kind === 'tap' ? null : hasTarget ? result(thruster(swing)) : chosenResult,

@@ -7,7 +7,7 @@ import { PRESSURE_RATIO } from './pressure.ts';
 import type { ReadingSpread } from './readings.ts';
 import type { Difference, PeriodCheck, RecordResult, RunResult, SheetResult } from './results.ts';
 import { placeOf } from './sheets.ts';
-import type { TapCalibration } from './shots.ts';
+import type { TapCalibration } from './taps.ts';
 import type { Damping } from './swings.ts';
 
 /** A difference of more than this many standard uncertainties is worth a sentence. */

@@ -156,6 +156,98 @@ export interface Calibration {
   readonly expectedScatter: number | null;
 }
 
+export type EvidenceId = 'masses' | 'massesAndPeriod' | 'inertiaAndPeriod' | 'stiffnessAndPeriod' | 'film' | 'addedMasses' | 'weights' | 'taps' | 'tapsBefore' | 'tapsBetween' | 'tapsAfter' | 'adjustment';
+
+/** One way of knowing the calibration factor of the pendulum as fired, beside the one that counts. */
+export interface EvidenceRow {
+  readonly id: EvidenceId;
+  /** What choosing it sets; null: shown only. */
+  readonly choice: { readonly calibration: Session['choices']['calibration']; readonly route?: Session['choices']['route'] } | null;
+  readonly chosen: boolean;
+  /** K, N·m·s/rad. */
+  readonly factor: Result;
+  /** Taps, timings or weights that it rests on; 0 where it rests on entries alone. */
+  readonly readings: number;
+  /** (this − chosen)/chosen, with the u of that difference: what both share cancels; null of the chosen one. */
+  readonly apart: Stated | null;
+  /** Run mean that it gives, N·s. */
+  readonly mean: Result | null;
+}
+
+/** The least-squares adjustment of all evidence. */
+export interface AdjustmentTold {
+  readonly status: 'adjusted' | 'underdetermined' | 'notConverged' | 'contradictory';
+  readonly inertia: Stated | null;
+  readonly stiffness: Stated | null;
+  readonly ratio: Stated | null;
+  readonly chiSquared: number;
+  readonly dof: number;
+  /** Chance of a χ² as large or larger. */
+  readonly probability: number | null;
+  readonly items: readonly AdjustedItem[];
+  /** Item that lies farthest from what the others say of it, in the u of that. */
+  readonly pullsMost: string | null;
+  /** Shared inputs that the adjustment moves by more than a fifth of their u, largest first: shift in u. */
+  readonly moved: readonly { readonly label: string; readonly shift: number }[];
+}
+
+export interface AdjustedItem {
+  readonly id: string;
+  readonly label: string;
+  /** Normalised deviation; null where no other item checks it. */
+  readonly deviation: number | null;
+  /** Change of K if the item were left out, in u(K); null where the rest does not tell K. */
+  readonly pull: number | null;
+}
+
+/** Deflections by known weights. */
+export interface WeightsTold {
+  readonly weights: number;
+  /** κ, N·m/rad, of the configuration they hung on. */
+  readonly stiffness: Stated;
+  /** Intercept over its u. */
+  readonly interceptInU: number;
+  /** Half-width between loading and unloading, rad; null without both. */
+  readonly hysteresis: number | null;
+  readonly chiSquared: number;
+  readonly dof: number;
+  readonly points: readonly { readonly record: string; readonly moment: number; readonly angle: number; readonly unloading: boolean; readonly residual: number }[];
+}
+
+/** Periods with masses hung, of one configuration. */
+export interface AddedMassesTold {
+  readonly status: 'found' | 'tooFew' | 'negative' | 'notFound';
+  readonly inertia: Stated | null;
+  readonly stiffness: Stated | null;
+  readonly rows: readonly { readonly label: string; readonly timings: number; readonly period: Stated; readonly deviation: number | null }[];
+  /** Radius at which a small mass does not change the period, m. */
+  readonly sameRadius: number | null;
+  /** Where to hang the mass instead, m, where its place tells little; else null. */
+  readonly better: { readonly radius: number; readonly uInertia: number } | null;
+}
+
+/** The taps as a line. */
+export interface TapStudy {
+  readonly taps: number;
+  /** Different sizes, and sides of rest that they threw to. */
+  readonly sizes: number;
+  readonly sides: number;
+  /** About the line through the origin, by what belongs to each tap. */
+  readonly chiSquared: number;
+  readonly dof: number;
+  readonly probability: number | null;
+  /** √(χ²/ν) where above 1. */
+  readonly widened: number;
+  readonly intercept: { readonly t: number; readonly probability: number } | null;
+  readonly curvature: { readonly t: number; readonly probability: number } | null;
+  /** Relative sd of repeated taps of one size; null without repeats. */
+  readonly repeatability: { readonly relative: number; readonly dof: number } | null;
+  /** Residual in its u; place in the run: order, or s where all have a time. */
+  readonly points: readonly { readonly record: string; readonly place: number; readonly residual: number; readonly leverage: number }[];
+  readonly groups: readonly { readonly where: 'before' | 'between' | 'after'; readonly taps: number; readonly factor: Stated }[];
+  readonly drift: { readonly from: string; readonly to: string; readonly relative: Stated; readonly inU: number } | null;
+}
+
 export interface PeriodCheck {
   /** Undamped zero-amplitude period as timed, and as masses and lengths predict, s, of the configuration it was timed in. */
   readonly measured: Stated;
@@ -249,7 +341,14 @@ export interface Reduction {
   readonly damping: { readonly way: 'swings' | 'decrement' | 'ratio' | 'quadratic' | 'friction' | 'none'; readonly law: 'viscous' | 'quadratic' | 'friction'; /** β, 1/rad, and θ_f, rad. */ readonly quadratic: Stated; readonly friction: Stated; readonly ratio: Stated; readonly logDecrement: Stated; readonly records: number } | null;
   readonly periodCheck: PeriodCheck | null;
   readonly calibrations: { readonly geometry: Calibration | null; readonly taps: Calibration | null };
-  readonly chosen: 'geometry' | 'taps';
+  readonly chosen: Session['choices']['calibration'];
+  /** K of the pendulum as fired, by the chosen way. */
+  readonly chosenFactor: Result | null;
+  readonly evidence: readonly EvidenceRow[];
+  readonly adjustment: AdjustmentTold | null;
+  readonly weights: WeightsTold | null;
+  readonly addedMasses: AddedMassesTold | null;
+  readonly tapStudy: TapStudy | null;
   readonly difference: Difference | null;
   readonly runs: { readonly geometry: RunResult | null; readonly taps: RunResult | null };
   readonly run: RunResult | null;

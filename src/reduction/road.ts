@@ -4,7 +4,8 @@ import type { BenchRead } from './entries.ts';
 import type { Corrections } from './corrections.ts';
 import type { Factors } from './factors.ts';
 import type { SessionRecord } from './sheets.ts';
-import type { Form, Swing, TapKnown, Way } from './shots.ts';
+import type { Form, Swing, Way } from './shots.ts';
+import type { TapKnown } from './tapImpulse.ts';
 import type { ByConfiguration } from './stand.ts';
 import type { Damping, Scale } from './swings.ts';
 

@@ -157,13 +157,43 @@ interface Extra {
   readonly same: boolean;
 }
 
+/** What hangs on the pendulum beside itself: the calibration mass, and a hammer that stays where it struck. */
 function calibrationMass(bench: BenchRead, choices: Choices, gravity: Anchor): Extra {
   const hung = choices.calibrationMassHung;
   const m = valueOf(bench, 'calibrationMass');
   const r = valueOf(bench, 'calibrationMassDistance');
-  if (hung === 'never' || !m || !r || !gravity) return { shots: null, taps: null, same: true };
-  const part: Bare = { inertia: propagate(partInertia, { m, r, J: valueOf(bench, 'calibrationMassInertia') ?? exact(0) }), moment: propagate(partMoment, { m, r }) };
-  return { shots: hung === 'taps' ? null : part, taps: hung === 'shots' ? null : part, same: hung === 'always' };
+  const part = hung === 'never' || !m || !r || !gravity ? null : partOf(m, r, valueOf(bench, 'calibrationMassInertia') ?? exact(0));
+  const hammer = stuckHammer(bench, choices);
+  return { shots: hung === 'taps' ? null : part, taps: both(hung === 'shots' ? null : part, hammer), same: hammer === null && (hung === 'always' || part === null) };
+}
+
+const partOf = (m: Uncertain, r: Uncertain, J: Uncertain): Bare => ({ inertia: propagate(partInertia, { m, r, J }), moment: propagate(partMoment, { m, r }) });
+const both = (a: Bare | null, b: Bare | null): Bare | null =>
+  a && b ? { inertia: combine([[1, a.inertia], [1, b.inertia]]), moment: combine([[1, a.moment], [1, b.moment]]) } : a ?? b;
+
+function stuckHammer(bench: BenchRead, choices: Choices): Bare | null {
+  const [m, r] = [valueOf(bench, 'hammerMass'), valueOf(bench, 'tapLeverArm')];
+  return choices.hammerAfter === 'stays' && m && r ? partOf(m, r, exact(0)) : null;
+}
+
+/** J and κ of the pendulum as tapped less those as fired; exact zeros where the two are one. */
+export interface Change {
+  readonly inertia: Uncertain;
+  readonly stiffness: Uncertain;
+}
+
+export function changeOfConfiguration(bench: BenchRead, choices: Choices, stand: Stand): Change | null {
+  const { masses, gravity } = stand;
+  if (masses) {
+    if (masses.shots === masses.taps) return { inertia: exact(0), stiffness: exact(0) };
+    return { inertia: combine([[1, masses.taps.inertia], [-1, masses.shots.inertia]]), stiffness: combine([[1, masses.taps.stiffness], [-1, masses.shots.stiffness]]) };
+  }
+  if (!gravity) return null;
+  const extra = calibrationMass(bench, choices, gravity);
+  if (extra.same) return { inertia: exact(0), stiffness: exact(0) };
+  const less = (a: Uncertain | undefined, b: Uncertain | undefined): Uncertain => combine([...(a ? [[1, a] as const] : []), ...(b ? [[-1, b] as const] : [])]);
+  const moment = less(extra.taps?.moment, extra.shots?.moment);
+  return { inertia: less(extra.taps?.inertia, extra.shots?.inertia), stiffness: choices.restoring === 'flexureAlone' ? exact(0) : propagate(({ m, g }) => m * g, { m: moment, g: gravity }) };
 }
 
 /**
@@ -171,8 +201,8 @@ function calibrationMass(bench: BenchRead, choices: Choices, gravity: Anchor): E
  * Route A keeps κ of the masses and takes J from the period, route B keeps J and takes κ; the other configuration
  * follows by the calibration mass, whose own J and κ are known.
  */
-export function standByRoute(bench: BenchRead, stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[]): Readonly<Record<ConfigurationName, Body>> | null {
-  if (choices.form === 'periodAndStiffness') return bodiesOfPeriod(bench, stand, choices, period, problems);
+export function standByRoute(bench: BenchRead, stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[], weighed: Uncertain | null = null): Readonly<Record<ConfigurationName, Body>> | null {
+  if (choices.form === 'periodAndStiffness') return bodiesOfPeriod(bench, stand, choices, period, problems, weighed);
   const masses = stand.masses;
   if (!masses) return null;
   if (choices.route === 'masses' || !period) return choices.route === 'masses' ? masses : null;
@@ -205,8 +235,8 @@ export function standByRoute(bench: BenchRead, stand: Stand, choices: Choices, p
  * A body known only by its period and its static stiffness (route C): J = κ T₀²/4π². κ as typed, or from the pull per
  * deflection: κ = (dF/dx) r_w R, small deflections. The other configuration differs by the calibration mass.
  */
-function bodiesOfPeriod(bench: BenchRead, stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[]): ByConfiguration<Body> | null {
-  const typed = valueOf(bench, 'staticStiffness') ?? stiffnessOfPull(bench);
+function bodiesOfPeriod(bench: BenchRead, stand: Stand, choices: Choices, period: Uncertain | null, problems: Problem[], weighed: Uncertain | null): ByConfiguration<Body> | null {
+  const typed = typedStiffness(bench) ?? weighed;
   if (!typed) problems.push(problem('stiffness-missing', 'stops', { entry: 'staticStiffness' }, {}));
   if (!typed || !period || !stand.gravity) return null;
   const inertia = propagate(inertiaOfPeriod, { stiffness: typed, period });
@@ -230,6 +260,9 @@ function bodiesOfPeriod(bench: BenchRead, stand: Stand, choices: Choices, period
   problems.push(problem('bench-inertia-not-positive', 'stops', { entry: 'period' }, { configuration: bad === shots ? 'shots' : 'taps', value: bad.inertia.value }));
   return null;
 }
+
+/** κ as typed, or from the pull per deflection. */
+export const typedStiffness = (bench: BenchRead): Uncertain | null => valueOf(bench, 'staticStiffness') ?? stiffnessOfPull(bench);
 
 function stiffnessOfPull(bench: BenchRead): Uncertain | null {
   const [slope, arm, radius] = [valueOf(bench, 'forcePerDeflection'), valueOf(bench, 'pullArm'), valueOf(bench, 'readingRadius') ?? valueOf(bench, 'rulerHeight') ?? valueOf(bench, 'sensorHeight')];

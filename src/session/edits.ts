@@ -39,6 +39,9 @@ export const setEntry = (name: EntryName, patch: Partial<Entry>): Edit => (sessi
 export const setChoice = <Name extends keyof Choices>(name: Name, value: Choices[Name]): Edit => (session) =>
   ({ ...session, choices: { ...session.choices, [name]: value } });
 
+/** Several choices in one step. */
+export const setChoices = (choices: Partial<Choices>): Edit => (session) => ({ ...session, choices: { ...session.choices, ...choices } });
+
 export const setFreeSwing = (text: string): Edit => (session) => ({ ...session, freeSwing: text });
 
 export const addPart = (name = ''): Edit => (session) => {

@@ -158,6 +158,7 @@ class Reading {
       seen.add(sheet['id']);
       const delimiter = this.take<Sheet['delimiter']>(`${where}.delimiter`, sheet['delimiter'], isOneOf([',', ';', '\t'] as const), undefined);
       const decimal = this.take<Sheet['decimal']>(`${where}.decimal`, sheet['decimal'], isOneOf(['.', ','] as const), undefined);
+      const taken = this.take<Sheet['taken']>(`${where}.taken`, sheet['taken'], isOneOf(['before', 'after'] as const), undefined);
       const kindOfAll = sheet['kindOfAll'] === null ? null : this.take(`${where}.kindOfAll`, sheet['kindOfAll'], isOneOf(RECORD_KINDS), null);
       return [{
         id: sheet['id'],
@@ -169,6 +170,7 @@ class Reading {
         ...(decimal === undefined ? {} : { decimal }),
         columns: this.columns(`${where}.columns`, sheet['columns']),
         kindOfAll,
+        ...(taken === undefined ? {} : { taken }),
         edits: this.edits(`${where}.edits`, sheet['edits']),
         added: this.added(`${where}.added`, sheet['added']),
       }];

@@ -56,7 +56,19 @@ export interface Choices {
   readonly route: 'masses' | 'massesAndPeriod' | 'inertiaAndPeriod';
   readonly periodTimedAs: 'shots' | 'taps';
   readonly calibrationMassHung: 'never' | 'taps' | 'shots' | 'always';
-  readonly calibration: 'geometry' | 'taps';
+  /** By what the calibration factor is known: masses, lengths and period by the route; taps; masses hung and timed; known weights; the least-squares adjustment of all. */
+  readonly calibration: 'geometry' | 'taps' | 'addedMasses' | 'weights' | 'adjustment';
+  /** Taps as a line through the origin, or with an intercept that is taken off every launch. */
+  readonly tapLine: 'throughOrigin' | 'withIntercept';
+  /** Taps before and after the firings: all together, the mean with half their difference as limits, or interpolated to each shot. */
+  readonly tapDrift: 'together' | 'mean' | 'interpolated';
+  /** Known weights: by a thread over a pulley, or hung from a horizontal outrigger. */
+  readonly weightsPull: 'thread' | 'outrigger';
+  readonly weightsHungAs: 'shots' | 'taps';
+  /** Swinging hammer: all its mass at one point, or a body with its own inertia. */
+  readonly hammerForm: 'compact' | 'compound';
+  /** The hammer leaves the pendulum again, or stays on it. */
+  readonly hammerAfter: 'leaves' | 'stays';
   readonly swingForm: 'full' | 'smallAngle';
 }
 
@@ -76,6 +88,8 @@ export interface Sheet {
   readonly columns: readonly ColumnMeaning[];
   /** Kind of every record that has no kind of its own; null: told from what is filled in. */
   readonly kindOfAll: RecordKind | null;
+  /** When its taps were struck, against the firings; absent: in the order of the sheets, or by their times. */
+  readonly taken?: 'before' | 'after';
   /** Cells typed over, by line of the text and column index. */
   readonly edits: Readonly<Record<string, Readonly<Record<number, string>>>>;
   /** Rows typed by hand, after those of the text; addressed as line `+1`, `+2`, … by their id. */
@@ -129,6 +143,12 @@ export const FIRST_CHOICES: Choices = {
   periodTimedAs: 'shots',
   calibrationMassHung: 'never',
   calibration: 'geometry',
+  tapLine: 'throughOrigin',
+  tapDrift: 'together',
+  weightsPull: 'thread',
+  weightsHungAs: 'shots',
+  hammerForm: 'compact',
+  hammerAfter: 'leaves',
   swingForm: 'full',
 };
 
@@ -157,7 +177,13 @@ export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices
   route: ['masses', 'massesAndPeriod', 'inertiaAndPeriod'],
   periodTimedAs: ['shots', 'taps'],
   calibrationMassHung: ['never', 'taps', 'shots', 'always'],
-  calibration: ['geometry', 'taps'],
+  calibration: ['geometry', 'taps', 'addedMasses', 'weights', 'adjustment'],
+  tapLine: ['throughOrigin', 'withIntercept'],
+  tapDrift: ['together', 'mean', 'interpolated'],
+  weightsPull: ['thread', 'outrigger'],
+  weightsHungAs: ['shots', 'taps'],
+  hammerForm: ['compact', 'compound'],
+  hammerAfter: ['leaves', 'stays'],
   swingForm: ['full', 'smallAngle'],
 };
 export function emptySession(): Session {

@@ -52,9 +52,9 @@ describe('hand tables', () => {
     ['units-row.csv', ['label', 'voltage', 'rest', 'firstSwing', 'nextSwing', 'pressure', 'note']],
     ['preamble.csv', ['label', 'rest', 'firstSwing', 'note']],
     ['taps-by-impulse.csv', ['label', 'tapImpulse', 'firstSwing']],
-    ['taps-by-hammer-angle.csv', ['label', 'ignored', 'ignored', 'firstSwing']],
+    ['taps-by-hammer-angle.csv', ['label', 'hammerIn', 'hammerRebound', 'firstSwing']],
     ['free-swing.csv', ['label', 'firstSwing', 'nextSwing']],
-    ['period-timings.csv', ['ignored']],
+    ['period-timings.csv', ['swingsTime']],
     ['angles.csv', ['label', 'rest', 'firstSwing', 'nextSwing']],
     ['bench-in-japanese.csv', ['label', 'kind', 'time', 'voltage', 'rest', 'firstSwing', 'nextSwing', 'note']],
   ])('%s', (name, expected) => {
@@ -78,9 +78,9 @@ describe('hand tables', () => {
   });
 
   test('a unit that is not known is told', () => {
-    const { proposals, problems } = drop('Shot,Rest (px),First swing (px)\n1,12.0,15.5\n2,12.0,15.0\n');
-    expect(proposals[1]?.because.facts).toMatchObject({ unknownUnit: 'px', unitFrom: 'assumed' });
-    expect(problems[0]).toMatchObject({ code: 'column-unit-assumed', facts: { unknownUnit: 'px' } });
+    const { proposals, problems } = drop('Shot,Rest (div),First swing (div)\n1,12.0,15.5\n2,12.0,15.0\n');
+    expect(proposals[1]?.because.facts).toMatchObject({ unknownUnit: 'div', unitFrom: 'assumed' });
+    expect(problems[0]).toMatchObject({ code: 'column-unit-assumed', facts: { unknownUnit: 'div' } });
   });
 
   test('swings with numbers are in order', () => {

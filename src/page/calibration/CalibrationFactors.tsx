@@ -1,109 +1,30 @@
 /** The calibration factor by geometry and by taps, side by side, each with the run mean that it gives, and the choice between them. */
-import { useId } from 'react';
 import type { Calibration, Difference, Reduction } from '../../reduction/results.ts';
-import { setChoice } from '../../session/edits.ts';
+import { WAY_WORDS } from '../../reduction/wayWords.ts';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
-import { useActions, useStoreAtOnce } from '../../store/hooks.tsx';
-import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
+import { plain, withPlusMinus } from '../../units/format.ts';
 import type { Unit } from '../../units/units.ts';
-import { Aligned, alignedColumn } from '../stated/Aligned.tsx';
-import type { AlignedColumn } from '../stated/Aligned.tsx';
-import { coverageFactor, degreesOfFreedom, PERCENT, PLAIN, timesU } from '../stated/numberWords.ts';
-import { SheetTable } from '../stated/SheetTable.tsx';
-import styles from './calibration.module.css';
-
-type Way = Calibration['way'];
-
-const WAYS: readonly { readonly way: Way; readonly label: string }[] = [
-  { way: 'geometry', label: 'by geometry' },
-  { way: 'taps', label: 'by taps' },
-];
-
-const WHAT: Readonly<Record<Way, string>> = {
-  geometry: 'masses, lengths and period',
-  taps: 'taps of known impulse',
-};
+import { PERCENT, PLAIN, timesU } from '../stated/numberWords.ts';
+import { EvidenceTable } from './EvidenceTable.tsx';
 
 export function CalibrationFactors({ reduction }: { readonly reduction: Reduction }) {
-  const { calibrations, runs, difference } = reduction;
-  const choice = useStoreAtOnce((state) => state.session.choices.calibration);
-  const { change } = useActions();
-  const group = useId();
-  const unit = impulseUnit(reduction);
-  const both = WAYS.map(({ way }) => calibrations[way]);
-  const factorUnit = chooseUnit(both.map((calibration) => calibration?.factor.value ?? 0), 'calibrationFactor');
-  const factors = alignedColumn(both.map((calibration) => calibration && { value: calibration.factor.value, spread: calibration.factor.U, unit: factorUnit }));
-  const means = alignedColumn(WAYS.map(({ way }) => {
-    const run = runs[way];
-    return run && { value: run.mean.value, spread: run.mean.U, unit };
-  }));
+  const { calibrations, difference } = reduction;
   return (
     <>
-      <fieldset>
-        <legend className={styles.legend}>Calibration factor of the pendulum as fired, and the run mean that it gives</legend>
-        <SheetTable label="Calibration factors">
-          <thead>
-            <tr>
-              <th scope="col">Taken</th>
-              <th scope="col">Calibration factor K ± U</th>
-              <th scope="col">k</th>
-              <th scope="col">ν</th>
-              <th scope="col">Change of configuration ± u</th>
-              <th scope="col">Run mean ± U</th>
-            </tr>
-          </thead>
-          <tbody>
-            {WAYS.map(({ way, label }, row) => (
-              <tr key={way}>
-                <th scope="row">
-                  <label className={styles.choice}>
-                    <input
-                      type="radio"
-                      name={group}
-                      checked={choice === way}
-                      onChange={() => change(`impulse bits ${label}`, setChoice('calibration', way))}
-                    />
-                    {label} <span className="quiet">{WHAT[way]}</span>
-                  </label>
-                </th>
-                <FactorCells calibration={calibrations[way]} factors={factors} row={row} />
-                <td><Aligned column={means} row={row} /></td>
-              </tr>
-            ))}
-          </tbody>
-        </SheetTable>
-      </fieldset>
+      <EvidenceTable reduction={reduction} />
       {calibrations.taps !== null && <p>{scatterSentence(calibrations.taps)}</p>}
       <p>{difference === null ? 'With a bench and taps of known impulse both factors stand here side by side.' : differenceSentence(difference)}</p>
-      {difference !== null && <Consequence reduction={reduction} unit={unit} />}
+      {difference !== null && <Consequence reduction={reduction} unit={impulseUnit(reduction)} />}
     </>
   );
 }
 
-interface FactorCellsProps {
-  readonly calibration: Calibration | null;
-  readonly factors: AlignedColumn;
-  readonly row: number;
-}
-
-function FactorCells({ calibration, factors, row }: FactorCellsProps) {
-  if (calibration === null) return <td colSpan={4} className="quiet">not known</td>;
-  const { factor, change } = calibration;
-  return (
-    <>
-      <td><Aligned column={factors} row={row} /></td>
-      <td className="num">{coverageFactor(factor.k)}</td>
-      <td className="num">{degreesOfFreedom(factor.dof)}</td>
-      <td className="num">{calibration.way === 'taps' ? withPlusMinus(change.value, change.u, PLAIN) : '–'}</td>
-    </>
-  );
-}
-
-function scatterSentence({ taps, scatter, expectedScatter }: Calibration): string {
+function scatterSentence({ taps, scatter, expectedScatter, change }: Calibration): string {
   const count = `${taps} ${taps === 1 ? 'tap' : 'taps'} of known impulse`;
-  if (scatter === null) return `${count}; their scatter is not known.`;
+  const moved = change.value === 1 && change.u === 0 ? '' : ` From the pendulum as tapped to the one fired the factor changes by ${withPlusMinus(change.value, change.u, PLAIN)} (± u).`;
+  if (scatter === null) return `${count}; their scatter is not known.${moved}`;
   const expected = expectedScatter === null ? '' : `; their own uncertainties predict ${plain(expectedScatter, PERCENT, 2)}`;
-  return `${count}, scattering by ${plain(scatter, PERCENT, 2)} (standard deviation)${expected}.`;
+  return `${count}, scattering by ${plain(scatter, PERCENT, 2)} (standard deviation)${expected}.${moved}`;
 }
 
 /** Up to this many standard uncertainties two results agree; beyond the second, chance no longer explains it. */
@@ -126,7 +47,7 @@ function Consequence({ reduction, unit }: { readonly reduction: Reduction; reado
   return (
     <p className="quiet">
       Run mean by geometry {withPlusMinus(geometry.mean.value, geometry.mean.U, unit)}, by taps {withPlusMinus(taps.mean.value, taps.mean.U, unit)} (± U, 95 %);
-      {' '}the one {reduction.chosen === 'taps' ? 'by taps' : 'by geometry'} counts.
+      {' '}the one by {WAY_WORDS[reduction.chosen]} counts.
     </p>
   );
 }

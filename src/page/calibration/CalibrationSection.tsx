@@ -32,8 +32,8 @@ function TapsFigure({ reduction }: { readonly reduction: Reduction }) {
   const selected = useStore((state) => state.selected);
   const { select } = useActions();
   const inks = useInks();
-  const { records, chosen, calibrations, ranges } = reduction;
-  const figure = useMemo(() => tapsAndShots({ records, chosen, calibrations, ranges }, inks), [records, chosen, calibrations, ranges, inks]);
+  const { records, chosen, calibrations, ranges, chosenFactor } = reduction;
+  const figure = useMemo(() => tapsAndShots({ records, chosen, calibrations, ranges, chosenFactor }, inks), [records, chosen, calibrations, ranges, chosenFactor, inks]);
   if (figure.marks.length === 0) return null;
   return <FigureView figure={figure} inks={inks} selected={selected} onSelect={select} onOpen={() => goToElement('record')} />;
 }

@@ -2,6 +2,7 @@
 import { useLayoutEffect, useRef } from 'react';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
 import type { Reduction } from '../../reduction/results.ts';
+import { WAY_WORDS } from '../../reduction/wayWords.ts';
 import { useStore } from '../../store/hooks.tsx';
 import { plain } from '../../units/format.ts';
 import { coverageFactor } from '../stated/numberWords.ts';
@@ -45,7 +46,7 @@ function Mean({ reduction }: { readonly reduction: Reduction | null }) {
         <span className="num">± is U, 95 %, k = {coverageFactor(run.mean.k)}</span>
         <span className="num">n = {run.n} of {run.of}</span>
         {run.scatter !== null && <span className="num">scatter s = {plain(run.scatter, unit, 2)}</span>}
-        <span>{chosen === 'taps' ? 'calibrated by taps' : 'calibrated by geometry'}</span>
+        <span>calibrated by {WAY_WORDS[chosen]}</span>
       </span>
     </>
   );

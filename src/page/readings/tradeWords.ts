@@ -13,6 +13,8 @@ export const KINDS_LABELS: Readonly<Record<RecordKind, string>> = {
   blank: 'blanks',
   zero: 'zeros',
   freeSwing: 'free swings',
+  weight: 'known weights',
+  period: 'timed periods',
 };
 
 /** How the kind of a record is known, shown after it: "shot · column". */

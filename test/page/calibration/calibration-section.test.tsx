@@ -14,7 +14,8 @@ test('both calibration factors stand side by side, each with the run mean that i
   expect(geometry).toHaveTextContent('1.252 ± 0.031 mN·s');
   const taps = within(table).getByRole('row', { name: /by taps/ });
   expect(taps).toHaveTextContent('10.08 ± 0.20 mN·m·s/rad');
-  expect(taps).toHaveTextContent('0.9804 ± 0.0010');
+  expect(taps).toHaveTextContent('(0.8 ± 1.5)');
+  expect(screen.getByText(/the factor changes by 0\.9804 ± 0\.0010/)).toBeVisible();
   expect(taps).toHaveTextContent('1.262 ± 0.027 mN·s');
 });
 
@@ -52,7 +53,7 @@ test('the taps’ scatter is held against what their own uncertainties predict',
 
 test('without taps the factor by taps is not known', async () => {
   await withReduction(<CalibrationSection />, {
-    reduction: { ...REDUCTION, difference: null, calibrations: { ...REDUCTION.calibrations, taps: null }, runs: { ...REDUCTION.runs, taps: null } },
+    reduction: { ...REDUCTION, difference: null, calibrations: { ...REDUCTION.calibrations, taps: null }, evidence: REDUCTION.evidence.filter(({ id }) => id !== 'taps'), runs: { ...REDUCTION.runs, taps: null } },
   });
   expect(screen.getByRole('row', { name: /by taps/ })).toHaveTextContent('not known');
 });
