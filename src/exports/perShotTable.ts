@@ -1,5 +1,5 @@
 /** The per-shot impulse table: columns with their units, one row a record, and the whole as a CSV with its conditions on top. */
-import { WAY_RESTS_ON } from '../reduction/wayWords.ts';
+import { EVIDENCE_NAMES, WAY_RESTS_ON } from '../reduction/wayWords.ts';
 import type { RecordResult, Reduction, Result, RunResult, Stated } from '../reduction/results.ts';
 import { sentence } from '../problems/sentences.ts';
 import type { Problem } from '../problems/problems.ts';
@@ -176,6 +176,10 @@ function runLines(run: RunResult, reduction: Reduction): readonly string[] {
   if (run.scatter !== null) lines.push(`standard deviation of the shots ${tenDigits(run.scatter)} ${SI}`);
   for (const calibration of [reduction.calibrations.geometry, reduction.calibrations.taps]) {
     if (calibration) lines.push(`calibration factor by ${WAY_RESTS_ON[calibration.way]}: ${tenDigits(calibration.factor.value)} N·m·s/rad, u ${tenDigits(calibration.factor.u)} N·m·s/rad`);
+  }
+  for (const row of reduction.evidence) {
+    if (row.chosen || row.id === 'masses' || row.id === 'taps') continue;
+    lines.push(`beside it, ${EVIDENCE_NAMES[row.id]}: K ${tenDigits(row.factor.value)} N·m·s/rad, u ${tenDigits(row.factor.u)} N·m·s/rad${row.mean ? `, run mean ${tenDigits(row.mean.value)} ${SI}` : ''}`);
   }
   return lines;
 }

@@ -14,8 +14,14 @@ export const COVERAGE_PROBABILITY = 0.95;
  */
 export function effectiveDegreesOfFreedom(parts: Iterable<readonly [contribution: number, dof: number]>, u: number): number {
   let sum = 0;
-  for (const [part, dof] of parts) if (Number.isFinite(dof)) sum += part ** 4 / dof;
-  return sum === 0 ? Infinity : u ** 4 / sum;
+  let least = Infinity;
+  for (const [part, dof] of parts) {
+    if (!Number.isFinite(dof)) continue;
+    sum += part ** 4 / dof;
+    least = Math.min(least, dof);
+  }
+  // No less than the least ν_i, whatever the rounding where large contributions cancel.
+  return sum === 0 ? Infinity : Math.max(least, u ** 4 / sum);
 }
 
 /** Coverage factor k = t_p(ν) for 95 %. Valid: ν > 0. Source: JCGM 100:2008 G.3, Table G.2. */

@@ -2,6 +2,8 @@
  * A pendulum that is already swinging when the shot fires. Amplitudes and jumps in rad (or any one unit of reading);
  * speeds as v/ω_n in the same unit, positive along the thrust.
  */
+import { speedOnTheWay } from './dampingLaws.ts';
+import type { Damping } from './dampingLaws.ts';
 
 /** A swing at the instant of the shot. */
 export interface SwingAtShot {
@@ -36,9 +38,9 @@ export function jumpFromPeak({ peak, peakDelay, dampingRatio }: Readonly<Record<
   return nu * Math.sqrt(square) - (speed + dampingRatio * deflection);
 }
 
-/** Deflection and speed s = ω_n (t − t_f) after a state, small swing; s < 0 goes back. Valid: 0 ≤ ζ < 1. */
+/** Deflection and speed s = ω_n (t − t_f) after a state, small swing; s < 0 goes back. Valid: ζ < 1, from 0 (down to −0.5 for half-differences about it). */
 export function swingLater({ deflection, speed }: SwingAtShot, dampingRatio: number, s: number): SwingAtShot {
-  if (!(dampingRatio >= 0 && dampingRatio < 1)) throw new RangeError(`swing at the shot: damping ratio ${dampingRatio} is not in 0 … 1`);
+  if (!(dampingRatio > -0.5 && dampingRatio < 1)) throw new RangeError(`swing at the shot: damping ratio ${dampingRatio} is not in 0 … 1`);
   const nu = Math.sqrt((1 - dampingRatio) * (1 + dampingRatio));
   const fall = Math.exp(-dampingRatio * s);
   const [sine, cosine] = [Math.sin(nu * s) / nu, Math.cos(nu * s)];
@@ -47,6 +49,25 @@ export function swingLater({ deflection, speed }: SwingAtShot, dampingRatio: num
     speed: fall * (speed * (cosine - dampingRatio * sine) - deflection * sine),
   };
 }
+
+/**
+ * The swing at the shot from its last maximum A₀ on the side of the thrust, and the phase ω_d (t_f − t_max) since.
+ *
+ * Valid: 0 ≤ ζ < 1 (as swingLater), small swing: to A₀²/16 of the phase. Source: derived.
+ * @throws RangeError where the damping leaves no phase.
+ */
+export const swingOfPhase = ({ amplitude, phase, ratio }: Readonly<Record<'amplitude' | 'phase' | 'ratio', number>>): SwingAtShot =>
+  swingLater({ deflection: amplitude, speed: 0 }, ratio, phase / Math.sqrt((1 - ratio) * (1 + ratio)));
+
+/**
+ * Jump ΔA = [θ′(0⁺) − θ′(0⁻)]/ω_n from the first maximum θ_p after the shot and the swing at it, for the full pendulum with all three dampings:
+ * the speed with which a swing to θ_p passes the deflection, less the speed before the shot.
+ *
+ * Valid: as speedOnTheWay. Equals jumpFromPeak for a small viscous swing, without a time of the peak. Source: methods 1.7, derived.
+ * @throws RangeError where no swing from the deflection turns at θ_p.
+ */
+export const jumpToMaximum = (firstSwing: number, { deflection, speed }: SwingAtShot, damping: Damping, gravityShare: number): number =>
+  speedOnTheWay(firstSwing, deflection, damping, gravityShare).launch - speed;
 
 /** Points of the mean over the phase; the integrand is periodic, and so many leave rounding up to A₀ = 0.9 ΔA. */
 const PHASES = 512;

@@ -1,4 +1,5 @@
 /** Viscous damping: the first swing's correction, log decrement and ratio, and the ratio from successive turning points. */
+import { rootBetween } from '../numeric/roots.ts';
 import { nextTurningPoint, peakTimeOfSmall } from './launch.ts';
 
 /**
@@ -27,8 +28,27 @@ export function ratioOfDecrement(logDecrement: number): number {
   return logDecrement / Math.hypot(2 * Math.PI, logDecrement);
 }
 
-/** q = e^{−δ/2}: half a cycle's decay of the amplitude, viscous. Valid: |ζ| < 1 (below 0 for half-differences). */
-export const ratioToHalfDecay = ({ ratio }: Readonly<Record<'ratio', number>>): number => Math.exp((-Math.PI * ratio) / Math.sqrt(1 - ratio * ratio));
+/** The least ω_n t_p that is looked for: ζ some 10⁷. */
+const LEAST_PEAK_TIME = 1e-6;
+
+/**
+ * Damping ratio from the time of the first maximum, ω_n t_p: t_p = arccos ζ/(ω_n √(1 − ζ²)), arccosh ζ/(ω_n √(ζ² − 1)) above critical.
+ *
+ * It falls all the way, so that it tells every damping; weak damping least well, ∂ζ/∂(ω_n t_p) = −1 at ζ = 0.
+ * Valid: 1e-6 < ω_n t_p ≤ π/2 (ζ from 0; a little longer, to ζ = −0.5, for half-differences). Source: inverse of peakTimeOfSmall, methods 1.3.
+ * @throws RangeError outside.
+ */
+export function ratioOfPeakTime(peakTime: number): number {
+  if (!(peakTime > LEAST_PEAK_TIME)) throw new RangeError(`damping ratio: ω_n t_p ${peakTime} is not above ${LEAST_PEAK_TIME}`);
+  let above = 1;
+  while (peakTimeOfSmall(above) > peakTime) above *= 2;
+  const found = rootBetween((ratio) => peakTimeOfSmall(ratio) - peakTime, above === 1 ? -0.5 : above / 2, above);
+  if (found.status !== 'found') throw new RangeError(`damping ratio: ω_n t_p ${peakTime} is that of no damped swing`);
+  return found.x;
+}
+
+/** q = e^{−δ/2}: half a cycle's decay of the amplitude, viscous; 0 where it is damped critically or more and has no other side. Valid: ζ > −1 (below 0 for half-differences). */
+export const ratioToHalfDecay = ({ ratio }: Readonly<Record<'ratio', number>>): number => (ratio >= 1 ? 0 : Math.exp((-Math.PI * ratio) / Math.sqrt(1 - ratio * ratio)));
 
 /**
  * Logarithmic decrement per cycle from two swings on one side: δ = ln(x₀/x_n)/n.

@@ -113,12 +113,21 @@ function checkTurningPoint(angle: number, { ratio, quadratic, friction }: Dampin
  * Source: the equation above; checked against pendulum-ode-table and against another integrator.
  * @throws RangeError where θ_p is not a turning point of a swing from rest.
  */
-export function launchOfDampedSwing(firstSwing: number, damping: Damping, gravityShare: number): Launch {
-  checkTurningPoint(firstSwing, damping, gravityShare);
-  if (firstSwing === 0) return { launch: 0, peakTime: damping.friction === 0 ? peakTimeOfSmall(damping.ratio) : 0 };
-  const sign = Math.sign(firstSwing);
-  const peak = Math.abs(firstSwing);
-  if (!(restoring(peak, gravityShare) + damping.friction > 0)) throw new RangeError(`damped swing: nothing turns it back at ${firstSwing} rad`);
+export const launchOfDampedSwing = (firstSwing: number, damping: Damping, gravityShare: number): Launch => speedOnTheWay(firstSwing, 0, damping, gravityShare);
+
+/**
+ * Speed θ′/ω_n at the angle `at` on the way to the turning point θ_p, and ω_n t from there to it: backward from the peak.
+ *
+ * Valid: as launchOfDampedSwing; `at` between the turning point before and θ_p, on either side of the rest.
+ * @throws RangeError where that swing never was at `at`.
+ */
+export function speedOnTheWay(turningPoint: number, at: number, damping: Damping, gravityShare: number): Launch {
+  checkTurningPoint(turningPoint, damping, gravityShare);
+  if (turningPoint === 0 && at === 0) return { launch: 0, peakTime: damping.friction === 0 ? peakTimeOfSmall(damping.ratio) : 0 };
+  const sign = Math.sign(turningPoint);
+  const peak = Math.abs(turningPoint);
+  const to = sign * at;
+  if (!(to < peak) || !(restoring(peak, gravityShare) + damping.friction > 0)) throw new RangeError(`damped swing: nothing turns it back at ${turningPoint} rad from ${at} rad`);
   const leg: Leg = { drag: -2 * damping.ratio, square: damping.quadratic, bias: damping.friction, p: gravityShare };
   let angle = peak;
   let speed = 0;
@@ -126,16 +135,20 @@ export function launchOfDampedSwing(firstSwing: number, damping: Damping, gravit
   for (let step = 0; step < STEPS; step++) {
     expand(angle, speed, leg);
     const h = stepLength(peak);
-    const next = seriesAt(h, 0);
-    if (next <= 0) {
-      const root = next === 0 ? h : rootWithin(h, 0);
+    const [next, nextSpeed] = [seriesAt(h, 0), seriesAt(h, 1)];
+    // Backward in time the angle falls until the turning point before, which may come within this step.
+    const end = nextSpeed < 0 ? h : rootWithin(h, 1);
+    if ((end === h ? next : seriesAt(end, 0)) <= to) {
+      y[0]! -= to;
+      const root = end === h && next === to ? h : rootWithin(end, 0);
       return { launch: -sign * seriesAt(root, 1), peakTime: time + root };
     }
-    speed = seriesAt(h, 1);
+    if (end < h) break;
+    speed = nextSpeed;
     angle = next;
     time += h;
   }
-  throw new RangeError(`damped swing: no swing from rest reaches ${firstSwing} rad`);
+  throw new RangeError(`damped swing: no swing from ${at} rad reaches ${turningPoint} rad`);
 }
 
 /** The turning point after one; 'stops' where Coulomb friction holds the pendulum where it stands. */

@@ -43,6 +43,8 @@ export interface FilmFirstMaximum {
 
 /** A local maximum counts as one where the reading falls off by this share of the largest before it rises above it: less, and no reading shows it. */
 const STANDS_OUT = 0.01;
+/** A crest lower than this share of the largest is taken for none: the reader sees the swing go on to more than twice as far. Judgement; a plate's first crest was found up to 57 % low (methods 1.18.8). */
+const LEAST_CREST = 0.4;
 /** Modes above the last whose amplitudes add to more than this share of all are left out of the search, not of the value. */
 const SEARCHED = 2e-4;
 /** Samples to a period of the highest mode searched, and the fewest and most to the half period of mode 1. */
@@ -132,7 +134,7 @@ export function filmFirstMaximum(modes: FilmModes, pulse: FilmPulse): FilmFirstM
     const maximum = refine(vibration, searched, i, step);
     if (!largest || maximum.coefficient > largest.coefficient) largest = maximum;
   }
-  const first = firstStanding(readings, STANDS_OUT * readings[top]!);
+  const first = firstStanding(readings, STANDS_OUT * readings[top]!, LEAST_CREST * readings[top]!);
   largest ??= refine(vibration, searched, top, step);
   const earliest = first === top ? largest : refine(vibration, searched, first, step);
   return {
@@ -145,12 +147,12 @@ export function filmFirstMaximum(modes: FilmModes, pulse: FilmPulse): FilmFirstM
 
 const isPeak = (y: Float64Array, i: number): boolean => y[i]! >= y[i - 1]! && (i === y.length - 1 || y[i]! >= y[i + 1]!);
 
-/** The first sample from which the reading falls by `fall` before it rises above it; the largest where none does. */
-function firstStanding(readings: Float64Array, fall: number): number {
+/** The first sample of at least `least` from which the reading falls by `fall` before it rises above it; the largest where none does. */
+function firstStanding(readings: Float64Array, fall: number, least: number): number {
   let high = 0;
   for (let i = 1; i < readings.length; i += 1) {
     if (readings[i]! > readings[high]!) high = i;
-    else if (readings[i]! < readings[high]! - fall && high > 0) return high;
+    else if (readings[i]! < readings[high]! - fall && readings[high]! >= least) return high;
   }
   return high;
 }

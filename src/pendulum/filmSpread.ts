@@ -1,7 +1,7 @@
 /** How far the model of a film may be from the film on the bench: a judgement, common to all shots, that taps in place take away. */
 import type { FilmHold } from './filmModes.ts';
 import type { FilmInputs } from './filmStrip.ts';
-import { clampedCoefficient, coefficientWithHigherModes, filmBehaviour, hingedCoefficient } from './filmStrip.ts';
+import { clampedCoefficient, coefficientWithHigherModes, filmBehaviour, hingedCoefficient, offPlateCentre } from './filmStrip.ts';
 
 export interface FilmSpreadInputs extends FilmInputs {
   readonly hold: FilmHold;
@@ -15,8 +15,12 @@ export interface FilmSpread {
   /** Relative standard uncertainty of X from the model · 1. */
   readonly standard: number;
   /** Its parts, relative standard uncertainties · 1 · squares add to that of `standard`. */
-  readonly parts: Readonly<Record<'hold' | 'higherModes' | 'stiffness' | 'ripple', number>>;
+  readonly parts: Readonly<Record<'hold' | 'higherModes' | 'stiffness' | 'ripple' | 'plateTurn', number>>;
 }
+
+/** Largest reading off a plate's centre over that at it, less 1, per share of the length. */
+const PLATE_TURN = 2;
+const fromHalfWidth = (half: number): number => half / Math.sqrt(3);
 
 /**
  * Relative standard uncertainty of the first maximum's coefficient X, by judgement (GUM type B, from no repeated reading).
@@ -29,6 +33,8 @@ export interface FilmSpread {
  *  - stiffness: half-difference over S (1 ± u(S)/S), already a standard uncertainty.
  *  - ripple: what the reader took for the first maximum may be the smooth swing (mode 1 alone) or the first crest,
  *    where it is not the largest; the farther of the two.
+ *  - plate turn: read off the centre of mass of its plate by a share d of the length, limits of 2d: at the bottom edge of
+ *    plates of 0.1 … 0.6 of the tape's length the largest reading was found 10 … 26 % high (methods 1.18.8).
  * What it leaves out: curl and creases (they raise S), air, large swings, a plume that is not even over its zone.
  * Valid: as filmBehaviour, and S (1 ± u(S)/S) within its range. Source: judgement.
  * @throws RangeError when an input is out of its range
@@ -40,13 +46,14 @@ export function filmModelSpread(inputs: FilmSpreadInputs): FilmSpread {
   const X = behaviour.largest.coefficient;
   const coefficient = hold === 'clamped' ? clampedCoefficient : hingedCoefficient;
   const other = hold === 'clamped' ? hingedCoefficient : clampedCoefficient;
-  const asEnd = (value: number): number => Math.abs(Math.log(value / X)) / Math.sqrt(3);
+  const asEnd = (value: number): number => fromHalfWidth(Math.abs(Math.log(value / X)));
   const ofStiffness = (factor: number): number => Math.log(coefficient({ ...film, stiffnessNumber: film.stiffnessNumber * factor }));
   const parts = {
     hold: holdKnown || film.stiffnessNumber === 0 ? 0 : asEnd(other(film)),
     higherModes: film.dampingRatio === 0 ? 0 : asEnd(coefficientWithHigherModes(film, hold, 0)),
     stiffness: relativeStiffness === 0 || film.stiffnessNumber === 0 ? 0 : Math.abs(ofStiffness(1 + relativeStiffness) - ofStiffness(1 - relativeStiffness)) / 2,
     ripple: Math.max(asEnd(behaviour.modeOne), asEnd(behaviour.earliest.coefficient)),
+    plateTurn: fromHalfWidth(PLATE_TURN * (offPlateCentre(film) ?? 0)),
   };
   return { standard: Math.hypot(...Object.values(parts)), parts };
 }

@@ -1,7 +1,7 @@
 /** The film strip as a target: what it is from its sheet and length, and the impulse bit that its first maximum tells. */
 import type { FilmHold, FilmModes } from './filmModes.ts';
 import { filmModes, modalTipMass } from './filmModes.ts';
-import type { FilmFirstMaximum, FilmPulse } from './filmResponse.ts';
+import type { FilmFirstMaximum, FilmMaximum, FilmPulse } from './filmResponse.ts';
 import { filmFirstMaximum, limpFirstMaximum, rigidCoefficient } from './filmResponse.ts';
 
 type Numbers<Name extends string> = Readonly<Record<Name, number>>;
@@ -65,10 +65,29 @@ function modesOf(stiffness: number, plateRatio: number, hold: FilmHold): FilmMod
   return modes;
 }
 
+/** With a plate, a point no further than this share of the length above the tip, or below it, is on the plate, as one reads there. */
+const ON_PLATE = 0.05;
+
+/**
+ * How far from the plate's centre of mass it is read, as a share of the length; null where no plate is read.
+ *
+ * The plate is a point mass at the tip; what a real one turns by is not in the modes, and the slope of the film's end would let a
+ * point beside the tip whip as no plate does.
+ */
+export const offPlateCentre = ({ plateRatio, readAt }: Pick<FilmInputs, 'plateRatio' | 'readAt'>): number | null =>
+  plateRatio > 0 && readAt >= 1 - ON_PLATE ? Math.abs(readAt - 1) : null;
+
 const isIdeal = (film: FilmInputs): boolean => film.stiffnessNumber === 0 && film.plateRatio === 0 && film.dampingRatio === 0;
+
+/** What a point of the plate shows where the plate turns with the line from the clamp. */
+function aboutClamp(first: FilmFirstMaximum, readAt: number): FilmFirstMaximum {
+  const scaled = ({ coefficient, time }: FilmMaximum): FilmMaximum => ({ coefficient: coefficient * readAt, time });
+  return { ...first, largest: scaled(first.largest), earliest: scaled(first.earliest), modeOne: first.modeOne * readAt };
+}
 
 /** The first maximum from the modes; for the ideal limp film, whose mode sum does not end, from the closed form. */
 function firstMaximum(film: FilmInputs, hold: FilmHold, above = film.dampingRatio): FilmFirstMaximum {
+  if (offPlateCentre(film) !== null && film.readAt !== 1) return aboutClamp(firstMaximum({ ...film, readAt: 1 }, hold, above), film.readAt);
   const modes = modesOf(film.stiffnessNumber, film.plateRatio, hold);
   const pulse: FilmPulse = { ...film, dampingRatioAbove: above };
   if (!isIdeal(film)) return filmFirstMaximum(modes, pulse);

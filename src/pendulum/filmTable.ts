@@ -2,6 +2,7 @@
 import type { FilmHold } from './filmModes.ts';
 import { filmModes } from './filmModes.ts';
 import { filmFirstMaximum } from './filmResponse.ts';
+import { offPlateCentre } from './filmStrip.ts';
 
 export interface FilmTableChoice {
   readonly hold: FilmHold;
@@ -83,7 +84,9 @@ type Asker = (s: number, d: number) => number;
 const share = (k: number, count: number): number => (count === 1 ? 0 : k / (count - 1));
 
 /** ln X, each point once and each set of modes once: a finer table asks for the coarser one's points again. */
-function asker({ hold, plateRatio, zoneFrom, zoneTo, readAt, stiffness, damping }: FilmTableChoice): Asker {
+function asker({ hold, plateRatio, zoneFrom, zoneTo, readAt: from, stiffness, damping }: FilmTableChoice): Asker {
+  // A point of a plate turns with it about the clamp (filmStrip.ts).
+  const [readAt, scale] = offPlateCentre({ plateRatio, readAt: from }) === null ? [from, 1] : [1, from];
   const columns = new Map<number, (d: number) => number>();
   const column = (s: number): ((d: number) => number) => {
     const modes = filmModes({ stiffnessNumber: Math.min(stiffness[0] * (stiffness[1] / stiffness[0]) ** s, stiffness[1]), plateRatio, hold });
@@ -92,7 +95,7 @@ function asker({ hold, plateRatio, zoneFrom, zoneTo, readAt, stiffness, damping 
       const seen = known.get(d);
       if (seen !== undefined) return seen;
       const ratio = damping[0] + d * (damping[1] - damping[0]);
-      const found = Math.log(filmFirstMaximum(modes, { zoneFrom, zoneTo, readAt, dampingRatio: ratio, dampingRatioAbove: ratio }).largest.coefficient);
+      const found = Math.log(scale * filmFirstMaximum(modes, { zoneFrom, zoneTo, readAt, dampingRatio: ratio, dampingRatioAbove: ratio }).largest.coefficient);
       known.set(d, found);
       return found;
     };

@@ -1,4 +1,5 @@
 /** Taps of known impulse: a swinging hammer by its angles, a hammer that stays, a force held for a while. */
+import { pulseCorrection, type PulseShape } from './pulse.ts';
 
 type Numbers<Name extends string> = Readonly<Record<Name, number>>;
 
@@ -55,3 +56,64 @@ export const compactImpulse = ({ g, mass, length, drawn, rebound, follow }: Numb
  */
 export const compoundImpulse = ({ contact, drawn, rebound, follow, ...hammer }: Numbers<'g' | 'mass' | 'centre' | 'inertia' | 'contact'> & Blow): number =>
   (hammer.inertia * (compoundSpeed({ ...hammer, angle: drawn }) + compoundSpeed({ ...hammer, angle: rebound }) - compoundSpeed({ ...hammer, angle: follow }))) / contact;
+
+/** What stays on the pendulum adds to it while the tap's swing lasts: ΔJ, kg·m², and Δκ, N·m/rad. */
+export type Carried = Numbers<'inertia' | 'stiffness'>;
+
+/**
+ * Angular impulse of a hammer that sticks and leaves its own suspension (thread slack, or thrown): H = m v r_h · N·m·s about the
+ * pendulum's pivot, all of which pendulum and hammer then have together.
+ *
+ * Symbols: v, m/s, level, at the blow; r_h, m, pivot of the pendulum to where it sticks. Valid: |finite|.
+ * Source: angular momentum; methods 1.10, derived.
+ */
+export const stuckAngularImpulse = ({ mass, speed, radius }: Numbers<'mass' | 'speed' | 'radius'>): number => mass * speed * radius;
+
+/** ΔJ = m r_h², Δκ = m g r_h of that hammer, borne by the pendulum. Source: methods 1.11, derived. */
+export const carriedByPendulum = ({ mass, radius, g }: Numbers<'mass' | 'radius' | 'g'>): Carried => ({ inertia: mass * radius * radius, stiffness: mass * g * radius });
+
+/**
+ * Angular impulse of a hammer that keeps to the pendulum and stays on its own pivot: H = J_h ω r_h/l_c · N·m·s.
+ *
+ * The two turn together, l_c ω_h = r_h ω: the hammer adds ΔJ = J_h (r_h/l_c)² (sharedInertia) and not m r_h².
+ * Compact: J_h = m l², l_c = l, which is m v r_h again. Valid: small angles, both arms plumb at the blow.
+ * Source: impulse at the contact, J_h(ω − ω_h) = I l_c and J ω_p = I r_h; derived.
+ */
+export const sharedAngularImpulse = ({ inertia, speed, radius, contact }: Numbers<'inertia' | 'speed' | 'radius' | 'contact'>): number => (inertia * speed * radius) / contact;
+
+/** ΔJ = J_h (r_h/l_c)², Δκ = m g d (r_h/l_c)² of that hammer, borne by its own pivot. Compact on a thread of l: m r_h², m g r_h²/l. Source: derived. */
+export function carriedByOwnPivot({ mass, centre, inertia, contact, radius, g }: Numbers<'mass' | 'centre' | 'inertia' | 'contact' | 'radius' | 'g'>): Carried {
+  const square = (radius / contact) ** 2;
+  return { inertia: inertia * square, stiffness: mass * g * centre * square };
+}
+
+/** ∫F dt over F_peak τ · 1: rectangular 1, half-sine 2/π, triangle and versed sine ½; exponential, τ its time constant, 1. */
+export function pulseFullness(shape: PulseShape): number {
+  switch (shape) {
+    case 'rectangular':
+    case 'exponential':
+      return 1;
+    case 'halfSine':
+      return 2 / Math.PI;
+    case 'triangle':
+    case 'versedSine':
+      return 0.5;
+  }
+}
+
+/** Electrostatic or coil pulse: impulse, and what the first swing feels of it. */
+export type Push = { readonly status: 'found'; readonly impulse: number; readonly felt: number } | { readonly status: 'peakInsidePulse' };
+
+/**
+ * I = F_peak τ × fullness · N·s, and I/C, the blow that would throw the pendulum as far.
+ *
+ * Symbols: F, N, signed; τ, s, ≥ 0; ω_n, rad/s, > 0; ζ ≥ 0. 'peakInsidePulse': too long for an impulse.
+ * Source: methods 1.6, 1.10.
+ * @throws RangeError outside
+ */
+export function pushOf({ shape, force, duration, naturalFrequency, dampingRatio }: { readonly shape: PulseShape } & Numbers<'force' | 'duration' | 'naturalFrequency' | 'dampingRatio'>): Push {
+  const found = pulseCorrection({ shape, duration, naturalFrequency, dampingRatio });
+  if (found.status !== 'corrected') return { status: 'peakInsidePulse' };
+  const impulse = force * duration * pulseFullness(shape);
+  return { status: 'found', impulse, felt: impulse / found.factor };
+}

@@ -124,7 +124,7 @@ const awayFromCritical = (zeta: number): number => (Math.abs(zeta - 1) < NEAR_CR
 /**
  * C and the time of the first maximum, for any damping.
  *
- * Valid: duration ≥ 0 s, ω_n > 0 rad/s, ζ ≥ 0 (exponential: ζ < 1). 'peakInsidePulse' where the maximum would not come
+ * Valid: duration ≥ 0 s, ω_n > 0 rad/s, ζ ≥ 0. 'peakInsidePulse' where the maximum would not come
  * after the end of the pulse: τ > T_d/2 for the rectangular one; the exponential, which has no end: τ_e > T/2.
  * Source: derived; methods 1.6 (the rule "C at ω_n times D, time from the centroid" is its first order in ζ).
  * @throws RangeError outside.
@@ -143,7 +143,7 @@ export function pulseCorrection({ shape, duration, naturalFrequency, dampingRati
   const { factor, peak } = ringing((re, im) => transform(shape, { re: (re * angle) / 2, im: (im * angle) / 2 }), awayFromCritical(dampingRatio));
   const peakTime = (peak + angle / 2) / naturalFrequency;
   // A hair beyond, so that τ = T/2 itself is still corrected.
-  if (!(peakTime >= duration * (1 - 1e-9))) return { status: 'peakInsidePulse' };
+  if (!(peakTime >= duration * (1 - 1e-9) && factor < Infinity)) return { status: 'peakInsidePulse' };
   return { status: 'corrected', factor, peakTime, centroid, leftAfterPeak: 0 };
 }
 
@@ -157,28 +157,46 @@ function ringing(at: (re: number, im: number) => Complex, zeta: number): { reado
     return { factor: Math.exp((zeta * psi) / nu) / Math.hypot(M.re, M.im), peak: psi / nu + unstruck };
   }
   const mu = Math.sqrt((zeta - 1) * (zeta + 1));
-  const slow = at(zeta - mu, 0).re;
+  const slowRate = 1 / (zeta + mu);
+  const slow = at(slowRate, 0).re;
   const fast = at(zeta + mu, 0).re;
   const later = Math.log(fast / slow) / (2 * mu);
-  return { factor: Math.exp((zeta - mu) * later) / slow, peak: later + unstruck };
+  return { factor: Math.exp(slowRate * later) / slow, peak: later + unstruck };
 }
 
+/** A pulse as long as the pendulum's own slow or fast decay: the forms of the motion are 0/0 there, and one at this distance serves, to 1e-7. */
+const NEAR_OWN_DECAY = 1e-7;
+
 /** The exponential never ends: its first maximum is found from the whole motion. s = ω_n t, a = ω_n τ_e. */
-function exponentialPulse(a: number, naturalFrequency: number, zeta: number): PulseCorrection {
-  if (!(zeta < 1)) throw new RangeError(`exponential pulse: damping ratio ${zeta} is not below 1`);
-  if (a > Math.PI) return { status: 'peakInsidePulse' };
-  const nu = Math.sqrt((1 - zeta) * (1 + zeta));
-  const K = a / (1 - 2 * zeta * a + a * a);
-  const A = (K * (1 / a - zeta)) / nu;
-  const angleAt = (s: number): number => K * Math.exp(-s / a) + Math.exp(-zeta * s) * (A * Math.sin(nu * s) - K * Math.cos(nu * s));
-  const speedAt = (s: number): number =>
-    (-K / a) * Math.exp(-s / a) + Math.exp(-zeta * s) * ((nu * A + zeta * K) * Math.cos(nu * s) + (nu * K - zeta * A) * Math.sin(nu * s));
+function exponentialPulse(angle: number, naturalFrequency: number, zeta: number): PulseCorrection {
+  if (angle > Math.PI) return { status: 'peakInsidePulse' };
+  const own = (a: number): number => (1 - a) * (1 - a) + 2 * (1 - zeta) * a;
+  const a = Math.abs(own(angle)) < NEAR_OWN_DECAY ? angle * (1 + Math.sqrt(NEAR_OWN_DECAY)) : angle;
+  const free = freeMotion(zeta);
+  const K = a / own(a);
+  // K e^{−s/a} + e^{−ζs}[K(1/a − ζ) S − K C] in the motion after a blow, h₀ = e^{−ζs}S, h₁ = h₀′ = e^{−ζs}(C − ζS).
+  const angleAt = (s: number): number => {
+    const [h0, h1] = free(s);
+    return K * (Math.exp(-s / a) + h0 * (1 / a - 2 * zeta) - h1);
+  };
+  const speedAt = (s: number): number => {
+    const [h0, h1] = free(s);
+    return K * (-Math.exp(-s / a) / a + h1 / a + h0);
+  };
   // Up to the maximum of a blow at the onset every part of the pulse still drives; a half cycle later all of it is past.
   const from = peakTimeOfSmall(zeta);
-  const found = rootBetween(speedAt, from * (1 - 1e-9), from + Math.PI / nu);
-  if (found.status !== 'found') throw new Error(`exponential pulse: no maximum found, ωτ_e ${a}, ζ ${zeta}`);
+  const found = rootBetween(speedAt, from * (1 - 1e-9), zeta < 1 ? from + Math.PI / Math.sqrt((1 - zeta) * (1 + zeta)) : firstFalling(speedAt, from));
+  if (found.status !== 'found') return { status: 'peakInsidePulse' };
   const D = Math.exp(zeta * from);
   return { status: 'corrected', factor: 1 / (D * angleAt(found.x)), peakTime: found.x / naturalFrequency, centroid: a / naturalFrequency, leftAfterPeak: Math.exp(-found.x / a) };
+}
+
+const DOUBLINGS = 60;
+/** A time after `from` by which the speed is negative. */
+function firstFalling(speedAt: (s: number) => number, from: number): number {
+  let after = 2 * from;
+  for (let i = 0; i < DOUBLINGS && !(speedAt(after) < 0); i++) after *= 2;
+  return after;
 }
 
 /** A measured force: time in s from any origin, rising; force in any unit, straight between the samples. */
@@ -266,10 +284,19 @@ export function measuredPulseCorrection(measured: MeasuredForce, naturalFrequenc
 /** Response to a unit blow and its rate at s = ω_n t: e^{−ζs} sin νs/ν and its derivative. */
 function freeMotion(zeta: number): (s: number) => readonly [number, number] {
   const root = Math.sqrt(Math.abs((1 - zeta) * (1 + zeta)));
+  if (zeta < 1) {
+    return (s) => {
+      const fall = Math.exp(-zeta * s);
+      const sinus = Math.sin(root * s) / root;
+      return [fall * sinus, fall * (Math.cos(root * s) - zeta * sinus)];
+    };
+  }
+  // Two decays, ζ ± √(ζ² − 1), written so that neither overflows nor cancels.
+  const fast = zeta + root;
+  const slow = 1 / fast;
   return (s) => {
-    const fall = Math.exp(-zeta * s);
-    const [sinus, cosinus] = zeta < 1 ? [Math.sin(root * s) / root, Math.cos(root * s)] : [Math.sinh(root * s) / root, Math.cosh(root * s)];
-    return [fall * sinus, fall * (cosinus - zeta * sinus)];
+    const h0 = root === 0 ? s * Math.exp(-s) : (Math.exp(-slow * s) * -Math.expm1(-2 * root * s)) / (2 * root);
+    return [h0, Math.exp(-fast * s) - slow * h0];
   };
 }
 

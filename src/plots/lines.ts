@@ -111,6 +111,18 @@ export function rayBand(u: uPlot, { slope, half, dashed, ink }: Ray, inks: Inks)
   });
 }
 
+/** A line through points in the units of the axes, dashed where dashes are given (CSS px). */
+export function curve(u: uPlot, points: readonly (readonly [number, number])[], { ink, dash }: { readonly ink: string; readonly dash: readonly number[] }): void {
+  within(u, (pen) => {
+    pen.strokeStyle = ink;
+    pen.lineWidth = 1.25 * devicePixelRatio;
+    pen.setLineDash(dash.map((length) => length * devicePixelRatio));
+    pen.beginPath();
+    points.forEach(([x, y], i) => (i === 0 ? pen.moveTo(u.valToPos(x, 'x', true), u.valToPos(y, 'y', true)) : pen.lineTo(u.valToPos(x, 'x', true), u.valToPos(y, 'y', true))));
+    pen.stroke();
+  });
+}
+
 /** A bracket along the bottom from one x to another, with words over it. */
 export function bracket(u: uPlot, from: number, to: number, ink: string, font: string, words: string): void {
   within(u, (pen) => {

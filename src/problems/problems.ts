@@ -45,11 +45,15 @@ export const PROBLEM_CODES = [
   'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
   'hammer-angle-too-wide', 'hammer-entry-missing', 'tap-force-without-time', 'tap-both-rebound-and-follow',
   // evidence of the calibration
-  'timing-spread-missing', 'timing-without-place', 'timing-not-positive', 'weights-too-few', 'weights-wrong-way', 'taps-one-size', 'taps-drifted', 'taps-intercept', 'taps-curved', 'masses-tell-little', 'masses-inertia-negative', 'evidence-contradicts', 'chosen-evidence-missing',
+  'timing-spread-missing', 'timing-without-place', 'timing-not-positive', 'weights-too-few', 'weights-wrong-way', 'taps-one-size', 'taps-drifted', 'taps-intercept', 'taps-curved', 'masses-tell-little', 'mass-heavier-than-pendulum', 'masses-inertia-negative', 'evidence-contradicts', 'bench-disagrees', 'chosen-evidence-missing',
   // the whole run
   'all-throws-negative', 'all-on-one-division', 'division-from-readings', 'few-shots', 'no-shots', 'shots-beyond-taps', 'change-needs-the-body', 'forms-differ', 'scatter-below-reading', 'taps-scatter-more-than-stated', 'calibrations-differ',
   'damping-none', 'damping-laws-not-told-apart', 'damping-law-fits-badly', 'pulse-reaches-the-peak', 'frames-too-slow', 'background-swing-larger', 'momentum-factor-undeclared', 'capture-taken-as-all', 'propellant-too-heavy', 'damping-from-few', 'damping-carried-over', 'period-differs', 'pressures-mixed',
   'not-a-vacuum-figure', 'gauge-meaning-unclear', 'pressure-beyond-dial', 'pressure-below-zero', 'pressure-above-outside', 'outside-pressure-missing', 'barometer-at-sea-level', 'height-beyond-atmosphere',
+  'pressure-not-stated',
+  'pulse-samples-missing', 'pulse-samples-too-many', 'pulse-sample-not-two-numbers', 'pulse-sample-time-not-rising', 'pulse-samples-no-impulse', 'pulse-samples-unit-assumed',
+  'background-swing-off-scale', 'background-phase-not-used', 'background-not-this-shot', 'tilt-leaves-no-leverage',
+  'swings-never-cross-rest', 'swings-too-few', 'swings-fit-unsettled', 'swings-grow', 'swing-stopped', 'maximum-time-needs-the-body', 'maximum-time-too-late',
   'air-needs-width', 'air-on-strip', 'air-not-reckoned',
   // a bench entry
   'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',

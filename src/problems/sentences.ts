@@ -2,6 +2,7 @@
 import { chooseUnit, plain } from '../units/format.ts';
 import type { Dimension } from '../units/units.ts';
 import type { Place, Problem } from './problems.ts';
+import { checksInWords, slipWords } from './slips.ts';
 import { KIND_WORDS, ROLE_WORDS } from './words.ts';
 
 /** Figures in a sentence: enough to find the thing, not to compute with. */
@@ -112,7 +113,21 @@ function words({ code, place, facts, weight }: Problem): string {
         ? 'the swings do not grow smaller from one to the next on alternate sides of the rest, so they are not used for the damping. Check them and the rest.'
         : place.entry !== undefined
           ? 'the turning readings of the free swing do not grow smaller from one to the next, so they are not used. Check them: they are to be the readings at the turning points, in order, one side after the other.'
-          : 'taken together, the swings do not die away, so no damping is taken. Check rest and swings, or type the log decrement.';
+          : 'the swings do not grow smaller from one to the next. Check rest and swings, or type the log decrement.';
+    case 'swings-grow':
+      return `taken together, the swings do not die away (they grow by as much as a damping of ${figure('value', 2)} would take), so no damping is taken. Check rest and swings, or type the damping.`;
+    case 'swings-too-few':
+      return 'too few turning readings for a damping: with the rest read, two of them; without it, three that do not all lie on one side. Write the rest, or the swings of the other side.';
+    case 'swings-fit-unsettled':
+      return 'no damping follows from these swings: the fit does not settle. Look for a misread turning point, or one in the wrong column.';
+    case 'swing-stopped':
+      return 'the last turning readings are alike, so the pendulum had come to a standstill, held by friction or too little to be read; the repeats are left out. Blank them.';
+    case 'swings-never-cross-rest':
+      return `${place.entry === undefined ? `the swings of ${many('records', 'record')}` : 'the free swing'} only die${place.entry === undefined && number('records') !== 1 ? '' : 's'} away on one side of the rest. A pendulum that does not cross its rest is damped critically or more (or so nearly that it cannot be read), and turning points do not tell how much: take the damping from the time to the first maximum, t_p = arccosh ζ/(ω_n √(ζ² − 1)), or type the damping ratio. If only the swings of one side were noted, leave a blank for each swing between.`;
+    case 'maximum-time-needs-the-body':
+      return 'the time to the first maximum tells the damping only with the pendulum’s natural frequency, from its masses and lengths. Type them, or take the damping otherwise.';
+    case 'maximum-time-too-late':
+      return `the first maximum came at ${quantity('found', 'time')}, later than the quarter period of ${quantity('quarter', 'time')} that the undamped pendulum takes; no damping does that. Count from the middle of the pulse, and check masses, lengths and the clock.`;
 
     case 'all-throws-negative':
       return 'every first swing lies on the other side of the rest than the thrust should send it. If the numbers of the ruler fall in that direction, mark it as running backward.';
@@ -160,6 +175,28 @@ function words({ code, place, facts, weight }: Problem): string {
       return 'The exposure or the time between frames is longer than half a period of the swing, so the frames do not show it; they are left uncorrected. Check both, and their units.';
     case 'background-swing-larger':
       return 'The swing before the shot is as large as the swing after it, so this record gives no impulse bit. Let the pendulum come to rest, or read its whole swing.';
+    case 'background-swing-off-scale':
+      return 'the swing before the shot is wider than the scale can show, so it is left out. Check it and its unit.';
+    case 'background-phase-not-used':
+      return text('because') === 'film'
+        ? 'the phase of the swing before the shot is not used on a film, whose first maximum has more than one mode in it; the swing counts as one of unknown phase.'
+        : 'a pendulum damped critically or more has no phase; the swing before the shot counts as one of unknown phase.';
+    case 'background-not-this-shot':
+      return 'with the swing before the shot as typed, amplitude and phase, no shot along the thrust gives this first swing. Check both, or leave the phase empty.';
+    case 'tilt-leaves-no-leverage':
+      return 'tilted so far, the thrust has no leverage on the pendulum. Check the tilt and its unit, and the exit’s place.';
+    case 'pulse-samples-missing':
+      return `the pulse is to be as measured, and ${number('samples') === 0 ? 'there are no samples' : 'one sample is not enough'}. Paste a time and a thrust a line, from its beginning to its end, or choose a shape.`;
+    case 'pulse-samples-too-many':
+      return `${text('samples')} lines are a whole record and not a pulse; ${text('most')} at most. Paste the stretch of the pulse alone, or every tenth line.`;
+    case 'pulse-sample-not-two-numbers':
+      return `measured pulse, line ${text('at')}: “${found}” is not a time and a thrust. Write two numbers, parted by a tab, a semicolon or blanks.`;
+    case 'pulse-sample-time-not-rising':
+      return `measured pulse, line ${text('at')}: the time in “${found}” is not later than that of the line before. Put the lines in the order of time, each time once.`;
+    case 'pulse-samples-no-impulse':
+      return 'the measured pulse has no impulse along the thrust: its integral is not above zero. Take the reading without thrust off the samples, and check the sign.';
+    case 'pulse-samples-unit-assumed':
+      return `no unit of time stands over the samples of the pulse; ${text('unit')} is taken. Write it in a line above them: “${text('unit')}; N”, say.`;
     case 'momentum-factor-undeclared':
       return 'The plume is caught on a target whose momentum factor is not typed: it may lie anywhere from 1 to 2, which leaves 20 % common to all shots. Type what is known of the target, or report the momentum delivered to it.';
     case 'capture-taken-as-all':
@@ -169,12 +206,14 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'damping-from-few':
       return `the damping rests on ${many('records', 'record')} with more than one swing. Note the return swing of more shots, or a free swing.`;
     case 'damping-carried-over':
-      return `there are swings of the ${text('from') === 'taps' ? 'taps' : 'shots'} only, so the damping of the other configuration is carried over from them. Note swings with the other configuration, too.`;
+      return `there are swings of the ${text('from') === 'taps' ? 'taps' : 'shots'} only, so the damping of the other configuration is carried over from them.${text('gas') === 'differs' ? ' The gas is at another pressure there, and damps more or less: anything from none of it to twice as much is allowed for (0.01 in ζ moves an impulse bit by 1.6 %).' : ''} Note swings with the other configuration, too.`;
     case 'period-differs':
       return `the timed period, ${quantity('measured', 'time')}, differs from the ${quantity('predicted', 'time')} that masses and lengths make by ${figure('percent', 2)} %, ${figure('inU', 2)} times the uncertainty of the difference. Check distances, masses, the flexure, and the count of cycles.`;
     case 'pressures-mixed':
       return `the shots were fired between ${quantity('low', 'pressure')} and ${quantity('high', 'pressure')}, and one mean is taken over all. Treat them as several runs if the pressure matters.`;
 
+    case 'pressure-not-stated':
+      return 'no pressure is stated for the shots, so the figure can be called neither a vacuum figure nor one in air, and the air about the pendulum is left out. Write the pressure on the bench, or a column of it.';
     case 'not-a-vacuum-figure': {
       const at = `the shots were fired at up to ${quantity('pressure', 'pressure')}, above the ${quantity('below', 'pressure')} up to which a figure here counts as a vacuum one`;
       const what = text('plume') === 'caught' ? 'what swings the target is also the gas that the plume drives at it' : 'the plume pushes against the gas about it, and drives it at what stands near';
@@ -262,10 +301,20 @@ function words({ code, place, facts, weight }: Problem): string {
       return `the taps bend away from a straight line by ${figure('t', 2)} times the uncertainty of the bend (chance ${figure('percent', 2)} %): look at the largest ones, at the reading’s geometry, and at the hammer.`;
     case 'masses-tell-little':
       return `hung where it was, the mass changes the period so little that the moment of inertia is known to ${figure('percent', 2)} % only. ${has('better') ? `At ${quantity('better', 'length')} the same timings would tell it to ${figure('betterPercent', 2)} %.` : 'A heavier mass, well above or below that place, would tell it.'}`;
+    case 'mass-heavier-than-pendulum':
+      return `a mass of ${quantity('mass', 'mass')} was hung on a pendulum of ${quantity('pendulum', 'mass')}: check its unit. A mass that heavy also bends or loads a pivot that carries little.`;
     case 'masses-inertia-negative':
       return 'the periods with masses hung give a moment of inertia that is not above zero: a time or a radius is wrong, or the mass hung near the place where the period does not change.';
     case 'evidence-contradicts':
       return `the evidence of the calibration does not agree within its uncertainties (χ² = ${figure('chiSquared', 3)} for ${text('dof')}, chance ${figure('percent', 2)} %). ${has('item') ? `“${text('item')}” pulls most, by ${figure('deviation', 2)} times the uncertainty. ` : ''}Nothing is widened for it: find which is wrong.`;
+    case 'bench-disagrees': {
+      const off = checksInWords(text('off', '').split(' ').filter((id) => id !== ''));
+      const begin = `${off === '' ? 'what was measured' : off} ${off.includes(' and ') || off.endsWith('taps') ? 'do' : 'does'} not fit masses and lengths.`;
+      if (!has('slip')) return `${begin} No single slip reconciles them: look at the masses, the lengths, and what hung on the pendulum.`;
+      const one = `“${text('what')}” ${slipWords(text('slip'))}${has('to') ? ` (${text('from')} → ${text('to')})` : ''}`;
+      const other = has('other') ? `, or that “${text('otherWhat')}” ${slipWords(text('other'))}${has('otherTo') ? ` (→ ${text('otherTo')})` : ''}; the numbers do not tell the two apart` : '';
+      return `${begin} All would fit if ${one}${other}.`;
+    }
     case 'chosen-evidence-missing':
       return `the calibration is to be known ${text('way')}, but that evidence is not complete. Choose another way under Calibration, or add what is missing.`;
 

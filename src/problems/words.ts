@@ -26,6 +26,8 @@ export const ROLE_NAMES = {
   amplitude: 'amplitude at the start',
   massHung: 'mass hung for timing',
   massHungAt: 'radius of the mass hung',
+  swingBefore: 'swing before the shot',
+  timeSinceMaximum: 'time since the maximum of that swing',
   note: 'note',
   ignored: 'not used',
 } as const;

@@ -59,6 +59,8 @@ export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
   amplitude: ['angle'],
   massHung: ['mass'],
   massHungAt: ['length'],
+  swingBefore: ['length', 'angle', 'pixel', 'count'],
+  timeSinceMaximum: ['time'],
   kind: [],
   label: [],
   note: [],
@@ -74,7 +76,7 @@ export const unitsOfRole = (role: Role): readonly Unit[] => ROLE_DIMENSIONS[role
 /** Unit taken where none is written, told with the proposal. */
 export const USUAL_UNIT: Readonly<Record<Role, string>> = {
   rest: 'mm', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s',
-  hammerIn: '°', hammerRebound: '°', hammerFollow: '°', tapForce: 'mN', tapDuration: 'ms', weight: 'mg', loading: 'mm', unloading: 'mm', swingsTime: 's', cycles: 'counts', amplitude: '°', massHung: 'g', massHungAt: 'mm', kind: '', label: '', note: '', ignored: '',
+  hammerIn: '°', hammerRebound: '°', hammerFollow: '°', tapForce: 'mN', tapDuration: 'ms', weight: 'mg', loading: 'mm', unloading: 'mm', swingsTime: 's', cycles: 'counts', amplitude: '°', massHung: 'g', massHungAt: 'mm', swingBefore: 'mm', timeSinceMaximum: 's', kind: '', label: '', note: '', ignored: '',
 };
 
 /** Where a column stands while the proposal is being made. */
@@ -87,7 +89,7 @@ export interface Claim {
   sure: boolean;
 }
 
-const READINGS: readonly Role[] = ['rest', 'firstSwing', 'nextSwing', 'loading', 'unloading'];
+const READINGS: readonly Role[] = ['rest', 'firstSwing', 'nextSwing', 'loading', 'unloading', 'swingBefore'];
 export const isReading = (role: Role | null): boolean => role !== null && READINGS.includes(role);
 
 /** The unit of a column as written in its header, a units row or its cells. */
@@ -170,7 +172,7 @@ function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
 }
 
 const SINGLE: readonly Role[] = [
-  'kind', 'label', 'rest', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt',
+  'kind', 'label', 'rest', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum',
 ];
 
 /** Of two columns with one role the better named keeps it; a second first swing is a next swing, any other is left aside, with the reason. */

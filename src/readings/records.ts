@@ -56,6 +56,8 @@ export interface SheetRecord {
   readonly amplitude: CellRead | null;
   readonly massHung: CellRead | null;
   readonly massHungAt: CellRead | null;
+  readonly swingBefore: CellRead | null;
+  readonly timeSinceMaximum: CellRead | null;
   /** What is wrong in this row, each with its place. */
   readonly problems: readonly Problem[];
   /** As shown: edits applied. */
@@ -71,7 +73,7 @@ export interface RecordsRead {
 }
 
 /** Roles beyond the readings of a swing, each of one column. */
-const EVIDENCE = ['tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'amplitude', 'massHung', 'massHungAt'] as const;
+const EVIDENCE = ['tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum'] as const;
 
 const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', ...EVIDENCE, 'cycles'];
 

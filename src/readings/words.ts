@@ -93,6 +93,12 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'masa dodatkowa|pridana hmotnost|добавленная масса|付加質量|附加质量',
   massHungAt:
     'hung at|mass at|at radius|radius|radius of the mass|mass radius|distance of mass|place of the mass|radius der masse|abstand der masse|a la distance|rayon|radio|raggio|raio|straal|promien|polomer|радиус|半径',
+  swingBefore:
+    'swing before|swing before shot|swing before the shot|still swinging|swinging before|background swing|residual swing|residual amplitude|amplitude before|amplitude before the shot|restschwingung|schwingung vorher|amplitude vorher|' +
+    'oscillation avant|amplitude avant|oscilacion previa|amplitud previa|oscillazione prima|ampiezza prima|oscilacao anterior|uitslag vooraf|wahanie przed|kmit pred|колебание до|射前振れ|射前摆动',
+  timeSinceMaximum:
+    'time since maximum|time since its maximum|since maximum|since the maximum|time after maximum|time since turning point|time from turning point|since turning point|zeit seit maximum|zeit seit umkehrpunkt|' +
+    'temps depuis le maximum|tiempo desde el maximo|tempo dal massimo|tempo desde o maximo|tijd sinds maximum|czas od maksimum|cas od maxima|время от максимума|最大からの時間|距最大时间',
   note:
     'note|notes|remark|remarks|comment|comments|seen|bemerkung|bemerkungen|notiz|anmerkung|kommentar|remarque|remarques|commentaire|observation|observations|' +
     'nota|notas|comentario|comentarios|observacion|observaciones|commento|osservazioni|observacao|observacoes|opmerking|opmerkingen|uwaga|uwagi|poznamka|poznamky|' +

@@ -148,7 +148,7 @@ function effectsOf(bench: BenchRead, strip: StripInAir & { readonly width: Uncer
 /** A film's calibration factors in the air about it. */
 export interface FilmInAir {
   readonly geometry: ByConfiguration<Anchor | null>;
-  /** K as fired over K as tapped; null where the air is the same. */
+  /** K as fired over K as tapped, by the air and by where they are struck; null where both are alike. */
   readonly change: Uncertain | null;
   /** Period in air over that in vacuum, as fired. */
   readonly stretch: number;
@@ -166,7 +166,7 @@ const filmFactor = (x: FilmLoad): number => {
   return Math.sqrt(inertia * weight);
 };
 
-export function filmInAir(factors: ByConfiguration<Anchor | null>, air: ByConfiguration<AirEffect | null>, film: Readonly<Record<'mass' | 'length', Uncertain>>, plate: Uncertain | null): FilmInAir {
+export function filmInAir({ factors, change: zones }: { readonly factors: ByConfiguration<Anchor | null>; readonly change: Uncertain | null }, air: ByConfiguration<AirEffect | null>, film: Readonly<Record<'mass' | 'length', Uncertain>>, plate: Uncertain | null): FilmInAir {
   const inputs = (one: AirEffect): Record<keyof FilmLoad, Uncertain> => ({ added: one.inertia, buoyancy: one.buoyancy, mass: film.mass, length: film.length, plate: plate ?? exact(0) });
   const factorOf = (one: AirEffect | null): Anchor => anchor(one ? propagate(filmFactor, inputs(one)) : exact(1));
   const shots = factorOf(air.shots);
@@ -175,7 +175,7 @@ export function filmInAir(factors: ByConfiguration<Anchor | null>, air: ByConfig
   const load = air.shots ? loads({ added: air.shots.inertia.value, buoyancy: air.shots.buoyancy.value, mass: film.mass.value, length: film.length.value, plate: plate?.value ?? 0 }) : { inertia: 1, weight: 1 };
   return {
     geometry: { shots: times(factors.shots, shots), taps: times(factors.taps, taps) },
-    change: shots === taps ? null : propagate(({ f, c }) => f / c, { f: shots, c: taps }),
+    change: shots === taps ? zones : propagate(({ f, c, z }) => (z * f) / c, { f: shots, c: taps, z: zones ?? exact(1) }),
     stretch: Math.sqrt(load.inertia / load.weight),
   };
 }

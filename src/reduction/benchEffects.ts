@@ -10,6 +10,8 @@ import { valueOf, type Body } from './stand.ts';
 
 export interface BenchFacts {
   readonly body: Body | null;
+  /** A hanging film: κ of its first mode as the calibration factor and the period make it, N·m/rad, and what moving its struck zone does; null for any other stand. */
+  readonly film: { readonly stiffness: number; readonly movedBy: (shift: number) => number } | null;
   readonly gravity: Uncertain | null;
   readonly records: readonly RecordResult[];
   readonly run: RunResult | null;
@@ -66,11 +68,19 @@ const meanOf = (values: readonly number[]): number | null => (values.length === 
 type Found = Omit<BenchEffect, 'matters'>;
 
 /** Every effect that can befall the bench, largest first. Without a run mean nothing can be sized. */
-export function benchEffectsOf(bench: BenchRead, choices: Choices, { body, gravity, records, run }: BenchFacts): readonly BenchEffect[] {
+export function benchEffectsOf(bench: BenchRead, choices: Choices, { body, film, gravity, records, run }: BenchFacts): readonly BenchEffect[] {
   const shots = records.filter((r) => r.kind === 'shot' && r.setAside === null);
   const firstSwing = meanOf(shots.flatMap((r) => (r.angle ? [Math.abs(r.angle.value)] : [])));
   const arm = valueOf(bench, 'leverArm')?.value;
-  if (!run || !body || !gravity || !arm || !firstSwing || run.mean.value === 0) return [];
+  if (!run || !gravity || !arm || !firstSwing || run.mean.value === 0) return [];
+  const relative = run.mean.u / Math.abs(run.mean.value);
+  const largestFirst = (found: readonly Found[]): readonly BenchEffect[] =>
+    found.map((one) => ({ ...one, matters: one.ofImpulse > Math.min(PART_OF_U * relative, PART_OF_IMPULSE) })).sort((a, b) => b.ofImpulse - a.ofImpulse);
+  if (film) {
+    const voltage = meanOf(shots.flatMap((r) => (r.readings.voltage !== null && r.readings.voltage > 0 ? [r.readings.voltage] : [])));
+    return largestFirst(ofFilm(bench, film, { stiffness: film.stiffness, mass: 0, centreOfMass: 0, g: gravity.value, leverArm: arm, impulse: run.mean.value, firstSwing }, voltage));
+  }
+  if (!body) return [];
   const masses = massesOf(bench, choices);
   // Where masses are not known M g d is the gravity share of κ, and what needs M alone is left out.
   const moment = masses?.moment ?? (body.gravityShare.value * body.stiffness.value) / gravity.value;
@@ -86,8 +96,29 @@ export function benchEffectsOf(bench: BenchRead, choices: Choices, { body, gravi
     ...modes(bench, choices),
     ...plume(choices, pendulum),
   ];
-  const relative = run.mean.u / Math.abs(run.mean.value);
-  return found.map((one) => ({ ...one, matters: one.ofImpulse > Math.min(PART_OF_U * relative, PART_OF_IMPULSE) })).sort((a, b) => b.ofImpulse - a.ofImpulse);
+  return largestFirst(found);
+}
+
+/**
+ * Of methods 1.18 on a hanging film: it carries no discharge, no wires, no hose and no pivot. What stays is the pull on a charged film, its
+ * stand that tilts, the plate below it, and a plume that strikes elsewhere, by the slope of the film's own coefficient. The air is in the
+ * calibration factor.
+ */
+function ofFilm(bench: BenchRead, film: NonNullable<BenchFacts['film']>, pendulum: effects.Bench, voltage: number | null): readonly Found[] {
+  const value = (name: Parameters<typeof valueOf>[1]): number => valueOf(bench, name)?.value ?? Number.NaN;
+  const struck = value('filmWidth') * (value('zoneTo') - value('zoneFrom'));
+  const area = struck > 0 ? struck : TYPICAL.face;
+  const V = voltage ?? TYPICAL.voltage;
+  const pull = effects.electrostaticPull(pendulum, { area, voltage: V, gap: TYPICAL.gap });
+  const moved = film.movedBy(TYPICAL.wander);
+  const readAt = (valueOf(bench, 'readingRadius') ?? valueOf(bench, 'rulerHeight') ?? valueOf(bench, 'sensorHeight'))?.value ?? 0;
+  const plate = effects.plateOnTape(Math.abs(readAt / value('filmLength') - 1) > AT_CENTRE ? 'bottomEdge' : 'centreOfMass');
+  return [
+    ofRest('chargedTarget', pull, [...(struck > 0 ? [] : [taken('square face of', Math.sqrt(area), 'length')]), taken('opposite at', TYPICAL.gap, 'length'), ...(voltage === null ? [taken('charge voltage', V, 'voltage')] : [])], effects.chargedRestChange(-pull.share)),
+    ofRest('tilt', effects.standTilt(pendulum, TYPICAL.tilt), [taken('tilt of', TYPICAL.tilt, 'angle')]),
+    ofImpulse('plumeWander', { impulse: Math.abs(pendulum.impulse) * moved, share: moved }, [taken('shift of', TYPICAL.wander, 'length')]),
+    ...(valueOf(bench, 'plateMass') ? [{ id: 'doublePendulum' as const, size: { value: plate.largest, dimension: 'number' as const }, share: { of: 'firstSwing' as const, value: plate.largest }, ofImpulse: plate.largest, taken: [] }] : []),
+  ];
 }
 
 const ofImpulse = (id: BenchEffectId, { impulse, share }: effects.ImpulseEffect, values: readonly Taken[]): Found =>

@@ -5,10 +5,12 @@ import { alignmentFactor, cosineOfUncertainTilt } from '../pendulum/alignment.ts
 import { jumpOfUnknownPhase } from '../pendulum/alreadySwinging.ts';
 import { exposureFactor, missedPeak } from '../pendulum/peakSampling.ts';
 import { swingGainOfMassLost } from '../pendulum/propellant.ts';
-import { pulseCorrection, type PulseShape } from '../pendulum/pulse.ts';
+import { measuredPulseCorrection, momentsOf, pulseCorrection } from '../pendulum/pulse.ts';
 import { captureFraction, inverseOfUndeclaredFactor } from '../pendulum/target.ts';
 import { problem, type Problem } from '../problems/problems.ts';
+import { PULSE_SAMPLES, type PulseSamples } from '../readings/pulseSamples.ts';
 import type { Choices } from '../session/session.ts';
+import { swingBefore, type Background } from './background.ts';
 import type { BenchRead } from './entries.ts';
 import { familyOf } from './readings.ts';
 import type { SessionRecord } from './sheets.ts';
@@ -24,14 +26,17 @@ export interface Correction {
   readonly factor: Uncertain;
 }
 
+/** A thrust nearer to square across the swing than this cosine moves nothing that could be read. */
+const LEAST_COSINE = 1e-3;
+
 /** Factors common to all shots; null where the pulse reaches the first maximum and nothing follows. */
 export interface Corrections {
   /** On the first swing as read, of shots and taps alike: exposure, missed peak. */
   readonly reading: readonly Correction[];
   /** Relative deviation of a missed peak, of each record alone. */
   readonly missedPeak: number;
-  /** Amplitude before the shot, rad, phase unknown. */
-  readonly background: number;
+  /** The swing before the shot. */
+  readonly background: Background;
   /** On the impulse of a shot. */
   readonly impulse: readonly Correction[] | null;
   /** From the momentum delivered to the thruster's impulse bit. */
@@ -40,11 +45,19 @@ export interface Corrections {
   readonly propellant: Uncertain | null;
 }
 
-export function correctionsOf(bench: BenchRead, choices: Choices, shots: { readonly body: Body | null; readonly frequency: Uncertain | null; readonly ratio: Anchor; readonly gravity: Anchor | null }, background: number, problems: Problem[]): Corrections {
+/** What of the stand the corrections lean on, as fired. */
+export interface CorrectedStand {
+  readonly body: Body | null;
+  readonly frequency: Uncertain | null;
+  readonly ratio: Anchor;
+  readonly gravity: Anchor | null;
+}
+
+export function correctionsOf(bench: BenchRead, choices: Choices, shots: CorrectedStand, given: { readonly background: Background; readonly pulse: PulseSamples | null }, problems: Problem[]): Corrections {
   return {
     ...samplingCorrections(bench, choices, shots.frequency, problems),
-    background: choices.correctBackground ? background : 0,
-    impulse: impulseCorrections(bench, choices, shots.frequency, shots.ratio, problems),
+    background: given.background,
+    impulse: impulseCorrections(bench, choices, shots, given.pulse, problems),
     target: targetCorrections(bench, choices, problems),
     propellant: propellantGain(bench, choices, shots.body, shots.gravity, problems),
   };
@@ -77,42 +90,85 @@ function samplingCorrections(bench: BenchRead, choices: Choices, frequency: Unce
   }
 }
 
-function impulseCorrections(bench: BenchRead, choices: Choices, frequency: Uncertain | null, ratio: Anchor, problems: Problem[]): readonly Correction[] | null {
-  const list: Correction[] = [];
-  const duration = choices.correctPulse ? valueOf(bench, 'pulseDuration') : null;
-  if (duration && frequency && duration.value > 0) {
-    const shape: PulseShape = choices.pulseShape;
-    const factorOf = ({ t, w, z }: Readonly<Record<'t' | 'w' | 'z', number>>): number => {
-      const found = pulseCorrection({ shape, duration: Math.max(0, t), naturalFrequency: w, dampingRatio: Math.max(0, z) });
-      if (found.status !== 'corrected') throw new RangeError('pulse: it reaches the first maximum');
-      return found.factor;
-    };
-    try {
-      list.push({ id: 'pulse', label: 'Length of the pulse', symbol: 'C_τ', equation: 'C_τ = I/|∫F e^{−iωt} dt|, damped', factor: anchor(propagate(factorOf, { t: duration, w: frequency, z: ratio })) });
-    } catch (failure) {
-      if (!(failure instanceof RangeError)) throw failure;
-      problems.push(problem('pulse-reaches-the-peak', 'stops', { entry: 'pulseDuration' }, {}));
-      return null;
-    }
-  }
-  if (choices.correctAlignment) list.push(...alignmentCorrections(bench));
-  return list;
+function impulseCorrections(bench: BenchRead, choices: Choices, { frequency, ratio }: CorrectedStand, samples: PulseSamples | null, problems: Problem[]): readonly Correction[] | null {
+  const pulse = choices.correctPulse ? pulseOf(bench, choices, frequency, ratio, samples, problems) : [];
+  const alignment = choices.correctAlignment ? alignmentCorrections(bench, problems) : [];
+  return pulse && alignment && [...pulse, ...alignment];
 }
 
-function alignmentCorrections(bench: BenchRead): readonly Correction[] {
+type PulseInputs = Readonly<Record<'t' | 'w' | 'z', number>>;
+
+/** null where no impulse follows from a first swing. */
+function pulseOf(bench: BenchRead, choices: Choices, frequency: Uncertain | null, ratio: Anchor, samples: PulseSamples | null, problems: Problem[]): readonly Correction[] | null {
+  const measured = choices.pulseShape === 'measured';
+  if (measured && !samples) return null;
+  const duration = measured ? exact(0) : valueOf(bench, 'pulseDuration');
+  if (!duration || !frequency || !(measured || duration.value > 0)) return [];
+  const entry = measured ? PULSE_SAMPLES : 'pulseDuration';
+  const of = (force: PulseSamples | null) => ({ t, w, z }: PulseInputs): number => {
+    const dampingRatio = Math.max(0, z);
+    const found = choices.pulseShape === 'measured' ? measuredPulseCorrection(force!, w, dampingRatio) : pulseCorrection({ shape: choices.pulseShape, duration: Math.max(0, t), naturalFrequency: w, dampingRatio });
+    if (found.status !== 'corrected' || !(found.factor < Infinity)) throw new RangeError('pulse: no impulse follows from the first maximum');
+    return found.factor;
+  };
+  if (measured && !(momentsOf(samples!).impulse > 0)) {
+    problems.push(problem('pulse-samples-no-impulse', 'stops', { entry }, {}));
+    return null;
+  }
+  try {
+    const drawn = propagate(of(samples), { t: duration, w: frequency, z: ratio });
+    const factor = measured ? combine([[1, drawn], [1, betweenSamples(drawn, samples!, of, { t: 0, w: frequency.value, z: ratio.value })]]) : drawn;
+    return [{
+      id: 'pulse', label: measured ? 'Length of the pulse, as measured' : 'Length of the pulse', symbol: 'C_τ', factor: anchor(factor),
+      equation: measured ? 'C_τ = I/|∫F e^{−iωt} dt|, damped, F straight between the samples' : 'C_τ = I/|∫F e^{−iωt} dt|, damped',
+    }];
+  } catch (failure) {
+    if (!(failure instanceof RangeError)) throw failure;
+    problems.push(problem('pulse-reaches-the-peak', 'stops', { entry }, {}));
+    return null;
+  }
+}
+
+/** What lies between the samples: as much as every second of them leaves out, as limits; of few samples all that the length does. */
+function betweenSamples(drawn: Uncertain, { time, force }: PulseSamples, of: (force: PulseSamples) => (x: PulseInputs) => number, at: PulseInputs): Uncertain {
+  const keep = (_: number, i: number): boolean => i % 2 === 0 || i === time.length - 1;
+  let half = Math.abs(drawn.value - 1);
+  try {
+    if (time.length > 3) half = Math.min(half, Math.abs(of({ time: time.filter(keep), force: force.filter(keep) })(at) - drawn.value));
+  } catch (failure) {
+    if (!(failure instanceof RangeError)) throw failure;
+  }
+  return ofSource({ id: PULSE_SAMPLES, label: 'Pulse between its samples', symbol: 'C_τ', dimension: 'number', estimate: 0, u: fromLimits(half), distribution: 'rectangular', dof: Infinity });
+}
+
+/** null where the tilt leaves the thrust no leverage. */
+function alignmentCorrections(bench: BenchRead, problems: Problem[]): readonly Correction[] | null {
   const list: Correction[] = [];
+  const lost = (entry: 'tiltInPlane' | 'tiltOutOfPlane'): null => {
+    problems.push(problem('tilt-leaves-no-leverage', 'stops', { entry }, {}));
+    return null;
+  };
   const out = valueOf(bench, 'tiltOutOfPlane');
   if (out) {
     // The cosine is flat at 0, where a half-difference sees nothing; its mean and spread over the tilt's uncertainty are used.
     const { mean, deviation } = cosineOfUncertainTilt({ tilt: out.value, u: standardUncertainty(out) });
+    if (!(mean > LEAST_COSINE)) return lost('tiltOutOfPlane');
     const cosine: Source = { id: 'tiltOutOfPlane.cosine', label: 'Thrust tilted out of the swing plane (its cosine)', symbol: 'cos α', dimension: 'number', estimate: mean, u: deviation, distribution: 'normal', dof: Infinity };
     list.push({ id: 'tiltOutOfPlane', label: 'Thrust tilted out of the swing plane', symbol: '1/cos α', equation: 'mean of cos α over its uncertainty', factor: anchor(propagate(({ c }) => 1 / c, { c: ofSource(cosine) })) });
   }
   const inPlane = valueOf(bench, 'tiltInPlane');
   const arm = valueOf(bench, 'leverArm');
-  if (inPlane && arm) {
-    const factor = ({ tilt, ahead, leverArm }: Readonly<Record<'tilt' | 'ahead' | 'leverArm', number>>): number => 1 / alignmentFactor({ inPlane: tilt, outOfPlane: 0, exitAhead: ahead, leverArm });
+  if (!inPlane || !arm) return list;
+  const factor = ({ tilt, ahead, leverArm }: Readonly<Record<'tilt' | 'ahead' | 'leverArm', number>>): number => {
+    const a = alignmentFactor({ inPlane: tilt, outOfPlane: 0, exitAhead: ahead, leverArm });
+    if (!(a > LEAST_COSINE)) throw new RangeError('alignment: the tilted thrust has no leverage');
+    return 1 / a;
+  };
+  try {
     list.push({ id: 'tiltInPlane', label: 'Thrust tilted in the swing plane', symbol: '1/a', equation: 'a = cos α_i + (e/r_t) sin α_i', factor: anchor(propagate(factor, { tilt: inPlane, ahead: valueOf(bench, 'exitAhead') ?? exact(0), leverArm: arm })) });
+  } catch (failure) {
+    if (!(failure instanceof RangeError)) throw failure;
+    return lost('tiltInPlane');
   }
   return list;
 }
@@ -138,7 +194,13 @@ function targetCorrections(bench: BenchRead, choices: Choices, problems: Problem
 function captured(bench: BenchRead): Uncertain | null {
   const exponent = valueOf(bench, 'plumeExponent');
   const halfAngle = valueOf(bench, 'targetHalfAngle');
-  return exponent && halfAngle ? propagate(({ n, a }) => captureFraction({ exponent: n, halfAngle: a }), { n: exponent, a: halfAngle }) : null;
+  if (!exponent || !halfAngle) return null;
+  try {
+    return propagate(({ n, a }) => captureFraction({ exponent: n, halfAngle: a }), { n: exponent, a: halfAngle });
+  } catch (failure) {
+    if (failure instanceof RangeError) return null;
+    throw failure;
+  }
 }
 
 function propellantGain(bench: BenchRead, choices: Choices, body: Body | null, gravity: Anchor | null, problems: Problem[]): Uncertain | null {
@@ -154,20 +216,25 @@ function propellantGain(bench: BenchRead, choices: Choices, body: Body | null, g
   }
 }
 
+/** A first swing, or a launch, with the corrections of its reading. */
+export const throughReading = (y: Uncertain, { reading }: Pick<Corrections, 'reading'>): Uncertain => reading.reduce((so, { factor }) => propagate(({ a, f }) => a * f, { a: so, f: factor }), y);
+
 /** Launch with the reading's corrections and what the background swing and a missed peak add, of this record alone. null: the background swing is the larger. */
 export function correctedLaunch(launch: Uncertain, record: SessionRecord, c: Corrections, problems: Problem[]): Uncertain | null {
   let y = launch;
-  for (const { factor } of c.reading) y = propagate(({ a, f }) => a * f, { a: y, f: factor });
+  // With a swing of known phase the corrections of the reading have gone into the first swing itself.
+  const { amplitude: background, state } = swingBefore(c.background, record);
+  if (!state) y = throughReading(y, c);
   const own = (id: string, label: string, u: number, distribution: Source['distribution']): Uncertain =>
     ofSource({ id: `${record.id}.${id}`, label, symbol: 'φ', dimension: 'angle', estimate: 0, u, distribution, dof: Infinity, family: familyOf(record.kind) });
   if (c.missedPeak > 0) y = combine([[1, y], [1, own('missedPeak', 'First maximum between frames', c.missedPeak * Math.abs(y.value), 'rectangular')]]);
-  if (c.background > 0) {
-    if (!(Math.abs(y.value) > c.background)) {
+  if (background > 0) {
+    if (!(Math.abs(y.value) > background)) {
       problems.push(problem('background-swing-larger', 'stops', placeOf(record), {}));
       return null;
     }
-    const jump = propagate(({ a }) => Math.sign(a) * jumpOfUnknownPhase(Math.abs(a), Math.min(c.background, Math.abs(a) * (1 - 1e-9))).jump, { a: y });
-    y = combine([[1, jump], [1, own('background', 'Swing before the shot, phase unknown', c.background / Math.SQRT2, 'normal')]]);
+    const jump = propagate(({ a }) => Math.sign(a) * jumpOfUnknownPhase(Math.abs(a), Math.min(background, Math.abs(a) * (1 - 1e-9))).jump, { a: y });
+    y = combine([[1, jump], [1, own('background', 'Swing before the shot, phase unknown', background / Math.SQRT2, 'normal')]]);
   }
   return y;
 }

@@ -5,7 +5,7 @@ import { problem, type Problem } from '../problems/problems.ts';
 import { WAYS } from '../readings/ways.ts';
 import { ENTRIES, ENTRY_NAMES, PART_ENTRIES, type EntryKind, type EntryName, type PartEntryName } from '../session/entries.ts';
 import type { Choices, Entry, Session } from '../session/session.ts';
-import { readNumber, readQuantity } from '../units/quantity.ts';
+import { readNumber, readQuantity, type QuantityRead } from '../units/quantity.ts';
 import type { Dimension } from '../units/units.ts';
 import type { EntryRead } from './results.ts';
 
@@ -62,7 +62,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   }
   if (choices.form === 'filmStrip') {
     for (const name of ['filmThickness', 'filmWidth', 'filmLength', 'filmDensity', 'filmModulus', 'zoneFrom', 'zoneTo'] as const) needed.add(name);
-    for (const name of ['filmMass', 'plateMass'] as const) used.add(name);
+    for (const name of ['filmMass', 'plateMass', 'tapContact'] as const) used.add(name);
     used.delete('flexureStiffness');
   }
   if (choices.restoring === 'flexureAlone' && choices.form !== 'periodAndStiffness' && choices.form !== 'filmStrip') needed.add('flexureStiffness');
@@ -74,15 +74,16 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   if (way.reads === 'length' && choices.readingWay.startsWith('ruler')) for (const name of ['parallaxGap', 'cameraDistance', 'eyeShift'] as const) used.add(name);
   if (choices.dampingWay === 'decrement') needed.add('logDecrement');
   if (choices.dampingWay === 'ratio') needed.add('dampingRatio');
+  if (choices.dampingWay === 'maximumTime') needed.add('firstMaximumTime');
   if (choices.dampingWay === 'quadratic') needed.add('quadraticDamping');
   if (choices.dampingWay === 'friction') needed.add('frictionAngle');
   const when = (switched: boolean, ...names: readonly EntryName[]): void => {
     if (switched) for (const name of names) used.add(name);
   };
-  when(choices.correctPulse, 'pulseDuration');
+  when(choices.correctPulse && choices.pulseShape !== 'measured', 'pulseDuration');
   when(choices.correctAlignment, 'tiltInPlane', 'exitAhead', 'tiltOutOfPlane');
   when(choices.correctSampling, 'exposure', 'frameInterval');
-  when(choices.correctBackground, 'backgroundSwing');
+  when(choices.correctBackground, 'backgroundSwing', 'backgroundPhase', 'backgroundTime');
   when(choices.correctPropellant, 'propellantUsed', 'propellantDistance');
   when(choices.plume === 'caught', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle');
   for (const name of ['pressure', 'tapPressure', 'vacuumBelow'] as const) used.add(name);
@@ -93,6 +94,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   when(choices.correctAir && light, 'stripWidth', 'stripThickness');
   when(choices.plume === 'carried', 'capacitance', 'leadResistance');
   for (const name of ['timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightFactor', 'weightSpread', 'pullArm', 'hammerMass', 'hammerLength', 'hammerAngleSpread', 'hammerZero'] as const) used.add(name);
+  when(choices.form !== 'filmStrip', 'staticStiffness', 'forcePerDeflection');
   when(choices.hammerForm === 'compound', 'hammerContact', 'hammerPeriod', 'hammerInertia');
   for (const name of PLANNING) used.add(name);
   if (choices.gravityWay === 'typed') used.add('gravity');
@@ -108,7 +110,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'tapContact', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
 
 const LARGE_RELATIVE = 0.3;
 
@@ -150,6 +152,17 @@ export function readBench(session: Session): BenchRead {
   return { entries, parts, problems, all, sources };
 }
 
+/** An entry is read again for every slip that is tried beside it, and never changes. */
+const READ = new WeakMap<Entry, { readonly dimension: Dimension; readonly unit: string; readonly got: QuantityRead }>();
+
+function quantityOf(typed: Entry, text: string, dimension: Dimension, unit: string): QuantityRead {
+  const kept = READ.get(typed);
+  if (kept?.dimension === dimension && kept.unit === unit) return kept.got;
+  const got = readQuantity(text, dimension, unit);
+  READ.set(typed, { dimension, unit, got });
+  return got;
+}
+
 function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choices: Choices, used: boolean, problems: Problem[]): ReadEntry {
   const dimension: Dimension = kind.dimension === 'reading' ? readingDimension(choices) : kind.dimension === 'gauge' ? gaugeDimension(choices) : kind.dimension;
   const unitIfNone = kind.dimension === 'reading' ? (USUAL_READING_UNIT[dimension] ?? kind.unit) : kind.dimension === 'gauge' ? GAUGE_UNIT[choices.gaugeMeaning] : kind.unit;
@@ -160,7 +173,7 @@ function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choi
   });
   if (text === '' || !typed) return blank();
   const place = { entry: name };
-  const got = readQuantity(text, dimension, unitIfNone);
+  const got = quantityOf(typed, text, dimension, unitIfNone);
   if (!got.ok) {
     const code = got.fault === 'unknownUnit' ? 'entry-unknown-unit' : got.fault === 'wrongDimension' ? 'entry-wrong-kind-of-unit' : 'entry-not-a-number';
     problems.push(problem(code, 'stops', place, { label: kind.label, found: text, unit: unitIfNone }));

@@ -5,6 +5,7 @@ import { WAYS } from '../readings/ways.ts';
 import type { Dimension } from '../units/units.ts';
 import { budgetOfRecord, stated } from './run.ts';
 import { expanded, finiteSources } from '../metrology/coverage.ts';
+import { swingBefore } from './background.ts';
 import { factorAt, launchAt } from './factors.ts';
 import type { Road } from './road.ts';
 import type { ChainStep, Reduction } from './results.ts';
@@ -70,16 +71,21 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
     add('damping', 'Damping of the first swing', 'D', 'D = exp[ζ arccos ζ/√(1 − ζ²)]', 'number', D, { factor: D.value });
   } else if (damping.law === 'quadratic') add('quadratic', 'Quadratic damping', 'β', 'J θ″ = −b|θ′|θ′ − …, β = b/J', 'number', damping.quadratic[swing.configuration]);
   else add('friction', 'Friction of the pivot', 'θ_f', 'θ_f = τ_f/κ', 'angle', damping.friction[swing.configuration]);
+  const { amplitude: background, state: before } = swingBefore(corrections.background, swing.record);
   const other: Form = chosen.form === 'full' ? 'smallAngle' : 'full';
   add('share', 'Gravity share of the stiffness', 'p', 'p = M g d/κ', 'number', road.shares[c]);
   const form = (f: Form, aside: boolean): void => {
     const y = swing.launch![f];
     const label = f === 'full' ? 'Launch, full pendulum' : 'Launch, small angle';
-    const equation = f === 'full' ? EQUATION_OF_MOTION[damping.law] : damping.law === 'viscous' ? 'φ = D θ_p' : 'the same with p = 0';
+    const equation = before ? `φ = [θ′(0⁺) − θ′(0⁻)]/ω_n: ${f === 'full' ? 'the full pendulum' : 'the same with p = 0'} solved back from θ_p to x_f` : f === 'full' ? EQUATION_OF_MOTION[damping.law] : damping.law === 'viscous' ? 'φ = D θ_p' : 'the same with p = 0';
     const factor = swing.angle!.value === 0 ? 1 : y.value / swing.angle!.value;
     add(`launch.${f}`, label, 'φ', equation, 'angle', y, aside ? { factor, aside: true } : { factor });
   };
   for (const one of corrections.reading) add(`correction.${one.id}`, one.label, one.symbol, one.equation, 'number', one.factor, { factor: one.factor.value });
+  if (before) {
+    add('before.deflection', 'Deflection at the shot', 'x_f', 'of the swing before it, A_0 and φ_0 damped on to the shot', 'angle', before.deflection);
+    add('before.speed', 'Speed at the shot', 'v_f/ω_n', 'of the swing before it, along the thrust positive', 'angle', before.speed);
+  } else if (background > 0) add('before.amplitude', 'Swing before the shot, phase not known', 'A_0', 'φ = (a + √(a² − A_0²))/2, a the launch without it; ± A_0/√2 of this record alone', 'angle', exact(background));
   form(chosen.form, false);
   form(other, true);
   const way = (w: Way, aside: boolean): void => {

@@ -18,7 +18,7 @@ export interface Factors extends Readonly<Record<Way, FactorByConfiguration>> {
   readonly change: Uncertain | null;
 }
 
-/** A film's K of each configuration, and K_f/K_c where its air differs. */
+/** A film's K of each configuration, and K_f/K_c where its air or the stretch that is struck differs. */
 export interface FilmFactors {
   readonly geometry: FactorByConfiguration;
   readonly change: Uncertain | null;
@@ -49,8 +49,10 @@ export interface FactorFacts {
 export function factorsOf({ bodies, film, stand, taps, places, choices }: FactorFacts): Readonly<Record<Form, Factors>> {
   const geometry = film?.geometry ?? factorsOfBodies(bodies);
   const known = bodies ?? (choices.route === 'masses' ? stand.masses : null);
-  const differs = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots' || choices.hammerAfter === 'stays' || (known !== null && known.shots !== known.taps);
-  const change = film?.change ?? changeToFiring(known, differs);
+  const hung = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots' || choices.hammerAfter === 'stays';
+  const differs = hung || (known !== null && known.shots !== known.taps);
+  // What hangs on a film for the taps alone is in no model of it.
+  const change = (hung ? null : film?.change) ?? changeToFiring(known, differs);
   const of = (form: Form): Factors => {
     const tapCalibration = calibrationFromTaps(taps, form, places, choices);
     const firing = tapCalibration && change && fired(tapCalibration.asTaken, change);

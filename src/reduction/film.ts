@@ -1,5 +1,6 @@
 /** A hanging film as what it is: its calibration factor from thickness, width, length, modulus and the zone struck, by its modes. */
-import { anchor, exact, ofSource, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
+import { fromLimits } from '../metrology/source.ts';
+import { anchor, combine, exact, ofSource, propagate, standardUncertainty, withSensitivities, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { filmModelSpread } from '../pendulum/filmSpread.ts';
 import { LARGEST_STIFFNESS_NUMBER, LEAST_STIFFNESS_NUMBER } from '../pendulum/filmModes.ts';
 import { clampedCoefficient, filmBehaviour, filmMass, filmRegime, LIMP_BELOW, stiffnessNumber, type FilmInputs, type FilmRegime } from '../pendulum/filmStrip.ts';
@@ -14,6 +15,10 @@ export interface Film {
   /** K that makes K θ/r the impulse: m R r/(X √(L/g)), N·m·s/rad, of each configuration. */
   readonly factors: ByConfiguration<Anchor | null>;
   readonly told: FilmTold;
+  /** K_f/K_c by the modes: a tap strikes a shorter stretch than the plume, and perhaps elsewhere; null where none is known. */
+  readonly change: Uncertain | null;
+  /** Relative change of I by the struck zone moved along the film by this much either way, m. */
+  readonly movedBy: (shift: number) => number;
 }
 
 /** What the page says of the film. */
@@ -29,10 +34,12 @@ export interface FilmTold {
   readonly quarters: number;
   /** Undamped period of the first mode, s. */
   readonly period: number;
+  /** Length of film that a tap strikes, m, whether it was typed, and K_f/K_c that follows from it; null without taps' lever arm. */
+  readonly contact: { readonly length: number; readonly typed: boolean; readonly change: Stated } | null;
 }
 
-/** A tap's contact as a share of the film's length on either side. */
-const CONTACT = 0.01;
+/** A tap's contact as a share of the film's length where nothing is typed, anywhere from none to twice that. Judgement. */
+const CONTACT = 0.02;
 
 export function filmOf(bench: BenchRead, choices: Choices, gravity: Anchor | null, ratio: ByConfiguration<Anchor>, problems: Problem[]): Film | null {
   const need = (name: Parameters<typeof valueOf>[1]): Uncertain | null => valueOf(bench, name);
@@ -63,11 +70,30 @@ export function filmOf(bench: BenchRead, choices: Choices, gravity: Anchor | nul
   }
 }
 
+/** Length of film that a tap strikes. */
+function contactOf(bench: BenchRead, length: Uncertain): Uncertain {
+  const typed = valueOf(bench, 'tapContact');
+  const estimate = CONTACT * length.value;
+  return typed ?? ofSource({ id: 'tapContact', label: 'Length of the tap’s contact (2 % of the film taken)', symbol: 'l_t', dimension: 'length', estimate, u: fromLimits(estimate), distribution: 'rectangular', dof: Infinity });
+}
+
 function tapInputs(bench: BenchRead, shared: Pick<Record<keyof FilmInputs, Uncertain>, 'stiffnessNumber' | 'plateRatio' | 'readAt'>, dampingRatio: Anchor, length: Uncertain): Record<keyof FilmInputs, Uncertain> | null {
   const arm = valueOf(bench, 'tapLeverArm');
   if (!arm) return null;
-  const at = (offset: number): Uncertain => propagate(({ a, L }) => a / L + offset, { a: arm, L: length });
-  return { ...shared, dampingRatio, zoneFrom: at(-CONTACT), zoneTo: at(CONTACT) };
+  const contact = contactOf(bench, length);
+  const at = (side: 1 | -1): Uncertain => propagate(({ a, L, c }) => (a + (side * c) / 2) / L, { a: arm, L: length, c: contact });
+  return { ...shared, dampingRatio, zoneFrom: at(-1), zoneTo: at(1) };
+}
+
+/** K_f/K_c of taps in place, what they share cancelling; the model may be wrong in all that it moves. */
+function changeByZone(factors: Film['factors']): Uncertain | null {
+  const { shots, taps } = factors;
+  if (!shots || !taps) return null;
+  // By exact slopes: half-differences would leave a trace of what cancels, the model's spread above all.
+  const ratio = withSensitivities(shots.value / taps.value, [[1 / taps.value, shots], [-shots.value / taps.value ** 2, taps]]);
+  return combine([[1, ratio], [1, ofSource({
+    id: 'film.zones', label: 'Tap and plume on different stretches of the film (judgement)', symbol: 'K_f/K_c', dimension: 'number', estimate: 0, u: fromLimits(Math.abs(ratio.value - 1)), distribution: 'rectangular', dof: Infinity,
+  })]]);
 }
 
 function withModes(
@@ -89,11 +115,20 @@ function withModes(
     return anchor(propagate(({ m, R, r, c, L, g, s }) => (s * m * R * r * Math.sqrt(g / L)) / c, { m: x.mass, R: x.radius, r: arm, c: X, L: x.length, g: x.gravity, s: model }));
   };
   const behaviour = filmBehaviour(plain, 'clamped');
+  const factors = { shots: factorOf('shots'), taps: factorOf('taps') };
+  const change = changeByZone(factors);
   const told: FilmTold = {
     stiffnessNumber: stated(x.S), regime: filmRegime(x.S.value), coefficient: stated(coefficient), spread, overRigid: behaviour.overRigid, quarters: behaviour.timeInQuarters,
     period: (2 * Math.PI) / (behaviour.frequency * Math.sqrt(x.gravity.value / x.length.value)),
+    contact: change && { length: contactOf(bench, x.length).value, typed: valueOf(bench, 'tapContact') !== null, change: stated(change) },
   };
   problems.push(problem('film-regime', 'note', { entry: 'filmThickness' }, { regime: told.regime, stiffness: x.S.value, quarters: told.quarters }));
   if (choices.calibration === 'geometry') problems.push(problem('film-model-alone', 'doubt', { entry: 'filmThickness' }, { percent: 100 * spread, overRigid: told.overRigid }));
-  return { factors: { shots: factorOf('shots'), taps: factorOf('taps') }, told };
+  const lnOf = (shift: number): number => Math.log(clampedCoefficient({ ...plain, zoneFrom: plain.zoneFrom + shift, zoneTo: plain.zoneTo + shift }));
+  const movedBy = (shift: number): number => {
+    // A zone that would run past the tip is moved by what is left, and scaled up.
+    const share = Math.min(shift / x.length.value, Math.max(0.01, 1.2 - plain.zoneTo), Math.max(0.01, plain.zoneFrom + 0.2));
+    return (Math.abs(lnOf(share) - lnOf(-share)) / 2) * (shift / x.length.value / share);
+  };
+  return { factors, told, change, movedBy };
 }

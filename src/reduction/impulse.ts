@@ -1,14 +1,11 @@
 /** From a corrected launch to the impulse: K φ over the lever arm, the pulse, the alignment, the propellant gone, and the target. */
 import { propagate, type Uncertain } from '../metrology/uncertain.ts';
-import { WAYS } from '../readings/ways.ts';
 import type { Choices } from '../session/session.ts';
 import { propellantFactor, type Correction, type Corrections } from './corrections.ts';
-import type { BenchRead } from './entries.ts';
 import { factorAt, launchAt, type Factors } from './factors.ts';
 import type { ImpulseOf } from './road.ts';
 import { impulseOfLaunch, type Form, type Swing } from './shots.ts';
-import { valueOf, type ConfigurationName } from './stand.ts';
-import type { Scale } from './swings.ts';
+import type { ConfigurationName } from './stand.ts';
 
 const times = (y: Uncertain, factor: Uncertain): Uncertain => propagate(({ a, f }) => a * f, { a: y, f: factor });
 const throughAll = (y: Uncertain, corrections: readonly Correction[]): Uncertain => corrections.reduce((so, { factor }) => times(so, factor), y);
@@ -48,16 +45,3 @@ function once(of: ImpulseOf): ImpulseOf {
 /** I_thruster = I_delivered/(f_cap β_m); a tap strikes the pendulum itself. */
 export const toThruster = (delivered: Uncertain | null, swing: Swing, corrections: Corrections): Uncertain | null =>
   delivered && swing.record.kind !== 'tap' ? throughAll(delivered, corrections.target) : delivered;
-
-/** Amplitude before the shot as an angle, from its amplitude on the scale. */
-export function backgroundAngle(bench: BenchRead, scale: Scale | null): number {
-  const typed = valueOf(bench, 'backgroundSwing');
-  if (!typed || !scale || typed.value === 0) return 0;
-  const stand = Object.fromEntries(Object.entries(scale.stand).map(([name, value]) => [name, value.value]));
-  try {
-    return Math.abs(WAYS[scale.way].angle(scale.scale.value * typed.value, stand));
-  } catch (failure) {
-    if (failure instanceof RangeError) return 0;
-    throw failure;
-  }
-}

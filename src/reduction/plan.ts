@@ -9,6 +9,7 @@ import type { RecordKind } from '../readings/meanings.ts';
 import type { Choices } from '../session/session.ts';
 import type { Dimension } from '../units/units.ts';
 import type { Correction, Corrections } from './corrections.ts';
+import { AT_REST } from './background.ts';
 import { readingDimension, type BenchRead } from './entries.ts';
 import type { Factors } from './factors.ts';
 import { impulses } from './impulse.ts';
@@ -126,7 +127,7 @@ type Ready = PlanFacts & { readonly scale: Scale };
 const planned = (kind: RecordKind): SessionRecord => ({
   id: `plan.${kind}`, line: '', kind, kindBy: 'person', label: '', note: '', rest: null, firstSwing: null, restDown: null, firstSwingDown: null, nextSwings: [], time: null, voltage: null, pressure: null,
   tapImpulse: null, hammerIn: null, hammerRebound: null, hammerFollow: null, tapForce: null, tapDuration: null,
-  weight: null, loading: null, unloading: null, swingsTime: null, cycles: 1, amplitude: null, massHung: null, massHungAt: null, problems: [], cells: [], edited: [], sheet: 'plan', sheetName: '',
+  weight: null, loading: null, unloading: null, swingsTime: null, cycles: 1, amplitude: null, massHung: null, massHungAt: null, swingBefore: null, timeSinceMaximum: null, problems: [], cells: [], edited: [], sheet: 'plan', sheetName: '',
 });
 
 /** The road of one record that was never read: readings x from a rest of 0 to an impulse. */
@@ -240,8 +241,8 @@ function oneShot(x: number, facts: Ready, choices: Choices, way: Way): { readonl
 
 /** Decision and detection limit: the scatter of the throw of no impulse, as throws, and through the road as impulses. */
 function leastOf(bench: BenchRead, choices: Choices, facts: PlanFacts, bare: Ready, way: Way, guess: number, most: number): Plan['least'] {
-  const still = road('shot', { ...bare, corrections: { ...bare.corrections, background: 0 } }, choices, way);
-  const before = bare.corrections.background > 0 ? (valueOf(bench, 'backgroundSwing')?.value ?? 0) / Math.SQRT2 : 0;
+  const still = road('shot', { ...bare, corrections: { ...bare.corrections, background: AT_REST } }, choices, way);
+  const before = bare.corrections.background.shots.amplitude > 0 ? (valueOf(bench, 'backgroundSwing')?.value ?? 0) / Math.SQRT2 : 0;
   const rubbed = still.reading(fromLimits(bare.damping.friction.shots.value));
   const read = throwU(facts);
   if (read === 0) return null;

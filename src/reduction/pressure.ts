@@ -127,7 +127,7 @@ class Dial {
     const percent = unit === '%';
     const { meaning } = this;
     if (percent !== isPercent(meaning) || (countsDown(unit) && meaning !== 'gauge')) {
-      if (!this.asked.has(unit)) this.problems.push(problem('gauge-meaning-unclear', 'doubt', {}, { unit, meaning }));
+      if (!this.asked.has(unit)) this.problems.push(problem('gauge-meaning-unclear', 'doubt', place, { unit, meaning }));
       this.asked.add(unit);
       return null;
     }
@@ -173,7 +173,10 @@ export function pressuresOf(bench: BenchRead, choices: Choices, records: readonl
   const shots = meanOf(fired, 'shots') ?? ofEntry;
   const apart = meanOf(tapped, 'taps') ?? ofTapEntry;
   const taps = apart && !(shots && Math.abs(apart.value - shots.value) <= SAME * shots.value) ? apart : shots;
-  if (!shots) return { byRecord, shots: null, taps, told: null };
+  if (!shots) {
+    if (!shown && records.some((record) => record.kind === 'shot' && counts(record))) problems.push(problem('pressure-not-stated', 'note', { entry: 'pressure' }, {}));
+    return { byRecord, shots: null, taps, told: null };
+  }
   const values = fired.length > 0 ? fired.map((p) => p.value) : [shots.value];
   const [least, largest] = [Math.min(...values), Math.max(...values)];
   const below = valueOf(bench, 'vacuumBelow')?.value ?? COMPARABLE_WITH_VACUUM_BELOW;

@@ -1,23 +1,17 @@
 /** The road: session → readings → angles → swings → calibration → impulse bits → run. It reads like a method section; one file a step. */
-import { anchor, exact, propagate, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
+import { propagate, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingFactor, decrementOfRatio } from '../pendulum/damping.ts';
 import { naturalFrequency } from '../pendulum/forms.ts';
-import { undampedSmallPeriod } from '../pendulum/period.ts';
-import { problem, type Problem } from '../problems/problems.ts';
-import { ENTRIES } from '../session/entries.ts';
+import type { Problem } from '../problems/problems.ts';
 import type { Choices, Session } from '../session/session.ts';
-import { airOf, filmInAir, stripInAir } from './air.ts';
+import { agreementOf, agreementRemark } from './agreement.ts';
 import { benchEffectsOf } from './benchEffects.ts';
-import { correctionsOf } from './corrections.ts';
-import { readBench, type BenchRead } from './entries.ts';
-import { evidenceFrom, stiffnessAs } from './evidence.ts';
+import { evidenceFrom } from './evidence.ts';
 import { addedMassesTold, adjustmentTold, evidenceRemarks, evidenceRows } from './evidenceTold.ts';
 import { explained } from './explain.ts';
-import { filmOf } from './film.ts';
-import { calibrationResult, factorResult, factorsOf, withEvidence } from './factors.ts';
-import { backgroundAngle, impulses, toThruster } from './impulse.ts';
-import { gasDiffers, pressuresOf } from './pressure.ts';
-import { readingSpread, readingsOf } from './readings.ts';
+import { calibrationResult, factorResult, withEvidence } from './factors.ts';
+import { groundOf } from './ground.ts';
+import { impulses, toThruster } from './impulse.ts';
 import { planOf } from './plan.ts';
 import { planMass } from './planMass.ts';
 import { blanksOf, rangeOf, recordResults, withProblems } from './recordResults.ts';
@@ -25,16 +19,12 @@ import { differenceOf, remarksOnRun } from './remarks.ts';
 import type { Configuration, PeriodCheck, Reduction } from './results.ts';
 import type { Road } from './road.ts';
 import { runOf, stated, type Run } from './run.ts';
-import { scaleOf } from './scale.ts';
 import { readSheets, type SessionRecord } from './sheets.ts';
-import { swingOf, type Swing, type Way } from './shots.ts';
-import { changeOfConfiguration, missingEntries, periodOfBody, typedStiffness, readStand, standByRoute, valueOf, type Body, type ByConfiguration, type ConfigurationName, type Stand } from './stand.ts';
-import { dampingOf, type Damping } from './swings.ts';
-import { tapsOf } from './tapImpulse.ts';
-import { placesInRun } from './taps.ts';
+import type { Swing, Way } from './shots.ts';
+import { periodOfBody, standByRoute, typedStiffness, valueOf, type Body, type ByConfiguration, type ConfigurationName, type Stand } from './stand.ts';
+import type { Damping } from './swings.ts';
+import { tapsAgainst } from './tapsAgainst.ts';
 import { tapStudyOf } from './tapStudy.ts';
-import { barePeriod, timingsOf } from './timings.ts';
-import { weightsOf } from './weights.ts';
 
 export function reduce(session: Session, explain: string | null): Reduction {
   const choices = session.choices;
@@ -46,52 +36,10 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const setAside = (record: SessionRecord): string | null => session.marks[record.id]?.setAside?.reason ?? null;
   const counts = (record: SessionRecord): boolean => setAside(record) === null;
 
-  const bench = readBench(session);
-  problems.push(...bench.problems);
-  const asked = records.length > 0 || valueOf(bench, 'guessedImpulse') !== null;
-  if (asked) {
-    const timedInTable = records.some((record) => counts(record) && record.swingsTime !== null && record.massHung === null && record.massHungAt === null);
-    for (const name of missingEntries(bench, choices)) if (name !== 'period' || !timedInTable) problems.push(problem('entry-missing', 'stops', { entry: name }, { label: ENTRIES[name].label }));
-  }
-  const pressures = pressuresOf(bench, choices, records, counts, problems);
-  const strip = stripInAir(bench, choices);
-  const air = airOf(bench, choices, strip, pressures, problems);
-  const stand = readStand(bench, choices, air, gasDiffers(pressures));
-  problems.push(...stand.problems);
-  const scale = scaleOf(bench, choices);
-
-  const spread = readingSpread(records, bench, problems);
-  const read = readingsOf(records, spread, choices, bench);
-  problems.push(...read.problems);
-
-  const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
-  const counted = records.filter(counts);
-  const unknown = anchor(exact(stand.shareUnknown));
-  const shareOf = (name: ConfigurationName): Anchor => stand.masses?.[name].gravityShare ?? unknown;
-  const timings = timingsOf(counted, { bench, choices, ratio: damping.ratio, shares: { shots: shareOf('shots'), taps: shareOf('taps') } }, problems);
-  const typedPeriod = timedPeriod(session, bench, stand, damping, problems);
-  const period = typedPeriod ?? barePeriod(timings, choices.periodTimedAs);
-  const weights = weightsOf(counted, { bench, choices, scale, spread, gravity: stand.gravity, share: shareOf(choices.weightsHungAs) }, problems);
-  const change = choices.form === 'filmStrip' ? null : changeOfConfiguration(bench, choices, stand);
-  const film = choices.form === 'filmStrip' && asked ? filmOf(bench, choices, stand.gravity, damping.ratio, problems) : null;
-  const filmFactors = film && strip && filmInAir(film.factors, air, strip, valueOf(bench, 'plateMass'));
-  const weighed = weights && change && stiffnessAs(weights.stiffness, choices.weightsHungAs, choices.periodTimedAs, change);
-  const bodies = standByRoute(bench, stand, choices, period, problems, weighed);
-  const shares: ByConfiguration<Anchor> = bodies
-    ? { shots: bodies.shots.gravityShare, taps: bodies.taps.gravityShare }
-    : { shots: shareOf('shots'), taps: shareOf('taps') };
-
-  const frequency = film ? exact((2 * Math.PI) / (film.told.period * (filmFactors?.stretch ?? 1))) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
-  const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, backgroundAngle(bench, scale), problems);
-  const swung = film ? undampedOf(damping) : damping;
-  const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
-  const tapped = bodies && propagate(naturalFrequency, { inertia: bodies.taps.inertia, stiffness: bodies.taps.stiffness });
-  const taps = tapsOf(swings, { bench, choices, gravity: stand.gravity, frequency: tapped ?? frequency, ratio: damping.ratio.taps }, problems);
-  const taken = new Map(session.sheets.map((sheet) => [sheet.id, sheet.taken ?? ('asOrdered' as const)]));
-  const places = placesInRun(swings, ({ record }) => taken.get(record.sheet) ?? 'asOrdered');
-  const known = factorsOf({ bodies, film: filmFactors, stand, taps: taps.filter((tap) => counts(tap.swing.record)), places, choices });
+  const ground = groundOf(session, { records, counts, counted: records.filter(counts) }, problems);
+  const { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, bodies, shares, corrections, swings, taps, places, known } = ground;
   const tapCalibration = known[choices.swingForm].tapCalibration;
-  const evidence = evidenceFrom({ choices, stand, change, period: typedPeriod, timings, stiffness: typedStiffness(bench), weights: weights?.stiffness ?? null, taps: tapCalibration, ratio: { shots: damping.way === 'none' || damping.law !== 'viscous' ? null : damping.ratio.shots, taps: null } }, bodies);
+  const evidence = evidenceFrom({ choices, stand, change, period: typedPeriod, timings, stiffness: typedStiffness(bench), weights: weights?.stiffness ?? null, taps: tapCalibration, ratio: seenRatios(damping) }, bodies);
   const factors = withEvidence(known, { full: evidence.bodies, smallAngle: evidence.bodies });
 
   const arms: ByConfiguration<Uncertain | null> = { shots: valueOf(bench, 'leverArm'), taps: valueOf(bench, 'tapLeverArm') };
@@ -121,7 +69,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const difference = chosenRun ? differenceOf(factors[form].geometry.shots, factors[form].taps.shots) : null;
   problems.push(...remarksOnRun({ choices, records: results, run: chosenRun?.result ?? null, difference, damping, spread, taps: factors[form].tapCalibration, bench, period: periodCheck(stand, period, choices), sheets: sheets.sheets }));
 
-  const plan = planOf(bench, choices, { scale, spread, damping: swung, shares, corrections, factors, arms, bodies, gravity: stand.gravity, records });
+  const plan = planOf(bench, choices, { scale, spread, damping: swung, shares, corrections: { ...corrections, background: { ...corrections.background, shots: corrections.background.taps } }, factors, arms, bodies, gravity: stand.gravity, records });
   const study = tapCalibration && tapStudyOf(tapCalibration, form, places);
   const adjustment = adjustmentTold(evidence.all);
   const masses = addedMassesTold(evidence, timings, choices.restoring === 'flexureAlone' ? 0 : stand.gravity?.value ?? 0, timings.length > 0 ? planMass(bench, choices, bodies, stand.gravity) : null);
@@ -131,20 +79,27 @@ export function reduce(session: Session, explain: string | null): Reduction {
     choices, chosenKnown: factors[form][way].shots !== null, anyShots: shots.length > 0, study, adjustment, masses, runRelativeU: chosenRun ? chosenRun.result.mean.u / Math.abs(chosenRun.result.mean.value) : null,
   }));
 
+  const agreement = agreementOf(session, ground, { records, counts });
+  problems.push(...agreementRemark(agreement));
+  // A slip that is named says the same and more.
+  const told: ReadonlySet<string> = new Set(agreement && agreement.slips.length > 0 ? agreement.off.flatMap((id) => (id === 'period' ? ['period-differs'] : id === 'taps' ? ['calibrations-differ'] : [])) : []);
+  const said = problems.filter(({ code }) => !told.has(code));
+
   const opened = explain === null ? undefined : swings.find((s) => s.record.id === explain);
   return {
-    problems,
+    problems: said,
     entries: bench.all,
     sheets: sheets.sheets,
-    records: withProblems(results, problems),
+    records: withProblems(results, said),
     film: film?.told ?? null,
     pressure: pressures.told,
     air: { shots: air.shots?.told ?? null, taps: air.taps?.told ?? null },
-    benchEffects: benchEffectsOf(bench, choices, { body: bodies?.shots ?? null, gravity: stand.gravity, records: results, run: chosenRun?.result ?? null }),
+    benchEffects: benchEffectsOf(bench, choices, { body: bodies?.shots ?? null, film: film && ground.filmStiffness !== null ? { stiffness: ground.filmStiffness, movedBy: film.movedBy } : null, gravity: stand.gravity, records: results, run: chosenRun?.result ?? null }),
     plan,
     gravity: stand.gravity ? stated(stand.gravity) : null,
     configurations: { shots: configuration('shots', bodies, damping), taps: configuration('taps', bodies, damping) },
     damping: { way: damping.way, law: damping.law, quadratic: stated(damping.quadratic.shots), friction: stated(damping.friction.shots), ratio: stated(damping.ratio.shots), logDecrement: stated(propagate(({ z }) => Math.sign(z) * decrementOfRatio(Math.min(Math.abs(z), 0.999)), { z: damping.ratio.shots })), records: damping.records },
+    decay: damping.decay?.() ?? null,
     periodCheck: periodCheck(stand, period, choices),
     calibrations: {
       geometry: calibrationResult('geometry', factors, form),
@@ -157,6 +112,8 @@ export function reduce(session: Session, explain: string | null): Reduction {
     weights: weights?.told ?? null,
     addedMasses: masses,
     tapStudy: study,
+    comparisons: tapsAgainst({ damping, timings, bodies }),
+    agreement,
     difference,
     runs: { geometry: runs.geometry?.result ?? null, taps: runs.taps?.result ?? null },
     run: chosenRun?.result ?? null,
@@ -172,28 +129,8 @@ export function reduce(session: Session, explain: string | null): Reduction {
   };
 }
 
-/** The film's modes carry the damping of its first maximum themselves. */
-function undampedOf(damping: Damping): Damping {
-  const zero = anchor(exact(0));
-  const both = { shots: zero, taps: zero };
-  return { ...damping, ratio: both, quadratic: both, friction: both };
-}
-
-/** T₀ of the configuration in which the period was timed; null where none is typed, or the amplitude is none of a swing. */
-function timedPeriod(session: Session, bench: BenchRead, stand: Stand, damping: Damping, problems: Problem[]): Anchor | null {
-  const timed = valueOf(bench, 'period');
-  if (!timed) return null;
-  const { periodTimedAs } = session.choices;
-  const amplitude = valueOf(bench, 'periodAmplitude') ?? exact(0);
-  if (!(amplitude.value < Math.PI)) {
-    problems.push(problem('entry-out-of-range', 'stops', { entry: 'periodAmplitude' }, { label: ENTRIES.periodAmplitude.label, found: session.entries.periodAmplitude?.text ?? '', range: 'any' }));
-    return null;
-  }
-  return anchor(propagate(undampedSmallPeriod, {
-    timed, dampingRatio: damping.ratio[periodTimedAs], amplitude, cycles: valueOf(bench, 'periodCycles') ?? exact(0),
-    gravityShare: stand.masses?.[periodTimedAs].gravityShare ?? exact(stand.shareUnknown),
-  }));
-}
+/** ζ as evidence: of each configuration from its own swings, or as typed. */
+const seenRatios = ({ way, law, ratio, seen }: Damping): Damping['seen'] => (way === 'none' || law !== 'viscous' ? { shots: null, taps: null } : way === 'swings' ? seen : { shots: ratio.shots, taps: null });
 
 function periodCheck(stand: Stand, period: Anchor | null, choices: Choices): PeriodCheck | null {
   if (!period || !stand.masses) return null;

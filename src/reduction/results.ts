@@ -7,6 +7,7 @@ import type { Session } from '../session/session.ts';
 import type { BenchEffectId } from '../problems/benchEffects.ts';
 import type { AirLayer } from '../pendulum/gas.ts';
 import type { GaugeMeaning } from '../pendulum/pressure.ts';
+import type { DecayTold } from './decayLaws.ts';
 import type { FilmTold } from './film.ts';
 import type { Plan } from './plan.ts';
 
@@ -248,6 +249,57 @@ export interface TapStudy {
   readonly drift: { readonly from: string; readonly to: string; readonly relative: Stated; readonly inU: number } | null;
 }
 
+/** The pendulum after taps, brought to that as fired, and after shots. */
+export interface Comparison {
+  readonly id: 'damping' | 'period';
+  readonly taps: Stated;
+  readonly shots: Stated;
+  /** (shots − taps)/taps. */
+  readonly relative: Stated;
+  readonly inU: number;
+}
+
+/** One thing that was measured and that masses and lengths predict. */
+export interface AgreementCheck {
+  readonly id: 'period' | 'stiffness' | 'maximumTime' | 'taps';
+  /** s, N·m/rad, s, N·m·s/rad. */
+  readonly measured: Stated;
+  readonly predicted: Stated;
+  /** measured/predicted − 1, with the u of that. */
+  readonly relative: Stated;
+  readonly inU: number;
+}
+
+/** One edit of the session that a slip would be mended by. */
+export type SlipEdit =
+  | { readonly is: 'entry'; readonly name: string; readonly text: string }
+  | { readonly is: 'choice'; readonly name: 'swingMeasured'; readonly value: Session['choices']['swingMeasured'] }
+  /** role null: as it is. */
+  | { readonly is: 'column'; readonly sheet: string; readonly indices: readonly number[]; readonly role: Role | null; readonly unit: string };
+
+export type SlipId =
+  | 'lengthUnit' | 'massUnit' | 'inertiaUnit' | 'diameterForRadius' | 'radiusForDiameter' | 'tipForArm' | 'degreesForRadians' | 'radiansForDegrees' | 'beamAngle' | 'halfBeamAngle' | 'sideToSide' | 'fromRest'
+  | 'halfPeriod' | 'manySwings' | 'halfCycles' | 'impulseUnit' | 'weightUnit' | 'stiffnessUnit' | 'reboundForFollow' | 'followForRebound';
+
+/** A single slip that would reconcile the numbers. */
+export interface Slip {
+  readonly id: SlipId;
+  /** What it befell: label of an entry or a column. */
+  readonly what: string;
+  /** As typed, and as it would have to stand. */
+  readonly from: string;
+  readonly to: string;
+  readonly edit: SlipEdit;
+}
+
+export interface Agreement {
+  readonly checks: readonly AgreementCheck[];
+  /** Checks that are off; empty where the bench agrees with itself. */
+  readonly off: readonly AgreementCheck['id'][];
+  /** Single slips that would reconcile all of them, the likeliest first; at most three are told. */
+  readonly slips: readonly Slip[];
+}
+
 export interface PeriodCheck {
   /** Undamped zero-amplitude period as timed, and as masses and lengths predict, s, of the configuration it was timed in. */
   readonly measured: Stated;
@@ -338,7 +390,9 @@ export interface Reduction {
   readonly gravity: Stated | null;
   readonly configurations: { readonly shots: Configuration | null; readonly taps: Configuration | null };
   /** Where ζ comes from, in a few words, and how many swings it rests on. */
-  readonly damping: { readonly way: 'swings' | 'decrement' | 'ratio' | 'quadratic' | 'friction' | 'none'; readonly law: 'viscous' | 'quadratic' | 'friction'; /** β, 1/rad, and θ_f, rad. */ readonly quadratic: Stated; readonly friction: Stated; readonly ratio: Stated; readonly logDecrement: Stated; readonly records: number } | null;
+  readonly damping: { readonly way: Session['choices']['dampingWay']; readonly law: 'viscous' | 'quadratic' | 'friction'; /** β, 1/rad, and θ_f, rad. */ readonly quadratic: Stated; readonly friction: Stated; readonly ratio: Stated; readonly logDecrement: Stated; readonly records: number } | null;
+  /** How the amplitude of the longest swing falls; null where the damping is not from swings, or they are short. */
+  readonly decay: DecayTold | null;
   readonly periodCheck: PeriodCheck | null;
   readonly calibrations: { readonly geometry: Calibration | null; readonly taps: Calibration | null };
   readonly chosen: Session['choices']['calibration'];
@@ -349,6 +403,9 @@ export interface Reduction {
   readonly weights: WeightsTold | null;
   readonly addedMasses: AddedMassesTold | null;
   readonly tapStudy: TapStudy | null;
+  readonly comparisons: readonly Comparison[];
+  /** null where nothing measured stands against a prediction. */
+  readonly agreement: Agreement | null;
   readonly difference: Difference | null;
   readonly runs: { readonly geometry: RunResult | null; readonly taps: RunResult | null };
   readonly run: RunResult | null;

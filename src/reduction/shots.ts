@@ -7,7 +7,8 @@ import { problem, type Problem } from '../problems/problems.ts';
 import { swingFromMark, swingFromRest, swingFromSides } from '../readings/angle.ts';
 import type { RecordKind } from '../readings/meanings.ts';
 import type { Choices } from '../session/session.ts';
-import { correctedLaunch, restOfFriction, type Corrections } from './corrections.ts';
+import { launchFromSwing, smallLaunchFromSwing, swingBefore } from './background.ts';
+import { correctedLaunch, restOfFriction, throughReading, type Corrections } from './corrections.ts';
 import type { Readings } from './readings.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
 import { factorOfBody, type Body, type ConfigurationName } from './stand.ts';
@@ -58,7 +59,12 @@ export function swingOf(record: SessionRecord, readings: Readings, scale: Scale 
     const friction = damping.friction[configuration];
     const settled = friction.value > 0 ? combine([[1, angle], [1, restOfFriction(record, friction.value)]]) : angle;
     const swung = { angle: settled, ratio: damping.ratio[configuration], quadratic: damping.quadratic[configuration], friction, share: shares[configuration] };
-    const raw = { full: propagate(fullLaunch, swung), smallAngle: propagate(smallLaunch, swung) };
+    const before = swingBefore(corrections.background, record).state;
+    const raw = before ? launchesFromSwing({ ...swung, angle: throughReading(settled, corrections), ...before }) : { full: propagate(fullLaunch, swung), smallAngle: propagate(smallLaunch, swung) };
+    if (!raw) {
+      problems.push(problem('background-not-this-shot', 'stops', place, {}));
+      return { ...none, angle: settled };
+    }
     const full = correctedLaunch(raw.full, record, corrections, problems);
     const smallAngle = full && correctedLaunch(raw.smallAngle, record, corrections, []);
     return { ...none, angle: settled, launch: full && smallAngle ? { full, smallAngle } : null };
@@ -67,6 +73,16 @@ export function swingOf(record: SessionRecord, readings: Readings, scale: Scale 
     const out = Math.max(Math.abs(first.value - (scale.mark?.value ?? rest.value)), Math.abs(rest.value - (scale.mark?.value ?? rest.value)));
     problems.push(problem('record-reading-beyond-radius', 'stops', place, { reading: out, radius: (scale.stand['readingRadius'] ?? scale.stand['screenDistance'])?.value ?? 0 }));
     return none;
+  }
+}
+
+/** null where no swing from the state at the shot has this first maximum. */
+function launchesFromSwing(swung: Readonly<Record<'angle' | 'ratio' | 'quadratic' | 'friction' | 'share' | 'deflection' | 'speed', Uncertain>>): Readonly<Record<Form, Uncertain>> | null {
+  try {
+    return { full: propagate(launchFromSwing, swung), smallAngle: propagate(smallLaunchFromSwing, swung) };
+  } catch (failure) {
+    if (failure instanceof RangeError) return null;
+    throw failure;
   }
 }
 

@@ -91,12 +91,24 @@ export function timingsOf(records: readonly SessionRecord[], { bench, choices, r
     group.items.push({ record, period });
     groups.set(key, group);
   }
+  remarkHeavy([...groups.values()].flatMap(({ hung }) => (hung ? [hung.mass.value] : [])), bench, problems);
   return [...groups].map(([id, { hung, configuration, items }]) => {
     const periods = items.map(({ period }) => period);
     const own = ownParts(periods);
     const pooled = pooledMean(periods, own, { id: `timings.scatter.${id}`, label: 'Scatter of the timings', symbol: 'T', dimension: 'time', family: FAMILY, weights: weightsOf(own) });
     return { id, configuration, hung, period: anchor(pooled.mean), pooled, records: items.map(({ record }) => record) };
   });
+}
+
+/** Entries that are the pendulum's own masses. */
+const OWN_MASSES = ['bobMass', 'stripMass', 'plateMass'] as const;
+
+function remarkHeavy(hung: readonly number[], bench: BenchRead, problems: Problem[]): void {
+  const own = OWN_MASSES.map((name) => bench.entries.get(name)).flatMap((entry) => (entry?.read.used === true && entry.value ? [entry.value.value] : []));
+  const parts = bench.parts.flatMap(({ entries }) => entries.get('mass')?.value?.value ?? []);
+  const pendulum = [...own, ...parts].reduce((a, b) => a + b, 0);
+  const heaviest = Math.max(0, ...hung);
+  if (pendulum > 0 && heaviest > pendulum) problems.push(problem('mass-heavier-than-pendulum', 'doubt', {}, { mass: heaviest, pendulum }));
 }
 
 /** T₀ of the bare pendulum in one configuration, from the table of timings. */

@@ -44,6 +44,8 @@ export const setChoices = (choices: Partial<Choices>): Edit => (session) => ({ .
 
 export const setFreeSwing = (text: string): Edit => (session) => ({ ...session, freeSwing: text });
 
+export const setPulseSamples = (text: string): Edit => (session) => ({ ...session, pulseSamples: text });
+
 export const addPart = (name = ''): Edit => (session) => {
   const id = `p${nextNumber(session.parts.map((part) => part.id), 'p')}`;
   return { ...session, parts: [...session.parts, { id, name, entries: {} }] };
@@ -143,6 +145,10 @@ export const setSheetCut = (
 
 export const setKindOfAll = (sheet: string, kind: RecordKind | null): Edit =>
   editSheet(sheet, (found) => ({ ...found, kindOfAll: kind }));
+
+/** When the taps of a sheet were struck against the firings; null: in the order of the run. */
+export const setTaken = (sheet: string, taken: 'before' | 'after' | null): Edit =>
+  editSheet(sheet, ({ taken: _before, ...found }) => (taken === null ? found : { ...found, taken }));
 
 /**
  * Types over one cell. Lines that begin with `+` are rows typed by hand (their id is their line). For a line of the

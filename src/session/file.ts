@@ -18,7 +18,7 @@ const VERSION = 1;
 
 /** Keys in the order in which they are written, whatever order edits left them in; others follow as they stand. */
 const KEY_ORDER = [
-  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'freeSwing', 'choices', 'sheets', 'marks',
+  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'freeSwing', 'pulseSamples', 'choices', 'sheets', 'marks',
   'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
   'kind', 'setAside', 'reason',
 ];
@@ -202,6 +202,7 @@ class Reading {
       entries: this.entries<EntryName>('entries', found['entries'], ENTRY_NAMES),
       parts: this.parts(found['parts']),
       freeSwing: this.take('freeSwing', found['freeSwing'], isText, ''),
+      pulseSamples: this.take('pulseSamples', found['pulseSamples'], isText, ''),
       choices: this.choices(found['choices']),
       sheets: this.sheets(found['sheets']),
       marks: this.marks(found['marks']),

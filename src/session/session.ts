@@ -34,10 +34,10 @@ export interface Choices {
   readonly zeroTaken: 'before' | 'interpolated';
   /** The scale's numbers fall as the pendulum swings away from the thrust. */
   readonly scaleRunsBackward: boolean;
-  readonly dampingWay: 'swings' | 'decrement' | 'ratio' | 'quadratic' | 'friction' | 'none';
+  readonly dampingWay: 'swings' | 'decrement' | 'ratio' | 'maximumTime' | 'quadratic' | 'friction' | 'none';
   /** Law that the swings are fitted with; byDecay: the one that the way the amplitude falls tells. */
   readonly dampingLaw: 'viscous' | 'quadratic' | 'friction' | 'byDecay';
-  readonly pulseShape: 'rectangular' | 'halfSine' | 'triangle' | 'versedSine' | 'exponential';
+  readonly pulseShape: 'rectangular' | 'halfSine' | 'triangle' | 'versedSine' | 'exponential' | 'measured';
   /** Thruster carried by the pendulum, or its plume caught on a target that hangs there. */
   readonly plume: 'carried' | 'caught';
   /** What the run mean is of: the momentum delivered to the target, or the thruster's impulse bit inferred from it. */
@@ -112,6 +112,8 @@ export interface Session {
   readonly parts: readonly Part[];
   /** Turning readings of one free swing, in order, typed as a list with its unit: "31.6 -29.1 26.9 mm"; '' for none. */
   readonly freeSwing: string;
+  /** Samples of a measured pulse, a time and a thrust (or what goes with it) a line, a header line before them if there is one; '' for none. */
+  readonly pulseSamples: string;
   readonly choices: Choices;
   readonly sheets: readonly Sheet[];
   /** By record id `sheet id/line`. */
@@ -161,9 +163,9 @@ export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices
   swingMeasured: ['fromRest', 'sideToSide'],
   zeroTaken: ['before', 'interpolated'],
   scaleRunsBackward: [true, false],
-  dampingWay: ['swings', 'decrement', 'ratio', 'quadratic', 'friction', 'none'],
+  dampingWay: ['swings', 'decrement', 'ratio', 'maximumTime', 'quadratic', 'friction', 'none'],
   dampingLaw: ['viscous', 'quadratic', 'friction', 'byDecay'],
-  pulseShape: ['rectangular', 'halfSine', 'triangle', 'versedSine', 'exponential'],
+  pulseShape: ['rectangular', 'halfSine', 'triangle', 'versedSine', 'exponential', 'measured'],
   plume: ['carried', 'caught'],
   reported: ['thruster', 'delivered'],
   correctPulse: [true, false],
@@ -195,6 +197,7 @@ export function emptySession(): Session {
     entries: {},
     parts: [],
     freeSwing: '',
+    pulseSamples: '',
     choices: FIRST_CHOICES,
     sheets: [],
     marks: {},

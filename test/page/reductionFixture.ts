@@ -120,6 +120,7 @@ export const REDUCTION: Reduction = {
   gravity: stated(9.80665, 0),
   configurations: { shots: configuration('shots', 2.0e-3), taps: configuration('taps', 2.08e-3) },
   damping: { way: 'swings', law: 'viscous', quadratic: stated(0, 0), friction: stated(0, 0), ratio: stated(0.01, 4e-4), logDecrement: stated(0.06283, 2.5e-3), records: 6 },
+  decay: null,
   periodCheck: { measured: stated(1.262, 0.002), predicted: stated(1.25664, 0.005), inU: 1.0 },
   chosenFactor: calibration('geometry', FACTOR).factor,
   evidence: [
@@ -130,6 +131,8 @@ export const REDUCTION: Reduction = {
   weights: null,
   addedMasses: null,
   tapStudy: null,
+  comparisons: [],
+  agreement: null,
   calibrations: { geometry: calibration('geometry', FACTOR), taps: calibration('taps', FACTOR * 1.008) },
   chosen: 'geometry',
   difference: { relative: stated(0.008, 0.015), inU: 0.53 },

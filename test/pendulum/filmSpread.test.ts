@@ -36,3 +36,22 @@ test('a bare film leaves some per cent to judgement, a plate of three film masse
 test('a relative uncertainty of the stiffness number of 1 or more throws', () => {
   expect(() => filmModelSpread({ ...BARE, relativeStiffness: 1 })).toThrow(RangeError);
 });
+
+test('read on its plate, beside the centre of mass, leaves the plate’s turn to judgement and no whip of the film’s end', () => {
+  const plate = { ...BARE, stiffnessNumber: 0.0012, zoneFrom: 0.95, plateRatio: 10 };
+  for (const readAt of [0.98, 1.005, 1.02]) {
+    const { standard, parts } = filmModelSpread({ ...plate, readAt });
+    expect(parts.plateTurn).toBeCloseTo((2 * Math.abs(readAt - 1)) / Math.sqrt(3), 12);
+    expect(parts.ripple).toBeLessThan(0.01);
+    expect(standard).toBeLessThan(parts.plateTurn + 0.02);
+    expect(clampedCoefficient({ ...plate, readAt })).toBeCloseTo(readAt * clampedCoefficient({ ...plate, readAt: 1 }), 12);
+  }
+  expect(filmModelSpread({ ...plate, readAt: 1 }).parts.plateTurn).toBe(0);
+  expect(filmModelSpread({ ...plate, plateRatio: 0, readAt: 1.005 }).parts.plateTurn).toBe(0);
+});
+
+test('a first crest far below the largest reading is taken for none', () => {
+  const struckNearPlate = { ...BARE, stiffnessNumber: 0.0012, dampingRatio: 0.02, zoneFrom: 0.95, plateRatio: 0.5, readAt: 0.9 };
+  const { earliest, largest } = filmBehaviour(struckNearPlate, 'clamped');
+  expect(earliest.coefficient / largest.coefficient).toBeGreaterThan(0.4);
+});

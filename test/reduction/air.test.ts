@@ -141,6 +141,8 @@ it('a hanging film tapped at one atmosphere changes like its strip', () => {
     entries: {
       filmThickness: '25 µm', filmWidth: '19 mm', filmLength: '200 mm', filmDensity: '1420 kg/m³', filmModulus: '2.5 GPa', zoneFrom: '160 mm', zoneTo: '200 mm', leverArm: '180 mm', tapLeverArm: '180 mm',
       readingRadius: '200 mm', gravity: '9.80665 m/s²', dampingRatio: '0.02', division: '0.001 mm', airTemperature: '20 °C', pressure: '0.002 Pa', tapPressure: '101.325 kPa',
+      // As wide as the plume, so that the air alone changes the factor.
+      tapContact: '40 mm',
     },
     impulseUnit: 'µN·s',
     rows: [{ kind: 'tap', rest: '0', first: '10.0', tapImpulse: '4' }, { rest: '0', first: '10.0' }],

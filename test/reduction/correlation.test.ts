@@ -121,7 +121,7 @@ describe('the timed period', () => {
     const session = demoLike({ route: 'masses' });
     const [one, other] = ['1.125 ± 0.002 s', '1.4 ± 0.1 s'].map((T) => reduce(withEntry(session, 'period', entry(T)), rowId(SHOTS[0])));
     const without = (r: Reduction): unknown => ({
-      ...r, periodCheck: null, evidence: [], adjustment: null, problems: [], entries: [], run: r.run!.mean, delivered: r.delivered!.mean, thruster: r.thruster!.mean, runs: [r.runs.geometry!.mean, r.runs.taps!.mean], explained: r.explained!.chain,
+      ...r, periodCheck: null, evidence: [], adjustment: null, agreement: null, problems: [], entries: [], run: r.run!.mean, delivered: r.delivered!.mean, thruster: r.thruster!.mean, runs: [r.runs.geometry!.mean, r.runs.taps!.mean], explained: r.explained!.chain,
     });
     expect(without(one!)).toEqual(without(other!));
     expect(one!.periodCheck!.predicted).toEqual(other!.periodCheck!.predicted);

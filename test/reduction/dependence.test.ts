@@ -84,6 +84,8 @@ const AWAKENED: Readonly<Partial<Record<EntryName, { readonly typed: string; rea
   exposure: { typed: '20 ms', reaches: ['shot: launch', 'K by taps as taken'] },
   frameInterval: { typed: '30 ms', reaches: ['shot: launch', 'u of the run by geometry'] },
   backgroundSwing: { typed: '1 mm', reaches: ['shot: launch', 'u of the run by geometry'] },
+  backgroundPhase: { typed: '60°', beside: { backgroundSwing: '1 mm' }, reaches: ['shot: launch', 'u of the run by geometry'] },
+  backgroundTime: { typed: '0.2 s', beside: { backgroundSwing: '1 mm' }, reaches: ['shot: launch', 'u of the run by geometry'] },
   propellantUsed: { typed: '100 mg', beside: { propellantDistance: '380 mm' }, reaches: ['shot: by geometry'] },
   propellantDistance: { typed: '380 mm', beside: { propellantUsed: '100 mg' }, reaches: ['shot: by geometry'] },
   guessedImpulse: { typed: '1.2 mN·s', reaches: [] },
@@ -95,6 +97,9 @@ const AWAKENED: Readonly<Partial<Record<EntryName, { readonly typed: string; rea
   vacuumBelow: { typed: '1 Pa', reaches: [] },
   // Those of timings, weights and hammers have their records in evidence.test.ts; this bench has none.
   pullArm: { typed: '250 mm', reaches: [] },
+  staticStiffness: { typed: '54 mN·m/rad', reaches: [] },
+  forcePerDeflection: { typed: '0.5 mN/mm', beside: { pullArm: '250 mm' }, reaches: [] },
+  firstMaximumTime: { typed: '0.28 s', reaches: [] },
   timingSpread: { typed: '0.1 s', reaches: [] },
   hungMassSpread: { typed: '1 mg', reaches: [] },
   hungAtSpread: { typed: '0.5 mm', reaches: [] },

@@ -34,23 +34,46 @@ const quantity = fc.oneof({ weight: 4, arbitrary: fc.tuple(number, unit).map(([n
 const typed: fc.Arbitrary<Entry> = fc.record({ text: quantity, plusMinus: fc.constantFrom('standard', 'limits', 'expanded'), k: fc.oneof(fc.constant(''), fc.constant('2'), quantity) });
 const choices = fc.record(Object.fromEntries(Object.entries(CHOICE_VALUES).map(([name, values]) => [name, fc.constantFrom<unknown>(...values)]))) as fc.Arbitrary<unknown> as fc.Arbitrary<Choices>;
 /** Entries that make a bench, some of them typed over. */
-const SOUND = { ...demoLike().entries, bobMass: '20 g', bobDistance: '250 mm', stripMass: '20 g', stripLength: '400 mm', rulerHeight: '400 mm', screenDistance: '1 m', dampingRatio: '0.01(1)', logDecrement: '0.05(2)', latitude: '50°', height: '100 m' };
-const sound: Session['entries'] = Object.fromEntries(Object.entries(SOUND).map(([name, text]) => [name, typeof text === 'string' ? { text, plusMinus: 'standard', k: '' } : text]));
-const someEntries = fc.array(fc.tuple(fc.constantFrom(...ENTRY_NAMES), typed), { maxLength: 4 }).map((list) => ({ ...sound, ...Object.fromEntries(list) }));
+const SOUND = {
+  ...demoLike().entries, bobMass: '20 g', bobDistance: '250 mm', stripMass: '20 g', stripLength: '400 mm', rulerHeight: '400 mm', screenDistance: '1 m', dampingRatio: '0.01(1)', logDecrement: '0.05(2)', latitude: '50°', height: '100 m',
+  backgroundSwing: '1 mm', backgroundPhase: '60°', firstMaximumTime: '0.2 s', quadraticDamping: '0.3', frictionAngle: '0.4 mrad',
+};
+/** A film's measures; its modes take longer than all the rest. */
+const FILM = { filmThickness: '25 µm', filmWidth: '19 mm', filmLength: '200 mm', filmDensity: '1420 kg/m³', filmModulus: '2.5 GPa', zoneFrom: '160 mm', zoneTo: '200 mm', tapContact: '3 mm', leverArm: '180 mm', readingRadius: '200 mm', tapLeverArm: '180 mm' };
+const asEntries = (texts: Readonly<Record<string, string | Entry>>): Session['entries'] => Object.fromEntries(Object.entries(texts).map(([name, text]) => [name, typeof text === 'string' ? { text, plusMinus: 'standard', k: '' } : text]));
+const sound = asEntries(SOUND);
+const typedOver = (entries: Session['entries']) => fc.array(fc.tuple(fc.constantFrom(...ENTRY_NAMES), typed), { maxLength: 4 }).map((list) => ({ ...entries, ...Object.fromEntries(list) }));
+const someEntries = typedOver(sound);
 const someParts = fc.array(fc.tuple(fc.nat(1), fc.constantFrom(...(Object.keys(PART_ENTRIES) as (keyof typeof PART_ENTRIES)[])), typed), { maxLength: 2 }).map((list) => {
   const parts = demoLike().parts.map((part) => ({ ...part, entries: { ...part.entries } }));
   for (const [i, name, value] of list) parts[i] = { ...parts[i]!, entries: { ...parts[i]!.entries, [name]: value } };
   return parts;
 });
+/** A pulse's samples: sound ones, typed over, or anything. */
+const pulse = fc.oneof(
+  fc.constant('ms\n0 0\n2 1\n9 0'),
+  fc.array(fc.tuple(quantity, quantity).map((pair) => pair.join(';')), { maxLength: 5 }).map((lines) => lines.join('\n')),
+  fc.array(fc.tuple(fc.double({ min: 0, max: 1, noNaN: true }), fc.double({ min: -1, max: 9, noNaN: true })), { maxLength: 6 }).map((list) => list.map(([step, f], i) => `${i + step} ${f}`).join('\n')),
+);
 const marks = fc.dictionary(fc.integer({ min: 2, max: 13 }).map((line) => recordId('s1', line)), fc.record({ kind: fc.constantFrom(...RECORD_KINDS), setAside: fc.record({ reason: fc.string() }) }, { requiredKeys: [] }), { maxKeys: 3 });
 
 describe('the road', () => {
   it('comes to its end without NaN whatever is typed for the bench', () => {
     fc.assert(
-      fc.property(choices, someEntries, someParts, fc.oneof(fc.constant(''), quantity, fc.array(quantity, { maxLength: 6 }).map((list) => list.join(' '))), marks, (chosen, entries, parts, freeSwing, marked) => {
-        expect(faultsOf({ ...demoLike(), choices: chosen, entries, parts, freeSwing, marks: marked }, recordId('s1', 7))).toEqual([]);
+      fc.property(choices, someEntries, someParts, fc.oneof(fc.constant(''), quantity, fc.array(quantity, { maxLength: 6 }).map((list) => list.join(' '))), marks, pulse, (chosen, entries, parts, freeSwing, marked, pulseSamples) => {
+        expect(faultsOf({ ...demoLike(), choices: chosen, entries, parts, freeSwing, marks: marked, pulseSamples }, recordId('s1', 7))).toEqual([]);
       }),
       { numRuns: 250 },
+    );
+  }, 60_000);
+
+  it('comes to its end without NaN whatever is typed for a film', () => {
+    const readings = fc.constantFrom<Choices['readingWay']>('rulerAtTip', 'sensorOnPoint', 'cameraMarker');
+    fc.assert(
+      fc.property(choices, readings, typedOver({ ...sound, ...asEntries(FILM) }), (chosen, readingWay, entries) => {
+        expect(faultsOf({ ...demoLike(), choices: { ...chosen, form: 'filmStrip', readingWay }, entries }, recordId('s1', 7))).toEqual([]);
+      }),
+      { numRuns: 15 },
     );
   }, 60_000);
 

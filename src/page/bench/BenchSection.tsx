@@ -3,26 +3,33 @@ import { useMemo, useState } from 'react';
 import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
+import { editOf } from '../../reduction/slips.ts';
 import { entriesInUse, GAUGE_UNIT, usualReadingUnit } from '../../reduction/entries.ts';
 import type { EntryRead, Reduction } from '../../reduction/results.ts';
-import { setChoice, setEntry, setFreeSwing } from '../../session/edits.ts';
+import { setChoice, setEntry, setFreeSwing, setPulseSamples } from '../../session/edits.ts';
 import { ENTRIES } from '../../session/entries.ts';
 import type { EntryKind, EntryName } from '../../session/entries.ts';
-import type { Choices } from '../../session/session.ts';
+import type { Choices, Sheet } from '../../session/session.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
+import { AgreementTable } from './AgreementTable.tsx';
 import styles from './bench.module.css';
 import { BenchDrawing } from './BenchDrawing.tsx';
 import { ChoiceField } from './ChoiceField.tsx';
-import { CorrectionsGroup } from './CorrectionsGroup.tsx';
+import { CorrectionsGroup, PulseSamples } from './CorrectionsGroup.tsx';
 import { EntryField } from './EntryField.tsx';
 import { FilmWords } from './FilmWords.tsx';
-import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, RESTORING, ROUTES, SCREENS, SWING_MEASURED, ZERO_TAKEN } from './groups.ts';
+import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, HAMMER_AFTER, HAMMER_FORMS, HUNG_AS, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, RESTORING, ROUTES, SCREENS, SHOWN_WITH, SWING_MEASURED, WEIGHTS_PULL, ZERO_TAKEN } from './groups.ts';
 import type { GroupName } from './groups.ts';
 import { PartsTable } from './PartsTable.tsx';
 import { PressureGroup } from './PressureGroup.tsx';
 
 const NO_CORRECTIONS: Reduction['corrections'] = [];
 const NO_PROBLEMS: readonly Problem[] = [];
+
+/** Roles that any column has, as one text, so that the bench is not drawn anew for every cell. */
+function rolesOf(sheets: readonly Sheet[]): string {
+  return [...new Set(sheets.flatMap(({ columns }) => columns.map(({ role }) => role)))].sort().join(' ');
+}
 
 function byEntry(problems: readonly Problem[]): ReadonlyMap<string, readonly Problem[]> {
   const found = new Map<string, Problem[]>();
@@ -42,23 +49,33 @@ export function BenchSection() {
   const choices = useStore((state) => state.session.choices);
   const parts = useStore((state) => state.session.parts);
   const freeSwing = useStore((state) => state.session.freeSwing);
+  const pulseSamples = useStore((state) => state.session.pulseSamples);
   const readings = useStore((state) => state.reduction?.entries);
   const problems = useStore((state) => state.reduction?.problems);
   const corrections = useStore((state) => state.reduction?.corrections);
   const film = useStore((state) => state.reduction?.film ?? null);
   const pressure = useStore((state) => state.reduction?.pressure ?? null);
   const air = useStore((state) => state.reduction?.air.shots ?? null);
+  const agreement = useStore((state) => state.reduction?.agreement ?? null);
   const [focused, setFocused] = useState<string | null>(null);
 
   const reads = useMemo(() => new Map(readings?.map((read) => [read.name, read])), [readings]);
   const problemsByEntry = useMemo(() => byEntry(problems ?? NO_PROBLEMS), [problems]);
   const used = useMemo(() => entriesInUse(choices).used, [choices]);
+  const unclear = String(problems?.find(({ code }) => code === 'gauge-meaning-unclear')?.facts['unit'] ?? '');
   const readOf = (name: string): EntryRead | undefined => reads.get(name);
   const problemsOf = (name: string): readonly Problem[] => problemsByEntry.get(name) ?? NO_PROBLEMS;
+  const roles = useStore((state) => rolesOf(state.session.sheets));
+  const swingsHammer = roles.includes('hammerIn') || entries.hammerMass !== undefined;
+  const hangsWeights = roles.split(' ').includes('weight');
+  const isShown = (name: EntryName): boolean => {
+    const role = SHOWN_WITH[name];
+    return entries[name] !== undefined || (used.has(name) && (role === undefined || roles.includes(role)));
+  };
   const choose = <Name extends keyof Choices>(name: Name, what: string) => (value: Choices[Name]) => change(what, setChoice(name, value));
 
   function fields(group: GroupName) {
-    const shown = GROUP_ENTRIES[group].filter((name) => used.has(name) || entries[name] !== undefined);
+    const shown = GROUP_ENTRIES[group].filter(isShown);
     return shown.map((name: EntryName) => {
       const kind: EntryKind = ENTRIES[name];
       return (
@@ -108,11 +125,14 @@ export function BenchSection() {
               <Group name="Corrections">
                 <CorrectionsGroup choices={choices} corrections={corrections ?? NO_CORRECTIONS} onSwitch={(name, what, on) => change(what, setChoice(name, on))}>
                   {fields('Corrections')}
-                  {entries.pulseDuration !== undefined && <ChoiceField name="pulseShape" legend="Shape of the pulse" value={choices.pulseShape} options={PULSE_SHAPES} onChoose={choose('pulseShape', 'shape of the pulse')} />}
+                  {choices.correctPulse && <ChoiceField name="pulseShape" legend="Shape of the pulse" value={choices.pulseShape} options={PULSE_SHAPES} onChoose={choose('pulseShape', 'shape of the pulse')} />}
+                  {((choices.correctPulse && choices.pulseShape === 'measured') || pulseSamples !== '') && (
+                    <PulseSamples text={pulseSamples} problems={problemsOf('pulseSamples')} onChange={(text) => change('samples of the pulse', setPulseSamples(text), 'pulseSamples')} />
+                  )}
                 </CorrectionsGroup>
               </Group>
               <Group name="Pressure">
-                <PressureGroup choices={choices} pressure={pressure} air={air} onGauge={choose('gaugeMeaning', 'what the gauge shows')} onAir={choose('correctAir', 'air on the strip')}>
+                <PressureGroup choices={choices} pressure={pressure} air={air} unclear={unclear} onGauge={choose('gaugeMeaning', 'what the gauge shows')} onAir={choose('correctAir', 'air on the strip')}>
                   {fields('Pressure')}
                 </PressureGroup>
                 <Caution words={CAUTIONS.vacuum} />
@@ -152,7 +172,14 @@ export function BenchSection() {
                 <ChoiceField name="calibrationMassHung" legend="Hung on the pendulum" value={choices.calibrationMassHung} options={MASS_HUNG} onChoose={choose('calibrationMassHung', 'calibration mass hung')} />
                 {fields('Calibration mass')}
               </Group>
+              <Group name="Static deflection">
+                {fields('Static deflection')}
+                {hangsWeights && <ChoiceField name="weightsPull" legend="Known weights pull by" value={choices.weightsPull} options={WEIGHTS_PULL} onChoose={choose('weightsPull', 'how the weights pull')} />}
+                {hangsWeights && <ChoiceField name="weightsHungAs" legend="On the pendulum" value={choices.weightsHungAs} options={HUNG_AS} onChoose={choose('weightsHungAs', 'pendulum of the weights')} />}
+              </Group>
               <Group name="Taps">
+                {swingsHammer && <ChoiceField name="hammerForm" legend="Swinging hammer" value={choices.hammerForm} options={HAMMER_FORMS} onChoose={choose('hammerForm', 'form of the hammer')} />}
+                {swingsHammer && <ChoiceField name="hammerAfter" legend="After the blow it" value={choices.hammerAfter} options={HAMMER_AFTER} onChoose={choose('hammerAfter', 'hammer after the blow')} />}
                 {fields('Taps')}
                 <Caution words={CAUTIONS.hammer} />
               </Group>
@@ -160,6 +187,7 @@ export function BenchSection() {
           </div>
         </div>
       </div>
+      <AgreementTable agreement={agreement} onTake={(slip) => change(`${slip.what}: take it so`, editOf(slip.edit))} />
     </section>
   );
 }

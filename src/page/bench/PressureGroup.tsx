@@ -13,6 +13,8 @@ interface Props {
   readonly choices: Choices;
   readonly pressure: PressureResult | null;
   readonly air: AirResult | null;
+  /** Unit of the readings whose meaning is not settled, '' where it is. */
+  readonly unclear?: string;
   /** The fields of the group's entries. */
   readonly children: ReactNode;
   readonly onGauge: (meaning: Choices['gaugeMeaning']) => void;
@@ -29,10 +31,20 @@ const USE: Readonly<Record<AirResult['use'], string>> = {
 /** Forms in which the air on a strip is reckoned. */
 const LIGHT: ReadonlySet<Choices['form']> = new Set(['uniformStrip', 'stripWithPlate', 'filmStrip']);
 
-export function PressureGroup({ choices, pressure, air, children, onGauge, onAir }: Props) {
+const countsFromOutside = (unit: string): boolean => unit.startsWith('−');
+
+export function PressureGroup({ choices, pressure, air, unclear = '', children, onGauge, onAir }: Props) {
   return (
     <>
       <ChoiceField name="gaugeMeaning" legend="The gauge shows" value={choices.gaugeMeaning} options={GAUGE_MEANINGS} onChoose={onGauge} />
+      {unclear !== '' && (
+        <p className="look">
+          The readings are in {unclear}, and what the gauge shows is not settled, so there is no pressure yet.{' '}
+          {countsFromOutside(unclear)
+            ? <button type="button" className="plain-button" onClick={() => onGauge('gauge')}>{unclear} counts from the outside pressure</button>
+            : 'Choose it above.'}
+        </p>
+      )}
       {children}
       {LIGHT.has(choices.form) && (
         <label className={styles.check} id="choice-correctAir" tabIndex={-1}>

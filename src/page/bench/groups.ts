@@ -1,4 +1,5 @@
 /** The bench's groups: which entries stand in which group, the choices with their words, and the cautions. */
+import type { Role } from '../../readings/meanings.ts';
 import type { EntryName } from '../../session/entries.ts';
 import type { Choices } from '../../session/session.ts';
 
@@ -32,6 +33,7 @@ export const DAMPING_WAYS: Options<'dampingWay'> = [
   { value: 'swings', words: 'swings of the readings' },
   { value: 'decrement', words: 'log decrement, typed' },
   { value: 'ratio', words: 'damping ratio, typed' },
+  { value: 'maximumTime', words: 'time to the first maximum', more: 'where it does not cross its rest' },
   { value: 'quadratic', words: 'quadratic, typed' },
   { value: 'friction', words: 'pivot friction, typed' },
   { value: 'none', words: 'none' },
@@ -81,6 +83,7 @@ export const PULSE_SHAPES: Options<'pulseShape'> = [
   { value: 'triangle', words: 'triangle' },
   { value: 'versedSine', words: 'versed sine' },
   { value: 'exponential', words: 'exponential decay' },
+  { value: 'measured', words: 'as measured', more: 'samples pasted' },
 ];
 
 export const GRAVITY_WAYS: Options<'gravityWay'> = [
@@ -106,6 +109,26 @@ export const MASS_HUNG: Options<'calibrationMassHung'> = [
   { value: 'always', words: 'always' },
 ];
 
+export const WEIGHTS_PULL: Options<'weightsPull'> = [
+  { value: 'thread', words: 'a level thread over a pulley' },
+  { value: 'outrigger', words: 'hung from a level outrigger', more: 'at the pivot’s height' },
+];
+
+export const HUNG_AS: Options<'weightsHungAs'> = [
+  { value: 'shots', words: 'as fired' },
+  { value: 'taps', words: 'as tapped' },
+];
+
+export const HAMMER_FORMS: Options<'hammerForm'> = [
+  { value: 'compact', words: 'compact', more: 'its mass at the point that strikes' },
+  { value: 'compound', words: 'compound', more: 'a body with its own inertia' },
+];
+
+export const HAMMER_AFTER: Options<'hammerAfter'> = [
+  { value: 'leaves', words: 'comes back or goes on through', more: 'its columns say which' },
+  { value: 'stays', words: 'stays on the pendulum', more: 'and swings with it' },
+];
+
 export const GAUGE_MEANINGS: Options<'gaugeMeaning'> = [
   { value: 'absolute', words: 'absolute pressure' },
   { value: 'gauge', words: 'pressure against the outside', more: 'negative below it' },
@@ -113,26 +136,34 @@ export const GAUGE_MEANINGS: Options<'gaugeMeaning'> = [
   { value: 'percentOfOutside', words: 'percent of the outside pressure', more: '100 % is no pressure at all' },
 ];
 
-export type GroupName = 'Pendulum' | 'Thrust' | 'Pressure' | 'Corrections' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Taps';
+export type GroupName = 'Pendulum' | 'Thrust' | 'Pressure' | 'Corrections' | 'Reading' | 'Damping' | 'Local g' | 'Timed period' | 'Calibration mass' | 'Static deflection' | 'Taps';
 
 /** Every entry of the bench, in the order of the work. */
 export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = {
   Pendulum: [
     'bobMass', 'bobDistance', 'stripMass', 'stripLength', 'stripWidth', 'stripThickness', 'filmThickness', 'filmWidth', 'filmLength', 'filmDensity', 'filmModulus', 'filmMass', 'zoneFrom', 'zoneTo',
-    'plateMass', 'plateDistance', 'plateInertia', 'staticStiffness', 'forcePerDeflection', 'pullArm', 'gravityPart', 'flexureStiffness',
+    'plateMass', 'plateDistance', 'plateInertia', 'gravityPart', 'flexureStiffness',
   ],
   Thrust: ['leverArm', 'momentumFactor', 'captureFraction', 'plumeExponent', 'targetHalfAngle', 'capacitance', 'leadResistance'],
   Pressure: ['pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'airTemperature'],
-  Corrections: ['pulseDuration', 'tiltOutOfPlane', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'propellantUsed', 'propellantDistance'],
+  Corrections: ['pulseDuration', 'tiltOutOfPlane', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'propellantUsed', 'propellantDistance'],
   Reading: [
     'readingRadius', 'rulerHeight', 'sensorHeight', 'faceOffset', 'screenDistance', 'screenTilt', 'mirrorRadius', 'beamIncidence', 'beamOutOfPlane', 'windowThickness', 'windowIndex',
     'pixelScale', 'pivotAcross', 'pivotDown', 'countsPerTurn', 'scaleMark', 'scaleFactor', 'parallaxGap', 'cameraDistance', 'eyeShift', 'division', 'readingSpread',
   ],
-  Damping: ['logDecrement', 'dampingRatio', 'quadraticDamping', 'frictionAngle'],
+  Damping: ['logDecrement', 'dampingRatio', 'firstMaximumTime', 'quadraticDamping', 'frictionAngle'],
   'Local g': ['gravity', 'latitude', 'height'],
-  'Timed period': ['period', 'periodAmplitude', 'periodCycles'],
-  'Calibration mass': ['calibrationMass', 'calibrationMassDistance', 'calibrationMassInertia'],
-  Taps: ['tapLeverArm', 'hammerFactor', 'tapSpread'],
+  'Timed period': ['period', 'periodAmplitude', 'periodCycles', 'timingSpread'],
+  'Calibration mass': ['calibrationMass', 'calibrationMassDistance', 'calibrationMassInertia', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia'],
+  'Static deflection': ['staticStiffness', 'forcePerDeflection', 'pullArm', 'weightFactor', 'weightSpread'],
+  Taps: ['tapLeverArm', 'tapContact', 'hammerFactor', 'tapSpread', 'hammerMass', 'hammerLength', 'hammerContact', 'hammerPeriod', 'hammerInertia', 'hammerAngleSpread', 'hammerZero'],
+};
+
+/** Entries that say something of a table alone: shown once a column of it is there, or where they are typed. */
+export const SHOWN_WITH: Readonly<Partial<Record<EntryName, Role>>> = {
+  timingSpread: 'swingsTime', hungMassSpread: 'massHung', hungAtSpread: 'massHung', hungMassInertia: 'massHung',
+  weightFactor: 'weight', weightSpread: 'weight',
+  hammerMass: 'hammerIn', hammerLength: 'hammerIn', hammerContact: 'hammerIn', hammerPeriod: 'hammerIn', hammerInertia: 'hammerIn', hammerAngleSpread: 'hammerIn', hammerZero: 'hammerIn',
 };
 
 export const CAUTIONS = {

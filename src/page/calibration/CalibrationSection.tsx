@@ -6,9 +6,14 @@ import { useActions, useStore } from '../../store/hooks.tsx';
 import { goToElement } from '../head/goTo.ts';
 import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
+import { Adjustment } from './Adjustment.tsx';
 import { CalibrationFactors } from './CalibrationFactors.tsx';
 import { Configurations } from './Configurations.tsx';
+import { Decay } from './Decay.tsx';
+import { Masses } from './Masses.tsx';
 import { SwingForm } from './SwingForm.tsx';
+import { TapLine } from './TapLine.tsx';
+import { TapsAgainst } from './TapsAgainst.tsx';
 import styles from './calibration.module.css';
 
 export function CalibrationSection() {
@@ -19,8 +24,13 @@ export function CalibrationSection() {
       {reduction === null ? <p className="quiet">No readings yet.</p> : (
         <>
           <CalibrationFactors reduction={reduction} />
+          <Adjustment reduction={reduction} />
           <TapsFigure reduction={reduction} />
+          <TapLine reduction={reduction} />
+          <TapsAgainst reduction={reduction} />
+          <Masses reduction={reduction} />
           <Configurations reduction={reduction} />
+          <Decay reduction={reduction} />
           <SwingForm reduction={reduction} />
         </>
       )}

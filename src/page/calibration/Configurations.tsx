@@ -79,10 +79,20 @@ const WAYS: Readonly<Record<NonNullable<Reduction['damping']>['way'], string>> =
   swings: 'from successive swings',
   decrement: 'from the typed log decrement',
   ratio: 'from the typed damping ratio',
+  maximumTime: 'from the time to the first maximum',
   quadratic: 'from the typed quadratic damping',
   friction: 'from the typed friction of the pivot',
   none: 'taken as none',
 };
+
+/** By the law that holds; a pendulum damped critically or more has no log decrement. */
+function dampingInNumbers({ law, ratio, logDecrement, quadratic, friction }: NonNullable<Reduction['damping']>): string {
+  if (law === 'quadratic') return `quadratic, β = ${withPlusMinus(quadratic.value, quadratic.u, PLAIN)} per radian`;
+  if (law === 'friction') return `friction of the pivot, θ_f = ${withPlusMinus(friction.value, friction.u, chooseUnit([friction.value], 'angle'))}`;
+  return ratio.value < 1
+    ? `log decrement per full cycle δ = ${withPlusMinus(logDecrement.value, logDecrement.u, PLAIN)}`
+    : `damping ratio ζ = ${withPlusMinus(ratio.value, ratio.u, PLAIN)}: it comes back without crossing its rest`;
+}
 
 function Damping({ reduction }: { readonly reduction: Reduction }) {
   const { damping } = reduction;
@@ -90,7 +100,7 @@ function Damping({ reduction }: { readonly reduction: Reduction }) {
   return (
     <p>
       Damping {WAYS[damping.way]}{damping.way === 'swings' ? ` of ${damping.records} ${damping.records === 1 ? 'record' : 'records'}` : ''}:
-      {' '}log decrement per full cycle δ = {withPlusMinus(damping.logDecrement.value, damping.logDecrement.u, PLAIN)} (± u).
+      {' '}{dampingInNumbers(damping)} (± u).
     </p>
   );
 }

@@ -12,6 +12,8 @@ const SETTLED_AT: Partial<Record<ProblemCode, string>> = {
   'damping-none': 'choice-dampingWay',
   'damping-from-few': 'choice-dampingWay',
   'damping-carried-over': 'choice-dampingWay',
+  'swings-grow': 'choice-dampingWay',
+  'swings-never-cross-rest': 'choice-dampingWay',
   'period-differs': 'entry-period',
   'bench-unstable': 'bench-heading',
   'bench-inertia-not-positive': 'choice-route',
@@ -25,8 +27,12 @@ const SETTLED_AT: Partial<Record<ProblemCode, string>> = {
 
 const isOfACell = ({ code, place }: Problem): boolean => place.sheet !== undefined && (code.startsWith('cell-') || place.record === undefined);
 
+/** Problems that stand with a record and are settled on the bench, for all records at once. */
+const SETTLED_ON_THE_BENCH: ReadonlySet<ProblemCode> = new Set<ProblemCode>(['gauge-meaning-unclear']);
+
 /** A few words for the link: where it leads. */
 export function placeWords(problem: Problem): string {
+  if (SETTLED_ON_THE_BENCH.has(problem.code)) return 'settle it';
   if (problem.place.entry !== undefined) return 'to the field';
   if (isOfACell(problem)) return problem.place.record === undefined ? 'to the sheet' : 'to the cell';
   return problem.place.record === undefined ? 'settle it' : 'open the record';
@@ -54,6 +60,10 @@ function goToRow(sheet: string): void {
 /** Goes to where a problem is settled: its field, its cell, its record, or the choice or section that settles it. */
 export function goToProblem(problem: Problem, select: (record: string) => void): void {
   const { entry, sheet, record } = problem.place;
+  if (SETTLED_ON_THE_BENCH.has(problem.code)) {
+    goToElement(SETTLED_AT[problem.code] ?? 'bench-heading');
+    return;
+  }
   if (entry !== undefined) {
     goToElement(`entry-${entry}`);
     return;

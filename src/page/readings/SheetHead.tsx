@@ -2,7 +2,7 @@
 import { useId } from 'react';
 import { RECORD_KINDS } from '../../readings/meanings.ts';
 import type { TableRead } from '../../readings/table.ts';
-import { isRecordKind, removeSheet, setKindOfAll } from '../../session/edits.ts';
+import { isRecordKind, removeSheet, setKindOfAll, setTaken } from '../../session/edits.ts';
 import type { Sheet } from '../../session/session.ts';
 import { useActions } from '../../store/hooks.tsx';
 import { cutAnew, moveSheet } from './sheetEdits.ts';
@@ -29,6 +29,7 @@ interface SheetHeadProps {
 export function SheetHead({ sheet, table, rows, isFirst, isLast, headingId }: SheetHeadProps) {
   const { change } = useActions();
   const id = useId();
+  const hasTaps = sheet.kindOfAll === 'tap' || sheet.columns.some(({ role }) => role === 'tapImpulse' || role === 'hammerIn' || role === 'tapForce');
   return (
     <header className={styles.head}>
       <h3 id={headingId}>{sheet.name}</h3>
@@ -79,6 +80,16 @@ export function SheetHead({ sheet, table, rows, isFirst, isLast, headingId }: Sh
           <option value="">told row by row</option>
           {RECORD_KINDS.map((kind) => <option key={kind} value={kind}>{`all ${KINDS_LABELS[kind]}`}</option>)}
         </select>
+        {hasTaps && (
+          <>
+            <label htmlFor={`${id}-taken`}>its taps were struck</label>
+            <select id={`${id}-taken`} value={sheet.taken ?? ''} onChange={({ target: { value } }) => change(`${sheet.name}: when its taps were struck`, setTaken(sheet.id, value === 'before' || value === 'after' ? value : null))}>
+              <option value="">in the order of the run</option>
+              <option value="before">before the firings</option>
+              <option value="after">after the firings</option>
+            </select>
+          </>
+        )}
       </div>
       <div className={styles.buttons}>
         <button type="button" className="plain-button" disabled={isFirst} aria-label={`Move ${sheet.name} earlier in the run`} onClick={() => change(`move ${sheet.name} earlier`, moveSheet(sheet.id, -1))}>

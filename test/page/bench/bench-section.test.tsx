@@ -3,6 +3,7 @@ import { describe, expect, test } from 'vitest';
 import { BenchSection } from '../../../src/page/bench/BenchSection.tsx';
 import { setEntry } from '../../../src/session/edits.ts';
 import { emptySession } from '../../../src/session/session.ts';
+import { demoLike as sample } from '../../fixtures/demoLike.ts';
 import { onSheet, settled } from '../head/on-sheet.tsx';
 
 const field = (name: RegExp) => screen.getByRole('textbox', { name });
@@ -68,6 +69,27 @@ describe('the bench', () => {
       readingWay: 'laserSpot', dampingWay: 'decrement', gravityWay: 'place', route: 'massesAndPeriod', periodTimedAs: 'taps', calibrationMassHung: 'taps', scaleRunsBackward: true,
     });
     for (const name of [/^Mirror to screen/, /^Log decrement/, /^Latitude/, /^Height/, /^Pivot to calibration mass/]) expect(field(name)).toBeVisible();
+  });
+
+  test('a measured pulse is pasted line by line, and a line that is none is told there', async () => {
+    const { user, session } = await onSheet(<BenchSection />, sample());
+    await user.click(screen.getByRole('radio', { name: /^as measured/ }));
+    const samples = screen.getByRole('textbox', { name: 'Samples of the pulse' });
+    await user.type(samples, 'ms; N\n0; 0\n1,5; two');
+    expect(session().pulseSamples).toBe('ms; N\n0; 0\n1,5; two');
+    await waitFor(() => expect(samples).toHaveAccessibleDescription(/one sample is not enough|“1,5; two” is not a time and a thrust/));
+    await user.click(screen.getByRole('radio', { name: 'rectangular' }));
+    expect(samples).toBeVisible();
+  });
+
+  test('readings in −kPa are settled by one press where the gauge stands', async () => {
+    const session = sample();
+    const sheet = session.sheets[0]!;
+    const columns = sheet.columns.map((column) => (column.role === 'pressure' ? { ...column, unit: '−kPa' } : column));
+    const { user, session: now } = await onSheet(<BenchSection />, { ...session, sheets: [{ ...sheet, columns }] });
+    await user.click(await screen.findByRole('button', { name: '−kPa counts from the outside pressure' }));
+    expect(now().choices.gaugeMeaning).toBe('gauge');
+    await waitFor(() => expect(screen.queryByText(/what the gauge shows is not settled/)).not.toBeInTheDocument());
   });
 
   test('typing one quantity is one step to undo', async () => {
