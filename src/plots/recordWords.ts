@@ -18,6 +18,6 @@ export function readingOf(record: RecordResult, unit: Unit): string {
   const { impulseBit, setAside } = record;
   const value = impulseBit !== null
     ? `${withPlusMinus(impulseBit.value, impulseBit.U, unit)} (U)`
-    : record.kind === 'zero' || record.kind === 'freeSwing' ? '' : 'no impulse bit';
+    : record.kind !== 'shot' && record.kind !== 'tap' && record.kind !== 'blank' ? '' : 'no impulse bit';
   return [recordName(record), value, setAside === null ? '' : `set aside: ${setAside}`].filter((part) => part !== '').join(', ');
 }

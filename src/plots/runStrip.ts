@@ -68,7 +68,9 @@ function countOfKinds(records: readonly RecordResult[]): string {
 }
 
 /** Every record of the run at its place and impulse bit, N·s in a fitting unit. */
-export function runStrip({ records, run }: Pick<Reduction, 'records' | 'run'>, inks: Inks): Figure {
+export function runStrip({ records: all, run }: Pick<Reduction, 'records' | 'run'>, inks: Inks): Figure {
+  // Weights and timings are evidence of the calibration; the run is of swings.
+  const records = all.filter(({ kind }) => kind !== 'weight' && kind !== 'period');
   const unit = impulseUnit({ records, run });
   const marks = records.map((record) => impulseMark(record, record.order, unit));
   const { columns, series } = markSeries(marks, inks);

@@ -28,7 +28,7 @@ const EQUATION_OF_MOTION: Readonly<Record<Damping['law'], string>> = {
 function factorEquation(way: Way, tap: boolean): string {
   switch (way) {
     case 'geometry': return 'K = √(J κ)';
-    case 'taps': return tap ? 'K = mean of s_h I_h r_h/φ over the taps' : 'K = (mean of s_h I_h r_h/φ over the taps) · √(J_f κ_f/(J_c κ_c))';
+    case 'taps': return tap ? 'K = mean of s_h I_h r_h/φ over the taps' : 'K = (mean of s_h I_h r_h/φ over the taps) · K_f/K_c, K = √(J κ) (of a film by its modes)';
     case 'addedMasses': return 'K = √(J κ), J and κ from T_i²(κ + m_i g r_i) = 4π²(J + m_i r_i²)';
     case 'weights': return 'K = κ T_0/2π, κ from known weights';
     case 'adjustment': return 'K = √(J κ), J and κ by least squares over all evidence';

@@ -1,13 +1,13 @@
 /** The slips of a pen that a bench is heir to: each one tried by itself, to find which would reconcile what was measured with what is predicted. */
 import { exact, propagate, standardUncertainty, type Uncertain } from '../metrology/uncertain.ts';
-import { setChoice, setColumn, setEntry, setPartEntry, type Edit } from '../session/edits.ts';
 import type { Role } from '../readings/meanings.ts';
 import { ENTRIES, PART_ENTRIES, type EntryKind, type EntryName, type PartEntryName } from '../session/entries.ts';
 import type { Entry, Session } from '../session/session.ts';
 import { readQuantity } from '../units/quantity.ts';
 import { unitNamed, unitsOf, type Dimension, type Unit } from '../units/units.ts';
 import { entriesInUse, gaugeDimension, readingDimension } from './entries.ts';
-import type { AgreementCheck, Slip, SlipEdit, SlipId } from './results.ts';
+import type { AgreementCheck, Slip, SlipId } from './results.ts';
+import { editOf } from './slipEdit.ts';
 
 /** Measured and predicted, with what they share kept in their difference. */
 export interface Check {
@@ -42,18 +42,6 @@ function relativeU(check: Check): number {
 /** By the u that the check had before: a slip that only makes everything less certain reconciles nothing. */
 const isMet = (check: Check, before: Check | undefined): boolean =>
   Math.abs(check.measured.value / check.predicted.value - 1) <= Math.max(MET_PART, MET_U * (before ? relativeU(before) : 0));
-
-/** The edit of the session that a slip stands for. */
-export function editOf(edit: SlipEdit): Edit {
-  switch (edit.is) {
-    case 'entry': {
-      const part = /^part\.(.+)\.(mass|distance|ownInertia)$/.exec(edit.name);
-      return part ? setPartEntry(part[1]!, part[2] as PartEntryName, { text: edit.text }) : setEntry(edit.name as EntryName, { text: edit.text });
-    }
-    case 'choice': return setChoice(edit.name, edit.value);
-    case 'column': return (session) => edit.indices.reduce((so, index) => setColumn(edit.sheet, index, { unit: edit.unit, ...(edit.role === null ? {} : { role: edit.role }) })(so), session);
-  }
-}
 
 /** Radii and arms, of which a diameter or a whole length may have been measured. */
 const FROM_PIVOT: readonly string[] = ['readingRadius', 'tapLeverArm', 'calibrationMassDistance', 'plateDistance', 'bobDistance', 'mirrorRadius', 'pullArm', 'hammerLength', 'distance'];

@@ -50,6 +50,7 @@ describe('what a dial at 95 % and 98.0 kPa outside leaves (methods 1.15)', () =>
     expect(r.pressure).toBeNull();
     expect(r.records.map((record) => record.pressure)).toEqual([null, null]);
     expect(r.problems.filter((p) => p.code === 'gauge-meaning-unclear').map(sentence)).toEqual([expect.stringMatching(/nobody has said of what/)]);
+    expect(r.problems.find((p) => p.code === 'gauge-meaning-unclear')!.place.record).toBe(rowId(1));
     expect(r.run).not.toBeNull();
   });
 

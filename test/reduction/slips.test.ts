@@ -2,7 +2,7 @@
 import { describe, expect, it } from 'vitest';
 import { reduce } from '../../src/reduction/reduce.ts';
 import type { Agreement, SlipId } from '../../src/reduction/results.ts';
-import { editOf } from '../../src/reduction/slips.ts';
+import { editOf } from '../../src/reduction/slipEdit.ts';
 import { entry, type Entry, type Session } from '../../src/session/session.ts';
 import type { EntryName } from '../../src/session/entries.ts';
 import { exactly, sessionOf, withChoices, withEntry } from '../fixtures/session.ts';

@@ -3,7 +3,7 @@ import { useMemo, useState } from 'react';
 import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
-import { editOf } from '../../reduction/slips.ts';
+import { editOf } from '../../reduction/slipEdit.ts';
 import { entriesInUse, GAUGE_UNIT, usualReadingUnit } from '../../reduction/entries.ts';
 import type { EntryRead, Reduction } from '../../reduction/results.ts';
 import { setChoice, setEntry, setFreeSwing, setPulseSamples } from '../../session/edits.ts';

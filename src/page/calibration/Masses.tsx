@@ -3,6 +3,7 @@ import type { AddedMassesTold, Reduction, WeightsTold } from '../../reduction/re
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
 import { siUnit } from '../../units/units.ts';
 import { PERCENT, timesU } from '../stated/numberWords.ts';
+import { SymbolText } from '../words.tsx';
 import { SheetTable } from '../stated/SheetTable.tsx';
 
 export function Masses({ reduction: { addedMasses, weights } }: { readonly reduction: Reduction }) {
@@ -28,7 +29,7 @@ function AddedMasses({ told: { status, inertia, stiffness, rows, sameRadius, bet
       <SheetTable label="Periods with masses hung">
         <caption>Periods, freed of damping and amplitude (± u)</caption>
         <thead>
-          <tr><th scope="col">Timed</th><th scope="col">Timings</th><th scope="col">T_0</th><th scope="col">Normalised deviation</th></tr>
+          <tr><th scope="col">Timed</th><th scope="col">Timings</th><th scope="col">Period <SymbolText symbol="T_0" /></th><th scope="col">Normalised deviation</th></tr>
         </thead>
         <tbody>
           {rows.map(({ label, timings, period, deviation }) => (
