@@ -65,6 +65,8 @@ const QUIET_STRETCH = 10;
 /** Room left before and after, as a part of the contact, and in samples: quiet samples cost a little noise and no bias. */
 const ROOM = 0.25;
 const LEAST_ROOM = 3;
+/** Runs beyond the threshold that follow each other within this many lengths of the first are one pulse with its ringing. */
+const JOINED = 2;
 /** The smaller side of a ringing is at least this part of the larger, in area. */
 const BOTH_SIDES = 0.2;
 /** Equal samples at the top that make a clipped one, and steps of the record that its shoulders then have. */
@@ -116,15 +118,20 @@ function quietOf(record: MeasuredForce): Quiet | null {
   let noise = SD_OVER_MAD * median(force.map((f) => Math.abs(f - middle)));
   let away = force.map((f) => f - middle);
   let level: Level | null = null;
+  const leastNoise = stepOf(force) / Math.sqrt(12);
+  let kept = -1;
   for (let round = 0; round < QUIET_ROUNDS; round++) {
     const threshold = Math.max(THRESHOLD * noise, QUIET_PART * Math.max(...extremes(away)));
     const quiet = all.filter((i) => Math.abs(away[i]!) <= threshold);
     if (quiet.length < Math.max(FEWEST_QUIET, all.length / 3)) return null;
-    level = levelThrough(record, quiet, true);
-    away = force.map((f, i) => f - level!.at(time[i]!));
+    if (quiet.length === kept) break;
+    kept = quiet.length;
+    const line = levelThrough(record, quiet, true);
+    level = line;
+    away = force.map((f, i) => f - line.at(time[i]!));
     noise = SD_OVER_MAD * median(quiet.map((i) => Math.abs(away[i]!)));
     // Readings that nearly all fall on one step have no median deviation.
-    noise = Math.max(noise, Math.min(level.sd, stepOf(force) / Math.sqrt(12)));
+    noise = Math.max(noise, Math.min(line.sd, leastNoise));
   }
   const [up, down] = extremes(away);
   const largest = Math.max(up, down);
@@ -155,7 +162,7 @@ interface Cluster {
   readonly lobe: readonly [number, number];
 }
 
-/** Runs of samples beyond the threshold of one sign, joined while they follow each other within the length of the first. */
+/** Runs of samples beyond the threshold of one sign, joined while they follow each other closely. */
 function clustersOf(away: readonly number[], time: readonly number[], threshold: number): readonly Cluster[] {
   const runs: { from: number; to: number; sign: number }[] = [];
   for (const [i, value] of away.entries()) {
@@ -168,7 +175,7 @@ function clustersOf(away: readonly number[], time: readonly number[], threshold:
   for (const run of runs) {
     const last = found.at(-1);
     const spacing = (time.at(-1)! - time[0]!) / (time.length - 1);
-    const length = last ? time[last.lobe[1]]! - time[last.lobe[0]]! + LEAST_ROOM * spacing : 0;
+    const length = last ? JOINED * (time[last.lobe[1]]! - time[last.lobe[0]]!) + LEAST_ROOM * spacing : 0;
     const top = range(run.from, run.to).reduce((best, i) => (away[i]! > away[best]! ? i : best), run.from);
     if (last && time[run.from]! - time[last.last]! <= length) {
       const higher = run.sign > 0 && away[top]! > away[last.top]!;

@@ -6,7 +6,7 @@ import { problem, type Problem } from '../problems/problems.ts';
 import { entry, type Choices, type Session } from '../session/session.ts';
 import { stiffnessAs } from './evidence.ts';
 import { groundOf, type Ground } from './ground.ts';
-import type { Agreement, AgreementCheck } from './results.ts';
+import type { Agreement, AgreementCheck } from './evidenceResults.ts';
 import { stated } from './run.ts';
 import { readSheets, type SessionRecord } from './sheets.ts';
 import { isOff, partOf, slipsThatReconcile, withoutSpreads, type Check } from './slips.ts';

@@ -9,7 +9,7 @@ import type { EvidenceFound } from './evidence.ts';
 import { TIMING_WORDS } from './evidence.ts';
 import { fired, type Factors } from './factors.ts';
 import type { PlannedMass } from './planMass.ts';
-import type { AddedMassesTold, AdjustmentTold, EvidenceId, EvidenceRow, TapStudy } from './results.ts';
+import type { AddedMassesTold, AdjustmentTold, EvidenceId, EvidenceRow, TapStudy } from './evidenceResults.ts';
 import { stated, type Run } from './run.ts';
 import { geometryAnchor } from './shots.ts';
 import type { Body, ByConfiguration } from './stand.ts';

@@ -1,7 +1,7 @@
 /** A slip of the pen as the edit of the session that mends it; apart, since the page needs no more of it. */
 import { setChoice, setColumn, setEntry, setPartEntry, type Edit } from '../session/edits.ts';
 import type { EntryName, PartEntryName } from '../session/entries.ts';
-import type { SlipEdit } from './results.ts';
+import type { SlipEdit } from './evidenceResults.ts';
 
 /** The edit of the session that a slip stands for. */
 export function editOf(edit: SlipEdit): Edit {

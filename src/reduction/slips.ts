@@ -6,7 +6,7 @@ import type { Entry, Session } from '../session/session.ts';
 import { readQuantity } from '../units/quantity.ts';
 import { unitNamed, unitsOf, type Dimension, type Unit } from '../units/units.ts';
 import { entriesInUse, gaugeDimension, readingDimension } from './entries.ts';
-import type { AgreementCheck, Slip, SlipId } from './results.ts';
+import type { AgreementCheck, Slip, SlipId } from './evidenceResults.ts';
 import { editOf } from './slipEdit.ts';
 
 /** Measured and predicted, with what they share kept in their difference. */

@@ -1,7 +1,7 @@
 /** The taps as a line: through the origin or not, straight or bent, their residuals, how well they repeat, and how the calibration moved between groups. */
 import { curvatureTest, interceptTest, lineOfUncertain } from '../metrology/lineOfUncertain.ts';
 import { propagate, standardUncertainty } from '../metrology/uncertain.ts';
-import type { TapStudy } from './results.ts';
+import type { TapStudy } from './evidenceResults.ts';
 import type { Form, Swing } from './shots.ts';
 import { stated } from './run.ts';
 import { pointsOfTaps, TAP_SCATTER, type TapCalibration, type TapGroup } from './taps.ts';

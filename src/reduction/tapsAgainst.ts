@@ -2,7 +2,7 @@
 import { propagate, standardUncertainty, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingCarried } from '../pendulum/forms.ts';
 import type { Damping } from './swings.ts';
-import type { Comparison } from './results.ts';
+import type { Comparison } from './evidenceResults.ts';
 import { stated } from './run.ts';
 import { factorOfBody, periodOfBody, type Body, type ByConfiguration } from './stand.ts';
 import { barePeriod, type Timing } from './timings.ts';

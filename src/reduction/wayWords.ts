@@ -1,5 +1,5 @@
 /** What each way of knowing the calibration factor is called, in chain, table and page. */
-import type { EvidenceId } from './results.ts';
+import type { EvidenceId } from './evidenceResults.ts';
 import type { Way } from './shots.ts';
 
 /** Short, after "by" or "Calibration factor,". */

@@ -10,7 +10,7 @@ import type { Choices } from '../session/session.ts';
 import { unitNamed } from '../units/units.ts';
 import type { BenchRead } from './entries.ts';
 import { familyOf, type ReadingSpread } from './readings.ts';
-import type { WeightsTold } from './results.ts';
+import type { WeightsTold } from './evidenceResults.ts';
 import { stated } from './run.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
 import { valueOf } from './stand.ts';

@@ -1,7 +1,8 @@
 /** What a deflection is worth, known in several ways: each gives the calibration factor of the pendulum that made the readings. */
 import { describe, expect, it } from 'vitest';
 import { reduce } from '../../src/reduction/reduce.ts';
-import type { EvidenceId, Reduction } from '../../src/reduction/results.ts';
+import type { EvidenceId } from '../../src/reduction/evidenceResults.ts';
+import type { Reduction } from '../../src/reduction/results.ts';
 import { entry, type Entry, type Session } from '../../src/session/session.ts';
 import type { EntryName } from '../../src/session/entries.ts';
 import { exactly, sessionOf, withChoices, withEntry } from '../fixtures/session.ts';

@@ -1,7 +1,7 @@
 /** Each slip of the pen planted in turn on a bench that agrees with itself, and found by name. */
 import { describe, expect, it } from 'vitest';
 import { reduce } from '../../src/reduction/reduce.ts';
-import type { Agreement, SlipId } from '../../src/reduction/results.ts';
+import type { Agreement, SlipId } from '../../src/reduction/evidenceResults.ts';
 import { editOf } from '../../src/reduction/slipEdit.ts';
 import { entry, type Entry, type Session } from '../../src/session/session.ts';
 import type { EntryName } from '../../src/session/entries.ts';

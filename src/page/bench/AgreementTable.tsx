@@ -1,5 +1,5 @@
 /** Does the bench agree with itself? What was measured beside what masses and lengths predict, and the slip that would reconcile them, to be taken in one press. */
-import type { Agreement, AgreementCheck, Slip } from '../../reduction/results.ts';
+import type { Agreement, AgreementCheck, Slip } from '../../reduction/evidenceResults.ts';
 import { slipWords } from '../../problems/slips.ts';
 import { chooseUnit, withPlusMinus } from '../../units/format.ts';
 import type { Dimension } from '../../units/units.ts';

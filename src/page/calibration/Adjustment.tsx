@@ -1,5 +1,6 @@
 /** The least-squares adjustment opened: χ², each item's normalised deviation, the one that pulls most, and the shared inputs that it moves. */
-import type { AdjustmentTold, Reduction } from '../../reduction/results.ts';
+import type { AdjustmentTold } from '../../reduction/evidenceResults.ts';
+import type { Reduction } from '../../reduction/results.ts';
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
 import { PERCENT, PLAIN, timesU } from '../stated/numberWords.ts';
 import { SheetTable } from '../stated/SheetTable.tsx';

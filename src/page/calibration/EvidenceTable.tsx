@@ -1,7 +1,8 @@
 /** Every way of knowing the calibration factor, one a row: K with its interval in one picture, the run mean that it gives, and the choice of the one that counts. */
 import { useId } from 'react';
 import { impulseUnit } from '../../plots/impulseUnit.ts';
-import type { EvidenceId, EvidenceRow, Reduction } from '../../reduction/results.ts';
+import type { EvidenceId, EvidenceRow } from '../../reduction/evidenceResults.ts';
+import type { Reduction } from '../../reduction/results.ts';
 import { setChoices } from '../../session/edits.ts';
 import type { Choices } from '../../session/session.ts';
 import { useActions, useStoreAtOnce } from '../../store/hooks.tsx';

@@ -1,5 +1,6 @@
 /** Periods with masses hung, and deflections by known weights: what each gave and how well its readings agree. */
-import type { AddedMassesTold, Reduction, WeightsTold } from '../../reduction/results.ts';
+import type { AddedMassesTold, WeightsTold } from '../../reduction/evidenceResults.ts';
+import type { Reduction } from '../../reduction/results.ts';
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
 import { siUnit } from '../../units/units.ts';
 import { PERCENT, timesU } from '../stated/numberWords.ts';

@@ -1,7 +1,8 @@
 /** The taps as a line: how it is drawn, what the tests say of it, its residuals and leverages, and the taps before and after the firings. */
 import { useId, useMemo } from 'react';
 import { tapResiduals } from '../../plots/tapResiduals.ts';
-import type { Reduction, TapStudy } from '../../reduction/results.ts';
+import type { TapStudy } from '../../reduction/evidenceResults.ts';
+import type { Reduction } from '../../reduction/results.ts';
 import { setChoice } from '../../session/edits.ts';
 import { useActions, useStore, useStoreAtOnce } from '../../store/hooks.tsx';
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';

@@ -1,6 +1,7 @@
 /** Taps against firings: whether the calibration is valid for these shots, each comparison ending in a sentence. */
 import { placeInTapRange } from '../../reduction/beside.ts';
-import type { Comparison, Difference, Reduction } from '../../reduction/results.ts';
+import type { Comparison } from '../../reduction/evidenceResults.ts';
+import type { Difference, Reduction } from '../../reduction/results.ts';
 import { tapRangeSentence } from '../../plots/tapsAndShots.ts';
 import { withPlusMinus } from '../../units/format.ts';
 import { siUnit } from '../../units/units.ts';

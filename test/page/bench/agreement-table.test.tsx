@@ -3,7 +3,7 @@ import userEvent from '@testing-library/user-event';
 import axe from 'axe-core';
 import { expect, test, vi } from 'vitest';
 import { AgreementTable } from '../../../src/page/bench/AgreementTable.tsx';
-import type { Agreement, Slip } from '../../../src/reduction/results.ts';
+import type { Agreement, Slip } from '../../../src/reduction/evidenceResults.ts';
 
 const stated = (value: number, u: number) => ({ value, u });
 const SLIP: Slip = { id: 'lengthUnit', what: 'Strip length', from: '40 mm', to: '40 cm', edit: { is: 'entry', name: 'stripLength', text: '40 cm' } };

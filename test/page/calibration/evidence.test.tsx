@@ -5,7 +5,8 @@ import { CalibrationSection } from '../../../src/page/calibration/CalibrationSec
 import { weightsSentence } from '../../../src/page/calibration/Masses.tsx';
 import { driftSentence, lineSentence } from '../../../src/page/calibration/TapLine.tsx';
 import { comparisonSentence } from '../../../src/page/calibration/TapsAgainst.tsx';
-import type { AdjustmentTold, Reduction, TapStudy } from '../../../src/reduction/results.ts';
+import type { AdjustmentTold, TapStudy } from '../../../src/reduction/evidenceResults.ts';
+import type { Reduction } from '../../../src/reduction/results.ts';
 import { REDUCTION, result, stated } from '../reductionFixture.ts';
 import { withReduction } from '../withReduction.tsx';
 
