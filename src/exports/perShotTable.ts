@@ -1,10 +1,11 @@
 /** The per-shot impulse table: columns with their units, one row a record, and the whole as a CSV with its conditions on top. */
 import { EVIDENCE_NAMES, WAY_RESTS_ON } from '../reduction/wayWords.ts';
-import type { RecordResult, Reduction, Result, RunResult, Stated } from '../reduction/results.ts';
+import { instrumentWords } from '../reduction/instruments.ts';
+import type { EntryRead, RecordResult, Reduction, Result, RunResult, Stated } from '../reduction/results.ts';
 import { sentence } from '../problems/sentences.ts';
 import type { Problem } from '../problems/problems.ts';
 import type { Session } from '../session/session.ts';
-import { chooseUnit, tenDigits, withPlusMinus } from '../units/format.ts';
+import { chooseUnit, sixDigits, tenDigits, withPlusMinus } from '../units/format.ts';
 import { fromSi, siUnit, unitNamed, type Unit } from '../units/units.ts';
 import { commentRow, csvText, harmless, textField } from './csv.ts';
 
@@ -136,9 +137,10 @@ function conditions(session: Session, reduction: Reduction): readonly string[] {
   if (reduction.runWithSetAside) lines.push(`with the shots set aside counted too: ${meanText(reduction.runWithSetAside)}`);
   if (reduction.pressure) lines.push(pressureLine(reduction.pressure));
   for (const read of reduction.entries) {
-    if (read.used && read.value !== null) lines.push(`${read.label} ${read.symbol}: typed ${quote(typedText(session, read.name))}, u ${tenDigits(read.u)} ${siUnit(read.dimension).symbol}, ${read.distribution}`);
+    if (read.used && read.value !== null) lines.push(`${read.label} ${read.symbol}: typed ${quote(typedText(session, read.name))}, u ${tenDigits(read.u)} ${siUnit(read.dimension).symbol}, ${read.distribution}${measuredWith(read)}`);
   }
-  for (const sheet of session.sheets) lines.push(`readings: ${oneLine(sheet.name)}${sheet.sha256 === '' ? '' : `, SHA-256 ${sheet.sha256}`}`);
+  lines.push(...instrumentLines(session, reduction));
+  for (const sheet of session.sheets) lines.push(`readings: ${oneLine(sheet.name)}${sheet.sha256 === '' ? '' : `, SHA-256 ${sheet.sha256}`}${readWith(session, sheet.instrument)}`);
   lines.push(...reduction.problems.filter(isOpen).map((p) => `to look at: ${oneLine(sentence(p))}`));
   lines.push('u: standard uncertainty; U: expanded uncertainty for 95 % coverage; the common part of u does not shrink with the number of shots');
   return lines;
@@ -147,6 +149,27 @@ function conditions(session: Session, reduction: Reduction): readonly string[] {
 const isOpen = (p: Problem): boolean => p.weight !== 'note';
 const oneLine = (text: string): string => text.replace(/\s+/g, ' ').trim();
 const quote = (text: string): string => `“${oneLine(text)}”`;
+
+/** What an entry was measured with, and what that instrument's calibration adds to its own u. */
+function measuredWith({ measuredWith: by, dimension }: EntryRead): string {
+  if (by === undefined) return '';
+  return `, measured with ${oneLine(by.words)}${by.u > 0 ? `, whose calibration adds u ${tenDigits(by.u)} ${siUnit(dimension).symbol}` : ''}`;
+}
+
+function readWith({ instruments }: Session, id: string | undefined): string {
+  const index = instruments.findIndex((one) => one.id === id);
+  return index < 0 ? '' : `, read with ${oneLine(instrumentWords(instruments[index]!, index))}`;
+}
+
+function instrumentLines({ instruments }: Session, { instruments: told }: Reduction): readonly string[] {
+  return instruments.map((instrument, index) => {
+    const read = told.find(({ id }) => id === instrument.id);
+    const due = read?.due && read.due.iso !== instrument.due.trim() ? ` (read as ${read.due.iso})` : '';
+    const u = read?.scale.value ?? 0;
+    const scale = u > 0 && instrument.measures !== 'other' ? `; calibration, common to each ${instrument.measures} measured with it: typed ${quote(instrument.scale.text)}, relative u ${tenDigits(u)}, ${read?.scale.distribution ?? ''}` : '';
+    return `instrument: ${oneLine(instrumentWords(instrument, index))}${due}${scale}`;
+  });
+}
 
 const GAUGE = { absolute: 'an absolute gauge', gauge: 'a gauge against the outside pressure', percentOfScale: 'a dial in percent of a fixed full scale', percentOfOutside: 'a dial in percent of the outside pressure' } as const;
 
@@ -179,7 +202,7 @@ function runLines(run: RunResult, reduction: Reduction): readonly string[] {
   }
   for (const row of reduction.evidence) {
     if (row.chosen || row.id === 'masses' || row.id === 'taps') continue;
-    lines.push(`beside it, ${EVIDENCE_NAMES[row.id]}: K ${tenDigits(row.factor.value)} N·m·s/rad, u ${tenDigits(row.factor.u)} N·m·s/rad${row.mean ? `, run mean ${tenDigits(row.mean.value)} ${SI}` : ''}`);
+    lines.push(`beside it, ${EVIDENCE_NAMES[row.id]}: K ${sixDigits(row.factor.value)} N·m·s/rad, u ${sixDigits(row.factor.u)} N·m·s/rad${row.mean ? `, run mean ${sixDigits(row.mean.value)} ${SI}` : ''}`);
   }
   return lines;
 }

@@ -152,6 +152,9 @@ export function alignedParts(value: number, u: number, unit: Unit): AlignedParts
   };
 }
 
+/** Six significant digits: for what an adjustment's slopes by differences tell, whose last digits differ from engine to engine. */
+export const sixDigits = (value: number): string => tenDigits(Number(value.toPrecision(6)));
+
 /**
  * A number for machine files: rounded to 10 significant digits, written as the shortest text that reads back as the
  * rounded number (no trailing zeros; `1.234e-7` outside 1e-6 … 1e21), with '-' and '.', the same bytes from engines whose results
