@@ -9,7 +9,7 @@ import { unitNamed } from '../../units/units.ts';
 import styles from './bench.module.css';
 import { Drawing } from './Drawing.tsx';
 import { valueRead } from './echo.ts';
-import type { BenchLengths, DrawnEntry } from './layDrawing.ts';
+import { toldOf, type BenchLengths, type DrawnEntry } from './layDrawing.ts';
 
 interface Props {
   readonly choices: Choices;
@@ -32,6 +32,12 @@ export function BenchDrawing({ choices, parts, reads, focused }: Props) {
   const bench: BenchLengths = {
     form: choices.form,
     readingWay: choices.readingWay,
+    restoring: choices.restoring,
+    screenShape: choices.screenShape,
+    plume: choices.plume,
+    beam: { tilt: reads.get('screenTilt')?.value ?? 0, incidence: reads.get('beamIncidence')?.value ?? 0, outOfPlane: reads.get('beamOutOfPlane')?.value ?? 0, window: reads.get('windowThickness')?.value ?? 0 },
+    hasPlate: (reads.get('plateMass')?.value ?? 0) > 0,
+    mass: (name) => reads.get(name)?.value ?? null,
     hung: choices.calibrationMassHung,
     length: (name) => reads.get(name)?.value ?? null,
     parts: parts.map((part) => ({
@@ -41,6 +47,7 @@ export function BenchDrawing({ choices, parts, reads, focused }: Props) {
     })),
     throwAngle,
   };
+  const told = toldOf(bench);
   const wordsOf = (entry: DrawnEntry) => {
     const read = reads.get(entry);
     return { symbol: ENTRIES[entry].symbol, value: read === undefined ? null : valueRead(read) };
@@ -55,6 +62,7 @@ export function BenchDrawing({ choices, parts, reads, focused }: Props) {
         focused={focused}
         onPick={(entry) => document.getElementById(`entry-${entry}`)?.focus()}
       />
+      {told.length > 0 && <p className="quiet">{told.join(' · ')}</p>}
     </div>
   );
 }

@@ -4,9 +4,9 @@ import type { ReactNode } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { editOf } from '../../reduction/slipEdit.ts';
-import { entriesInUse, GAUGE_UNIT, usualReadingUnit } from '../../reduction/entries.ts';
+import { entriesInUse, GAUGE_UNIT, measuredDimension, usualReadingUnit } from '../../reduction/entries.ts';
 import type { EntryRead, Reduction } from '../../reduction/results.ts';
-import { setChoice, setEntry, setFreeSwing, setPulseSamples } from '../../session/edits.ts';
+import { setChoice, setEntry, setEntryInstrument, setFreeSwing, setPulseSamples } from '../../session/edits.ts';
 import { ENTRIES } from '../../session/entries.ts';
 import type { EntryKind, EntryName } from '../../session/entries.ts';
 import type { Choices, Sheet } from '../../session/session.ts';
@@ -20,6 +20,8 @@ import { EntryField } from './EntryField.tsx';
 import { FilmWords } from './FilmWords.tsx';
 import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, HAMMER_AFTER, HAMMER_FORMS, HUNG_AS, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, RESTORING, ROUTES, SCREENS, SHOWN_WITH, SWING_MEASURED, WEIGHTS_PULL, ZERO_TAKEN } from './groups.ts';
 import type { GroupName } from './groups.ts';
+import { Instruments } from './Instruments.tsx';
+import { KeptBenches } from './KeptBenches.tsx';
 import { PartsTable } from './PartsTable.tsx';
 import { PressureGroup } from './PressureGroup.tsx';
 
@@ -48,6 +50,7 @@ export function BenchSection() {
   const entries = useStore((state) => state.session.entries);
   const choices = useStore((state) => state.session.choices);
   const parts = useStore((state) => state.session.parts);
+  const instruments = useStore((state) => state.session.instruments);
   const freeSwing = useStore((state) => state.session.freeSwing);
   const pulseSamples = useStore((state) => state.session.pulseSamples);
   const readings = useStore((state) => state.reduction?.entries);
@@ -88,6 +91,7 @@ export function BenchSection() {
           problems={used.has(name) ? problemsOf(name) : NO_PROBLEMS}
           unused={!used.has(name)}
           onFocus={setFocused}
+          measured={{ instruments, dimension: measuredDimension(name, kind, choices), onChoose: (instrument) => change(`${kind.label.toLowerCase()}: measured with`, setEntryInstrument(name, instrument)) }}
           onChange={(patch) => change(kind.label.toLowerCase(), setEntry(name, patch), `entry.${name}`)}
         />
       );
@@ -108,7 +112,7 @@ export function BenchSection() {
               <Group name="Pendulum">
                 <ChoiceField name="form" legend="Form" value={choices.form} options={FORMS} onChoose={choose('form', 'form of the pendulum')} />
                 {choices.form !== 'periodAndStiffness' && choices.form !== 'filmStrip' && <ChoiceField name="restoring" legend="Brought back by" value={choices.restoring} options={RESTORING} onChoose={choose('restoring', 'what brings it back')} />}
-                {choices.form === 'bodyOfParts' && <PartsTable parts={parts} readOf={readOf} problemsOf={problemsOf} change={change} />}
+                {choices.form === 'bodyOfParts' && <PartsTable parts={parts} instruments={instruments} readOf={readOf} problemsOf={problemsOf} change={change} />}
                 {fields('Pendulum')}
                 <FilmWords film={film} />
               </Group>
@@ -187,6 +191,8 @@ export function BenchSection() {
           </div>
         </div>
       </div>
+      <Instruments />
+      <KeptBenches />
       <AgreementTable agreement={agreement} onTake={(slip) => change(`${slip.what}: take it so`, editOf(slip.edit))} />
     </section>
   );

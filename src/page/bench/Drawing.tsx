@@ -2,6 +2,7 @@
 import type { MouseEvent, ReactNode } from 'react';
 import type { BenchLengths, DrawnEntry, Drawing as Layout, SideWord } from './layDrawing.ts';
 import { layDrawing } from './layDrawing.ts';
+import type { LaserDrawn, ReadingDrawn } from './layReading.ts';
 import styles from './Drawing.module.css';
 
 interface Props {
@@ -25,6 +26,7 @@ const degrees = (angle: number): number => (angle * 180) / Math.PI;
 export function Drawing({ bench, wordsOf, throwWords, scaleWords, focused, onPick }: Props) {
   const drawing = layDrawing(bench);
   const { pivot, ruler, laser } = drawing;
+  const thrustY = drawing.words.find(({ id }) => id === 'thrust')?.y ?? 0;
   const pick = (entry: DrawnEntry) => (event: MouseEvent) => {
     event.preventDefault();
     onPick(entry);
@@ -36,8 +38,9 @@ export function Drawing({ bench, wordsOf, throwWords, scaleWords, focused, onPic
       width={drawing.width}
       height={drawing.height}
       role="group"
-      aria-label={`The pendulum to scale${throwWords === null ? '' : `, largest throw ${throwWords}`}`}
+      aria-label={`The pendulum to scale${throwWords === null ? '' : `, ${throwWords}`}`}
     >
+      <desc>{drawing.lines.map(({ entry }) => `${wordsOf(entry).symbol} ${wordsOf(entry).value ?? 'not typed'}`).concat(drawing.told).join('; ')}</desc>
       <g transform={`translate(${pivot.x} ${pivot.y})`}>
         <path className={styles.support} d="M-34 -9H34M-30 -9l-7 -8M-18 -9l-7 -8M-6 -9l-7 -8M6 -9l-7 -8M18 -9l-7 -8M30 -9l-7 -8M0 -9V0" />
         {drawing.lines.map(({ entry, x, y, assumed }) => {
@@ -60,19 +63,16 @@ export function Drawing({ bench, wordsOf, throwWords, scaleWords, focused, onPic
         })}
         <path className={styles.witness} d={`M8 0H${drawing.width - pivot.x - 16}`} />
         {ruler !== null && <Ruler ruler={ruler} line={bench.readingWay === 'rulerUnderLine'} angle={drawing.angle} />}
-        {laser !== null && (
-          <g className={styles.laser}>
-            <path className={styles.beam} d={`M0 0L${laser.screenX} ${laser.restY}M0 0L${laser.screenX} ${laser.spotY}`} />
-            <path d={`M${laser.screenX} -22V${Math.max(34, laser.spotY + 14)}`} />
-            <path className={styles.gap} d={`M${laser.screenX / 2 - 4} 9l3 -18M${laser.screenX / 2 + 3} 9l3 -18`} />
-            <text x={laser.screenX - 6} y={-10} className={styles.end}>screen</text>
-          </g>
-        )}
+        {laser !== null && <Laser laser={laser} />}
+        {drawing.reading !== null && <Reading reading={drawing.reading} />}
+        {bench.plume === 'caught' && <path className={styles.plume} d={`M-58 ${thrustY - 4}L-10 ${thrustY - 13}V${thrustY + 13}L-58 ${thrustY + 4}z`} />}
+        {bench.plume === 'carried' && <rect className={styles.thruster} x={-11} y={thrustY - 6} width="11" height="12" />}
         {drawing.angle > 0 && <Body drawing={drawing} form={bench.form} ghost />}
         <Body drawing={drawing} form={bench.form} />
         {drawing.calibrationMass !== null && (
           <rect className={`${styles.mass} ${styles[bench.hung] ?? ''}`} x={-6} y={drawing.calibrationMass - 5} width="12" height="10" />
         )}
+        {bench.restoring === 'flexureAlone' && <path className={styles.spring} d="M0 0c6 -2 8 6 1 8c-10 2 -13 -9 -5 -14c10 -6 21 3 18 14" />}
         <circle className={styles.pivot} r="3.5" />
         {drawing.words.map((word) => <Side key={word.id} word={word} />)}
         {throwWords !== null && (
@@ -91,7 +91,22 @@ function Body({ drawing, form, ghost = false }: { readonly drawing: Layout; read
   const classes = [styles.body, ghost ? styles.ghost : '', drawing.bodyAssumed ? styles.assumed : ''].join(' ');
   const turn = ghost ? { transform: `rotate(${-degrees(drawing.angle)})` } : {};
   let shape: ReactNode;
-  if (form === 'uniformStrip') shape = <rect x="-3.5" y="0" width="7" height={drawing.bodyEnd} />;
+  if (form === 'uniformStrip' || form === 'stripWithPlate') {
+    shape = (
+      <>
+        <rect x="-3.5" y="0" width="7" height={drawing.bodyEnd} />
+        {drawing.plate !== null && <rect className={styles.plate} x="-6" y={drawing.plate - 12} width="12" height="24" />}
+      </>
+    );
+  } else if (form === 'filmStrip') {
+    shape = (
+      <>
+        <path className={styles.film} d={`M0 0V${drawing.bodyEnd}`} />
+        {drawing.zone !== null && <path className={styles.zone} d={`M-5 ${drawing.zone.from}H5M-5 ${drawing.zone.to}H5M-5 ${drawing.zone.from}V${drawing.zone.to}`} />}
+        {drawing.plate !== null && <rect className={styles.plate} x="-5" y={drawing.plate - 8} width="10" height="16" />}
+      </>
+    );
+  } else if (form === 'periodAndStiffness') shape = <path className={styles.assumed} d={`M0 0V${drawing.bodyEnd}`} />;
   else if (form === 'pointBob') {
     shape = (
       <>
@@ -108,6 +123,47 @@ function Body({ drawing, form, ghost = false }: { readonly drawing: Layout; read
     );
   }
   return <g className={classes} {...turn}>{shape}</g>;
+}
+
+function Laser({ laser: { mirror, source, rest, spot, screen, screenX, window } }: { readonly laser: LaserDrawn }) {
+  return (
+    <g className={styles.laser}>
+      <path className={styles.beam} d={`M${source.x} ${source.y}L${mirror.x} ${mirror.y}L${rest.x} ${rest.y}M${mirror.x} ${mirror.y}L${spot.x} ${spot.y}`} />
+      <path d={screen} />
+      {window !== null && <path className={styles.glass} d={window} />}
+      <path className={styles.gap} d={`M${screenX / 2 - 4} ${mirror.y + 9}l3 -18M${screenX / 2 + 3} ${mirror.y + 9}l3 -18`} />
+      <path className={styles.mirror} d={`M${mirror.x - 2} ${mirror.y - 7}v14`} />
+      <text x={screenX - 6} y={mirror.y - 10} className={styles.end}>screen</text>
+    </g>
+  );
+}
+
+function Reading({ reading }: { readonly reading: ReadingDrawn }) {
+  switch (reading.is) {
+    case 'arc': return <path className={styles.ruler} d={reading.path} />;
+    case 'chord': return <path className={styles.readingMark} d={`M${reading.from.x} ${reading.from.y}L${reading.to.x} ${reading.to.y}`} />;
+    case 'rise': return <path className={styles.readingMark} d={`M${reading.from.x - 5} ${reading.from.y}h10m-5 0V${reading.to.y}m-5 0h10`} />;
+    case 'sensor': return (
+      <g className={styles.ruler}>
+        <rect className={styles.sensor} x={reading.at.x - 16} y={reading.at.y - 6} width="16" height="12" />
+        <path className={styles.readingMark} d={`M${reading.at.x} ${reading.at.y}H${reading.target.x}`} />
+        <text className={styles.end} x={reading.at.x - 20} y={reading.at.y + 18}>sensor</text>
+      </g>
+    );
+    case 'picture': return (
+      <g className={styles.ruler}>
+        <rect className={styles.picture} x={reading.corner.x} y={reading.corner.y} width={reading.width} height={reading.height} />
+        <path className={styles.readingMark} d={`M${reading.marker.x - 5} ${reading.marker.y}h10m-5 -5v10`} />
+        <text x={reading.corner.x} y={reading.withPivot ? reading.corner.y + reading.height + 13 : reading.corner.y - 3}>{reading.withPivot ? 'picture, pivot and marker' : 'picture'}</text>
+      </g>
+    );
+    case 'encoder': return (
+      <g className={styles.ruler}>
+        <circle className={styles.sensor} r={reading.radius} />
+        <path className={styles.readingMark} d={`M0 0L${reading.radius * Math.sin(reading.angle)} ${reading.radius * Math.cos(reading.angle)}`} />
+      </g>
+    );
+  }
 }
 
 function Ruler({ ruler, line, angle }: { readonly ruler: NonNullable<Layout['ruler']>; readonly line: boolean; readonly angle: number }) {

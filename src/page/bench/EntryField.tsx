@@ -3,11 +3,13 @@ import type { Problem } from '../../problems/problems.ts';
 import type { EntryRead } from '../../reduction/results.ts';
 import type { EntryKind } from '../../session/entries.ts';
 import { BLANK_ENTRY } from '../../session/edits.ts';
-import type { Entry, PlusMinus } from '../../session/session.ts';
+import type { Entry, Instrument, PlusMinus } from '../../session/session.ts';
+import type { Dimension } from '../../units/units.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { SymbolText } from '../words.tsx';
 import { echoOf } from './echo.ts';
 import styles from './EntryField.module.css';
+import { MeasuredWith } from './MeasuredWith.tsx';
 
 interface Props {
   /** Name of the entry, `leverArm` or `part.p1.mass`. */
@@ -21,6 +23,15 @@ interface Props {
   readonly onChange: (patch: Partial<Entry>) => void;
   /** The entry whose field has the focus, null when it leaves: the drawing marks it. */
   readonly onFocus?: (name: string | null) => void;
+  /** Instruments to choose from; absent where none is to be named. */
+  readonly measured?: Measured;
+}
+
+export interface Measured {
+  readonly instruments: readonly Instrument[];
+  /** What an instrument measures for this entry; null for nothing. */
+  readonly dimension: Dimension | null;
+  readonly onChoose: (instrument: string | null) => void;
 }
 
 /** What ± can mean; the short words stand in the field, the long ones explain them. */
@@ -30,7 +41,7 @@ const PLUS_MINUS: readonly (readonly [PlusMinus, string])[] = [
   ['expanded', '± is U, k ='],
 ];
 /** The same of an entry that is itself an uncertainty. */
-const SPREAD: readonly (readonly [PlusMinus, string])[] = [
+export const SPREAD: readonly (readonly [PlusMinus, string])[] = [
   ['standard', 'as u'],
   ['limits', 'as ± limits'],
   ['expanded', 'as U, k ='],
@@ -46,7 +57,7 @@ function meaningWords({ plusMinus, k }: Entry, isSpread: boolean): string {
 const isSaid = ({ code }: Problem, all: readonly Problem[]): boolean =>
   code !== 'entry-no-uncertainty' && (code !== 'entry-missing' || all.every((other) => other.code === code || other.weight !== 'stops'));
 
-export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, unused = false, onChange, onFocus }: Props) {
+export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, unused = false, onChange, onFocus, measured }: Props) {
   const id = `entry-${name}`;
   const below = `${id}-below`;
   const isSpread = kind.isSpread === true;
@@ -98,8 +109,11 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
           />
         )}
       </span>
+      {measured !== undefined && (!isEmpty || entry.instrument !== undefined) && (
+        <MeasuredWith label={`${kind.label}: measured with`} instruments={measured.instruments} dimension={measured.dimension} chosen={entry.instrument} onChoose={measured.onChoose} />
+      )}
       <div id={below} className={styles.below}>
-        <span className="printed">{entry.text}{isEmpty ? '' : `, ${meaningWords(entry, isSpread)}`}{echo === null ? '' : '; '}</span>
+        <span className="printed">{entry.text}{isEmpty ? '' : `, ${meaningWords(entry, isSpread)}`}{read?.measuredWith === undefined ? '' : `, measured with ${read.measuredWith.words}`}{echo === null ? '' : '; '}</span>
         {echo !== null && <span className="num">{echo}</span>}
         {kind.hint !== '' && <span className={styles.hint}>{echo === null ? '' : ' · '}{kind.hint}</span>}
         {unused && <span> · not used by the present choices</span>}

@@ -3,14 +3,15 @@ import type { Problem } from '../../problems/problems.ts';
 import type { EntryRead } from '../../reduction/results.ts';
 import { PART_ENTRIES } from '../../session/entries.ts';
 import type { PartEntryName } from '../../session/entries.ts';
-import { addPart, removePart, setPartEntry, setPartName } from '../../session/edits.ts';
-import type { Part } from '../../session/session.ts';
+import { addPart, removePart, setPartEntry, setPartEntryInstrument, setPartName } from '../../session/edits.ts';
+import type { Instrument, Part } from '../../session/session.ts';
 import type { Actions } from '../../store/store.ts';
 import { EntryField } from './EntryField.tsx';
 import styles from './bench.module.css';
 
 interface Props {
   readonly parts: readonly Part[];
+  readonly instruments: readonly Instrument[];
   readonly readOf: (name: string) => EntryRead | undefined;
   readonly problemsOf: (name: string) => readonly Problem[];
   readonly change: Actions['change'];
@@ -18,7 +19,7 @@ interface Props {
 
 const NAMES = Object.keys(PART_ENTRIES) as readonly PartEntryName[];
 
-export function PartsTable({ parts, readOf, problemsOf, change }: Props) {
+export function PartsTable({ parts, instruments, readOf, problemsOf, change }: Props) {
   return (
     <div className={styles.parts}>
       {parts.map((part, index) => {
@@ -48,6 +49,7 @@ export function PartsTable({ parts, readOf, problemsOf, change }: Props) {
                   entry={part.entries[name]}
                   read={readOf(path)}
                   problems={problemsOf(path)}
+                  measured={{ instruments, dimension: PART_ENTRIES[name].dimension, onChoose: (instrument) => change(`${title}: measured with`, setPartEntryInstrument(part.id, name, instrument)) }}
                   onChange={(patch) => change(`${title}: ${PART_ENTRIES[name].label.toLowerCase()}`, setPartEntry(part.id, name, patch), path)}
                 />
               );

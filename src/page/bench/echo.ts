@@ -1,7 +1,7 @@
 /** How the bench says back what was typed: an entry's value, its standard uncertainty, and what that was taken from. */
 import type { EntryRead } from '../../reduction/results.ts';
 import { alignedParts } from '../../units/format.ts';
-import { unitNamed } from '../../units/units.ts';
+import { unitNamed, type Unit } from '../../units/units.ts';
 
 /** The value of an entry alone, as its field understood it: `118.00 mm`; null where nothing usable is typed. */
 export function valueRead({ value, u, unit, dimension }: EntryRead): string | null {
@@ -17,9 +17,14 @@ export function echoOf(read: EntryRead, isSpread: boolean): string | null {
   const found = unitNamed(read.unit, read.dimension);
   if (value === null || read.value === null || found === null) return null;
   if (isSpread) return `u = ${value}`;
-  if (read.u === 0) return `${value}, taken as exact`;
-  const parts = alignedParts(read.value, read.u, found);
-  return `${value}, u = ${withUnit(parts.spread, parts.unit)}${read.distribution === 'rectangular' ? ' (rectangular)' : ''}`;
+  const by = read.measuredWith === undefined || read.measuredWith.u === 0 ? '' : spreadOf(read.value, read.measuredWith.u, found);
+  if (read.u === 0) return by === '' ? `${value}, taken as exact` : `${value}, u = ${by} by its instrument alone`;
+  return `${value}, u = ${spreadOf(read.value, read.u, found)}${read.distribution === 'rectangular' ? ' (rectangular)' : ''}${by === '' ? '' : `, and ${by} by its instrument`}`;
+}
+
+function spreadOf(value: number, u: number, unit: Unit): string {
+  const parts = alignedParts(value, u, unit);
+  return withUnit(parts.spread, parts.unit);
 }
 
 const withUnit = (number: string, unit: string): string => (/^[°′″]?$/.test(unit) ? `${number}${unit}` : `${number}\u00A0${unit}`);

@@ -1,12 +1,21 @@
 /** Where everything on the bench's drawing stands: lengths in metres become places in pixels, to one scale. */
 import type { Choices } from '../../session/session.ts';
+import { layLaser, layReading, type LaserDrawn, type ReadingDrawn } from './layReading.ts';
 
 export interface BenchLengths {
   readonly form: Choices['form'];
   readonly readingWay: Choices['readingWay'];
+  readonly restoring: Choices['restoring'];
+  readonly screenShape: Choices['screenShape'];
+  readonly plume: Choices['plume'];
+  /** Tilt of the screen and the other angles of the beam, rad; the window in it, m. */
+  readonly beam: { readonly tilt: number; readonly incidence: number; readonly outOfPlane: number; readonly window: number };
+  readonly hasPlate: boolean;
   readonly hung: Choices['calibrationMassHung'];
   /** Length of a bench entry, m; null where none is typed. */
   readonly length: (name: DrawnEntry) => number | null;
+  /** Mass of a strip or its plate, kg. */
+  readonly mass: (name: 'stripMass' | 'plateMass') => number | null;
   /** Parts of a built-up body: mass in kg, distance below the pivot in m. */
   readonly parts: readonly { readonly name: string; readonly mass: number | null; readonly distance: number | null }[];
   /** Largest throw among the records, rad; null before there is one. */
@@ -14,7 +23,8 @@ export interface BenchLengths {
 }
 
 export type DrawnEntry =
-  | 'bobDistance' | 'stripLength' | 'leverArm' | 'readingRadius' | 'rulerHeight' | 'screenDistance' | 'tapLeverArm' | 'calibrationMassDistance';
+  | 'bobDistance' | 'stripLength' | 'plateDistance' | 'filmLength' | 'zoneFrom' | 'zoneTo' | 'leverArm' | 'readingRadius' | 'rulerHeight' | 'sensorHeight' | 'screenDistance' | 'mirrorRadius' | 'tapLeverArm'
+  | 'calibrationMassDistance';
 
 /** A measured length, drawn as a dimension line to the right of the pendulum. */
 export interface DimensionLine {
@@ -42,13 +52,20 @@ export interface Drawing {
   readonly bodyTop: number;
   readonly bodyAssumed: boolean;
   readonly parts: readonly { readonly key: string; readonly y: number; readonly radius: number }[];
+  /** Plate or bob on a strip, at the end of a film: px below the pivot. */
+  readonly plate: number | null;
+  /** The film's struck zone, px below the clamp. */
+  readonly zone: { readonly from: number; readonly to: number } | null;
+  /** What is not drawn to scale, or not drawn, in words. */
+  readonly told: readonly string[];
   readonly calibrationMass: number | null;
   readonly lines: readonly DimensionLine[];
   readonly words: readonly SideWord[];
   /** The ruler: its height, its two ends, and its ticks. */
   readonly ruler: { readonly y: number; readonly from: number; readonly to: number; readonly ticks: readonly number[]; readonly readingX: number; readonly tip: number } | null;
-  /** Laser: where the screen stands and where the spot falls at rest and at the throw (distance not to scale). */
-  readonly laser: { readonly screenX: number; readonly restY: number; readonly spotY: number } | null;
+  readonly laser: LaserDrawn | null;
+  /** Any other way of reading. */
+  readonly reading: ReadingDrawn | null;
   /** A bar of a round length for the scale. */
   readonly scaleBar: { readonly px: number; readonly metres: number };
 }
@@ -65,8 +82,6 @@ const LINE_START = 34;
 /** Room to the right of the pendulum at rest that dimension lines leave to the swing. */
 const SWING_KEPT_CLEAR = 60;
 const WORD_STEP = 17;
-/** Longest drawn laser path: the screen is usually metres away and is drawn broken. */
-const LASER_PATH = 118;
 const ASSUMED_BODY_M = 0.2;
 
 const isLength = (value: number | null): value is number => value !== null && Number.isFinite(value) && value > 0;
@@ -78,7 +93,9 @@ function roundBelow(value: number): number {
 }
 
 function bodyLength({ form, parts, length }: BenchLengths): number | null {
-  if (form === 'uniformStrip') return length('stripLength');
+  if (form === 'uniformStrip' || form === 'stripWithPlate') return length('stripLength');
+  if (form === 'filmStrip') return length('filmLength');
+  if (form === 'periodAndStiffness') return null;
   if (form === 'pointBob') return length('bobDistance');
   const distances = parts.map((part) => part.distance ?? 0);
   const longest = Math.max(0, ...distances);
@@ -89,19 +106,30 @@ function bodyLength({ form, parts, length }: BenchLengths): number | null {
 function centreOfMass(bench: BenchLengths, body: number): number | null {
   if (bench.form === 'pointBob') return body;
   if (bench.form === 'uniformStrip') return body / 2;
+  if (bench.form === 'stripWithPlate') {
+    const [strip, plate, at] = [bench.mass('stripMass'), bench.mass('plateMass'), bench.length('plateDistance')];
+    return isLength(strip) && isLength(plate) && at !== null ? ((strip * body) / 2 + plate * at) / (strip + plate) : null;
+  }
+  if (bench.form === 'filmStrip' || bench.form === 'periodAndStiffness') return null;
   const weighed = bench.parts.filter((part) => isLength(part.mass) && part.distance !== null);
   const mass = weighed.reduce((sum, part) => sum + (part.mass ?? 0), 0);
   return mass > 0 ? weighed.reduce((sum, part) => sum + (part.mass ?? 0) * (part.distance ?? 0), 0) / mass : null;
 }
 
 /** Which lengths are drawn under the present choices, in the order of the form. */
-function drawnEntries({ form, readingWay, hung }: BenchLengths): readonly DrawnEntry[] {
+const READ_AT_RADIUS: readonly Choices['readingWay'][] = ['rulerAtTip', 'arcRuler', 'chord', 'rise', 'cameraMarker', 'sensorOnPoint'];
+
+function drawnEntries({ form, readingWay, hung, length }: BenchLengths): readonly DrawnEntry[] {
   const names: DrawnEntry[] = [];
   if (form === 'pointBob') names.push('bobDistance');
-  if (form === 'uniformStrip') names.push('stripLength');
+  if (form === 'uniformStrip' || form === 'stripWithPlate') names.push('stripLength');
+  if (form === 'stripWithPlate') names.push('plateDistance');
+  if (form === 'filmStrip') names.push('filmLength', 'zoneFrom', 'zoneTo');
   names.push('leverArm');
-  if (readingWay === 'rulerAtTip') names.push('readingRadius');
+  if (READ_AT_RADIUS.includes(readingWay)) names.push('readingRadius');
   if (readingWay === 'rulerUnderLine') names.push('rulerHeight');
+  if (readingWay === 'sensorOnFace') names.push('sensorHeight');
+  if (readingWay === 'laserSpot' && length('mirrorRadius') !== null) names.push('mirrorRadius');
   if (hung !== 'never') names.push('calibrationMassDistance');
   names.push('tapLeverArm');
   return names;
@@ -118,8 +146,7 @@ function spread(words: readonly { readonly id: SideWord['id']; readonly y: numbe
 }
 
 function partMarks(bench: BenchLengths, scale: number): Drawing['parts'] {
-  if (bench.form === 'uniformStrip') return [];
-  if (bench.form === 'pointBob') return [];
+  if (bench.form !== 'bodyOfParts') return [];
   const largest = Math.max(...bench.parts.map((part) => part.mass ?? 0), 0);
   return bench.parts.flatMap((part, index) => {
     if (part.distance === null) return [];
@@ -144,7 +171,7 @@ export function layDrawing(bench: BenchLengths): Drawing {
   const pivot = { x: LEFT, y: TOP + above * scale };
   const swing = wide * scale;
 
-  const assumed: Partial<Record<DrawnEntry, number>> = { leverArm: body * 0.85, tapLeverArm: body * 0.7, rulerHeight: body * 1.04, calibrationMassDistance: body * 0.55 };
+  const assumed: Partial<Record<DrawnEntry, number>> = { leverArm: body * 0.85, tapLeverArm: body * 0.7, rulerHeight: body * 1.04, sensorHeight: body * 0.9, plateDistance: body * 0.95, zoneFrom: body * 0.7, zoneTo: body, calibrationMassDistance: body * 0.55 };
   const placed = names.map((entry) => {
     const metres = typed.get(entry) ?? null;
     return { entry, metres: metres ?? assumed[entry] ?? body, assumed: metres === null };
@@ -163,29 +190,48 @@ export function layDrawing(bench: BenchLengths): Drawing {
   if (centre !== null) marks.push({ id: 'centre', y: centre * scale });
   if (massY !== null) marks.push({ id: 'calibrationMass', y: massY });
 
+  const words = spread(marks, bench.readingWay === 'laserSpot' ? 30 : -above * scale);
+  const lowest = Math.max(high * scale - above * scale, ...words.map(({ wordY }) => wordY));
+
   return {
     width: Math.max(firstLine + (lines.length - 1) * LINE_STEP, pivot.x + swing) + 22,
-    height: TOP + high * scale + BOTTOM,
+    height: pivot.y + lowest + BOTTOM,
     pivot,
     angle,
     bodyEnd: body * scale,
     bodyTop: -above * scale,
     bodyAssumed: !isLength(typedBody),
     parts: partMarks(bench, scale),
+    plate: bench.form === 'stripWithPlate' ? yOf('plateDistance') : bench.form === 'filmStrip' && bench.hasPlate ? body * scale : null,
+    zone: bench.form === 'filmStrip' ? { from: yOf('zoneFrom') ?? 0, to: yOf('zoneTo') ?? 0 } : null,
+    told: toldOf(bench),
     calibrationMass: massY,
     lines,
-    words: spread(marks, bench.readingWay === 'laserSpot' ? 30 : -above * scale),
+    words,
     ruler: layRuler(bench, lines, scale, angle),
-    laser: bench.readingWay === 'laserSpot' ? { screenX: -LASER_PATH, restY: 0, spotY: LASER_PATH * Math.tan(Math.min(2 * angle, Math.PI / 3)) } : null,
+    laser: bench.readingWay === 'laserSpot' ? layLaser(bench, angle, yOf('mirrorRadius') ?? 0) : null,
+    reading: layReading(bench.readingWay, { angle, radius: yOf('readingRadius') ?? yOf('sensorHeight') ?? body * scale, body: body * scale }),
     scaleBar: { metres: roundBelow(90 / scale), px: roundBelow(90 / scale) * scale },
   };
+}
+
+/** What a reader of the drawing has to be told. */
+export function toldOf({ form, restoring, readingWay, beam }: BenchLengths): readonly string[] {
+  return [
+    ...(form === 'periodAndStiffness' ? ['known by its period and stiffness: its shape is not drawn'] : []),
+    ...(form === 'filmStrip' ? ['a hanging film bends; drawn straight at the throw'] : []),
+    ...(restoring === 'flexureAlone' ? ['upright axis: seen from above'] : []),
+    ...(readingWay === 'laserSpot' ? ['screen distance not to scale'] : []),
+    ...(readingWay === 'laserSpot' && beam.outOfPlane !== 0 ? ['beam inclined along the pivot axis'] : []),
+    ...(readingWay === 'angle' ? ['the angle itself is read'] : []),
+  ];
 }
 
 function layRuler(bench: BenchLengths, lines: readonly DimensionLine[], scale: number, angle: number): Drawing['ruler'] {
   const atTip = lines.find((line) => line.entry === 'readingRadius');
   const underLine = lines.find((line) => line.entry === 'rulerHeight');
   const radius = atTip ?? underLine;
-  if (radius === undefined || bench.readingWay === 'angle' || bench.readingWay === 'laserSpot') return null;
+  if (radius === undefined || (bench.readingWay !== 'rulerAtTip' && bench.readingWay !== 'rulerUnderLine')) return null;
   const readingX = underLine === undefined ? radius.y * Math.sin(angle) : radius.y * Math.tan(Math.min(angle, Math.PI / 3));
   const y = underLine === undefined ? radius.y + 8 : radius.y;
   const step = roundBelow(12 / scale) * scale;
