@@ -22,6 +22,8 @@ export interface Line {
   readonly share: number;
   /** Number of sources merged in this line. */
   readonly sources: number;
+  /** Instrument that the quantity was measured with; absent: none named, or a merged line. */
+  readonly measuredWith?: string;
 }
 
 /**
@@ -55,6 +57,7 @@ function lineOf(id: string, group: readonly [Source, number][], total: number): 
     return {
       id, label: first.label, symbol: first.symbol, dimension: first.dimension, estimate: first.estimate, u: first.u,
       distribution: first.distribution, dof: first.dof, sensitivity: first.u === 0 ? null : part / first.u, contribution: part, share, sources: 1,
+      ...(first.measuredWith === undefined ? {} : { measuredWith: first.measuredWith }),
     };
   }
   let finite = 0;

@@ -19,6 +19,8 @@ export interface Source {
   readonly dof: number;
   /** Budget line that merges many of a kind ("readings of the taps"); absent: a line of its own. */
   readonly family?: Family;
+  /** Instrument that the quantity was measured with, as a report states it. */
+  readonly measuredWith?: string;
 }
 
 export interface Family {

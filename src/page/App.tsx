@@ -32,15 +32,16 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
   // Where it fails, each section is fetched again when it is needed.
   useEffect(() => void fetchSections().catch(() => undefined), []);
 
-  const say = (sentences: readonly string[]): void => {
-    if (sentences.length === 0) return;
-    setMessages((said) => [...said, { id: 1 + Math.max(-1, ...said.map((message) => message.id)), sentences }]);
+  const say = (message: Omit<Message, 'id'>): void => {
+    if (message.sentences.length === 0) return;
+    // Of files opened one after another only the last stands here.
+    setMessages((said) => [...said.filter(({ opened }) => opened === undefined || message.opened === undefined), { ...message, id: 1 + Math.max(-1, ...said.map(({ id }) => id)) }]);
   };
 
   async function takeFiles(files: readonly File[]): Promise<void> {
     const tables: File[] = [];
     for (const file of files) {
-      if (await looksLikeSession(file)) say(await openSessionFile(file, change));
+      if (await looksLikeSession(file)) say(await openSessionFile(file, change, now));
       else tables.push(file);
     }
     if (tables.length > 0) await intake.takeFiles(tables);

@@ -17,7 +17,7 @@ export interface ForcePulse {
   /** Maximum above the quiet level, N, and where, s. */
   readonly peak: number;
   readonly peakTime: number;
-  /** First return to the quiet level after the maximum, s. */
+  /** The contact: from the last passage of the quiet level before the maximum to the first return to it, here its end, s. */
   readonly contactEnds: number;
   /** I, N·s, > 0 whatever the sensor's polarity; `byWhole` or `byContact`. */
   readonly impulse: number;
@@ -27,7 +27,7 @@ export interface ForcePulse {
   readonly uNoise: number;
   /** u(I) from the spacing of the samples, N·s. */
   readonly uSampling: number;
-  /** What comes after the contact above the threshold: nothing; swings to both sides; a second contact; sinking below the level; the record ends in it. */
+  /** What comes after the contact above the threshold: nothing; ringing; a second contact; sinking below the level for long; the record ends in it. */
   readonly after: 'nothing' | 'ringing' | 'secondContact' | 'undershoot' | 'cutOff';
   /** Samples above half of the maximum, in one run. */
   readonly samples: number;
@@ -69,6 +69,8 @@ const LEAST_ROOM = 3;
 const JOINED = 2;
 /** The smaller side of a ringing is at least this part of the larger, in area. */
 const BOTH_SIDES = 0.2;
+/** A side that stays below for this many lengths of the contact is no swing of a sensor, whose own period is short. */
+const LASTING = 2;
 /** Equal samples at the top that make a clipped one, and steps of the record that its shoulders then have. */
 const FLAT_TOP = 3;
 const SHOULDER = 3;
@@ -108,6 +110,8 @@ interface Quiet {
   readonly noise: number;
   readonly threshold: number;
   readonly largest: number;
+  /** Least step of the record, N. */
+  readonly step: number;
 }
 
 /** Level and noise of the whole record, from the samples that stay near a line that is found with them. null where less than a third is quiet. */
@@ -118,7 +122,7 @@ function quietOf(record: MeasuredForce): Quiet | null {
   let noise = SD_OVER_MAD * median(force.map((f) => Math.abs(f - middle)));
   let away = force.map((f) => f - middle);
   let level: Level | null = null;
-  const leastNoise = stepOf(force) / Math.sqrt(12);
+  const step = stepOf(force);
   let kept = -1;
   for (let round = 0; round < QUIET_ROUNDS; round++) {
     const threshold = Math.max(THRESHOLD * noise, QUIET_PART * Math.max(...extremes(away)));
@@ -131,11 +135,11 @@ function quietOf(record: MeasuredForce): Quiet | null {
     away = force.map((f, i) => f - line.at(time[i]!));
     noise = SD_OVER_MAD * median(quiet.map((i) => Math.abs(away[i]!)));
     // Readings that nearly all fall on one step have no median deviation.
-    noise = Math.max(noise, Math.min(line.sd, leastNoise));
+    noise = Math.max(noise, Math.min(line.sd, step / Math.sqrt(12)));
   }
   const [up, down] = extremes(away);
   const largest = Math.max(up, down);
-  return level && { level, polarity: up >= down ? 1 : -1, noise, threshold: Math.max(THRESHOLD * noise, QUIET_PART * largest), largest };
+  return level && { level, polarity: up >= down ? 1 : -1, noise, threshold: Math.max(THRESHOLD * noise, QUIET_PART * largest), largest, step };
 }
 
 function extremes(values: readonly number[]): readonly [up: number, down: number] {
@@ -216,17 +220,18 @@ function scatterOfWindows(away: readonly number[], time: readonly number[], isQu
   return integrals.length < FEWEST_WINDOWS ? 0 : Math.sqrt(integrals.reduce((sum, x) => sum + x * x, 0) / (integrals.length - 1));
 }
 
-/** What follows the contact, by the area of its runs beyond the threshold to either side. */
-function afterContact(away: readonly number[], weights: readonly number[], first: number, contact: number, { last }: Cluster, threshold: number, isCut: boolean): ForcePulse['after'] {
-  if (isCut) return 'cutOff';
+/** What follows the contact at `from`, by the area of its samples beyond the threshold to either side; one side alone is sinking only where it lasts. */
+function afterContact({ time, force }: MeasuredForce, weights: readonly number[], from: number, to: number, threshold: number, contact: number): ForcePulse['after'] {
   let [above, below] = [0, 0];
-  for (const i of range(contact, last)) {
-    const area = weights[i - first]! * away[i]!;
-    if (away[i]! > threshold) above += area;
-    if (away[i]! < -threshold) below -= area;
+  for (const k of range(from, to)) {
+    const area = weights[k]! * force[k]!;
+    if (force[k]! > threshold) above += area;
+    if (force[k]! < -threshold) below -= area;
   }
   if (above === 0 && below === 0) return 'nothing';
-  return Math.min(above, below) >= BOTH_SIDES * Math.max(above, below) ? 'ringing' : above > below ? 'secondContact' : 'undershoot';
+  if (Math.min(above, below) >= BOTH_SIDES * Math.max(above, below)) return 'ringing';
+  if (above > below) return 'secondContact';
+  return time[to]! - time[from]! > LASTING * contact ? 'undershoot' : 'ringing';
 }
 
 interface Bounds {
@@ -235,7 +240,7 @@ interface Bounds {
   readonly to: number;
 }
 
-function pulseOf(record: MeasuredForce, cluster: Cluster, bounds: Bounds, isQuiet: readonly boolean[], { polarity, threshold, level: whole }: Quiet, allAway: readonly number[], fullScale: number | null): ForcePulse {
+function pulseOf(record: MeasuredForce, cluster: Cluster, bounds: Bounds, isQuiet: readonly boolean[], { polarity, threshold, level: whole, step }: Quiet, allAway: readonly number[], fullScale: number | null): ForcePulse {
   const { time, force } = record;
   const room = Math.max(LEAST_ROOM, Math.ceil(ROOM * (cluster.lobe[1] - cluster.lobe[0] + 1)));
   const first = Math.max(bounds.from, cluster.first - room);
@@ -247,33 +252,35 @@ function pulseOf(record: MeasuredForce, cluster: Cluster, bounds: Bounds, isQuie
   // One side alone cannot tell a slope across the pulse.
   const bothSides = Math.min(before.length, after.length) >= FEWEST_QUIET;
   const level = near.length >= FEWEST_QUIET ? levelThrough(record, near, bothSides) : whole;
-  const away = force.map((f, i) => (i >= first && i <= last ? polarity * (f - level.at(time[i]!)) : 0));
-  const weights = weightsOf(time, first, last);
-  const sum = (keep: (i: number) => boolean): number => weights.reduce((total, w, k) => (keep(first + k) ? total + w * away[first + k]! : total), 0);
+  // From here on the stretch alone, above its level, a push positive.
+  const stretch: MeasuredForce = { time: time.slice(first, last + 1), force: range(first, last).map((i) => polarity * (force[i]! - level.at(time[i]!))) };
+  const { time: t, force: f } = stretch;
+  const weights = weightsOf(t, 0, t.length - 1);
+  const sum = (keep: (k: number) => boolean): number => weights.reduce((total, w, k) => (keep(k) ? total + w * f[k]! : total), 0);
   const byWhole = sum(() => true);
 
-  let zero = cluster.top;
-  while (zero < last && away[zero]! > 0) zero += 1;
-  const [high, low] = [away[zero - 1] ?? 0, away[zero]!];
-  const isBack = zero > cluster.top && low <= 0;
-  const contactEnds = isBack ? time[zero - 1]! + ((time[zero]! - time[zero - 1]!) * high) / (high - low) : time[last]!;
-  const contact: MeasuredForce = { time: [...time.slice(first, zero), contactEnds], force: [...away.slice(first, zero), isBack ? 0 : low] };
-  const { impulse: byContact, centroid, variance } = momentsOf(isBack && contactEnds > time[zero - 1]! ? contact : { time: time.slice(first, zero + 1), force: away.slice(first, zero + 1) });
+  const top = cluster.top - first;
+  const below = f.findIndex((value, k) => k > top && value <= 0);
+  const isBack = below > top;
+  const contactEnds = isBack ? t[below - 1]! + ((t[below]! - t[below - 1]!) * f[below - 1]!) / (f[below - 1]! - f[below]!) : t.at(-1)!;
+  const begin = Math.max(0, f.findLastIndex((value, k) => k < top && value <= 0));
+  const upTo = isBack ? below : t.length;
+  // Nothing but push, so that its moments are those of a pulse.
+  const push: MeasuredForce = { time: t.slice(begin, upTo), force: f.slice(begin, upTo).map((value) => Math.max(0, value)) };
+  const { impulse: byContact, centroid, variance } = momentsOf(isBack && contactEnds > t[below - 1]! ? { time: [...push.time, contactEnds], force: [...push.force, 0] } : push);
 
   const isCut = cluster.last >= force.length - 2 || cluster.first <= 1;
-  const kind = afterContact(away, weights, first, isBack ? zero : last, cluster, threshold, isCut);
-  const [T, mid] = [time[last]! - time[first]!, (time[last]! + time[first]!) / 2];
+  const kind = isCut ? 'cutOff' : afterContact(stretch, weights, isBack ? below : t.length - 1, cluster.last - first, threshold, contactEnds - time[cluster.lobe[0]]!);
+  const [T, mid] = [t.at(-1)! - t[0]!, (t.at(-1)! + t[0]!) / 2];
   const white = level.sd * Math.sqrt(weights.reduce((total, w) => total + w * w, 0) + level.share(T, mid));
-  const uSeen = scatterOfWindows(allAway, time, isQuiet, last - first + 1);
-  const half = away[cluster.top]! / 2;
-  let [a, b] = [cluster.top, cluster.top];
-  while (a > first && away[a - 1]! > half) a -= 1;
-  while (b < last && away[b + 1]! > half) b += 1;
+  let [a, b] = [top, top];
+  while (a > 0 && f[a - 1]! > f[top]! / 2) a -= 1;
+  while (b < f.length - 1 && f[b + 1]! > f[top]! / 2) b += 1;
   return {
-    from: time[first]!, to: time[last]!, peak: away[cluster.top]!, peakTime: time[cluster.top]!, contactEnds,
+    from: t[0]!, to: t.at(-1)!, peak: f[top]!, peakTime: t[top]!, contactEnds,
     impulse: kind === 'undershoot' || kind === 'cutOff' ? byContact : byWhole, byWhole, byContact,
-    uNoise: Math.max(white, uSeen), uSampling: Math.abs(sum((i) => (i - first) % 2 === 0) - sum((i) => (i - first) % 2 === 1)) / 4,
-    after: kind, samples: b - a + 1, clipped: clippedSamples(force, cluster, fullScale, stepOf(force)), centroid: time[first]! + centroid, variance,
+    uNoise: Math.max(white, scatterOfWindows(allAway, time, isQuiet, t.length)), uSampling: Math.abs(sum((k) => k % 2 === 0) - sum((k) => k % 2 === 1)) / 4,
+    after: kind, samples: b - a + 1, clipped: clippedSamples(force, cluster, fullScale, step), centroid: t[begin]! + centroid, variance,
   };
 }
 

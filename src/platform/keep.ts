@@ -9,7 +9,7 @@ export interface Shelf {
 }
 
 let opened: UseStore | null = null;
-const database = (): UseStore => (opened ??= createStore('firstswing', 'kept'));
+export const database = (): UseStore => (opened ??= createStore('firstswing', 'kept'));
 
 /** Commits at once instead of when the page is next idle: a page that is going away is not idle again. */
 const deviceShelf: Shelf = {

@@ -42,8 +42,9 @@ export const PROBLEM_CODES = [
   // a cell
   'cell-not-a-number', 'cell-unknown-unit', 'cell-wrong-kind-of-unit', 'cell-kind-unknown', 'cell-empty',
   // a record
-  'record-no-rest', 'record-rest-from-zero', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
+  'record-no-rest', 'record-rest-from-zero', 'record-zero-moved', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
   'hammer-angle-too-wide', 'hammer-entry-missing', 'tap-force-without-time', 'tap-both-rebound-and-follow',
+  'force-record-no-samples', 'force-record-time-not-rising', 'force-record-too-long', 'force-record-unit-assumed', 'force-record-no-pulse', 'force-record-clipped', 'force-record-after-contact', 'force-records-do-not-fit',
   // evidence of the calibration
   'timing-spread-missing', 'timing-without-place', 'timing-not-positive', 'weights-too-few', 'weights-wrong-way', 'taps-one-size', 'taps-drifted', 'taps-intercept', 'taps-curved', 'masses-tell-little', 'mass-heavier-than-pendulum', 'masses-inertia-negative', 'evidence-contradicts', 'bench-disagrees', 'chosen-evidence-missing',
   // the whole run
@@ -58,6 +59,8 @@ export const PROBLEM_CODES = [
   // a bench entry
   'entry-missing', 'entry-not-a-number', 'entry-unknown-unit', 'entry-wrong-kind-of-unit', 'entry-out-of-range', 'entry-no-uncertainty', 'entry-unit-assumed', 'entry-uncertainty-large', 'entry-decimal-ambiguous',
   'bench-unstable', 'film-model-alone', 'film-regime', 'film-out-of-range', 'film-needs-displacement', 'stiffness-missing', 'bench-inertia-not-positive', 'gravity-assumed',
+  // an instrument
+  'instrument-overdue', 'instrument-due-unread', 'instrument-calibration-wide',
   // the session file
   'session-not-json', 'session-not-ours', 'session-newer', 'session-damaged',
 ] as const;

@@ -1,4 +1,5 @@
 /** The words for every problem: what was found, where, and what to do. */
+import { dateWords } from '../units/calendarDate.ts';
 import { chooseUnit, plain } from '../units/format.ts';
 import type { Dimension } from '../units/units.ts';
 import type { Place, Problem } from './problems.ts';
@@ -41,6 +42,7 @@ function words({ code, place, facts, weight }: Problem): string {
     return Number.isFinite(value) ? plain(value, chooseUnit([value], dimension), FIGURES) : 'not known';
   };
   const many = (name: string, one: string, more = `${one}s`): string => (number(name) === 1 ? `1 ${one}` : `${text(name, 'some')} ${more}`);
+  const day = (name: string): string => (has(name) ? dateWords(text(name)) : 'another day');
   const entry = text('label', place.entry ?? 'this entry');
   const found = text('found');
   const role = ROLE_WORDS[text('role')] ?? 'reading';
@@ -273,6 +275,8 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'gravity-assumed':
       return `no local g is given; ${quantity('value', 'acceleration')} ± ${quantity('limits', 'acceleration')} is taken. Write it, or latitude and height.`;
 
+    case 'record-zero-moved':
+      return `the rest moved over this swing by ${figure('move', 2)} ${text('unit')}, ${figure('inU', 2)} times the uncertainty of that: drift, a slip of the pivot, or a knock. The rest before it counts; the mean with its limits is under Reading.`;
     case 'hammer-angle-too-wide':
       return `the hammer stood at ${figure('degrees', 3)}°; beyond 90° it does not swing as it was drawn, so this tap has no known impulse. Check the angle and its unit.`;
     case 'hammer-entry-missing':
@@ -281,6 +285,22 @@ function words({ code, place, facts, weight }: Problem): string {
       return 'a force and its length make an impulse; one of the two is missing here, so this tap has none.';
     case 'tap-both-rebound-and-follow':
       return 'the hammer cannot come back and go on through at once; both angles are filled in, so this tap has no known impulse. Blank the one that was not seen.';
+    case 'force-record-no-samples':
+      return 'no two columns of numbers, time and force, were found in it. Check that the whole record was saved.';
+    case 'force-record-time-not-rising':
+      return 'the time does not rise here; the record is left out. Check that it is one record, in order.';
+    case 'force-record-too-long':
+      return `the record has ${text('rows')} samples and a hammer’s record at most ${text('most')}. Save the taps alone.`;
+    case 'force-record-unit-assumed':
+      return `its header does not name both units; ${text('time')} and ${text('force')} are taken. Write them in the header.`;
+    case 'force-record-no-pulse':
+      return 'no pulse stands out of its noise, so no tap has its impulse from it.';
+    case 'force-record-clipped':
+      return `${many('pulses', 'pulse')} reached the end of the sensor’s range; the force was larger than recorded, and the impulse with it. Tap less hard, or set a larger range.`;
+    case 'force-record-after-contact':
+      return `after the contact the force of ${many('pulses', 'pulse')} ${text('after') === 'secondContact' ? 'rises again: the hammer struck twice' : text('after') === 'cutOff' ? 'is still going where the record ends' : 'stays below its level for long, as behind a coupled amplifier'}; whole and contact part by ${figure('percent', 2)} %.`;
+    case 'force-records-do-not-fit':
+      return `the force records hold ${many('pulses', 'pulse')} and ${many('taps', 'tap')} state no impulse; none is given to another’s. Take out what is not a tap’s, or write the missing impulses.`;
     case 'timing-spread-missing':
       return `nothing says how well the ${many('timings', 'period')} were started and stopped; only the last digit of the times counts. Write one start or stop, by hand about 0.1 s.`;
     case 'timing-without-place':
@@ -317,6 +337,13 @@ function words({ code, place, facts, weight }: Problem): string {
     }
     case 'chosen-evidence-missing':
       return `the calibration is to be known ${text('way')}, but that evidence is not complete. Choose another way under Calibration, or add what is missing.`;
+
+    case 'instrument-overdue':
+      return `the calibration of ${text('name', 'an instrument')} was due on ${day('due')}, before the session of ${day('date')}. Have it calibrated, or write the new certificate and its due date.`;
+    case 'instrument-calibration-wide':
+      return `the calibration of ${text('name', 'an instrument')} is said to be uncertain by ${figure('percent', 2)} % of all that it measures. Check its unit, and what the ± means.`;
+    case 'instrument-due-unread':
+      return `the due date of ${text('name', 'an instrument')}, “${found}”, is not read as a date. Write it as 2027-03-31, say.`;
 
     case 'session-not-json':
       return 'this file cannot be read as a session: it is damaged, or of another kind. Open the file that was saved here.';

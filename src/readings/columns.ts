@@ -37,6 +37,8 @@ export type Proposal = ColumnMeaning & {
 /** What a role's numbers are measured in; readings are a length, or an angle. */
 export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
   rest: ['length', 'angle', 'pixel', 'count'],
+  restAfter: ['length', 'angle', 'pixel', 'count'],
+  nextSwingDown: ['pixel'],
   firstSwing: ['length', 'angle', 'pixel', 'count'],
   nextSwing: ['length', 'angle', 'pixel', 'count'],
   restDown: ['pixel'],
@@ -75,7 +77,7 @@ export const unitsOfRole = (role: Role): readonly Unit[] => ROLE_DIMENSIONS[role
 
 /** Unit taken where none is written, told with the proposal. */
 export const USUAL_UNIT: Readonly<Record<Role, string>> = {
-  rest: 'mm', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s',
+  rest: 'mm', restAfter: 'mm', nextSwingDown: 'px', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s',
   hammerIn: '°', hammerRebound: '°', hammerFollow: '°', tapForce: 'mN', tapDuration: 'ms', weight: 'mg', loading: 'mm', unloading: 'mm', swingsTime: 's', cycles: 'counts', amplitude: '°', massHung: 'g', massHungAt: 'mm', swingBefore: 'mm', timeSinceMaximum: 's', kind: '', label: '', note: '', ignored: '',
 };
 
@@ -89,7 +91,7 @@ export interface Claim {
   sure: boolean;
 }
 
-const READINGS: readonly Role[] = ['rest', 'firstSwing', 'nextSwing', 'loading', 'unloading', 'swingBefore'];
+const READINGS: readonly Role[] = ['rest', 'restAfter', 'firstSwing', 'nextSwing', 'loading', 'unloading', 'swingBefore'];
 export const isReading = (role: Role | null): boolean => role !== null && READINGS.includes(role);
 
 /** The unit of a column as written in its header, a units row or its cells. */
@@ -172,7 +174,7 @@ function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
 }
 
 const SINGLE: readonly Role[] = [
-  'kind', 'label', 'rest', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum',
+  'kind', 'label', 'rest', 'restAfter', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum',
 ];
 
 /** Of two columns with one role the better named keeps it; a second first swing is a next swing, any other is left aside, with the reason. */
@@ -193,7 +195,7 @@ function settleRivals(table: TableRead, claims: readonly Claim[]): void {
 }
 
 /** Roles of a table of shots or taps; beside them a weight is a remark. */
-const OF_FIRINGS: readonly Role[] = ['rest', 'nextSwing', 'voltage', 'tapImpulse', 'hammerIn'];
+const OF_FIRINGS: readonly Role[] = ['rest', 'restAfter', 'nextSwing', 'voltage', 'tapImpulse', 'hammerIn'];
 
 /** A weight is one of a calibration only where deflections stand beside it; a radius only beside a mass that hung there. */
 function settleEvidence(claims: readonly Claim[]): void {

@@ -5,11 +5,12 @@ export const RECORD_KINDS = ['shot', 'tap', 'blank', 'zero', 'freeSwing', 'weigh
 export type RecordKind = (typeof RECORD_KINDS)[number];
 
 export const ROLES = [
-  'kind', 'label', 'rest', 'firstSwing', 'nextSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse',
+  'kind', 'label', 'rest', 'restAfter', 'firstSwing', 'nextSwing', 'nextSwingDown', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse',
   'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum', 'note', 'ignored',
 ] as const;
 /**
  * restDown, firstSwingDown: the marker's row in a picture, counted downward, beside its column in rest and firstSwing.
+ * restAfter: the rest reading once the swing has died out. nextSwingDown: the rows of the turning points in the picture, in their order.
  * nextSwing: the turning readings after the first swing, one column each, in order: the first such column is the
  * return swing (the other side), the second the same side again, and so on.
  * hammerIn, hammerRebound, hammerFollow: a swinging hammer’s angle before the blow, back up on the side that it came from, and on

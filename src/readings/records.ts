@@ -31,12 +31,16 @@ export interface SheetRecord {
   /** Cells of all note columns, joined with '; '. */
   readonly note: string;
   readonly rest: CellRead | null;
+  /** Rest once the swing has died out. */
+  readonly restAfter: CellRead | null;
   readonly firstSwing: CellRead | null;
   /** Rows in the picture, counted downward, where pivot and marker are tracked. */
   readonly restDown: CellRead | null;
   readonly firstSwingDown: CellRead | null;
   /** One a next-swing column, in order; null where blank or not readable. */
   readonly nextSwings: readonly (CellRead | null)[];
+  /** Their rows in the picture, in the same order. */
+  readonly nextSwingsDown: readonly (CellRead | null)[];
   readonly time: CellRead | null;
   readonly voltage: CellRead | null;
   readonly pressure: CellRead | null;
@@ -75,7 +79,7 @@ export interface RecordsRead {
 /** Roles beyond the readings of a swing, each of one column. */
 const EVIDENCE = ['tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum'] as const;
 
-const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', ...EVIDENCE, 'cycles'];
+const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'restAfter', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', ...EVIDENCE, 'cycles'];
 
 interface Row {
   readonly line: string;
@@ -93,6 +97,7 @@ interface Bench {
   /** Column that has the role: the first, where several do. */
   readonly single: ReadonlyMap<Role, number>;
   readonly nextSwings: readonly number[];
+  readonly nextSwingsDown: readonly number[];
   readonly notes: readonly number[];
 }
 
@@ -117,6 +122,7 @@ export function recordsOf(sheet: SheetShape, table: TableRead, kinds: Readonly<R
       return index === -1 ? [] : [[role, index] as const];
     })),
     nextSwings: sheet.columns.flatMap(({ role }, i) => (role === 'nextSwing' ? [i] : [])),
+    nextSwingsDown: sheet.columns.flatMap(({ role }, i) => (role === 'nextSwingDown' ? [i] : [])),
     notes: sheet.columns.flatMap(({ role }, i) => (role === 'note' ? [i] : [])),
   };
   const byLine = new Map<number, Problem[]>();
@@ -212,10 +218,12 @@ function recordOf(bench: Bench, row: Row, marked: RecordKind | undefined, sheetP
   };
   const readings = {
     rest: readAt(single.get('rest')),
+    restAfter: readAt(single.get('restAfter')),
     firstSwing: readAt(single.get('firstSwing')),
     restDown: readAt(single.get('restDown')),
     firstSwingDown: readAt(single.get('firstSwingDown')),
     nextSwings: bench.nextSwings.map(readAt),
+    nextSwingsDown: bench.nextSwingsDown.map(readAt),
     time: readAt(single.get('time')),
     voltage: readAt(single.get('voltage')),
     pressure: readAt(single.get('pressure')),

@@ -50,6 +50,25 @@ function faceAngle(x: number, height: number, offset: number): number {
   return Math.atan2(x + offset, height) - arcsine(offset / reach, 'sensor on a face');
 }
 
+interface Camera {
+  /** γ, rad, and sin γ/Z₀, 1/m: 0 for a camera far away. */
+  readonly yaw: number;
+  readonly closing: number;
+}
+
+function cameraOf(stand: StandNumbers): Camera {
+  const [yaw, far] = [of(stand, 'cameraYaw'), of(stand, 'cameraToPlane')];
+  return { yaw, closing: far > 0 ? Math.sin(yaw) / far : 0 };
+}
+
+/**
+ * Length in the picture, at the scale of the rest point, of X across the swing plane, seen by a camera turned by γ about the upright
+ * at Z₀ on its axis: X cos γ/(1 + X sin γ/Z₀). Source: pinhole, derived; methods 2 (scale cos γ, non-linearity X sin γ/Z₀).
+ */
+const pictureOfAcross = (X: number, { yaw, closing }: Camera): number => (X * Math.cos(yaw)) / (1 + X * closing);
+/** The inverse of pictureOfAcross. */
+const acrossOfPicture = (x: number, { yaw, closing }: Camera): number => x / (Math.cos(yaw) - x * closing);
+
 /**
  * The ways. Lengths m, angles rad, pixels and counts as such.
  *
@@ -84,9 +103,9 @@ export const WAYS: Readonly<Record<ReadingWay, Way>> = {
     angle: (x, s) => angleOfSpot(x, laserPath(s)), reading: (t, s) => spotOfAngle(t, laserPath(s)),
   },
   cameraMarker: {
-    reads: 'pixel', needs: ['pixelScale', 'readingRadius'], mayHave: {}, equation: 'θ = asin((u/S)/R)',
-    angle: (x, s) => arcsine(x / (of(s, 'pixelScale') * of(s, 'readingRadius')), 'camera marker'),
-    reading: (t, s) => of(s, 'pixelScale') * of(s, 'readingRadius') * Math.sin(t),
+    reads: 'pixel', needs: ['pixelScale', 'readingRadius'], mayHave: { cameraYaw: 0, cameraToPlane: 0 }, equation: 'θ = asin(X/R), X = (u/S)/(cos γ − (u/S) sin γ/Z₀)',
+    angle: (x, s) => arcsine(acrossOfPicture(x / of(s, 'pixelScale'), cameraOf(s)) / of(s, 'readingRadius'), 'camera marker'),
+    reading: (t, s) => of(s, 'pixelScale') * pictureOfAcross(of(s, 'readingRadius') * Math.sin(t), cameraOf(s)),
   },
   cameraPivotMarker: {
     // The angle is in the record (two coordinates from the pivot); what comes here is that angle.

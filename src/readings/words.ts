@@ -31,6 +31,10 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'ruhe|ruhelage|ruhestellung|null|nullage|nulllage|nullpunkt|vorher|anfang|repos|zero avant|position de repos|avant|equilibre|' +
     'reposo|cero|antes|equilibrio|posicion de reposo|riposo|prima del tiro|repouso|posicao de repouso|rust|ruststand|nulstand|nul|voor|' +
     'spoczynek|polozenie spoczynkowe|spoczynkow*|przed|klid|klidova poloha|klidov*|nula|pred|pokoj|покой|положение покоя|ноль|нуль|до выстрела|начальн*|静止|静止位置|零点|ゼロ|ゼロ点|初期|初期位置|静止读数|零位|初始|初值',
+  restAfter:
+    'zero after|rest after|after|rest reading after|ruhelage nachher|null nachher|nachher|zero apres|apres|repos apres|cero despues|despues|dopo|zero dopo|depois|na afloop|nul na|po strzale|po vystrelu|после|после выстрела|ноль после|' +
+    '射後静止|発射後|射后|发射后|零点后',
+  nextSwingDown: 'second swing y|next y|y2|y 2|v2|y3|v3|back swing y',
   restDown: 'rest y|rest row|y0|y 0|v0|ruhe y|repos y',
   firstSwingDown: 'first swing y|peak y|first y|y1|y 1|v1|ausschlag y|pic y',
   firstSwing:
@@ -104,8 +108,8 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'nota|notas|comentario|comentarios|observacion|observaciones|commento|osservazioni|observacao|observacoes|opmerking|opmerkingen|uwaga|uwagi|poznamka|poznamky|' +
     'примечание|примечания|замечание|заметка|備考|メモ|注記|备注|说明|注',
   ignored:
-    'impulse bit|i bit|ibit|mass|temperature|temp|energy|capacitance|current|date|zero after|rest after|after|' +
-    'datum|masse|temperatur|energie|kapazitat|strom|ruhelage nachher|null nachher|nachher|fecha|masa|temperatura|energia|data|massa|zero apres|apres|repos apres|despues|dopo|depois|na afloop|po strzale|po vystrelu|после|после выстрела|дата|日付|質量|温度|日期|质量',
+    'impulse bit|i bit|ibit|mass|temperature|temp|energy|capacitance|current|date|' +
+    'datum|masse|temperatur|energie|kapazitat|strom|fecha|masa|temperatura|energia|data|massa|дата|日付|質量|温度|日期|质量',
 };
 
 interface Phrase {

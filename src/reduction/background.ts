@@ -9,6 +9,7 @@ import type { Choices } from '../session/session.ts';
 import { unitNamed } from '../units/units.ts';
 import { readingDimension, type BenchRead } from './entries.ts';
 import type { ReadingSpread } from './readings.ts';
+import { scaleOfSheet } from './scale.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
 import { valueOf } from './stand.ts';
 import type { Scale } from './swings.ts';
@@ -105,7 +106,7 @@ function amplitudeRead(record: SessionRecord, cell: CellRead, { choices, scale, 
   }
   const u = cell.spread ?? Math.hypot(fromResolution(spread.division), spread.eye);
   const source: Source = { id: `${record.id}.swingBefore`, label: 'Swing before the shot', symbol: 'A_0', dimension, estimate: cell.value, u, distribution: cell.spread === null ? 'rectangular' : 'normal', dof: Infinity, family: READ_EACH_TIME };
-  const amplitude = amplitudeOf(ofSource(source), scale!);
+  const amplitude = amplitudeOf(ofSource(source), { ...scale!, scale: scaleOfSheet(scale!, record.sheet) });
   if (!amplitude) problems.push(problem('background-swing-off-scale', 'doubt', placeOf(record), {}));
   return amplitude;
 }

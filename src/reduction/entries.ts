@@ -1,12 +1,13 @@
 /** First step of the road: what was typed about the bench becomes sources, each an anchor that all results may share. */
 import { fromExpanded, fromLimits, type Distribution, type Source } from '../metrology/source.ts';
-import { anchor, exact, ofSource, type Uncertain } from '../metrology/uncertain.ts';
+import { anchor, exact, ofSource, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import { WAYS } from '../readings/ways.ts';
 import { ENTRIES, ENTRY_NAMES, PART_ENTRIES, type EntryKind, type EntryName, type PartEntryName } from '../session/entries.ts';
 import type { Choices, Entry, Session } from '../session/session.ts';
 import { readNumber, readQuantity, type QuantityRead } from '../units/quantity.ts';
 import type { Dimension } from '../units/units.ts';
+import { NO_INSTRUMENTS, readInstruments, scaleOfInstrument, timesScale, type InstrumentsRead } from './instruments.ts';
 import type { EntryRead } from './results.ts';
 
 export interface ReadEntry {
@@ -23,6 +24,9 @@ export interface BenchRead {
   readonly all: readonly EntryRead[];
   /** Sources of every used entry, for budgets that list what acts nowhere. */
   readonly sources: readonly Source[];
+  readonly instruments: InstrumentsRead;
+  /** What the readings of a sheet were read with, by sheet id, and that instrument's calibration where it measures what is read. */
+  readonly readWith: ReadonlyMap<string, { readonly words: string; readonly factor: Anchor | null }>;
 }
 
 function entryNamed(name: string): EntryName {
@@ -44,7 +48,7 @@ const USUAL_READING_UNIT: Readonly<Record<string, string>> = { length: 'mm', ang
 export const usualReadingUnit = (choices: Choices): string => USUAL_READING_UNIT[readingDimension(choices)] ?? 'mm';
 
 /** Entries of the plan alone: they reach no result and stand in no budget. */
-const PLANNING: readonly EntryName[] = ['guessedImpulse', 'scaleReach'];
+const PLANNING: readonly EntryName[] = ['guessedImpulse', 'scaleReach', 'markerRadius'];
 const isPlanning = (name: string): boolean => PLANNING.some((one) => one === name);
 
 /** Entries that the present choices use; `needed` ones stop the road where they are missing. */
@@ -69,6 +73,8 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   const way = WAYS[choices.readingWay];
   for (const name of way.needs) needed.add(entryNamed(name));
   for (const name of Object.keys(way.mayHave)) if (name !== 'screenShape') used.add(entryNamed(name));
+  if (choices.readingWay === 'cameraPivotMarker') used.add('markerRadius');
+  if (choices.readingWay === 'cameraMarker') used.add('lensDistortion');
   if (choices.readingWay === 'cameraPivotMarker') for (const name of ['pivotAcross', 'pivotDown'] as const) needed.add(name);
   if (hasPlumbMark(choices)) used.add('scaleMark');
   if (way.reads === 'length' && choices.readingWay.startsWith('ruler')) for (const name of ['parallaxGap', 'cameraDistance', 'eyeShift'] as const) used.add(name);
@@ -96,7 +102,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   for (const name of ['timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightFactor', 'weightSpread', 'pullArm', 'hammerMass', 'hammerLength', 'hammerAngleSpread', 'hammerZero'] as const) used.add(name);
   when(choices.form !== 'filmStrip', 'staticStiffness', 'forcePerDeflection');
   when(choices.hammerForm === 'compound', 'hammerContact', 'hammerPeriod', 'hammerInertia');
-  for (const name of PLANNING) used.add(name);
+  for (const name of ['guessedImpulse', 'scaleReach'] as const) used.add(name);
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
   for (const name of ['period', 'periodAmplitude', 'periodCycles'] as const) used.add(name);
@@ -110,7 +116,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'tapContact', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'cameraYaw', 'cameraToPlane', 'lensDistortion', 'markerRadius', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'tapContact', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
 
 const LARGE_RELATIVE = 0.3;
 
@@ -120,9 +126,16 @@ export const LEAST = 1e-18;
 /** A coverage factor below this is a slip of the keyboard. */
 const LEAST_COVERAGE = 1e-3;
 
+/** The quantity that an instrument measures for this entry; null for a spread, a guess, or what stands on the scale of the readings. */
+export function measuredDimension(name: string, kind: EntryKind, choices: Choices): Dimension | null {
+  if (kind.isSpread || kind.dimension === 'reading' || name === 'scaleMark' || isPlanning(name)) return null;
+  return kind.dimension === 'gauge' ? gaugeDimension(choices) : kind.dimension;
+}
+
 export function readBench(session: Session): BenchRead {
   const { used } = entriesInUse(session.choices);
   const problems: Problem[] = [];
+  const instruments = readInstruments(session, (name, kind, typed, found) => readEntry(name, kind, typed, session.choices, true, found, NO_INSTRUMENTS).read, problems);
   const all: EntryRead[] = [];
   const sources: Source[] = [];
   const note = (entry: ReadEntry, inUse: boolean): void => {
@@ -133,7 +146,7 @@ export function readBench(session: Session): BenchRead {
   for (const name of Object.keys(ENTRIES) as EntryName[]) {
     const typed = session.entries[name];
     const inUse = used.has(name);
-    const found = readEntry(name, ENTRIES[name], typed, session.choices, inUse, inUse ? problems : []);
+    const found = readEntry(name, ENTRIES[name], typed, session.choices, inUse, inUse ? problems : [], instruments);
     entries.set(name, found);
     note(found, inUse);
   }
@@ -143,13 +156,18 @@ export function readBench(session: Session): BenchRead {
     for (const name of Object.keys(PART_ENTRIES) as PartEntryName[]) {
       const path = `part.${part.id}.${name}`;
       const label = `${part.name || `part ${index + 1}`}: ${PART_ENTRIES[name].label.toLowerCase()}`;
-      const found = readEntry(path, { ...PART_ENTRIES[name], label }, part.entries[name], session.choices, bodyInUse, bodyInUse ? problems : []);
+      const found = readEntry(path, { ...PART_ENTRIES[name], label }, part.entries[name], session.choices, bodyInUse, bodyInUse ? problems : [], instruments);
       read.set(name, found);
       note(found, bodyInUse);
     }
     return { id: part.id, name: part.name, entries: read };
   });
-  return { entries, parts, problems, all, sources };
+  const readWith = new Map(session.sheets.flatMap(({ id, instrument }) => {
+    const words = instrument === undefined ? undefined : instruments.words.get(instrument);
+    return words === undefined ? [] : [[id, { words, factor: scaleOfInstrument(instruments, instrument, readingDimension(session.choices)) }] as const];
+  }));
+  sources.push(...[...instruments.scales.values()].map(({ source }) => source));
+  return { entries, parts, problems, all, sources, instruments, readWith };
 }
 
 /** An entry is read again for every slip that is tried beside it, and never changes. */
@@ -163,7 +181,7 @@ function quantityOf(typed: Entry, text: string, dimension: Dimension, unit: stri
   return got;
 }
 
-function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choices: Choices, used: boolean, problems: Problem[]): ReadEntry {
+function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choices: Choices, used: boolean, problems: Problem[], instruments: InstrumentsRead): ReadEntry {
   const dimension: Dimension = kind.dimension === 'reading' ? readingDimension(choices) : kind.dimension === 'gauge' ? gaugeDimension(choices) : kind.dimension;
   const unitIfNone = kind.dimension === 'reading' ? (USUAL_READING_UNIT[dimension] ?? kind.unit) : kind.dimension === 'gauge' ? GAUGE_UNIT[choices.gaugeMeaning] : kind.unit;
   const text = typed?.text.trim() ?? '';
@@ -201,6 +219,13 @@ function readEntry(name: string, kind: EntryKind, typed: Entry | undefined, choi
   }
   const read: EntryRead = { name, label: kind.label, symbol: kind.symbol, dimension, value: kind.isSpread ? u : got.value, u: kind.isSpread ? 0 : u, unit: got.unit.symbol, distribution, used };
   if (kind.isSpread) return { read, value: exact(u), source: null };
-  const source: Source = { id: name, label: kind.label, symbol: kind.symbol, dimension, estimate: got.value, u, distribution, dof: Infinity };
-  return { read, value: u === 0 ? exact(got.value) : anchor(ofSource(source)), source };
+  const measured = measuredDimension(name, kind, choices);
+  const words = measured === null || typed.instrument === undefined ? undefined : instruments.words.get(typed.instrument);
+  const factor = measured === null ? null : scaleOfInstrument(instruments, typed.instrument, measured);
+  const source: Source = { id: name, label: kind.label, symbol: kind.symbol, dimension, estimate: got.value, u, distribution, dof: Infinity, ...(words === undefined ? {} : { measuredWith: words }) };
+  const own = u === 0 ? exact(got.value) : anchor(ofSource(source));
+  return {
+    read: words === undefined ? read : { ...read, measuredWith: { words, u: factor ? Math.abs(got.value) * standardUncertainty(factor) : 0 } },
+    value: factor ? timesScale(own, factor) : own, source,
+  };
 }

@@ -56,6 +56,8 @@ export interface WeightsTold {
   readonly interceptInU: number;
   /** Half-width between loading and unloading, rad; null without both. */
   readonly hysteresis: number | null;
+  /** (b_unloading − b_loading)/(b_unloading + b_loading): a pulley’s friction; null without two weights in each. */
+  readonly slopesPart: number | null;
   readonly chiSquared: number;
   readonly dof: number;
   readonly points: readonly { readonly record: string; readonly moment: number; readonly angle: number; readonly unloading: boolean; readonly residual: number }[];
@@ -88,7 +90,11 @@ export interface TapStudy {
   readonly intercept: { readonly t: number; readonly probability: number } | null;
   readonly curvature: { readonly t: number; readonly probability: number } | null;
   /** Relative sd of repeated taps of one size; null without repeats. */
-  readonly repeatability: { readonly relative: number; readonly dof: number } | null;
+  readonly repeatability: { readonly relative: number; readonly dof: number; /** What the taps' own u predict. */ readonly expected: number; readonly probability: number | null } | null;
+  /** Change of the taps' slope from first to last, relative, tested against none. */
+  readonly alongRun: { readonly relative: number; readonly t: number; readonly probability: number } | null;
+  /** Runs of one sign among the residuals in order. */
+  readonly runs: { readonly runs: number; readonly expected: number; readonly probability: number } | null;
   /** Residual in its u; place in the run: order, or s where all have a time. */
   readonly points: readonly { readonly record: string; readonly place: number; readonly residual: number; readonly leverage: number }[];
   readonly groups: readonly { readonly where: 'before' | 'between' | 'after'; readonly taps: number; readonly factor: Stated }[];
@@ -144,4 +150,12 @@ export interface Agreement {
   readonly off: readonly AgreementCheck['id'][];
   /** Single slips that would reconcile all of them, the likeliest first; at most three are told. */
   readonly slips: readonly Slip[];
+}
+
+/** A record of the hammer's force and the pulses found in it. */
+export interface ForceRecordTold {
+  readonly id: string;
+  readonly name: string;
+  /** Impulse N·s over the whole answer; byContact N·s up to the first return to rest; peak N; time s. */
+  readonly pulses: readonly { readonly impulse: Stated; readonly byContact: number; readonly peak: number; readonly time: number; readonly after: string }[];
 }

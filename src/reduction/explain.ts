@@ -53,15 +53,19 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   const known = road.taps.find((tap) => tap.swing === swing)?.impulse ?? null;
   const reading: Dimension = scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads;
   const steps: ChainStep[] = [];
-  const add = (id: string, label: string, symbol: string, equation: string, dimension: Dimension, y: Uncertain | null, more: { factor?: number; aside?: true } = {}): void => {
+  const add = (id: string, label: string, symbol: string, equation: string, dimension: Dimension, y: Uncertain | null, more: Partial<Pick<ChainStep, 'factor' | 'aside' | 'measuredWith'>> = {}): void => {
     if (y) steps.push({ id, label, symbol, equation, dimension, stated: stated(y), ...more });
   };
   const tap = swing.record.kind === 'tap';
-  add('rest', 'Rest reading', 'x₀', '', reading, swing.readings.rest);
-  add('first', 'First swing', 'x₁', '', reading, swing.readings.first);
+  const readWith = road.bench.readWith.get(swing.record.sheet)?.words;
+  const by = (words: string | undefined): Pick<ChainStep, 'measuredWith'> => (words === undefined ? {} : { measuredWith: words });
+  add('rest', 'Rest reading', 'x₀', '', reading, swing.readings.rest, by(readWith));
+  add('first', 'First swing', 'x₁', '', reading, swing.readings.first, by(readWith));
   if (swing.readings.rest && swing.readings.first) {
     add('throw', 'Throw', 'x₁ − x₀', 'reading less rest', reading, propagate(({ a, b }) => a - b, { a: swing.readings.first, b: swing.readings.rest }));
   }
+  const scaled = scale.bySheet.get(swing.record.sheet);
+  if (scaled) add('scale', 'Scale of the readings', 's', 'scale of the ruler times the calibration of what was read with', 'number', scaled, by(readWith));
   add('angle', 'First-swing angle', 'θ_p', (scale.sense === -1 ? '−' : '') + angleEquation(scale), 'angle', swing.angle);
   if (!swing.angle || !swing.launch) return steps;
   const ratio = damping.ratio[swing.configuration];
@@ -97,7 +101,7 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   const intercept = chosen.way === 'taps' ? road.factors[chosen.form].tapCalibration?.intercept ?? null : null;
   add('intercept', 'Intercept of the taps’ line', 'a', 'φ = a + H/K over the taps', 'angle', intercept);
   if (K) add('moment', 'Angular impulse', 'H', intercept ? 'H = K (φ − a)' : 'H = K φ', 'angularImpulse', propagate(({ k, f }) => k * f, { k: K, f: launchAt(road.factors[chosen.form], chosen.way, swing.launch[chosen.form]) }));
-  add('arm', tap ? 'Lever arm of the tap' : 'Lever arm of the thrust', tap ? 'r_h' : 'r_t', '', 'length', road.arms[c]);
+  add('arm', tap ? 'Lever arm of the tap' : 'Lever arm of the thrust', tap ? 'r_h' : 'r_t', '', 'length', road.arms[c], by(road.bench.entries.get(tap ? 'tapLeverArm' : 'leverArm')?.read.measuredWith?.words));
   const target = !tap && corrections.target.length > 0;
   if (!tap) for (const one of corrections.impulse ?? []) add(`correction.${one.id}`, one.label, one.symbol, one.equation, 'number', one.factor, { factor: one.factor.value });
   const all = !tap && (corrections.impulse ?? []).length > 0 ? ' · corrections' : '';

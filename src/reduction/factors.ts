@@ -49,7 +49,7 @@ export interface FactorFacts {
 export function factorsOf({ bodies, film, stand, taps, places, choices }: FactorFacts): Readonly<Record<Form, Factors>> {
   const geometry = film?.geometry ?? factorsOfBodies(bodies);
   const known = bodies ?? (choices.route === 'masses' ? stand.masses : null);
-  const hung = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots' || choices.hammerAfter === 'stays';
+  const hung = choices.calibrationMassHung === 'taps' || choices.calibrationMassHung === 'shots' || choices.hammerAfter !== 'leaves';
   const differs = hung || (known !== null && known.shots !== known.taps);
   // What hangs on a film for the taps alone is in no model of it.
   const change = (hung ? null : film?.change) ?? changeToFiring(known, differs);

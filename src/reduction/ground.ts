@@ -9,6 +9,7 @@ import type { Session } from '../session/session.ts';
 import { airOf, filmInAir, stripInAir } from './air.ts';
 import { backgroundOf } from './background.ts';
 import { correctionsOf } from './corrections.ts';
+import { forceRecordsOf } from './forceRecords.ts';
 import { readBench, type BenchRead } from './entries.ts';
 import { stiffnessAs } from './evidence.ts';
 import { factorsOf } from './factors.ts';
@@ -78,11 +79,12 @@ export function groundOf(session: Session, { records, counts, counted, exactly }
   const swung = film ? undampedOf(damping) : damping;
   const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
   const tapped = bodies && propagate(naturalFrequency, { inertia: bodies.taps.inertia, stiffness: bodies.taps.stiffness });
-  const taps = tapsOf(swings, { bench, choices, gravity: stand.gravity, frequency: tapped ?? frequency, ratio: damping.ratio.taps }, problems);
+  const forceRecords = forceRecordsOf(session.forceRecords, problems);
+  const taps = tapsOf(swings, { bench, choices, forceRecords, gravity: stand.gravity, frequency: tapped ?? frequency, ratio: damping.ratio.taps }, problems);
   const taken = new Map(session.sheets.map((sheet) => [sheet.id, sheet.taken ?? ('asOrdered' as const)]));
   const places = placesInRun(swings, ({ record }) => taken.get(record.sheet) ?? 'asOrdered');
   const known = factorsOf({ bodies, film: filmFactors, stand, taps: taps.filter((tap) => counts(tap.swing.record)), places, choices });
-  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, taps, places, known };
+  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, forceRecords: forceRecords.told, taps, places, known };
 }
 
 /** The measured pulse, where it is the one chosen. */

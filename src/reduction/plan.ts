@@ -71,6 +71,8 @@ export interface PlanFacts {
   readonly arms: ByConfiguration<Uncertain | null>;
   readonly bodies: ByConfiguration<Body> | null;
   readonly gravity: Uncertain | null;
+  /** Pivot to marker in the picture, px. */
+  readonly markerRadius: number | null;
   readonly records: readonly SessionRecord[];
 }
 
@@ -125,7 +127,7 @@ export function planOf(bench: BenchRead, choices: Choices, facts: PlanFacts): Pl
 type Ready = PlanFacts & { readonly scale: Scale };
 
 const planned = (kind: RecordKind): SessionRecord => ({
-  id: `plan.${kind}`, line: '', kind, kindBy: 'person', label: '', note: '', rest: null, firstSwing: null, restDown: null, firstSwingDown: null, nextSwings: [], time: null, voltage: null, pressure: null,
+  id: `plan.${kind}`, line: '', kind, kindBy: 'person', label: '', note: '', rest: null, firstSwing: null, restDown: null, firstSwingDown: null, restAfter: null, nextSwingsDown: [], nextSwings: [], time: null, voltage: null, pressure: null,
   tapImpulse: null, hammerIn: null, hammerRebound: null, hammerFollow: null, tapForce: null, tapDuration: null,
   weight: null, loading: null, unloading: null, swingsTime: null, cycles: 1, amplitude: null, massHung: null, massHungAt: null, swingBefore: null, timeSinceMaximum: null, problems: [], cells: [], edited: [], sheet: 'plan', sheetName: '',
 });
@@ -223,7 +225,12 @@ function endOfScale(bench: BenchRead, choices: Choices, on: PlainRoad, geometry:
 
 /** Readings of one throw: rest and first swing, or the one from side to side. */
 const readingsOfThrow = ({ scale }: PlanFacts): number => (scale?.sideToSide === true ? 1 : 2);
-const oneReadingU = ({ spread }: PlanFacts): number => Math.hypot(fromResolution(spread.division), spread.eye);
+/** u of one reading; of a picture with pivot and marker as the angle that it is at the marker's radius, or nothing where that is not typed. */
+function oneReadingU({ spread, scale, markerRadius }: PlanFacts): number {
+  const u = Math.hypot(fromResolution(spread.division), spread.eye);
+  if (scale?.way !== 'cameraPivotMarker') return u;
+  return markerRadius === null ? 0 : u / markerRadius;
+}
 const throwU = (facts: PlanFacts): number => Math.sqrt(readingsOfThrow(facts)) * oneReadingU(facts);
 
 /** u(I) of one shot at the throw x: what its readings make, and all else. */

@@ -139,6 +139,10 @@ function between(a: Zero, b: Zero, index: number, time: number | null, record: S
   return combine([[1 - f, a.rest], [f, b.rest], [1, ofSource(bend)]]);
 }
 
+/** A rest that moved by more than this many u, and divisions, is told. */
+const MOVED = 2;
+const MOVED_DIVISIONS = 1.5;
+
 /**
  * Readings of every record in the order of the run. A record without a rest reading takes the last zero before it, or
  * where chosen the rest interpolated between the zeros on both sides; a zero's source is shared by all who take it.
@@ -162,6 +166,16 @@ export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpr
     const pivotDown = valueOf(bench, 'pivotDown');
     return rows && pivotAcross && pivotDown ? propagate(pictureAngle, { across, down: rows, pivotAcross, pivotDown }) : null;
   };
+  /** A rest that has moved over the swing: told, and where chosen the mean with half the move as limits. */
+  const withAfter = (record: SessionRecord, before: Uncertain, after: Uncertain | null): Uncertain => {
+    if (!after || choices.readingWay === 'cameraPivotMarker') return before;
+    const move = combine([[1, after], [-1, before]]);
+    const u = standardUncertainty(move);
+    if (Math.abs(move.value) > Math.max(MOVED * u, MOVED_DIVISIONS * spread.division)) problems.push(problem('record-zero-moved', choices.restTaken === 'mean' ? 'note' : 'doubt', placeOf(record), { move: Math.abs(move.value) / (unitNamed(record.restAfter!.unit)?.factor ?? 1), unit: record.restAfter!.unit, inU: u === 0 ? 0 : move.value / u }));
+    if (choices.restTaken === 'before') return before;
+    const drift: Source = { id: `${record.id}.rest.drift`, label: 'Rest moved over the swing', symbol: 'x₀', dimension, estimate: 0, u: fromLimits(Math.abs(move.value) / 2), distribution: 'rectangular', dof: Infinity, family: familyOf(record.kind) };
+    return combine([[0.5, before], [0.5, after], [1, ofSource(drift)]]);
+  };
   const zeros: Zero[] = [];
   const own = new Map<string, Uncertain | null>();
   records.forEach((record, index) => {
@@ -180,6 +194,7 @@ export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpr
     const firstCell = fitting(record, record.firstSwing, 'firstSwing');
     let rest = ownRest;
     let restFrom: string | null = rest ? record.id : null;
+    if (rest && choices.swingMeasured === 'fromRest') rest = withAfter(record, rest, one(record, fitting(record, record.restAfter, 'restAfter'), 'restAfter', 'Rest reading after', 'x₀′'));
     // A rest that was written and cannot be read is not the zero's: the rest may have moved since.
     const spoiled = record.problems.some((p) => p.weight === 'stops' && p.facts['role'] === 'rest') || (record.rest !== null && rest === null);
     if (choices.swingMeasured === 'sideToSide') {
@@ -196,7 +211,8 @@ export function readingsOf(records: readonly SessionRecord[], spread: ReadingSpr
     const first = pictured(record, one(record, firstCell, 'first', 'First swing', 'x₁'), record.firstSwingDown, 'first');
     const next = record.nextSwings.flatMap((cell, i) => {
       const turning = one(record, fitting(record, cell, 'nextSwing'), `next${i + 1}`, `Turning point ${i + 2}`, `x${i + 2}`);
-      return turning && choices.readingWay !== 'cameraPivotMarker' ? [{ number: i + 1, reading: turning }] : [];
+      const placed = pictured(record, turning, record.nextSwingsDown[i] ?? null, `next${i + 1}`);
+      return placed ? [{ number: i + 1, reading: placed }] : [];
     });
     byRecord.set(record.id, { restFrom, rest, first, next });
   });

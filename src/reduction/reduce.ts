@@ -69,7 +69,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const difference = chosenRun ? differenceOf(factors[form].geometry.shots, factors[form].taps.shots) : null;
   problems.push(...remarksOnRun({ choices, records: results, run: chosenRun?.result ?? null, difference, damping, spread, taps: factors[form].tapCalibration, bench, period: periodCheck(stand, period, choices), sheets: sheets.sheets }));
 
-  const plan = planOf(bench, choices, { scale, spread, damping: swung, shares, corrections: { ...corrections, background: { ...corrections.background, shots: corrections.background.taps } }, factors, arms, bodies, gravity: stand.gravity, records });
+  const plan = planOf(bench, choices, { scale, spread, damping: swung, shares, corrections: { ...corrections, background: { ...corrections.background, shots: corrections.background.taps } }, factors, arms, bodies, gravity: stand.gravity, markerRadius: valueOf(bench, 'markerRadius')?.value ?? null, records });
   const study = tapCalibration && tapStudyOf(tapCalibration, form, places);
   const adjustment = adjustmentTold(evidence.all);
   const masses = addedMassesTold(evidence, timings, choices.restoring === 'flexureAlone' ? 0 : stand.gravity?.value ?? 0, timings.length > 0 ? planMass(bench, choices, bodies, stand.gravity) : null);
@@ -89,6 +89,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   return {
     problems: said,
     entries: bench.all,
+    instruments: bench.instruments.told,
     sheets: sheets.sheets,
     records: withProblems(results, said),
     film: film?.told ?? null,
@@ -112,6 +113,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     weights: weights?.told ?? null,
     addedMasses: masses,
     tapStudy: study,
+    forceRecords: ground.forceRecords,
     comparisons: tapsAgainst({ damping, timings, bodies }),
     agreement,
     difference,

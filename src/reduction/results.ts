@@ -1,5 +1,6 @@
 /** What the road returns: plain values in SI units that survive a trip from a worker; screens and exports read this and nothing else. */
 import type { Line } from '../metrology/budget.ts';
+import type { DateRead } from '../units/calendarDate.ts';
 import type { Dimension } from '../units/units.ts';
 import type { Problem } from '../problems/problems.ts';
 import type { RecordKind, Role } from '../readings/meanings.ts';
@@ -8,7 +9,7 @@ import type { BenchEffectId } from '../problems/benchEffects.ts';
 import type { AirLayer } from '../pendulum/gas.ts';
 import type { GaugeMeaning } from '../pendulum/pressure.ts';
 import type { DecayTold } from './decayLaws.ts';
-import type { AddedMassesTold, AdjustmentTold, Agreement, Comparison, EvidenceRow, TapStudy, WeightsTold } from './evidenceResults.ts';
+import type { AddedMassesTold, AdjustmentTold, Agreement, Comparison, EvidenceRow, ForceRecordTold, TapStudy, WeightsTold } from './evidenceResults.ts';
 import type { FilmTold } from './film.ts';
 import type { Plan } from './plan.ts';
 
@@ -38,6 +39,19 @@ export interface EntryRead {
   readonly distribution: 'normal' | 'rectangular' | 'exact';
   /** The entry takes part in the present choices (an unused one is kept and greyed). */
   readonly used: boolean;
+  /** What it was measured with, as a report states it, and u of x by that instrument's calibration, SI; not in `u`. */
+  readonly measuredWith?: { readonly words: string; readonly u: number };
+}
+
+/** An instrument as its fields were read. */
+export interface InstrumentTold {
+  readonly id: string;
+  /** "Steel ruler, serial 4711". */
+  readonly name: string;
+  /** null where nothing readable is typed. */
+  readonly due: DateRead | null;
+  /** Relative ± of its calibration; value null for none. */
+  readonly scale: EntryRead;
 }
 
 /** One line of a chain: reading → angle → corrections → impulse bit. */
@@ -52,6 +66,8 @@ export interface ChainStep {
   readonly factor?: number;
   /** Shown beside the main chain: the other form, the other calibration. */
   readonly aside?: true;
+  /** Instrument that it was read or measured with. */
+  readonly measuredWith?: string;
 }
 
 /** One row of an uncertainty budget (GUM columns). */
@@ -235,6 +251,7 @@ export interface SheetResult {
 export interface Reduction {
   readonly problems: readonly Problem[];
   readonly entries: readonly EntryRead[];
+  readonly instruments: readonly InstrumentTold[];
   readonly sheets: readonly SheetResult[];
   readonly records: readonly RecordResult[];
   /** The film strip's own figures; null for any other stand. */
@@ -261,6 +278,7 @@ export interface Reduction {
   readonly weights: WeightsTold | null;
   readonly addedMasses: AddedMassesTold | null;
   readonly tapStudy: TapStudy | null;
+  readonly forceRecords: readonly ForceRecordTold[];
   readonly comparisons: readonly Comparison[];
   /** null where nothing measured stands against a prediction. */
   readonly agreement: Agreement | null;

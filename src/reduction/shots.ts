@@ -10,6 +10,7 @@ import type { Choices } from '../session/session.ts';
 import { launchFromSwing, smallLaunchFromSwing, swingBefore } from './background.ts';
 import { correctedLaunch, restOfFriction, throughReading, type Corrections } from './corrections.ts';
 import type { Readings } from './readings.ts';
+import { scaleOfSheet } from './scale.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
 import { factorOfBody, type Body, type ConfigurationName } from './stand.ts';
 import type { Damping, Scale } from './swings.ts';
@@ -48,7 +49,7 @@ export function swingOf(record: SessionRecord, readings: Readings, scale: Scale 
   if (!scale || !rest || !first || !SWINGS.has(record.kind)) return none;
   const place = placeOf(record);
   try {
-    const inputs = { ...scale.stand, first, scale: scale.scale };
+    const inputs = { ...scale.stand, first, scale: scaleOfSheet(scale, record.sheet) };
     const unsigned = scale.sideToSide ? propagate(swingFromSides(scale.way), { ...inputs, halfDecay: propagate(ratioToHalfDecay, { ratio: damping.ratio[configuration] }) })
       : scale.mark ? propagate(swingFromMark(scale.way), { ...inputs, rest, mark: scale.mark }) : propagate(swingFromRest(scale.way), { ...inputs, rest });
     const angle = scale.sense === 1 ? unsigned : combine([[-1, unsigned]]);

@@ -156,7 +156,7 @@ export function withoutSpreads(session: Session): Session {
       const read = readEntry(kinds[name], entry, session);
       return kinds[name].isSpread ? [] : [[name, read ? { ...entry, text: `${digits(read.value / read.unit.factor)} ${read.unit.symbol}` } : entry]];
     })) as Partial<Record<Name, Entry>>;
-  return { ...session, entries: bare(session.entries, ENTRIES), parts: session.parts.map((part) => ({ ...part, entries: bare(part.entries, PART_ENTRIES) })) };
+  return { ...session, instruments: [], entries: bare(session.entries, ENTRIES), parts: session.parts.map((part) => ({ ...part, entries: bare(part.entries, PART_ENTRIES) })) };
 }
 
 /** Every single slip that this session can have befallen. */

@@ -4,6 +4,7 @@ import { fromLimits, type Source } from '../metrology/source.ts';
 import {
   bobInertia, bobMoment, geometryFactor, gravityShare, inertiaOfPeriod, partInertia, partMoment, smallPeriod, stiffness, stiffnessOfPeriod, stripInertia, stripMoment,
 } from '../pendulum/forms.ts';
+import { carriedByOwnPivot, hammerInertia } from '../pendulum/hammer.ts';
 import { GRAVITY_ANOMALY, normalGravity } from '../pendulum/gravity.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import type { EntryName, PartEntryName } from '../session/entries.ts';
@@ -163,7 +164,7 @@ function calibrationMass(bench: BenchRead, choices: Choices, gravity: Anchor): E
   const m = valueOf(bench, 'calibrationMass');
   const r = valueOf(bench, 'calibrationMassDistance');
   const part = hung === 'never' || !m || !r || !gravity ? null : partOf(m, r, valueOf(bench, 'calibrationMassInertia') ?? exact(0));
-  const hammer = stuckHammer(bench, choices);
+  const hammer = stuckHammer(bench, choices, gravity);
   return { shots: hung === 'taps' ? null : part, taps: both(hung === 'shots' ? null : part, hammer), same: hammer === null && (hung === 'always' || part === null) };
 }
 
@@ -171,9 +172,26 @@ const partOf = (m: Uncertain, r: Uncertain, J: Uncertain): Bare => ({ inertia: p
 const both = (a: Bare | null, b: Bare | null): Bare | null =>
   a && b ? { inertia: combine([[1, a.inertia], [1, b.inertia]]), moment: combine([[1, a.moment], [1, b.moment]]) } : a ?? b;
 
-function stuckHammer(bench: BenchRead, choices: Choices): Bare | null {
-  const [m, r] = [valueOf(bench, 'hammerMass'), valueOf(bench, 'tapLeverArm')];
-  return choices.hammerAfter === 'stays' && m && r ? partOf(m, r, exact(0)) : null;
+/** A hammer that stays: its mass at r_h where the pendulum bears it, or what it adds through the contact where its own pivot does. */
+function stuckHammer(bench: BenchRead, choices: Choices, g: Anchor): Bare | null {
+  const [mass, radius] = [valueOf(bench, 'hammerMass'), valueOf(bench, 'tapLeverArm')];
+  if (choices.hammerAfter === 'leaves' || !mass || !radius) return null;
+  if (choices.hammerAfter === 'stays') return partOf(mass, radius, exact(0));
+  const hammer = hammerBody(bench, choices, g);
+  if (!hammer) return null;
+  const inputs = { ...hammer, mass, radius, g };
+  // The moment stands for what gravity makes of it: Δκ = g × moment.
+  return { inertia: propagate((x) => carriedByOwnPivot(x).inertia, inputs), moment: propagate((x) => carriedByOwnPivot(x).stiffness / x.g, inputs) };
+}
+
+/** Hammer about its own pivot: centre of mass, contact and inertia; of a compact one all at its length. */
+export function hammerBody(bench: BenchRead, choices: Choices, g: Uncertain): Readonly<Record<'centre' | 'contact' | 'inertia', Uncertain>> | null {
+  const [mass, centre] = [valueOf(bench, 'hammerMass'), valueOf(bench, 'hammerLength')];
+  if (!mass || !centre) return null;
+  if (choices.hammerForm === 'compact') return { centre, contact: centre, inertia: propagate(({ m, l }) => m * l * l, { m: mass, l: centre }) };
+  const [contact, period] = [valueOf(bench, 'hammerContact'), valueOf(bench, 'hammerPeriod')];
+  const inertia = valueOf(bench, 'hammerInertia') ?? (period && propagate(hammerInertia, { mass, centre, period, g }));
+  return contact && inertia ? { centre, contact, inertia } : null;
 }
 
 /** J and κ of the pendulum as tapped less those as fired; exact zeros where the two are one. */

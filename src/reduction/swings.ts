@@ -52,6 +52,8 @@ export interface Scale {
   readonly stand: Readonly<Record<string, Uncertain>>;
   readonly sideToSide: boolean;
   readonly scale: Uncertain;
+  /** The same of the sheets whose readings were read with an instrument that has a calibration ± of its own. */
+  readonly bySheet: ReadonlyMap<string, Uncertain>;
   readonly mark: Uncertain | null;
   /** −1 where the scale's numbers fall as the pendulum swings out. */
   readonly sense: 1 | -1;
@@ -261,7 +263,7 @@ function turningOf(rest: Uncertain | null, turning: readonly Point[], scale: Sca
   try {
     let fit = fitFrom();
     // With neither mark nor rest the plumb point is where the swing comes to rest: only there is the scale's curvature the same on both sides.
-    if (scale.mark === null && rest === null && scale.way !== 'angle') {
+    if (scale.mark === null && rest === null && scale.way !== 'angle' && scale.way !== 'cameraPivotMarker') {
       let before = mark;
       mark += fit.rest / slopeAt(mark, 1e-3 * Math.abs(turning[0]!.reading.value - middle));
       for (let i = 0; i < PLUMB_STEPS && fit.status === 'found' && mark !== before; i++) {

@@ -9,6 +9,7 @@ import { ENTRIES, type EntryName } from '../session/entries.ts';
 import type { Choices } from '../session/session.ts';
 import type { Dimension } from '../units/units.ts';
 import type { BenchRead } from './entries.ts';
+import { impulseOfPulse, pulsesForTaps, type ForceRecordsRead } from './forceRecords.ts';
 import { familyOf } from './readings.ts';
 import type { Swing } from './shots.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
@@ -26,6 +27,7 @@ export interface TapFacts {
   readonly bench: BenchRead;
   readonly choices: Choices;
   readonly gravity: Uncertain | null;
+  readonly forceRecords: ForceRecordsRead;
   /** ω_n and ζ of the pendulum as tapped, for a force that is not short. */
   readonly frequency: Uncertain | null;
   readonly ratio: Uncertain;
@@ -60,7 +62,7 @@ function byHammer(record: SessionRecord, drawn: CellRead, { bench, choices, grav
   if ('code' in length) return length;
   const own = ofTapAlone(record, spread);
   try {
-    const stays = choices.hammerAfter === 'stays';
+    const stays = choices.hammerAfter !== 'leaves';
     if (choices.hammerForm === 'compact') {
       const bare = stays ? propagate(({ m, v }) => m * v, { m: mass, v: propagate(compactSpeed, { g: gravity, length, angle: blow.drawn }) }) : propagate(compactImpulse, { g: gravity, mass, length, ...blow });
       return times(bare, own);
@@ -117,18 +119,20 @@ export function tapsOf(swings: readonly Swing[], facts: TapFacts, problems: Prob
   const taps = swings.filter((s) => s.record.kind === 'tap');
   if (taps.length === 0) return [];
   const arm = valueOf(bench, 'tapLeverArm');
-  if (!arm && taps.some((t) => isStated(t.record))) problems.push(problem('entry-missing', 'stops', { entry: 'tapLeverArm' }, { label: 'Lever arm of the tap' }));
+  if (!arm && (facts.forceRecords.pulses.length > 0 || taps.some((t) => isStated(t.record)))) problems.push(problem('entry-missing', 'stops', { entry: 'tapLeverArm' }, { label: 'Lever arm of the tap' }));
   const common = valueOf(bench, 'hammerFactor') ?? exact(1);
+  const pulses = pulsesForTaps(taps.map(({ record }) => record), facts.forceRecords, problems);
   const spread = bench.entries.get('tapSpread')?.read.value ?? 0;
   const known: TapKnown[] = [];
   for (const swing of taps) {
     const { record } = swing;
-    if (!isStated(record)) {
+    const pulse = pulses.get(record.id);
+    if (!isStated(record) && !pulse) {
       problems.push(problem('record-tap-without-impulse', 'note', placeOf(record), {}));
       continue;
     }
     if (!arm) continue;
-    const bare: Found = record.tapImpulse ? statedImpulse(record, record.tapImpulse, spread) : record.hammerIn ? byHammer(record, record.hammerIn, facts, spread) : byForce(record, facts, spread);
+    const bare: Found = pulse ? times(impulseOfPulse(record, pulse), ofTapAlone(record, spread)) : record.tapImpulse ? statedImpulse(record, record.tapImpulse, spread) : record.hammerIn ? byHammer(record, record.hammerIn, facts, spread) : byForce(record, facts, spread);
     if (bare === null) continue;
     if ('code' in bare) {
       problems.push(bare);

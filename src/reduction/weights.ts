@@ -2,7 +2,7 @@
 import { lineOfUncertain, type UncertainPoint } from '../metrology/lineOfUncertain.ts';
 import { fromLimits, fromResolution, type Source } from '../metrology/source.ts';
 import { anchor, combine, exact, ofSource, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
-import { linearAngle, outriggerMoment, threadMoment } from '../pendulum/staticWeights.ts';
+import { hysteresisOf, linearAngle, outriggerMoment, threadMoment } from '../pendulum/staticWeights.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import { swingFromMark, swingFromRest } from '../readings/angle.ts';
 import type { CellRead } from '../readings/cellReads.ts';
@@ -12,6 +12,7 @@ import type { BenchRead } from './entries.ts';
 import { familyOf, type ReadingSpread } from './readings.ts';
 import type { WeightsTold } from './evidenceResults.ts';
 import { stated } from './run.ts';
+import { scaleOfSheet } from './scale.ts';
 import { placeOf, type SessionRecord } from './sheets.ts';
 import { valueOf } from './stand.ts';
 import type { Scale } from './swings.ts';
@@ -81,7 +82,7 @@ function pointsOf(records: readonly SessionRecord[], arm: Uncertain, facts: Weig
       const u = cell.spread ?? Math.hypot(fromResolution(spread.division), spread.eye);
       const reading = ofSource({ id: `${record.id}.${unloading ? 'unloading' : 'loading'}`, label: unloading ? 'Reading while unloading' : 'Reading while loading', symbol: 'x', dimension: 'length', estimate: cell.value, u, distribution: 'rectangular', dof: Infinity, family: familyOf('weight') });
       try {
-        const inputs = { ...scale.stand, first: reading, rest, scale: scale.scale };
+        const inputs = { ...scale.stand, first: reading, rest, scale: scaleOfSheet(scale, record.sheet) };
         const turned = scale.mark ? propagate(swingFromMark(scale.way), { ...inputs, mark: scale.mark }) : propagate(swingFromRest(scale.way), inputs);
         const angle = scale.sense === 1 ? turned : combine([[-1, turned]]);
         found.push({ record, unloading, x: propagate(momentOf, { force, arm, angle }), y: propagate(linearAngle, { angle, share }) });
@@ -92,16 +93,6 @@ function pointsOf(records: readonly SessionRecord[], arm: Uncertain, facts: Weig
     }
   }
   return found;
-}
-
-/** Half of what loading and unloading part by, at the weights that have both, as a mean; rad. null without a pair. */
-function hysteresisOf(points: readonly Point[]): number | null {
-  const gaps: number[] = [];
-  for (const down of points) {
-    const up = points.find((point) => down.unloading && !point.unloading && point.record === down.record);
-    if (up) gaps.push(down.y.value - up.y.value);
-  }
-  return gaps.length === 0 ? null : Math.abs(gaps.reduce((a, b) => a + b, 0) / gaps.length) / 2;
 }
 
 /** null without weights, or where they tell no stiffness; the problems say why. */
@@ -124,16 +115,18 @@ export function weightsOf(records: readonly SessionRecord[], facts: WeightFacts,
     problems.push(problem('weights-wrong-way', 'doubt', {}, {}));
     return null;
   }
-  const hysteresis = hysteresisOf(points);
+  const parted = hysteresisOf(points.map(({ x, y, unloading }) => ({ moment: x.value, angle: y.value, unloading })));
+  const hysteresis = parted.status === 'found' ? Math.abs(parted.halfWidth) : null;
+  const slopesPart = parted.status === 'found' ? parted.slopesPart : null;
   const reach = Math.max(...points.map(({ y }) => Math.abs(y.value))) || 1;
-  const source: Source = { id: 'weights.hysteresis', label: 'Hysteresis of the static deflection', symbol: 'κ', dimension: 'number', estimate: 1, u: fromLimits((hysteresis ?? 0) / reach), distribution: 'rectangular', dof: Infinity };
-  const stiffness = anchor(propagate(({ b, h }) => h / b, { b: line.slope, h: hysteresis ? ofSource(source) : exact(1) }));
+  const source: Source = { id: 'weights.hysteresis', label: 'Hysteresis of the static deflection', symbol: 'κ', dimension: 'number', estimate: 1, u: fromLimits(Math.max((hysteresis ?? 0) / reach, Math.abs(slopesPart ?? 0))), distribution: 'rectangular', dof: Infinity };
+  const stiffness = anchor(propagate(({ b, h }) => h / b, { b: line.slope, h: hysteresis !== null ? ofSource(source) : exact(1) }));
   const intercept = line.intercept!;
   const u = standardUncertainty(intercept);
   return {
     stiffness,
     told: {
-      weights: hung.length, stiffness: stated(stiffness), interceptInU: u === 0 ? 0 : intercept.value / u, hysteresis, chiSquared: line.chiSquared, dof: line.dof,
+      weights: hung.length, stiffness: stated(stiffness), interceptInU: u === 0 ? 0 : intercept.value / u, hysteresis, slopesPart, chiSquared: line.chiSquared, dof: line.dof,
       points: points.map((point, i) => ({ record: point.record.id, moment: point.x.value, angle: point.y.value, unloading: point.unloading, residual: line.points[i]!.residual })),
     },
   };

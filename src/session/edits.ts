@@ -3,21 +3,24 @@ import { RECORD_KINDS } from '../readings/meanings.ts';
 import type { ColumnMeaning, RecordKind, Role } from '../readings/meanings.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
 import { recordId } from './session.ts';
-import type { Choices, Entry, Mark, Part, Session, Sheet } from './session.ts';
+import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet } from './session.ts';
 
 export type Edit = (session: Session) => Session;
 
 /** An entry as it stands before anything is typed. */
 export const BLANK_ENTRY: Entry = { text: '', plusMinus: 'standard', k: '' };
 
-const isBlank = (entry: Entry): boolean => entry.text === '' && entry.plusMinus === 'standard' && entry.k === '';
+const isBlank = (entry: Entry): boolean => entry.text === '' && entry.plusMinus === 'standard' && entry.k === '' && entry.instrument === undefined;
 
 function withEntry<Name extends string>(
   entries: Readonly<Partial<Record<Name, Entry>>>,
   name: Name,
   patch: Partial<Entry>,
 ): Readonly<Partial<Record<Name, Entry>>> {
-  const next: Entry = { ...(entries[name] ?? BLANK_ENTRY), ...patch };
+  return withWhole(entries, name, { ...(entries[name] ?? BLANK_ENTRY), ...patch });
+}
+
+function withWhole<Name extends string>(entries: Readonly<Partial<Record<Name, Entry>>>, name: Name, next: Entry): Readonly<Partial<Record<Name, Entry>>> {
   if (!isBlank(next)) return { ...entries, [name]: next };
   const rest = { ...entries };
   delete rest[name];
@@ -36,6 +39,15 @@ export const setTitle = (patch: Partial<Session['title']>): Edit => (session) =>
 export const setEntry = (name: EntryName, patch: Partial<Entry>): Edit => (session) =>
   ({ ...session, entries: withEntry(session.entries, name, patch) });
 
+/** What a quantity was measured with; null: no instrument named. */
+export const measuredWith = (entry: Entry = BLANK_ENTRY, instrument: string | null): Entry => {
+  const { instrument: _before, ...rest } = entry;
+  return instrument === null ? rest : { ...rest, instrument };
+};
+
+export const setEntryInstrument = (name: EntryName, instrument: string | null): Edit => (session) =>
+  ({ ...session, entries: withWhole(session.entries, name, measuredWith(session.entries[name], instrument)) });
+
 export const setChoice = <Name extends keyof Choices>(name: Name, value: Choices[Name]): Edit => (session) =>
   ({ ...session, choices: { ...session.choices, [name]: value } });
 
@@ -43,6 +55,12 @@ export const setChoice = <Name extends keyof Choices>(name: Name, value: Choices
 export const setChoices = (choices: Partial<Choices>): Edit => (session) => ({ ...session, choices: { ...session.choices, ...choices } });
 
 export const setFreeSwing = (text: string): Edit => (session) => ({ ...session, freeSwing: text });
+
+/** One more record of the hammer's force, after those that are there. */
+export const addForceRecord = (record: Omit<ForceRecord, 'id'>): Edit => (session) =>
+  ({ ...session, forceRecords: [...session.forceRecords, { ...record, id: `f${nextNumber(session.forceRecords.map(({ id }) => id), 'f')}` }] });
+
+export const removeForceRecord = (id: string): Edit => (session) => ({ ...session, forceRecords: session.forceRecords.filter((record) => record.id !== id) });
 
 export const setPulseSamples = (text: string): Edit => (session) => ({ ...session, pulseSamples: text });
 
@@ -61,6 +79,39 @@ export const setPartName = (id: string, name: string): Edit => editPart(id, (par
 
 export const setPartEntry = (id: string, name: PartEntryName, patch: Partial<Entry>): Edit =>
   editPart(id, (part) => ({ ...part, entries: withEntry(part.entries, name, patch) }));
+
+export const setPartEntryInstrument = (id: string, name: PartEntryName, instrument: string | null): Edit =>
+  editPart(id, (part) => ({ ...part, entries: withWhole(part.entries, name, measuredWith(part.entries[name], instrument)) }));
+
+/** Adds an instrument under the next free id: `i1`, `i2`, … */
+export const addInstrument = (given: Partial<Omit<Instrument, 'id'>> = {}): Edit => (session) => {
+  const id = nextInstrumentId(session.instruments);
+  return { ...session, instruments: [...session.instruments, { id, name: '', serial: '', certificate: '', due: '', measures: 'length', scale: BLANK_ENTRY, ...given }] };
+};
+
+export const nextInstrumentId = (instruments: readonly Instrument[]): string => `i${nextNumber(instruments.map(({ id }) => id), 'i')}`;
+
+export const setInstrument = (id: string, patch: Partial<Omit<Instrument, 'id' | 'scale'>>): Edit => (session) =>
+  ({ ...session, instruments: session.instruments.map((one) => (one.id === id ? { ...one, ...patch } : one)) });
+
+/** The relative ± of an instrument's calibration. */
+export const setInstrumentScale = (id: string, patch: Partial<Entry>): Edit => (session) =>
+  ({ ...session, instruments: session.instruments.map((one) => (one.id === id ? { ...one, scale: { ...one.scale, ...patch } } : one)) });
+
+/** Takes an instrument out; what was measured with it stays, and names none. */
+export const removeInstrument = (id: string): Edit => (session) => ({
+  ...session,
+  instruments: session.instruments.filter((one) => one.id !== id),
+  entries: withoutInstrument(session.entries, id),
+  parts: session.parts.map((part) => ({ ...part, entries: withoutInstrument(part.entries, id) })),
+  sheets: session.sheets.map((sheet) => (sheet.instrument === id ? readWith(sheet, null) : sheet)),
+});
+
+function withoutInstrument<Name extends string>(entries: Readonly<Partial<Record<Name, Entry>>>, id: string): Readonly<Partial<Record<Name, Entry>>> {
+  let kept = entries;
+  for (const [name, entry] of Object.entries(entries) as [Name, Entry][]) if (entry.instrument === id) kept = withWhole(kept, name, measuredWith(entry, null));
+  return kept;
+}
 
 /** The id that the next sheet of this session gets: `s1`, `s2`, … */
 export const nextSheetId = (session: Session): string => `s${nextNumber(session.sheets.map((sheet) => sheet.id), 's')}`;
@@ -149,6 +200,11 @@ export const setKindOfAll = (sheet: string, kind: RecordKind | null): Edit =>
 /** When the taps of a sheet were struck against the firings; null: in the order of the run. */
 export const setTaken = (sheet: string, taken: 'before' | 'after' | null): Edit =>
   editSheet(sheet, ({ taken: _before, ...found }) => (taken === null ? found : { ...found, taken }));
+
+const readWith = ({ instrument: _before, ...sheet }: Sheet, instrument: string | null): Sheet => (instrument === null ? sheet : { ...sheet, instrument });
+
+/** What the readings of a sheet were read with; null: no instrument named. */
+export const setSheetInstrument = (sheet: string, instrument: string | null): Edit => editSheet(sheet, (found) => readWith(found, instrument));
 
 /**
  * Types over one cell. Lines that begin with `+` are rows typed by hand (their id is their line). For a line of the

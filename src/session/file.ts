@@ -5,8 +5,8 @@ import { RECORD_KINDS, ROLES } from '../readings/meanings.ts';
 import type { ColumnMeaning } from '../readings/meanings.ts';
 import { ENTRY_NAMES, PART_ENTRIES } from './entries.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
-import { CHOICE_VALUES, emptySession, FIRST_CHOICES } from './session.ts';
-import type { Choices, Entry, Mark, Part, Session, Sheet } from './session.ts';
+import { CHOICE_VALUES, emptySession, FIRST_CHOICES, MEASURED } from './session.ts';
+import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet } from './session.ts';
 
 export interface SessionRead {
   /** null where the text is no session of ours, or of a later version. */
@@ -18,9 +18,9 @@ const VERSION = 1;
 
 /** Keys in the order in which they are written, whatever order edits left them in; others follow as they stand. */
 const KEY_ORDER = [
-  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'freeSwing', 'pulseSamples', 'choices', 'sheets', 'marks',
+  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'instruments', 'freeSwing', 'forceRecords', 'pulseSamples', 'choices', 'sheets', 'marks',
   'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
-  'kind', 'setAside', 'reason',
+  'kind', 'setAside', 'reason', 'serial', 'certificate', 'due', 'measures', 'scale', 'instrument',
 ];
 
 function inOrder(_key: string, value: unknown): unknown {
@@ -73,13 +73,42 @@ class Reading {
         this.miss(`${where}.${key}`, found);
         continue;
       }
-      read[name] = {
-        text: found['text'],
-        plusMinus: this.take(`${where}.${key}.plusMinus`, found['plusMinus'], isOneOf(['standard', 'limits', 'expanded']), 'standard'),
-        k: this.take(`${where}.${key}.k`, found['k'], isText, ''),
-      };
+      read[name] = { ...this.entry(`${where}.${key}`, found), ...this.instrument(`${where}.${key}.instrument`, found['instrument']) };
     }
     return read;
+  }
+
+  entry(where: string, found: Json): Entry {
+    return {
+      text: this.take(`${where}.text`, found['text'], isText, ''),
+      plusMinus: this.take(`${where}.plusMinus`, found['plusMinus'], isOneOf(['standard', 'limits', 'expanded']), 'standard'),
+      k: this.take(`${where}.k`, found['k'], isText, ''),
+    };
+  }
+
+  /** Instruments of the session, once read: what names another names none. */
+  private readonly known = new Set<string>();
+
+  instrument(where: string, value: unknown): { readonly instrument?: string } {
+    const named = this.take<string | undefined>(where, value, (found): found is string => isText(found) && this.known.has(found), undefined);
+    return named === undefined ? {} : { instrument: named };
+  }
+
+  instruments(value: unknown): Instrument[] {
+    return this.list('instruments', value).flatMap((found, index) => {
+      const where = `instruments[${index + 1}]`;
+      if (!isObject(found) || !isText(found['id']) || found['id'] === '' || this.known.has(found['id'])) {
+        this.miss(where, found);
+        return [];
+      }
+      this.known.add(found['id']);
+      const word = (name: 'name' | 'serial' | 'certificate' | 'due'): string => this.take(`${where}.${name}`, found[name], isText, '');
+      return [{
+        id: found['id'], name: word('name'), serial: word('serial'), certificate: word('certificate'), due: word('due'),
+        measures: this.take(`${where}.measures`, found['measures'], isOneOf(MEASURED), 'other'),
+        scale: this.entry(`${where}.scale`, this.object(`${where}.scale`, found['scale'])),
+      }];
+    });
   }
 
   choices(value: unknown): Choices {
@@ -171,9 +200,23 @@ class Reading {
         columns: this.columns(`${where}.columns`, sheet['columns']),
         kindOfAll,
         ...(taken === undefined ? {} : { taken }),
+        ...this.instrument(`${where}.instrument`, sheet['instrument']),
         edits: this.edits(`${where}.edits`, sheet['edits']),
         added: this.added(`${where}.added`, sheet['added']),
       }];
+    });
+  }
+
+  forceRecords(value: unknown): ForceRecord[] {
+    const seen = new Set<string>();
+    return this.list('forceRecords', value).flatMap((record, index) => {
+      const where = `forceRecords[${index + 1}]`;
+      if (!isObject(record) || !isText(record['id']) || record['id'] === '' || seen.has(record['id']) || !isText(record['text'])) {
+        this.miss(where, record);
+        return [];
+      }
+      seen.add(record['id']);
+      return [{ id: record['id'], name: this.take(`${where}.name`, record['name'], isText, ''), text: record['text'], sha256: this.take(`${where}.sha256`, record['sha256'], isText, '') }];
     });
   }
 
@@ -194,6 +237,8 @@ class Reading {
 
   session(found: Json): Session {
     const title = this.object('title', found['title']);
+    // First of all, since entries and sheets name them.
+    const instruments = this.instruments(found['instruments']);
     const word = (name: keyof Session['title']) => this.take(`title.${name}`, title[name], isText, '');
     return {
       ...emptySession(),
@@ -201,7 +246,9 @@ class Reading {
       demo: this.take('demo', found['demo'], (value): value is boolean => typeof value === 'boolean', false),
       entries: this.entries<EntryName>('entries', found['entries'], ENTRY_NAMES),
       parts: this.parts(found['parts']),
+      instruments,
       freeSwing: this.take('freeSwing', found['freeSwing'], isText, ''),
+      forceRecords: this.forceRecords(found['forceRecords'] ?? []),
       pulseSamples: this.take('pulseSamples', found['pulseSamples'], isText, ''),
       choices: this.choices(found['choices']),
       sheets: this.sheets(found['sheets']),

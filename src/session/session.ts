@@ -13,6 +13,24 @@ export interface Entry {
   readonly plusMinus: PlusMinus;
   /** Coverage factor as typed, used where plusMinus is 'expanded'; '' is 2. */
   readonly k: string;
+  /** Id of the instrument it was measured with; absent: none named. */
+  readonly instrument?: string;
+}
+
+/** What an instrument measures: its relative ± acts on quantities of this kind alone; 'other' names it and no more. */
+export const MEASURED = ['length', 'mass', 'time', 'angle', 'pressure', 'other'] as const;
+
+/** One instrument of the bench, all as typed. */
+export interface Instrument {
+  readonly id: string;
+  readonly name: string;
+  readonly serial: string;
+  readonly certificate: string;
+  /** Date to which its calibration holds. */
+  readonly due: string;
+  readonly measures: (typeof MEASURED)[number];
+  /** Relative ± of its calibration, one and the same for everything that is measured with it; '' for none. */
+  readonly scale: Entry;
 }
 
 export interface Part {
@@ -30,6 +48,8 @@ export interface Choices {
   readonly screenShape: 'parallel' | 'square' | 'curved';
   /** What the first-swing column holds: the first maximum, or the whole way from side to side (rest then plays no part). */
   readonly swingMeasured: 'fromRest' | 'sideToSide';
+  /** Rest of a record that has one before and one after: the one before, or their mean with half their difference as limits. */
+  readonly restTaken: 'before' | 'mean';
   /** Rest of a record without one of its own: the zero before it, or interpolated between the zeros before and after. */
   readonly zeroTaken: 'before' | 'interpolated';
   /** The scale's numbers fall as the pendulum swings away from the thrust. */
@@ -67,8 +87,8 @@ export interface Choices {
   readonly weightsHungAs: 'shots' | 'taps';
   /** Swinging hammer: all its mass at one point, or a body with its own inertia. */
   readonly hammerForm: 'compact' | 'compound';
-  /** The hammer leaves the pendulum again, or stays on it. */
-  readonly hammerAfter: 'leaves' | 'stays';
+  /** The hammer leaves the pendulum again, or stays on it: borne by the pendulum, or by its own pivot. */
+  readonly hammerAfter: 'leaves' | 'stays' | 'staysOnItsPivot';
   readonly swingForm: 'full' | 'smallAngle';
 }
 
@@ -90,6 +110,8 @@ export interface Sheet {
   readonly kindOfAll: RecordKind | null;
   /** When its taps were struck, against the firings; absent: in the order of the sheets, or by their times. */
   readonly taken?: 'before' | 'after';
+  /** Id of the instrument its readings were read with; absent: none named. */
+  readonly instrument?: string;
   /** Cells typed over, by line of the text and column index. */
   readonly edits: Readonly<Record<string, Readonly<Record<number, string>>>>;
   /** Rows typed by hand, after those of the text; addressed as line `+1`, `+2`, … by their id. */
@@ -102,6 +124,14 @@ export interface Mark {
   readonly kind?: RecordKind;
 }
 
+/** A record of the hammer's force, as it came. */
+export interface ForceRecord {
+  readonly id: string;
+  readonly name: string;
+  readonly text: string;
+  readonly sha256: string;
+}
+
 export interface Session {
   readonly format: 'firstswing-session';
   readonly version: 1;
@@ -110,8 +140,11 @@ export interface Session {
   readonly demo: boolean;
   readonly entries: Readonly<Partial<Record<EntryName, Entry>>>;
   readonly parts: readonly Part[];
+  readonly instruments: readonly Instrument[];
   /** Turning readings of one free swing, in order, typed as a list with its unit: "31.6 -29.1 26.9 mm"; '' for none. */
   readonly freeSwing: string;
+  /** Records of the hammer's force, one or more taps in each, in the order of the taps. */
+  readonly forceRecords: readonly ForceRecord[];
   /** Samples of a measured pulse, a time and a thrust (or what goes with it) a line, a header line before them if there is one; '' for none. */
   readonly pulseSamples: string;
   readonly choices: Choices;
@@ -126,6 +159,7 @@ export const FIRST_CHOICES: Choices = {
   readingWay: 'rulerAtTip',
   screenShape: 'parallel',
   swingMeasured: 'fromRest',
+  restTaken: 'before',
   zeroTaken: 'before',
   scaleRunsBackward: false,
   dampingWay: 'swings',
@@ -161,6 +195,7 @@ export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices
   readingWay: READING_WAYS,
   screenShape: ['parallel', 'square', 'curved'],
   swingMeasured: ['fromRest', 'sideToSide'],
+  restTaken: ['before', 'mean'],
   zeroTaken: ['before', 'interpolated'],
   scaleRunsBackward: [true, false],
   dampingWay: ['swings', 'decrement', 'ratio', 'maximumTime', 'quadratic', 'friction', 'none'],
@@ -185,7 +220,7 @@ export const CHOICE_VALUES: { readonly [Name in keyof Choices]: readonly Choices
   weightsPull: ['thread', 'outrigger'],
   weightsHungAs: ['shots', 'taps'],
   hammerForm: ['compact', 'compound'],
-  hammerAfter: ['leaves', 'stays'],
+  hammerAfter: ['leaves', 'stays', 'staysOnItsPivot'],
   swingForm: ['full', 'smallAngle'],
 };
 export function emptySession(): Session {
@@ -196,7 +231,9 @@ export function emptySession(): Session {
     demo: false,
     entries: {},
     parts: [],
+    instruments: [],
     freeSwing: '',
+    forceRecords: [],
     pulseSamples: '',
     choices: FIRST_CHOICES,
     sheets: [],

@@ -109,7 +109,7 @@ const calibration = (way: 'geometry' | 'taps', factor: number): Calibration => (
 
 export const REDUCTION: Reduction = {
   problems: [],
-  entries: [],
+  entries: [], instruments: [],
   sheets: [],
   records: RECORDS,
   film: null,
@@ -132,6 +132,7 @@ export const REDUCTION: Reduction = {
   addedMasses: null,
   tapStudy: null,
   comparisons: [],
+  forceRecords: [],
   agreement: null,
   calibrations: { geometry: calibration('geometry', FACTOR), taps: calibration('taps', FACTOR * 1.008) },
   chosen: 'geometry',

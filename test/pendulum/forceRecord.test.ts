@@ -270,6 +270,20 @@ describe('what cannot be integrated', () => {
     expect(['noQuietPart', 'noPulse']).toContain(outcome.status);
   });
 
+  it('whatever numbers a record holds, it answers, and with numbers', () => {
+    const anything = fc.array(fc.oneof(fc.constant(0), fc.integer({ min: -3, max: 3 }), between(-100, 100), between(-1e-3, 1e-3)), { minLength: 20, maxLength: 120 });
+    const numbersOf = (pulse: ForcePulse): readonly number[] => Object.values(pulse).filter((value) => typeof value === 'number');
+    fc.assert(fc.property(anything, fc.boolean(), (force, quiet) => {
+      const padded = quiet ? [...Array.from({ length: 100 }, () => 0), ...force, ...Array.from({ length: 100 }, () => 0)] : force;
+      const outcome = pulsesOfRecord({ time: padded.map((_, i) => i * 1e-4), force: padded });
+      for (const pulse of outcome.status === 'found' ? outcome.pulses : []) {
+        expect(numbersOf(pulse).every(Number.isFinite)).toBe(true);
+        expect(pulse.peak).toBeGreaterThan(0);
+        expect(pulse.contactEnds >= pulse.peakTime && pulse.from <= pulse.peakTime && pulse.to >= pulse.contactEnds).toBe(true);
+      }
+    }), { numRuns: 1000 });
+  });
+
   it('times that go back and numbers that are none are our mistake', () => {
     const record = recordOf([TAP], CHAIN);
     expect(() => pulsesOfRecord({ ...record, time: record.time.map((t, i) => (i === 5 ? 0 : t)) })).toThrow(RangeError);

@@ -89,7 +89,7 @@ describe('hand tables', () => {
   });
 
   test('a rest taken after the shot is not the rest', () => {
-    expect(roles(drop('Shot,Zero before (mm),Peak (mm),Zero after (mm)\n1,12.0,15.5,12.1\n').proposals)).toEqual(['label', 'rest', 'firstSwing', 'ignored']);
+    expect(roles(drop('Shot,Zero before (mm),Peak (mm),Zero after (mm)\n1,12.0,15.5,12.1\n').proposals)).toEqual(['label', 'rest', 'firstSwing', 'restAfter']);
   });
 
   test('a computed impulse bit is no tap impulse', () => {

@@ -9,7 +9,7 @@ const DEGREE = Math.PI / 180;
 const SQUARE: LaserPath = { distance: 1, tilt: 0, incidence: 0, mirrorRadius: 0, outOfPlane: 0, screen: 'parallel' };
 const STAND = {
   readingRadius: 0.4, rulerHeight: 0.38, screenDistance: 1.2, screenTilt: 0.1, beamIncidence: 0.2, mirrorRadius: 0.05, beamOutOfPlane: 0, windowThickness: 0.01, windowIndex: 1.52,
-  screenShape: 0, pixelScale: 4000, pivotAcross: 0, pivotDown: 0, sensorHeight: 0.3, faceOffset: 0.02, countsPerTurn: 20000,
+  screenShape: 0, pixelScale: 4000, cameraYaw: 0.1, cameraToPlane: 0.8, pivotAcross: 0, pivotDown: 0, sensorHeight: 0.3, faceOffset: 0.02, countsPerTurn: 20000,
 };
 
 describe('the laser spot', () => {
@@ -109,4 +109,29 @@ test('a picture with pivot and marker needs no scale, its rows counted downward'
 test('a fixed camera half a metre before a pointer 5 mm off its ruler reads 1 % long, a moving eye scatters (methods 2)', () => {
   expect(parallaxScale({ gap: 5e-3, cameraDistance: 0.5 })).toBeCloseTo(0.99, 15);
   expect(parallaxOfEye({ gap: 5e-3, cameraDistance: 0.5, shift: 0.02 })).toBeCloseTo(2e-4, 15);
+});
+
+describe('a camera that stands askew', () => {
+  /** Pinhole at Z₀ from the rest point on the camera’s axis, the swing plane turned by γ about the upright; picture scaled by its size at the rest point. */
+  function traced(theta: number, yaw: number, far: number): number {
+    const X = STAND.readingRadius * Math.sin(theta);
+    const [side, depth] = [X * Math.cos(yaw), far + X * Math.sin(yaw)];
+    return (side / depth) * far;
+  }
+
+  it.each([[0.1, 0.8], [-0.2, 0.5], [0.3, 2]])('sees what a pinhole sees, turned by %d rad at %d m', (yaw, far) => {
+    for (const theta of [-0.4, -0.05, 0.02, 0.3]) {
+      const stand = { ...STAND, cameraYaw: yaw, cameraToPlane: far };
+      expect(WAYS.cameraMarker.reading(theta, stand) / STAND.pixelScale).toBeCloseTo(traced(theta, yaw, far), 12);
+      expect(WAYS.cameraMarker.angle(WAYS.cameraMarker.reading(theta, stand), stand)).toBeCloseTo(theta, 12);
+    }
+  });
+
+  it('far away shortens by cos γ alone, and near bends by X sin γ/Z₀ (methods 2)', () => {
+    const small = 1e-4;
+    const at = (theta: number, yaw: number, far: number): number => WAYS.cameraMarker.reading(theta, { ...STAND, cameraYaw: yaw, cameraToPlane: far });
+    expect(at(small, 0.2, 0) / at(small, 0, 0)).toBeCloseTo(Math.cos(0.2), 9);
+    const X = STAND.readingRadius * Math.sin(0.1);
+    expect(at(0.1, 0.2, 0.8) / at(0.1, 0.2, 0) - 1).toBeCloseTo((-X * Math.sin(0.2)) / 0.8, 3);
+  });
 });

@@ -205,6 +205,13 @@ describe('a swinging hammer', () => {
     expect(r.calibrations.taps!.change.value).toBeCloseTo(change, 6);
   });
 
+  it('that stays on its own pivot adds m r_h² and m g r_h²/l of a compact one', () => {
+    const r = reduce(hammered([[8, '', '', 0, 20]], { hammerAfter: 'staysOnItsPivot' }), null);
+    const [shots, taps] = [r.configurations.shots!, r.configurations.taps!];
+    expect(taps.momentOfInertia.value - shots.momentOfInertia.value).toBeCloseTo(0.012 * TAP_ARM ** 2, 9);
+    expect(taps.stiffness.value - shots.stiffness.value).toBeCloseTo((0.012 * G * TAP_ARM ** 2) / 0.25, 9);
+  });
+
   it('drawn beyond 90°, with both angles after the blow, or without its mass gives a sentence on that tap', () => {
     expect(codes(reduce(hammered([[95, 3, '', 0, 20]]), null))).toContain('hammer-angle-too-wide');
     expect(codes(reduce(hammered([[8, 3, 2, 0, 20]]), null))).toContain('tap-both-rebound-and-follow');
@@ -219,6 +226,47 @@ it('a force held for a while taps by F τ, less what its length takes from the f
   const known = (tau: number): number => reduce(withSheets(bench(1, { hammerFactor: '1' }), taps(tau)), null).records.find((r) => r.kind === 'tap')!.knownImpulse!.value;
   expect(known(1e-5) / (0.01 * 1e-5)).toBeCloseTo(1, 6);
   expect((0.01 * T) / 10 / known(T / 10)).toBeCloseTo(1.016641, 4);
+});
+
+describe('force records of the hammer', () => {
+  /** Half-sine pulses of known area, 1 ms, at 50 kHz, on a level of 0.03 N with noise; the area of a half-sine is 2Fτ/π. */
+  const record = (impulses: readonly number[]): string => {
+    const draws = new Draws(3);
+    const tau = 1e-3;
+    const lines = ['Time (ms);Force (N)'];
+    for (let i = 0; i < impulses.length * 1000; i++) {
+      const t = i / 50e3;
+      const k = Math.floor(i / 1000);
+      const s = t - k * 0.02 - 0.008;
+      const F = s > 0 && s < tau ? ((impulses[k]! * Math.PI) / (2 * tau)) * Math.sin((Math.PI * s) / tau) : 0;
+      lines.push(`${exactly(Number((t * 1e3).toFixed(3)))};${exactly(F + 0.03 + 0.002 * draws.normal())}`);
+    }
+    return lines.join('\n');
+  };
+  const tapped = (texts: readonly string[], taps: number): Session => ({
+    ...withSheets(bench(1, { hammerFactor: '1', tapSpread: '0 %' }), sheet('taps', [['rest', 'mm'], ['firstSwing', 'mm']], Array.from({ length: taps }, (_, i) => [0, exactly(readingOf((SIZES[i]! * TAP_ARM) / K))]), { kindOfAll: 'tap' })),
+    forceRecords: texts.map((text, i) => ({ id: `f${i + 1}`, name: `force${i + 1}.csv`, text, sha256: '' })),
+  });
+
+  it('give the taps their impulses in order, one record of many or one each', () => {
+    for (const texts of [[record(SIZES)], SIZES.map((impulse) => record([impulse]))]) {
+      const r = reduce(tapped(texts, 4), null);
+      const known = r.records.filter(({ kind }) => kind === 'tap').map(({ knownImpulse }) => knownImpulse!);
+      known.forEach((impulse, i) => expect(Math.abs(impulse.value - SIZES[i]!)).toBeLessThan(4 * impulse.u + 1e-3 * SIZES[i]!));
+      expect(Math.abs(r.calibrations.taps!.factor.value / K - 1)).toBeLessThan(2e-3);
+    }
+  });
+
+  it('that do not fit the taps are given to none, and say so; a file of words is told by name', () => {
+    const r = reduce(tapped([record(SIZES.slice(0, 3))], 4), null);
+    expect(codes(r)).toContain('force-records-do-not-fit');
+    expect(r.calibrations.taps).toBeNull();
+    const words = reduce(tapped(['nothing here'], 1), null);
+    expect(words.problems.find((p) => p.code === 'force-record-no-samples')!.place.sheetName).toBe('force1.csv');
+    expect(codes(reduce(tapped(['t (s);F (N)\n0;0\n2;0\n1;0\n'], 1), null))).toContain('force-record-time-not-rising');
+    const flat = ['t (s);F (N)', ...Array.from({ length: 100 }, (_, i) => `${i};0.0${i % 3}`)].join('\n');
+    expect(codes(reduce(tapped([flat], 1), null))).toContain('force-record-no-pulse');
+  });
 });
 
 describe('the adjustment of all evidence', () => {

@@ -384,3 +384,14 @@ it('a plan survives the trip between threads', () => {
   expect(structuredClone(plan)).toEqual(plan);
   expect([plan.dimension, plan.unit]).toEqual(['pixel', 'px']);
 });
+
+it('for a picture of pivot and marker knows what a pixel is worth once the marker’s radius is typed, and claims nothing before', () => {
+  const entries = { bobMass: '50 g', bobDistance: '500 mm', leverArm: '500 mm', tapLeverArm: '500 mm', gravity: '9.80665 m/s²', pivotAcross: '500 px', pivotDown: '100 px', division: '1 px', guessedImpulse: '1 mN·s' };
+  const of = (more: Readonly<Record<string, string>>): Plan => planOf(sessionOf({ choices: { form: 'pointBob', readingWay: 'cameraPivotMarker', dampingWay: 'none' }, entries: { ...entries, ...more } }));
+  expect(of({}).reading).toBeNull();
+  expect(of({}).least).toBeNull();
+  const plan = of({ markerRadius: '800 px' });
+  // One reading to 1 px at 800 px: 1/√12/800 rad; a throw has two.
+  expect(plan.reading!.u).toBeCloseTo((Math.SQRT2 * 1) / Math.sqrt(12) / 800, 9);
+  expect(plan.least!.detection.impulse).toBeGreaterThan(0);
+});

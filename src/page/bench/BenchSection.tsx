@@ -17,8 +17,9 @@ import { BenchDrawing } from './BenchDrawing.tsx';
 import { ChoiceField } from './ChoiceField.tsx';
 import { CorrectionsGroup, PulseSamples } from './CorrectionsGroup.tsx';
 import { EntryField } from './EntryField.tsx';
+import { ForceRecords } from './ForceRecords.tsx';
 import { FilmWords } from './FilmWords.tsx';
-import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, HAMMER_AFTER, HAMMER_FORMS, HUNG_AS, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, RESTORING, ROUTES, SCREENS, SHOWN_WITH, SWING_MEASURED, WEIGHTS_PULL, ZERO_TAKEN } from './groups.ts';
+import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, HAMMER_AFTER, HAMMER_FORMS, HUNG_AS, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, REST_TAKEN, RESTORING, ROUTES, SCREENS, SHOWN_WITH, SWING_MEASURED, WEIGHTS_PULL, ZERO_TAKEN } from './groups.ts';
 import type { GroupName } from './groups.ts';
 import { Instruments } from './Instruments.tsx';
 import { KeptBenches } from './KeptBenches.tsx';
@@ -26,6 +27,7 @@ import { PartsTable } from './PartsTable.tsx';
 import { PressureGroup } from './PressureGroup.tsx';
 
 const NO_CORRECTIONS: Reduction['corrections'] = [];
+const NO_FORCE: Reduction['forceRecords'] = [];
 const NO_PROBLEMS: readonly Problem[] = [];
 
 /** Roles that any column has, as one text, so that the bench is not drawn anew for every cell. */
@@ -52,6 +54,8 @@ export function BenchSection() {
   const parts = useStore((state) => state.session.parts);
   const instruments = useStore((state) => state.session.instruments);
   const freeSwing = useStore((state) => state.session.freeSwing);
+  const forceRecords = useStore((state) => state.session.forceRecords);
+  const forceTold = useStore((state) => state.reduction?.forceRecords);
   const pulseSamples = useStore((state) => state.session.pulseSamples);
   const readings = useStore((state) => state.reduction?.entries);
   const problems = useStore((state) => state.reduction?.problems);
@@ -148,6 +152,7 @@ export function BenchSection() {
                 {choices.readingWay === 'laserSpot' && <Caution words={CAUTIONS.laser} />}
                 {choices.readingWay === 'laserSpot' && <ChoiceField name="screenShape" legend="Screen" value={choices.screenShape} options={SCREENS} onChoose={choose('screenShape', 'shape of the screen')} />}
                 <ChoiceField name="swingMeasured" legend="The first-swing column holds the swing" value={choices.swingMeasured} options={SWING_MEASURED} onChoose={choose('swingMeasured', 'what the first swing holds')} />
+                {roles.split(' ').includes('restAfter') && <ChoiceField name="restTaken" legend="Rest of a record that has one before and one after" value={choices.restTaken} options={REST_TAKEN} onChoose={choose('restTaken', 'rest before or mean')} />}
                 <ChoiceField name="zeroTaken" legend="Rest of a record without one" value={choices.zeroTaken} options={ZERO_TAKEN} onChoose={choose('zeroTaken', 'rest between zeros')} />
                 {fields('Reading')}
                 <label className={styles.check} id="choice-scaleRunsBackward" tabIndex={-1}>
@@ -185,6 +190,7 @@ export function BenchSection() {
                 {swingsHammer && <ChoiceField name="hammerForm" legend="Swinging hammer" value={choices.hammerForm} options={HAMMER_FORMS} onChoose={choose('hammerForm', 'form of the hammer')} />}
                 {swingsHammer && <ChoiceField name="hammerAfter" legend="After the blow it" value={choices.hammerAfter} options={HAMMER_AFTER} onChoose={choose('hammerAfter', 'hammer after the blow')} />}
                 {fields('Taps')}
+                <ForceRecords records={forceRecords} told={forceTold ?? NO_FORCE} change={change} />
                 <Caution words={CAUTIONS.hammer} />
               </Group>
             </div>

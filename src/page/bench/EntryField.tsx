@@ -7,9 +7,9 @@ import type { Entry, Instrument, PlusMinus } from '../../session/session.ts';
 import type { Dimension } from '../../units/units.ts';
 import { sentence } from '../../problems/sentences.ts';
 import { SymbolText } from '../words.tsx';
-import { echoOf } from './echo.ts';
+import { addedByInstrument, echoOf } from './echo.ts';
 import styles from './EntryField.module.css';
-import { MeasuredWith } from './MeasuredWith.tsx';
+import { MeasuredWith, nameOf } from './MeasuredWith.tsx';
 
 interface Props {
   /** Name of the entry, `leverArm` or `part.p1.mass`. */
@@ -63,6 +63,8 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
   const isSpread = kind.isSpread === true;
   const isEmpty = entry.text.trim() === '';
   const echo = read === undefined || isEmpty ? null : echoOf(read, isSpread);
+  const added = read === undefined || isEmpty ? null : addedByInstrument(read);
+  const named = measured && nameOf(measured.instruments, entry.instrument);
   const said = problems.filter((problem) => isSaid(problem, problems));
   const stopped = !isEmpty && problems.some((problem) => problem.weight === 'stops');
   return (
@@ -110,10 +112,10 @@ export function EntryField({ name, kind, entry = BLANK_ENTRY, read, problems, un
         )}
       </span>
       {measured !== undefined && (!isEmpty || entry.instrument !== undefined) && (
-        <MeasuredWith label={`${kind.label}: measured with`} instruments={measured.instruments} dimension={measured.dimension} chosen={entry.instrument} onChoose={measured.onChoose} />
+        <MeasuredWith label={`${kind.label}: measured with`} instruments={measured.instruments} dimension={measured.dimension} chosen={entry.instrument} adds={added} onChoose={measured.onChoose} />
       )}
       <div id={below} className={styles.below}>
-        <span className="printed">{entry.text}{isEmpty ? '' : `, ${meaningWords(entry, isSpread)}`}{read?.measuredWith === undefined ? '' : `, measured with ${read.measuredWith.words}`}{echo === null ? '' : '; '}</span>
+        <span className="printed">{entry.text}{isEmpty ? '' : `, ${meaningWords(entry, isSpread)}`}{named === undefined ? '' : `, measured with ${named}${added === null ? '' : `, which ${added}`}`}{echo === null ? '' : '; '}</span>
         {echo !== null && <span className="num">{echo}</span>}
         {kind.hint !== '' && <span className={styles.hint}>{echo === null ? '' : ' · '}{kind.hint}</span>}
         {unused && <span> · not used by the present choices</span>}

@@ -39,7 +39,7 @@ export function Instruments() {
       <details className={styles.fold} open={instruments.length > 0}>
         <summary id="instruments-heading">Instruments</summary>
         <p className={`quiet ${styles.how}`}>
-          Name what you measured with, and choose it beside each quantity. Its calibration ± is one and the same for all that it measured, and counts once; the ± beside each quantity is for that reading alone.
+          Name what you measured with, and choose it beside each quantity. Its calibration ± is one and the same for all that it measured, and counts once; the ± beside each quantity is for that reading alone. What stands under “Scale of the ruler” already is not typed here again.
         </p>
         {instruments.map((instrument, index) => (
           <Row key={instrument.id} instrument={instrument} index={index} told={told?.find(({ id }) => id === instrument.id)} problems={byEntry(instrument.id)} change={change} />
@@ -104,7 +104,7 @@ function Row({ instrument, index, told, problems, change }: RowProps) {
         </select>
       </label>
       {instrument.measures !== 'other' && (
-        <div className={styles.field}>
+        <div className={`${styles.field} ${styles.calibration}`}>
           <label htmlFor={scaleId}>Calibration ±</label>
           <span className={styles.scale}>
             <input

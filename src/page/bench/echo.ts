@@ -17,9 +17,14 @@ export function echoOf(read: EntryRead, isSpread: boolean): string | null {
   const found = unitNamed(read.unit, read.dimension);
   if (value === null || read.value === null || found === null) return null;
   if (isSpread) return `u = ${value}`;
-  const by = read.measuredWith === undefined || read.measuredWith.u === 0 ? '' : spreadOf(read.value, read.measuredWith.u, found);
-  if (read.u === 0) return by === '' ? `${value}, taken as exact` : `${value}, u = ${by} by its instrument alone`;
-  return `${value}, u = ${spreadOf(read.value, read.u, found)}${read.distribution === 'rectangular' ? ' (rectangular)' : ''}${by === '' ? '' : `, and ${by} by its instrument`}`;
+  if (read.u === 0) return `${value}, taken as exact`;
+  return `${value}, u = ${spreadOf(read.value, read.u, found)}${read.distribution === 'rectangular' ? ' (rectangular)' : ''}`;
+}
+
+/** What the calibration of its instrument adds to an entry's own u: `adds u = 0.22 mm`; null for nothing. */
+export function addedByInstrument({ value, measuredWith, unit, dimension }: EntryRead): string | null {
+  const found = unitNamed(unit, dimension);
+  return value === null || found === null || measuredWith === undefined || measuredWith.u === 0 ? null : `adds u = ${spreadOf(value, measuredWith.u, found)}`;
 }
 
 function spreadOf(value: number, u: number, unit: Unit): string {

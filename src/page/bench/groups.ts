@@ -67,6 +67,11 @@ export const ZERO_TAKEN: Options<'zeroTaken'> = [
   { value: 'interpolated', words: 'between the zeros before and after' },
 ];
 
+export const REST_TAKEN: Options<'restTaken'> = [
+  { value: 'before', words: 'the rest before the swing' },
+  { value: 'mean', words: 'mean of before and after', more: 'half their difference as limits' },
+];
+
 export const PLUME: Options<'plume'> = [
   { value: 'carried', words: 'thruster carried by the pendulum' },
   { value: 'caught', words: 'plume caught on a target' },
@@ -126,7 +131,8 @@ export const HAMMER_FORMS: Options<'hammerForm'> = [
 
 export const HAMMER_AFTER: Options<'hammerAfter'> = [
   { value: 'leaves', words: 'comes back or goes on through', more: 'its columns say which' },
-  { value: 'stays', words: 'stays on the pendulum', more: 'and swings with it' },
+  { value: 'stays', words: 'stays, borne by the pendulum', more: 'stuck to it, its thread slack' },
+  { value: 'staysOnItsPivot', words: 'stays, borne by its own pivot', more: 'and swings with the pendulum' },
 ];
 
 export const GAUGE_MEANINGS: Options<'gaugeMeaning'> = [
@@ -149,7 +155,7 @@ export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = 
   Corrections: ['pulseDuration', 'tiltOutOfPlane', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'propellantUsed', 'propellantDistance'],
   Reading: [
     'readingRadius', 'rulerHeight', 'sensorHeight', 'faceOffset', 'screenDistance', 'screenTilt', 'mirrorRadius', 'beamIncidence', 'beamOutOfPlane', 'windowThickness', 'windowIndex',
-    'pixelScale', 'pivotAcross', 'pivotDown', 'countsPerTurn', 'scaleMark', 'scaleFactor', 'parallaxGap', 'cameraDistance', 'eyeShift', 'division', 'readingSpread',
+    'pixelScale', 'cameraYaw', 'cameraToPlane', 'lensDistortion', 'pivotAcross', 'pivotDown', 'markerRadius', 'countsPerTurn', 'scaleMark', 'scaleFactor', 'parallaxGap', 'cameraDistance', 'eyeShift', 'division', 'readingSpread',
   ],
   Damping: ['logDecrement', 'dampingRatio', 'firstMaximumTime', 'quadraticDamping', 'frictionAngle'],
   'Local g': ['gravity', 'latitude', 'height'],

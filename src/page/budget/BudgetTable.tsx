@@ -79,7 +79,7 @@ export function BudgetTable({ budget, of, unit, brief = false }: Props) {
       <tbody>
         {lines.map((line, index) => (
           <tr key={line.id} className={styles[line.scope]}>
-            <th scope="row" className={styles.quantity}>{line.label} <SymbolText symbol={line.symbol} /></th>
+            <th scope="row" className={styles.quantity}>{line.label} <SymbolText symbol={line.symbol} />{line.measuredWith !== undefined && <span className={`quiet ${styles.with}`}>with {line.measuredWith}</span>}</th>
             {!brief && <td><Aligned column={estimates} row={index} /></td>}
             <td><Aligned column={uncertainties} row={index} /></td>
             {!brief && (

@@ -55,8 +55,8 @@ function AddedMasses({ told: { status, inertia, stiffness, rows, sameRadius, bet
 }
 
 /** What the weights gave in a sentence. */
-export function weightsSentence({ weights, stiffness, interceptInU, hysteresis, chiSquared, dof }: WeightsTold): string {
-  const angle = hysteresis === null ? '' : ` Loading and unloading part by ${plain(2 * hysteresis, chooseUnit([2 * hysteresis], 'angle'), 2)}; half of it counts as limits common to all.`;
+export function weightsSentence({ weights, stiffness, interceptInU, hysteresis, slopesPart, chiSquared, dof }: WeightsTold): string {
+  const angle = hysteresis === null ? '' : ` Loading and unloading part by ${plain(2 * hysteresis, chooseUnit([2 * hysteresis], 'angle'), 2)}; half of it counts as limits common to all.${slopesPart !== null && Math.abs(slopesPart) > 0.01 ? ` Their slopes part by ${plain(2 * Math.abs(slopesPart), PERCENT, 2)}: the pulley rubs, more than the pivot.` : ''}`;
   const seen = dof > 0 ? ` Scatter about the line: χ² = ${chiSquared.toFixed(1)} for ${dof}.` : '';
   const zero = Math.abs(interceptInU) > 2 ? ` The line misses the reading at no weight by ${timesU(interceptInU)} u.` : '';
   return `${weights} known weights give κ = ${withPlusMinus(stiffness.value, stiffness.u, chooseUnit([stiffness.value], 'rotationalStiffness'))} (± u).${angle}${seen}${zero}`;

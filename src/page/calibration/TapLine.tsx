@@ -58,7 +58,7 @@ const UNLIKELY = 0.05;
 const chance = (probability: number): string => `chance ${plain(probability, PERCENT, 2)}`;
 
 /** The line, its intercept, its bend and its scatter, each with a verdict. */
-export function lineSentence({ taps, sizes, sides, intercept, curvature, chiSquared, dof, probability, widened, repeatability }: TapStudy): string {
+export function lineSentence({ taps, sizes, sides, intercept, curvature, chiSquared, dof, probability, widened, repeatability, alongRun, runs }: TapStudy): string {
   const parts = [`${taps} ${taps === 1 ? 'tap' : 'taps'} of ${sizes} ${sizes === 1 ? 'size' : 'sizes'}${sides > 1 ? ', to both sides' : ''}.`];
   if (intercept !== null) parts.push(intercept.probability < UNLIKELY ? `The line misses the origin by ${timesU(Math.abs(intercept.t))} u (${chance(intercept.probability)}).` : `It goes through the origin (off by ${timesU(Math.abs(intercept.t))} u, ${chance(intercept.probability)}).`);
   if (curvature !== null) parts.push(curvature.probability < UNLIKELY ? `It bends by ${timesU(Math.abs(curvature.t))} u (${chance(curvature.probability)}).` : `It is straight (bend ${timesU(Math.abs(curvature.t))} u).`);
@@ -68,7 +68,9 @@ export function lineSentence({ taps, sizes, sides, intercept, curvature, chiSqua
       : `They scatter as stated (χ² = ${chiSquared.toFixed(1)} for ${dof}).`;
     parts.push(seen);
   }
-  if (repeatability !== null) parts.push(`Repeated taps of one size part by ${plain(repeatability.relative, PERCENT, 2)} (standard deviation, ${repeatability.dof} degrees of freedom).`);
+  if (repeatability !== null) parts.push(`Repeated taps of one size part by ${plain(repeatability.relative, PERCENT, 2)} (standard deviation, ${repeatability.dof} degrees of freedom); their own uncertainties predict ${plain(repeatability.expected, PERCENT, 2)}.`);
+  if (alongRun !== null && alongRun.probability < UNLIKELY) parts.push(`Along the run their slope changes by ${plain(alongRun.relative, PERCENT, 2)} (${chance(alongRun.probability)}).`);
+  if (runs !== null && runs.probability < UNLIKELY) parts.push(`The residuals change sides ${runs.runs - 1} times where ${(runs.expected - 1).toFixed(1)} are expected (${chance(runs.probability)}): they follow one another.`);
   return parts.join(' ');
 }
 

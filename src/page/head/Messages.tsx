@@ -1,8 +1,8 @@
 /** What the page has to say about session files and about itself, until it is taken away. */
 import { saveTextAsFile } from '../../platform/download.ts';
-import { useStore, useStateNow } from '../../store/hooks.tsx';
+import { useActions, useStore, useStateNow } from '../../store/hooks.tsx';
 import styles from './head.module.css';
-import { saveSessionFile } from './sessionFiles.ts';
+import { saveSessionFile, takeBenchOnly } from './sessionFiles.ts';
 import type { Message } from './sessionFiles.ts';
 
 interface Props {
@@ -11,16 +11,28 @@ interface Props {
 }
 
 export function Messages({ messages, onTake }: Props) {
+  const { change } = useActions();
   return (
     <div aria-live="polite">
       <Failure />
-      {messages.map(({ id, sentences, offer }) => (
-        <div key={id} className={styles.message}>
+      {messages.map(({ id, sentences, offer, opened }) => (
+        <div key={id} className={opened === undefined || sentences.length > 1 ? styles.message : `${styles.message} ${styles.plain}`}>
           <ul>
             {sentences.map((words) => <li key={words}>{words}</li>)}
           </ul>
           {offer !== undefined && (
             <button type="button" onClick={() => saveTextAsFile(offer.name, offer.text, 'text/plain')}>{offer.words}</button>
+          )}
+          {opened !== undefined && (
+            <button
+              type="button"
+              onClick={() => {
+                takeBenchOnly(opened, change);
+                onTake(id);
+              }}
+            >
+              Take its bench only
+            </button>
           )}
           <button type="button" className="plain-button" onClick={() => onTake(id)}>take away</button>
         </div>

@@ -43,6 +43,7 @@ function goTo(found: HTMLElement | null): void {
   const target = found.matches('section, article') ? (found.querySelector<HTMLElement>('h2, h3') ?? found) : found;
   const field = target.matches('fieldset, label') ? (target.querySelector<HTMLElement>('input:checked, input') ?? target) : target;
   if (!field.matches('input, select, textarea, button, a, [tabindex]')) field.tabIndex = -1;
+  for (let fold = field.closest('details'); fold !== null; fold = fold.parentElement?.closest('details') ?? null) fold.open = true;
   field.scrollIntoView({ block: 'center' });
   field.focus({ preventScroll: true });
 }

@@ -1,9 +1,10 @@
 /** Session files: told from tables of readings, opened as one undoable step, and saved. */
 import { fileName, saveTextAsFile } from '../../platform/download.ts';
 import { sentence } from '../../problems/sentences.ts';
+import { benchOf, isBlankBench, putBench } from '../../session/bench.ts';
 import { sessionFromText, sessionToText } from '../../session/file.ts';
 import type { Session } from '../../session/session.ts';
-import type { Actions } from '../../store/store.ts';
+import type { Actions, State } from '../../store/store.ts';
 
 /** Enough of a file to see whether it begins as JSON. */
 const FIRST_BYTES = 64;
@@ -19,6 +20,8 @@ export interface Message {
   readonly sentences: readonly string[];
   /** A text that the person may want to have as a file, and its name. */
   readonly offer?: { readonly words: string; readonly name: string; readonly text: string };
+  /** A file just opened whole, and the session before it: only its bench may be wanted. */
+  readonly opened?: { readonly name: string; readonly session: Session; readonly before: Session };
 }
 
 /** Sentences shown of one file; a badly damaged file would fill the page. */
@@ -29,12 +32,19 @@ export function shortened(sentences: readonly string[]): readonly string[] {
   return more <= 0 ? sentences : [...sentences.slice(0, SENTENCES_SHOWN), `… and ${more} more of the kind.`];
 }
 
-/** Opens a session file in place of the present session; returns what there is to say about it. */
-export async function openSessionFile(file: File, change: Actions['change']): Promise<readonly string[]> {
+/** Opens a session file in place of the present session; returns what there is to say about it, and the offer to take its bench alone. */
+export async function openSessionFile(file: File, change: Actions['change'], now: () => Pick<State, 'session'>): Promise<Omit<Message, 'id'>> {
   const { session, problems } = sessionFromText(await file.text());
+  const before = now().session;
   if (session !== null) change(`open ${file.name}`, () => session);
-  return shortened(problems.map((found) => `${file.name}: ${sentence(found)}`));
+  const sentences = shortened(problems.map((found) => `${file.name}: ${sentence(found)}`));
+  if (session === null || isBlankBench(session)) return { sentences };
+  return { sentences: [`${file.name} is open, with its bench and its readings.`, ...sentences], opened: { name: file.name, session, before } };
 }
+
+/** Everything as it was before the file was opened, but for the bench. */
+export const takeBenchOnly = ({ name, session, before }: NonNullable<Message['opened']>, change: Actions['change']): void =>
+  change(`take only the bench of ${name}`, () => putBench(benchOf(session))(before));
 
 export function saveSessionFile(session: Session): void {
   saveTextAsFile(fileName(session.title.name, 'session', 'firstswing.json'), sessionToText(session), 'application/json');

@@ -2,9 +2,11 @@
 import { useId } from 'react';
 import { RECORD_KINDS } from '../../readings/meanings.ts';
 import type { TableRead } from '../../readings/table.ts';
-import { isRecordKind, removeSheet, setKindOfAll, setTaken } from '../../session/edits.ts';
+import { readingDimension } from '../../reduction/entries.ts';
+import { isRecordKind, removeSheet, setKindOfAll, setSheetInstrument, setTaken } from '../../session/edits.ts';
 import type { Sheet } from '../../session/session.ts';
-import { useActions } from '../../store/hooks.tsx';
+import { useActions, useStore } from '../../store/hooks.tsx';
+import { MeasuredWith } from '../bench/MeasuredWith.tsx';
 import { cutAnew, moveSheet } from './sheetEdits.ts';
 import { KINDS_LABELS, counted } from './tradeWords.ts';
 import styles from './sheet.module.css';
@@ -29,6 +31,8 @@ interface SheetHeadProps {
 export function SheetHead({ sheet, table, rows, isFirst, isLast, headingId }: SheetHeadProps) {
   const { change } = useActions();
   const id = useId();
+  const instruments = useStore((state) => state.session.instruments);
+  const choices = useStore((state) => state.session.choices);
   const hasTaps = sheet.kindOfAll === 'tap' || sheet.columns.some(({ role }) => role === 'tapImpulse' || role === 'hammerIn' || role === 'tapForce');
   return (
     <header className={styles.head}>
@@ -80,6 +84,14 @@ export function SheetHead({ sheet, table, rows, isFirst, isLast, headingId }: Sh
           <option value="">told row by row</option>
           {RECORD_KINDS.map((kind) => <option key={kind} value={kind}>{`all ${KINDS_LABELS[kind]}`}</option>)}
         </select>
+        <MeasuredWith
+          label={`${sheet.name}: readings read with`}
+          words="readings read with"
+          instruments={instruments}
+          dimension={readingDimension(choices)}
+          chosen={sheet.instrument}
+          onChoose={(instrument) => change(`${sheet.name}: read with`, setSheetInstrument(sheet.id, instrument))}
+        />
         {hasTaps && (
           <>
             <label htmlFor={`${id}-taken`}>its taps were struck</label>

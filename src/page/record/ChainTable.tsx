@@ -37,6 +37,7 @@ export function ChainTable({ chain, impulse }: Props) {
             <th scope="row" className={styles.step}>
               {step.aside === true ? <span className="quiet">beside: </span> : ''}{step.label} <SymbolText symbol={step.symbol} />
               {step.equation !== '' && <span className={`quiet ${styles.equation}`}><EquationText equation={step.equation} /></span>}
+              {step.measuredWith !== undefined && <span className={`quiet ${styles.equation}`}>with {step.measuredWith}</span>}
             </th>
             <td><Aligned column={values} row={row} /></td>
             <td className="num">{step.factor === undefined ? '' : `× ${correctingFactor(step.factor)}`}</td>

@@ -11,7 +11,7 @@ import { REDUCTION, result, stated } from '../reductionFixture.ts';
 import { withReduction } from '../withReduction.tsx';
 
 const STUDY: TapStudy = {
-  taps: 3, sizes: 3, sides: 1, chiSquared: 1.2, dof: 2, probability: 0.55, widened: 1, intercept: { t: 0.4, probability: 0.69 }, curvature: null, repeatability: { relative: 0.012, dof: 4 },
+  taps: 3, sizes: 3, sides: 1, chiSquared: 1.2, dof: 2, probability: 0.55, widened: 1, intercept: { t: 0.4, probability: 0.69 }, curvature: null, repeatability: { relative: 0.012, dof: 4, expected: 0.014, probability: 0.6 }, alongRun: { relative: 0.03, t: 2.9, probability: 0.01 }, runs: { runs: 3, expected: 4.2, probability: 0.4 },
   points: REDUCTION.records.filter(({ kind }) => kind === 'tap').map(({ id }, place) => ({ record: id, place, residual: 0.5 - place, leverage: 0.3 })),
   groups: [{ where: 'before', taps: 2, factor: stated(0.0098, 1e-4) }, { where: 'after', taps: 1, factor: stated(0.0102, 1e-4) }],
   drift: { from: 'before', to: 'after', relative: stated(0.041, 0.014), inU: 2.9 },
@@ -30,7 +30,7 @@ const WITH: Reduction = {
     status: 'found', inertia: stated(2e-3, 5e-5), stiffness: stated(0.05, 2e-4), sameRadius: 0.454, better: { radius: 0.15, uInertia: 0.012 },
     rows: [{ label: 'Period, table', timings: 3, period: stated(1.256, 0.001), deviation: 0.2 }, { label: 'Period with 20 g at 350 mm', timings: 3, period: stated(1.2, 0.001), deviation: -0.2 }],
   },
-  weights: { weights: 5, stiffness: stated(0.05, 3e-4), interceptInU: 0.3, hysteresis: 0.001, chiSquared: 4, dof: 8, points: [] },
+  weights: { weights: 5, stiffness: stated(0.05, 3e-4), interceptInU: 0.3, hysteresis: 0.001, slopesPart: 0.02, chiSquared: 4, dof: 8, points: [] },
 };
 
 test('every way stands in one table with its interval in a picture, and choosing one changes the session', async () => {
@@ -69,7 +69,7 @@ test('taps stand against firings, and masses hung with where to hang them instea
 
 describe('what is said of the taps', () => {
   test('a line through the origin, straight, scattering as stated', () => {
-    expect(lineSentence(STUDY)).toBe('3 taps of 3 sizes. It goes through the origin (off by 0.4 u, chance 69 %). They scatter as stated (χ² = 1.2 for 2). Repeated taps of one size part by 1.2 % (standard deviation, 4 degrees of freedom).');
+    expect(lineSentence(STUDY)).toBe('3 taps of 3 sizes. It goes through the origin (off by 0.4 u, chance 69 %). They scatter as stated (χ² = 1.2 for 2). Repeated taps of one size part by 1.2 % (standard deviation, 4 degrees of freedom); their own uncertainties predict 1.4 %. Along the run their slope changes by 3 % (chance 1 %).');
   });
 
   test('a line that misses the origin, bends, and scatters more than stated', () => {
