@@ -57,10 +57,12 @@ export interface Adjustment {
 export type Adjusted = Adjustment | { readonly status: 'underdetermined' | 'notConverged'; readonly unknowns?: undefined };
 
 /** Relative uncertainty that every item has at least: two items that rest on the very same readings would else contradict each other in the last digits. */
-const FLOOR = 1e-9;
+const FLOOR = 1e-7;
 const ITERATIONS = 60;
 /** Change of an unknown, in its u, below which the adjustment has settled. */
 const SETTLED = 1e-8;
+/** …and of a source, in its u: two items that rest on one source alone leave the rounding of their slopes in it. */
+const SETTLED_SOURCE = 1e-6;
 /** An item of which the others check less than this part is not checked. */
 const CHECKED = 1e-7;
 /** Step of the half-differences for the slopes, in u of the input or as a part of the unknown. */
@@ -230,7 +232,7 @@ export function adjust({ unknowns, items }: { readonly unknowns: readonly Unknow
     delta.fill(0);
     for (const [i, row] of linear.B.entries()) for (const [s, slope] of row) delta[s]! -= slope * step.pulls[i]!;
     step.change.forEach((dp, k) => (p[k]! += dp));
-    const still = step.change.every((dp, k) => Math.abs(dp) <= SETTLED * Math.sqrt(step.covariance[k]![k]!)) && delta.every((value, s) => Math.abs(value - before[s]!) <= SETTLED);
+    const still = step.change.every((dp, k) => Math.abs(dp) <= SETTLED * Math.sqrt(step.covariance[k]![k]!)) && delta.every((value, s) => Math.abs(value - before[s]!) <= SETTLED_SOURCE);
     if (still) return resultOf(prepared, p, delta, iteration);
   }
   return { status: 'notConverged' };

@@ -126,6 +126,23 @@ describe('against itself', () => {
   });
 });
 
+it.each([[0.001, 1.2], [0.01, 1.2], [0.05, 1.02], [0.2, 0.9]])('two items that rest on one source alone, of relative u %d, are adjusted beside a third that is off by %d', (u, off) => {
+  // J ∝ m and κ ∝ m; K = √(Jκ) ∝ m: the weighted mean of ln m by its own u and by the tap’s 2 %.
+  const m = anchor(value('mass', 1, u));
+  const scaledBy = (c: number): Uncertain => propagate(({ x }) => c * x, { x: m });
+  const r = found({
+    unknowns: [{ name: 'm', start: 3, positive: true }, { name: 'k', start: 2, positive: true }],
+    items: [
+      { id: 'J', label: '', residual: (p, x) => Math.log(p['m']! / x['x']!), inputs: { x: { y: scaledBy(3), positive: true } } },
+      { id: 'k', label: '', residual: (p, x) => Math.log(p['k']! / x['x']!), inputs: { x: { y: scaledBy(2), positive: true } } },
+      { id: 'tap', label: '', residual: (p, x) => Math.log(p['m']! * p['k']!) / 2 - Math.log(x['x']!), inputs: { x: { y: value('tap', Math.sqrt(6) * off, 0.02 * Math.sqrt(6) * off), positive: true } } },
+    ],
+  });
+  const expected = (Math.log(off) * u ** 2) / (u ** 2 + 0.02 ** 2);
+  expect(Math.log((r.unknowns['m']!.value * r.unknowns['k']!.value) / 6) / 2).toBeCloseTo(expected, 5);
+  expect(r.unknowns['m']!.value / r.unknowns['k']!.value).toBeCloseTo(1.5, 6);
+});
+
 describe('what cannot be adjusted says so', () => {
   it('with fewer items than unknowns, or items that tell one combination only', () => {
     const s = value('a', 6, 0.1);
