@@ -98,7 +98,8 @@ export interface TapStudy {
   /** Residual in its u; place in the run: order, or s where all have a time. */
   readonly points: readonly { readonly record: string; readonly place: number; readonly residual: number; readonly leverage: number }[];
   readonly groups: readonly { readonly where: 'before' | 'between' | 'after'; readonly taps: number; readonly factor: Stated }[];
-  readonly drift: { readonly from: string; readonly to: string; readonly relative: Stated; readonly inU: number } | null;
+  /** byMean: K with half the range as limits; atFirst, atLast: K interpolated to the first and the last shot. */
+  readonly drift: { readonly from: string; readonly to: string; readonly relative: Stated; readonly inU: number; readonly byMean: Stated; readonly atFirst: Stated; readonly atLast: Stated } | null;
 }
 
 /** The pendulum after taps, brought to that as fired, and after shots. */

@@ -107,7 +107,7 @@ export function calibrationFromTaps(taps: readonly TapKnown[], form: Form, place
 }
 
 /** Mean of the groups; half their range as limits of one common source (JCGM 100:2008 4.3.7, clause from memory): |K_a − K_b|/(2√3) for two. */
-function meanWithDrift(groups: readonly TapGroup[]): Uncertain {
+export function meanWithDrift(groups: readonly TapGroup[]): Uncertain {
   const values = groups.map(({ factor }) => factor.value);
   const half = (Math.max(...values) - Math.min(...values)) / 2;
   const source: Source = { id: 'taps.drift', label: 'Calibration before and after', symbol: 'K', dimension: 'calibrationFactor', estimate: 0, u: fromLimits(half), distribution: 'rectangular', dof: Infinity };
@@ -115,7 +115,7 @@ function meanWithDrift(groups: readonly TapGroup[]): Uncertain {
 }
 
 /** K between two groups, straight in the place; at the ends the nearest group. */
-function interpolated(groups: readonly TapGroup[], place: number): Uncertain {
+export function interpolated(groups: readonly TapGroup[], place: number): Uncertain {
   const after = groups.findIndex((group) => group.place >= place);
   if (after === 0) return groups[0]!.factor;
   if (after === -1) return groups.at(-1)!.factor;

@@ -82,5 +82,6 @@ export function driftSentence({ groups, drift }: TapStudy): string {
   const each = groups.map(({ where, taps, factor }) => `${WHERE[where]} ${withPlusMinus(factor.value, factor.u, unit)} (${taps} ${taps === 1 ? 'tap' : 'taps'})`).join(', ');
   if (drift === null) return `K ${each} (± u).`;
   const moved = `K moved by ${withPlusMinus(drift.relative.value, drift.relative.u, PERCENT)} (± u), ${timesU(Math.abs(drift.inU))} u of that difference; what both share cancels in it.`;
-  return `K ${each} (± u). ${moved} ${Math.abs(drift.inU) > DRIFTED ? 'That is a drift: take it in, and look for what changed.' : 'That is no drift.'}`;
+  const taken = `As their mean K is ${withPlusMinus(drift.byMean.value, drift.byMean.u, unit)}; interpolated, ${withPlusMinus(drift.atFirst.value, drift.atFirst.u, unit)} at the first shot and ${withPlusMinus(drift.atLast.value, drift.atLast.u, unit)} at the last.`;
+  return `K ${each} (± u). ${moved} ${taken} ${Math.abs(drift.inU) > DRIFTED ? 'That is a drift: take it in, and look for what changed.' : 'That is no drift.'}`;
 }

@@ -10,11 +10,13 @@ import type { Reduction } from '../../../src/reduction/results.ts';
 import { REDUCTION, result, stated } from '../reductionFixture.ts';
 import { withReduction } from '../withReduction.tsx';
 
+const TAKEN = { byMean: stated(0.01, 1.5e-4), atFirst: stated(0.00985, 1e-4), atLast: stated(0.01015, 1e-4) };
+
 const STUDY: TapStudy = {
   taps: 3, sizes: 3, sides: 1, chiSquared: 1.2, dof: 2, probability: 0.55, widened: 1, intercept: { t: 0.4, probability: 0.69 }, curvature: null, repeatability: { relative: 0.012, dof: 4, expected: 0.014, probability: 0.6 }, alongRun: { relative: 0.03, t: 2.9, probability: 0.01 }, runs: { runs: 3, expected: 4.2, probability: 0.4 },
   points: REDUCTION.records.filter(({ kind }) => kind === 'tap').map(({ id }, place) => ({ record: id, place, residual: 0.5 - place, leverage: 0.3 })),
   groups: [{ where: 'before', taps: 2, factor: stated(0.0098, 1e-4) }, { where: 'after', taps: 1, factor: stated(0.0102, 1e-4) }],
-  drift: { from: 'before', to: 'after', relative: stated(0.041, 0.014), inU: 2.9 },
+  drift: { from: 'before', to: 'after', relative: stated(0.041, 0.014), inU: 2.9, ...TAKEN },
 };
 
 const ADJUSTMENT: AdjustmentTold = {
@@ -58,7 +60,7 @@ test('the taps’ line and what to do with taps before and after are choices tha
   await user.click(screen.getByRole('radio', { name: /interpolated to each shot/ }));
   expect(store.state.getState().session.choices).toMatchObject({ tapLine: 'withIntercept', tapDrift: 'interpolated' });
   expect(store.state.getState().past).toHaveLength(2);
-  expect(screen.getByText(/That is a drift/)).toBeVisible();
+  expect(screen.getByText(/As their mean K is 10\.00 ± 0\.15 .*; interpolated, 9\.85 .* at the first shot and 10\.15 .* That is a drift/)).toBeVisible();
 });
 
 test('taps stand against firings, and masses hung with where to hang them instead', async () => {
@@ -80,7 +82,7 @@ describe('what is said of the taps', () => {
   });
 
   test('no drift is said as such', () => {
-    expect(driftSentence({ ...STUDY, drift: { from: 'before', to: 'after', relative: stated(0.004, 0.014), inU: 0.3 } })).toContain('That is no drift');
+    expect(driftSentence({ ...STUDY, drift: { from: 'before', to: 'after', relative: stated(0.004, 0.014), inU: 0.3, ...TAKEN } })).toContain('That is no drift');
   });
 });
 
