@@ -2,8 +2,8 @@
  * Least-squares adjustment: unknowns and every input they rest on are found together, each input's stated value being one of the observations,
  * so that what several items share stays shared and a common scale error cannot drag the result outside the data.
  */
-import { cholesky, leastSquares, type Matrix } from '../numeric/linearAlgebra.ts';
 import { incompleteGamma } from '../numeric/specialFunctions.ts';
+import { checkOf, gainsOf, stepOf, type LinearItems, type Step } from './gaussHelmert.ts';
 import type { Source } from './source.ts';
 import { contributions, type Uncertain } from './uncertain.ts';
 
@@ -19,12 +19,13 @@ export interface AdjustmentItem {
   readonly id: string;
   readonly label: string;
   readonly inputs: Readonly<Record<string, AdjustmentInput>>;
-  /** Predicted less measured, as a logarithm or as a part of itself; 0 where the item is met exactly. Captures nothing. */
+  /** Predicted less measured, 0 where the item is met exactly; in any unit, best as a logarithm, in which products of powers are straight. Captures nothing. */
   readonly residual: (unknowns: Numbers, inputs: Numbers) => number;
 }
 
 export interface Unknown {
   readonly name: string;
+  /** Any value of the right size; above zero for a positive unknown, which moves by its logarithm. */
   readonly start: number;
   readonly positive: boolean;
 }
@@ -34,9 +35,9 @@ export interface AdjustedItemResult {
   readonly label: string;
   /** (Measured − what the other items say of it) over the u of that difference; null where no other item checks it. */
   readonly deviation: number | null;
-  /** Part of the item that the others check, 0 … 1. */
+  /** Part of what the item says by itself that the others say too, 0 … 1. */
   readonly redundancy: number;
-  /** Change of each unknown if the item were left out: relative for a positive unknown; null where it could not be. */
+  /** Change of each unknown if the item were left out, to first order: relative for a positive unknown; null where it could not be. */
   readonly without: Numbers | null;
 }
 
@@ -54,19 +55,20 @@ export interface Adjustment {
   readonly iterations: number;
 }
 
-export type Adjusted = Adjustment | { readonly status: 'underdetermined' | 'notConverged'; readonly unknowns?: undefined };
+/** Contradictory: items that share all their sources, or have none, lie apart, so that nothing uncertain is left to explain it. */
+export type Adjusted = Adjustment | { readonly status: 'underdetermined' | 'notConverged' | 'contradictory'; readonly unknowns?: undefined };
 
-/** Relative uncertainty that every item has at least: two items that rest on the very same readings would else contradict each other in the last digits. */
-const FLOOR = 1e-7;
+/** What every item is allowed beside its sources, as a part of its own size and of its own u: items that rest on the very same readings would else contradict each other in the last digits. */
+const FLOOR = { ofSize: 1e-9, ofU: 1e-6 };
+/** Times its floor that an item may be off before it counts as contradicted by those with the same sources. */
+const FLOOR_STRETCH = 5;
+/** Parts of the step that are tried in turn: whole steps settle fast, and only where they overshoot without end are shorter ones needed. */
+const STEP_PARTS = [1, 0.5, 0.2];
 const ITERATIONS = 60;
-/** Change of an unknown, in its u, below which the adjustment has settled. */
-const SETTLED = 1e-8;
-/** …and of a source, in its u: two items that rest on one source alone leave the rounding of their slopes in it. */
-const SETTLED_SOURCE = 1e-6;
-/** An item of which the others check less than this part is not checked. */
-const CHECKED = 1e-7;
-/** Step of the half-differences for the slopes, in u of the input or as a part of the unknown. */
-const STEP = 1e-4;
+/** Change, in u, below which the adjustment has settled; below which it has where rounding lets it shrink no further; and what of a stretched floor is such rounding. */
+const SETTLED = { fine: 1e-9, coarse: 1e-6, ofStretch: 1e-4 };
+/** Half-width of the differences for the slopes, in u of an input and as a part of the value: the larger one, so that a tiny u is not lost in rounding. */
+const STEP = { ofU: 1e-4, ofValue: 1e-5 };
 
 /** One input with its sources by index. */
 interface Input {
@@ -74,6 +76,7 @@ interface Input {
   readonly centre: number;
   readonly positive: boolean;
   readonly parts: readonly (readonly [index: number, c: number])[];
+  readonly u: number;
 }
 
 interface Prepared {
@@ -84,13 +87,13 @@ interface Prepared {
 
 function prepare(unknowns: readonly Unknown[], items: readonly AdjustmentItem[]): Prepared {
   const index = new Map<Source, number>();
-  const inputOf = ([name, { y, positive }]: [string, AdjustmentInput]): Input => ({
-    name, centre: y.value, positive: positive && y.value > 0,
-    parts: [...contributions(y)].filter(([, c]) => c !== 0).map(([source, c]) => {
+  const inputOf = ([name, { y, positive }]: [string, AdjustmentInput]): Input => {
+    const parts = [...contributions(y)].filter(([, c]) => c !== 0).map(([source, c]) => {
       if (!index.has(source)) index.set(source, index.size);
       return [index.get(source)!, c] as const;
-    }),
-  });
+    });
+    return { name, centre: y.value, positive: positive && y.value > 0, parts, u: Math.sqrt(parts.reduce((sum, [, c]) => sum + c * c, 0)) };
+  };
   const prepared = items.map((item) => ({ item, inputs: Object.entries(item.inputs).map(inputOf) }));
   return { unknowns, items: prepared, sources: [...index.keys()] };
 }
@@ -101,169 +104,137 @@ function valueOf({ centre, positive, parts }: Input, delta: Float64Array): numbe
   return positive ? centre * Math.exp(moved / centre) : centre + moved;
 }
 
-/** Values, slopes by unknown (A) and by source (B, sparse) of every item at one place. */
-interface Linear {
-  readonly g: readonly number[];
-  readonly A: number[][];
-  readonly B: readonly ReadonlyMap<number, number>[];
-}
-
 const unknownsAt = (unknowns: readonly Unknown[], p: readonly number[]): Record<string, number> =>
   Object.fromEntries(unknowns.map(({ name, positive }, k) => [name, positive ? Math.exp(p[k]!) : p[k]!]));
 
-function linearise({ unknowns, items }: Prepared, p: readonly number[], scale: readonly number[], delta: Float64Array): Linear {
+/** Where the adjustment stands: p (logarithms of positive unknowns) with the size of each, and δ. */
+interface Place {
+  readonly p: readonly number[];
+  readonly size: readonly number[];
+  readonly delta: Float64Array;
+}
+
+/** A residual outside its range is no number here; the step that led there is then taken shorter. */
+function residualAt({ residual }: AdjustmentItem, unknowns: Numbers, x: Numbers): number {
+  try {
+    return residual(unknowns, x);
+  } catch (outside) {
+    if (outside instanceof RangeError) return Number.NaN;
+    throw outside;
+  }
+}
+
+function linearise({ unknowns, items, sources }: Prepared, { p, size, delta }: Place): LinearItems {
   const at = unknownsAt(unknowns, p);
-  const moved = unknowns.map((_, k) => [1, -1].map((sign) => unknownsAt(unknowns, p.map((value, j) => (j === k ? value + sign * STEP * scale[k]! : value)))));
+  const steps = size.map((of) => STEP.ofValue * of);
+  const beside = steps.map((h, k) => [h, -h].map((by) => unknownsAt(unknowns, p.map((value, j) => (j === k ? value + by : value)))));
   const g: number[] = [];
   const A: number[][] = [];
-  const B: Map<number, number>[] = [];
+  const B: Float64Array[] = [];
+  const floor: number[] = [];
   for (const { item, inputs } of items) {
     const x: Record<string, number> = Object.fromEntries(inputs.map((input) => [input.name, valueOf(input, delta)]));
-    g.push(item.residual(at, x));
-    A.push(moved.map(([above, below], k) => (item.residual(above!, x) - item.residual(below!, x)) / (2 * STEP * scale[k]!)));
-    const row = new Map<number, number>();
-    for (const { name, centre, positive, parts } of inputs) {
+    const slopes = beside.map(([above, below], k) => (residualAt(item, above!, x) - residualAt(item, below!, x)) / (2 * steps[k]!));
+    const row = new Float64Array(sources.length);
+    for (const { name, centre, positive, parts, u } of inputs) {
       if (parts.length === 0) continue;
       const here = x[name]!;
-      const u = Math.sqrt(parts.reduce((sum, [, c]) => sum + c * c, 0));
-      const h = STEP * u * (positive ? here / centre : 1);
-      const slope = (item.residual(at, { ...x, [name]: here + h }) - item.residual(at, { ...x, [name]: here - h })) / (2 * STEP * u);
-      for (const [s, c] of parts) row.set(s, (row.get(s) ?? 0) + slope * c);
+      const stretched = positive ? here / centre : 1;
+      const h = Math.max(STEP.ofU * u * stretched, STEP.ofValue * Math.abs(here));
+      const slope = ((residualAt(item, at, { ...x, [name]: here + h }) - residualAt(item, at, { ...x, [name]: here - h })) / (2 * h)) * stretched;
+      for (const [s, c] of parts) row[s]! += slope * c;
     }
+    g.push(residualAt(item, at, x));
+    A.push(slopes);
     B.push(row);
+    floor.push(Math.hypot(FLOOR.ofSize * slopes.reduce((sum, slope, k) => sum + Math.abs(slope) * size[k]!, 0), FLOOR.ofU * Math.sqrt(row.reduce((sum, slope) => sum + slope * slope, 0))));
   }
-  return { g, A, B };
+  return { g, A, B, floor };
 }
 
-function productOf(B: Linear['B']): number[][] {
-  return B.map((a, i) => B.map((b, j) => {
-    if (j > i) return 0;
-    let sum = i === j ? FLOOR ** 2 : 0;
-    const [small, large] = a.size <= b.size ? [a, b] : [b, a];
-    for (const [s, x] of small) sum += x * (large.get(s) ?? 0);
-    return sum;
-  }));
-}
-
-/** L⁻¹ b. */
-function whitened(lower: Matrix, b: readonly number[]): number[] {
-  const x = [...b];
-  for (let i = 0; i < x.length; i++) {
-    let sum = x[i]!;
-    for (let k = 0; k < i; k++) sum -= lower[i]![k]! * x[k]!;
-    x[i] = sum / lower[i]![i]!;
-  }
-  return x;
-}
-
-/** L⁻ᵀ b. */
-function unwhitened(lower: Matrix, b: readonly number[]): number[] {
-  const x = [...b];
-  for (let i = x.length - 1; i >= 0; i--) {
-    let sum = x[i]!;
-    for (let k = i + 1; k < x.length; k++) sum -= lower[k]![i]! * x[k]!;
-    x[i] = sum / lower[i]![i]!;
-  }
-  return x;
-}
-
-const transposed = (m: Matrix): number[][] => (m[0] ?? []).map((_, k) => m.map((row) => row[k]!));
-const dot = (a: readonly number[], b: readonly number[]): number => a.reduce((sum, x, i) => sum + x * b[i]!, 0);
-
-interface Step {
-  readonly lower: Matrix;
-  /** L⁻¹A by unknown. */
-  readonly columns: readonly (readonly number[])[];
-  /** (AᵀV⁻¹A)⁻¹. */
-  readonly covariance: Matrix;
-  readonly change: readonly number[];
-  /** V⁻¹(w + A dp). */
-  readonly pulls: readonly number[];
-  readonly chiSquared: number;
-}
-
-function stepOf({ g, A, B }: Linear, delta: Float64Array): Step | 'underdetermined' | 'notConverged' {
-  if (![...g, ...A.flat()].every(Number.isFinite)) return 'notConverged';
-  const factored = cholesky(productOf(B));
-  if (factored.status !== 'factored') return 'notConverged';
-  const { lower } = factored;
-  const w = g.map((value, i) => {
-    let moved = 0;
-    for (const [s, slope] of B[i]!) moved += slope * delta[s]!;
-    return value - moved;
-  });
-  const columns = transposed(A).map((column) => whitened(lower, column));
-  const white = whitened(lower, w);
-  // Columns of one size, so that the rank is judged by the items and not by the units.
-  const sizes = columns.map((column) => Math.sqrt(dot(column, column)));
-  if (sizes.some((size) => !(size > 0))) return 'underdetermined';
-  const solved = leastSquares(transposed(columns.map((column, k) => column.map((x) => x / sizes[k]!))), white.map((x) => -x));
-  if (solved.status !== 'solved') return 'underdetermined';
-  const change = solved.x.map((x, k) => x / sizes[k]!);
-  const covariance = solved.covariance.map((row, j) => row.map((c, k) => c / (sizes[j]! * sizes[k]!)));
-  const residual = white.map((x, i) => x + columns.reduce((sum, column, k) => sum + column[i]! * change[k]!, 0));
-  return { lower, columns, covariance, change, pulls: unwhitened(lower, residual), chiSquared: dot(residual, residual) };
-}
+/** Size of each unknown: 1 of a logarithm; else the larger of value and u, so that a start at zero does no harm. */
+const sizesOf = (unknowns: readonly Unknown[], p: readonly number[], u: readonly number[]): number[] =>
+  unknowns.map(({ positive }, k) => (positive ? 1 : Math.max(Math.abs(p[k]!), u[k] ?? 0) || 1));
 
 /**
  * Adjustment of the unknowns p and of all sources δ (each in its u, stated at 0): min Σ δ_s² with g_i(p, x(δ)) = 0 for every item.
  *
- * Iterated Gauss–Helmert: with g + A dp + B(δ′ − δ) = 0 and V = B Bᵀ, dp = −(AᵀV⁻¹A)⁻¹AᵀV⁻¹w and δ′ = −BᵀV⁻¹(w + A dp), w = g − Bδ;
- * slopes are taken anew at the adjusted unknowns and inputs, which is what keeps a shared scale error from pulling the result
- * below all data (R. W. Peelle's puzzle, 1987, from memory). u is never scaled by √(χ²/ν).
+ * Iterated Gauss–Helmert (`gaussHelmert.ts`), slopes taken anew at the adjusted unknowns and inputs, which is what keeps a shared
+ * scale error from pulling the result below all data (R. W. Peelle's puzzle, 1987, from memory). The unknowns keep their
+ * contributions by source, du = −(AᵀV⁻¹A)⁻¹AᵀV⁻¹B dδ at the solution. u is never scaled by √(χ²/ν).
  *
- * Valid: at least as many items as unknowns; residuals near 0 at `start`. Unknowns keep their contributions by source.
- * Source: Mikhail & Ackermann, Observations and Least Squares (1976), combined adjustment; normalised deviation after
- * Baarda (1968): e_i/√P_ii with e = V⁻¹r, P = V⁻¹ − V⁻¹A(AᵀV⁻¹A)⁻¹AᵀV⁻¹ (both from memory).
+ * Valid: at least as many items as unknowns; residuals near 0 at `start`. An item is allowed a part of 10⁻⁹ of itself and 10⁻⁶ of its u
+ * beside its sources, so that exact items and items of the same sources are met; where that does not do, they are contradictory.
+ * Source: Mikhail & Ackermann, Observations and Least Squares (1976), combined adjustment; all inputs as observations as in the
+ * CODATA adjustments (Mohr & Taylor, Rev. Mod. Phys. 72 (2000) 351, appendix E), both from memory.
  * @throws RangeError where a positive unknown starts at or below zero
  */
 export function adjust({ unknowns, items }: { readonly unknowns: readonly Unknown[]; readonly items: readonly AdjustmentItem[] }): Adjusted {
   if (unknowns.some(({ positive, start }) => positive && !(start > 0))) throw new RangeError('adjust: a positive unknown starts at or below zero');
-  if (items.length < unknowns.length) return { status: 'underdetermined' };
+  if (items.length === 0 || items.length < unknowns.length) return { status: 'underdetermined' };
   const prepared = prepare(unknowns, items);
-  const p = unknowns.map(({ start, positive }) => (positive ? Math.log(start) : start));
-  const scale = unknowns.map(({ start, positive }) => (positive ? 1 : Math.max(Math.abs(start), FLOOR)));
-  const delta = new Float64Array(prepared.sources.length);
-  for (let iteration = 1; iteration <= ITERATIONS; iteration++) {
-    const linear = linearise(prepared, p, scale, delta);
-    const step = stepOf(linear, delta);
-    if (step === 'underdetermined' || step === 'notConverged') return { status: step };
-    const before = Float64Array.from(delta);
-    delta.fill(0);
-    for (const [i, row] of linear.B.entries()) for (const [s, slope] of row) delta[s]! -= slope * step.pulls[i]!;
-    step.change.forEach((dp, k) => (p[k]! += dp));
-    const still = step.change.every((dp, k) => Math.abs(dp) <= SETTLED * Math.sqrt(step.covariance[k]![k]!)) && delta.every((value, s) => Math.abs(value - before[s]!) <= SETTLED_SOURCE);
-    if (still) return resultOf(prepared, p, delta, iteration);
+  for (const part of STEP_PARTS) {
+    const found = iterate(prepared, part);
+    if (found.status !== 'notConverged') return found;
   }
   return { status: 'notConverged' };
 }
 
-function resultOf(prepared: Prepared, p: readonly number[], delta: Float64Array, iterations: number): Adjusted {
+function iterate(prepared: Prepared, part: number): Adjusted {
+  const { unknowns, sources } = prepared;
+  const start = unknowns.map(({ start: value, positive }) => (positive ? Math.log(value) : value));
+  let place: Place = { p: start, size: sizesOf(unknowns, start, []), delta: new Float64Array(sources.length) };
+  let last = Infinity;
+  for (let iteration = 1; iteration <= ITERATIONS; iteration++) {
+    const linear = linearise(prepared, place);
+    const step = stepOf(linear, place.delta);
+    if (step === 'underdetermined' && iteration === 1) return { status: 'underdetermined' };
+    if (typeof step === 'string') break;
+    const u = step.covariance.map((row, k) => Math.sqrt(row[k]!));
+    const to = adjustedSources(linear, step, sources.length);
+    const change = to.reduce((most, value, s) => Math.max(most, Math.abs(value - place.delta[s]!)), step.change.reduce((most, dp, k) => Math.max(most, Math.abs(dp) / u[k]!), 0));
+    const p = place.p.map((value, k) => value + part * step.change[k]!);
+    place = { p, size: sizesOf(unknowns, p, u), delta: place.delta.map((value, s) => value + part * (to[s]! - value)) };
+    const noBetter = change >= last / 2;
+    const stretch = stretchOf(linear, step);
+    if (noBetter && stretch > FLOOR_STRETCH && change <= SETTLED.ofStretch * stretch) return { status: 'contradictory' };
+    if (change <= SETTLED.fine || (noBetter && change <= SETTLED.coarse)) return resultOf(prepared, place, iteration);
+    last = change;
+  }
+  return { status: 'notConverged' };
+}
+
+/** δ′ = −BᵀV⁻¹(w + A dp). */
+function adjustedSources({ B }: LinearItems, { pulls }: Step, sources: number): Float64Array {
+  const delta = new Float64Array(sources);
+  for (const [i, row] of B.entries()) for (let s = 0; s < sources; s++) delta[s]! -= row[s]! * pulls[i]!;
+  return delta;
+}
+
+/** Largest share that a floor takes of an item, in times the floor. */
+const stretchOf = ({ floor }: LinearItems, { pulls }: Step): number => pulls.reduce((most, pull, i) => Math.max(most, Math.abs(pull * floor[i]!)), 0);
+
+function resultOf(prepared: Prepared, place: Place, iterations: number): Adjusted {
   const { unknowns, items, sources } = prepared;
-  const linear = linearise(prepared, p, unknowns.map(({ start, positive }) => (positive ? 1 : Math.max(Math.abs(start), FLOOR))), delta);
-  const step = stepOf(linear, delta);
-  if (step === 'underdetermined' || step === 'notConverged') return { status: step };
-  const { lower, columns, covariance, pulls } = step;
-  // gains[k][i] = ((AᵀV⁻¹A)⁻¹AᵀV⁻¹)_ki
-  const gains = unknowns.map((_, k) => unwhitened(lower, (columns[0] ?? []).map((__, i) => columns.reduce((sum, column, j) => sum + covariance[k]![j]! * column[i]!, 0))));
-  const values = unknownsAt(unknowns, p);
+  const linear = linearise(prepared, place);
+  const step = stepOf(linear, place.delta);
+  if (typeof step === 'string') return { status: 'notConverged' };
+  if (stretchOf(linear, step) > FLOOR_STRETCH) return { status: 'contradictory' };
+  const gains = items.map((_, i) => gainsOf(step, i));
+  const values = unknownsAt(unknowns, place.p);
   const found = Object.fromEntries(unknowns.map(({ name, positive }, k): [string, Uncertain] => {
-    const own = new Map<Source, number>();
-    const size = positive ? values[name]! : 1;
-    for (const [i, row] of linear.B.entries()) for (const [s, slope] of row) own.set(sources[s]!, (own.get(sources[s]!) ?? 0) - size * gains[k]![i]! * slope);
-    return [name, { value: values[name]!, own, through: new Map() }];
+    const value = values[name]!;
+    const parts = new Float64Array(sources.length);
+    for (const [i, row] of linear.B.entries()) for (let s = 0; s < parts.length; s++) parts[s]! -= gains[i]![k]! * row[s]!;
+    return [name, { value, own: new Map(sources.map((source, s) => [source, (positive ? value : 1) * parts[s]!] as const).filter(([, part]) => part !== 0)), through: new Map() }];
   }));
-  const inverse = items.map((_, i) => unwhitened(lower, whitened(lower, items.map((__, j) => (i === j ? 1 : 0)))));
-  const itemResults = items.map(({ item }, i): AdjustedItemResult => {
-    // P_ii = (V⁻¹)_ii − Σ_k (V⁻¹A)_ik gain_ki
-    const hidden = unknowns.reduce((sum, _, k) => sum + dot(inverse[i]!, linear.A.map((row) => row[k]!)) * gains[k]![i]!, 0);
-    const P = inverse[i]![i]! - hidden;
-    const redundancy = 1 - unknowns.reduce((sum, _, k) => sum + linear.A[i]![k]! * gains[k]![i]!, 0);
-    if (!(P > CHECKED * inverse[i]![i]!)) return { id: item.id, label: item.label, deviation: null, redundancy: Math.max(0, redundancy), without: null };
-    const without = Object.fromEntries(unknowns.map(({ name }, k) => [name, (gains[k]![i]! * pulls[i]!) / P]));
-    return { id: item.id, label: item.label, deviation: -pulls[i]! / Math.sqrt(P), redundancy, without };
+  const itemResults = items.map(({ item: { id, label } }, i): AdjustedItemResult => {
+    const check = checkOf(step, i);
+    if (check === null) return { id, label, deviation: null, redundancy: 0, without: null };
+    // The residual is predicted less measured, the deviation measured less predicted.
+    return { id, label, deviation: -check.deviation, redundancy: check.redundancy, without: Object.fromEntries(unknowns.map(({ name }, k) => [name, check.without[k]!])) };
   });
   const dof = items.length - unknowns.length;
-  const moved = sources.map((source, s) => ({ source, shift: delta[s]! })).sort((a, b) => Math.abs(b.shift) - Math.abs(a.shift));
+  const moved = sources.map((source, s) => ({ source, shift: place.delta[s]! })).sort((a, b) => Math.abs(b.shift) - Math.abs(a.shift));
   return { status: 'adjusted', unknowns: found, chiSquared: step.chiSquared, dof, probability: dof > 0 ? incompleteGamma(dof / 2, step.chiSquared / 2).upper : null, items: itemResults, moved, iterations };
 }

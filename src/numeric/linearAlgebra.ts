@@ -39,6 +39,28 @@ export function cholesky(a: Matrix): CholeskyResult {
 
 export type SolveResult = { readonly status: 'solved'; readonly x: readonly number[] } | { readonly status: 'notPositiveDefinite' };
 
+/** x with L x = b, L lower triangular with no zero on its diagonal. */
+export function forwardSubstitute(lower: Matrix, b: readonly number[]): number[] {
+  const x = [...b];
+  for (let i = 0; i < x.length; i += 1) {
+    let sum = x[i]!;
+    for (let k = 0; k < i; k += 1) sum -= lower[i]![k]! * x[k]!;
+    x[i] = sum / lower[i]![i]!;
+  }
+  return x;
+}
+
+/** x with Lᵀ x = b, L lower triangular with no zero on its diagonal. */
+export function transposeSubstitute(lower: Matrix, b: readonly number[]): number[] {
+  const x = [...b];
+  for (let i = x.length - 1; i >= 0; i -= 1) {
+    let sum = x[i]!;
+    for (let k = i + 1; k < x.length; k += 1) sum -= lower[k]![i]! * x[k]!;
+    x[i] = sum / lower[i]![i]!;
+  }
+  return x;
+}
+
 /**
  * x with A x = b, A symmetric positive definite.
  *
@@ -48,20 +70,54 @@ export function solveSymmetric(a: Matrix, b: readonly number[]): SolveResult {
   if (b.length !== a.length) throw new RangeError(`solveSymmetric: ${a.length} rows, ${b.length} right-hand sides`);
   const factored = cholesky(a);
   if (factored.status !== 'factored') return factored;
-  const { lower } = factored;
-  const n = b.length;
-  const x = [...b];
-  for (let i = 0; i < n; i += 1) {
-    let sum = x[i]!;
-    for (let k = 0; k < i; k += 1) sum -= lower[i]![k]! * x[k]!;
-    x[i] = sum / lower[i]![i]!;
+  return { status: 'solved', x: transposeSubstitute(factored.lower, forwardSubstitute(factored.lower, b)) };
+}
+
+/** Columns C as Q R: q by column, orthonormal; R upper triangular. */
+export interface ColumnBasis {
+  readonly q: Matrix;
+  readonly r: Matrix;
+  readonly fullRank: boolean;
+}
+
+const product = (a: readonly number[], b: readonly number[]): number => a.reduce((sum, value, i) => sum + value * b[i]!, 0);
+
+/** Rounds of taking the basis out of a vector: the second takes away what rounding left of the first. */
+const ROUNDS = 2;
+
+/** What of v stands upright on the basis, and the coefficients of the rest, v = Σ c_k q_k + upright. */
+export function uprightTo(q: Matrix, v: readonly number[]): { readonly upright: number[]; readonly coefficients: number[] } {
+  const upright = [...v];
+  const coefficients = q.map(() => 0);
+  for (let round = 0; round < ROUNDS; round += 1) {
+    for (const [k, column] of q.entries()) {
+      const c = product(column, upright);
+      coefficients[k]! += c;
+      for (let i = 0; i < upright.length; i += 1) upright[i]! -= c * column[i]!;
+    }
   }
-  for (let i = n - 1; i >= 0; i -= 1) {
-    let sum = x[i]!;
-    for (let k = i + 1; k < n; k += 1) sum -= lower[k]![i]! * x[k]!;
-    x[i] = sum / lower[i]![i]!;
+  return { upright, coefficients };
+}
+
+/**
+ * Orthonormal basis of columns, by Gram–Schmidt done twice. For few columns whose basis itself is asked for; a column whose part
+ * upright on those before it is below RANK_TOLERANCE of its length adds nothing and loses full rank.
+ *
+ * Source: "twice is enough", Kahan and Parlett, in Parlett, The Symmetric Eigenvalue Problem (1980), from memory.
+ */
+export function columnBasis(columns: Matrix): ColumnBasis {
+  const q: number[][] = [];
+  const r = columns.map(() => columns.map(() => 0));
+  let fullRank = true;
+  for (const [k, column] of columns.entries()) {
+    const { upright, coefficients } = uprightTo(q, column);
+    const length = Math.sqrt(product(upright, upright));
+    coefficients.forEach((c, j) => (r[j]![k] = c));
+    r[k]![k] = length;
+    if (!(length > RANK_TOLERANCE * Math.sqrt(product(column, column)))) fullRank = false;
+    q.push(upright.map((value) => (length > 0 ? value / length : 0)));
   }
-  return { status: 'solved', x };
+  return { q, r, fullRank };
 }
 
 /** J = Q R reduced to what least squares needs. */

@@ -67,6 +67,13 @@ it('what all points share goes through the slope afterwards and weighs nothing',
   expect(standardUncertainty(other.slope)).toBeCloseTo(Math.hypot(standardUncertainty(one.slope), 0.02 * one.slope.value), 9);
 });
 
+it('a scale that all points share moves the slope through the origin by exactly itself, also where the points scatter', () => {
+  const s = anchor(value('scale', 1, 0.05));
+  const scaled = [[1, 2.1], [2, 3.9], [3, 6.3], [4, 7.6]].map(([x, y], i) => ({ x: value(`x${i}`, x!, 0.05), y: propagate(({ a, b }) => a * b, { a: value(`y${i}`, y!, 0.08), b: s }) }));
+  const part = [...fitted(scaled, false).slope.through].reduce((sum, [a, c]) => sum + c * ([...a.flat.values()][0] ?? 0), 0);
+  expect(part / fitted(scaled, false).slope.value).toBeCloseTo(0.05, 9);
+});
+
 describe('tests of the line', () => {
   const straight = [1, 2, 3, 4, 5].map((x, i) => ({ x: exact(x), y: value(`y${x}`, 2 * x + [0.01, -0.02, 0.015, -0.01, 0.005][i]!, 0.02) }));
 
