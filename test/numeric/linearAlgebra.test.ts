@@ -1,7 +1,7 @@
 /** Cholesky and Householder QR. */
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { cholesky, leastSquares, solveSymmetric } from '../../src/numeric/linearAlgebra.ts';
+import { cholesky, columnBasis, forwardSubstitute, leastSquares, solveSymmetric, transposeSubstitute, uprightTo } from '../../src/numeric/linearAlgebra.ts';
 import type { LeastSquaresSolution, Matrix } from '../../src/numeric/linearAlgebra.ts';
 import reference from '../reference/linear-fits.json' with { type: 'json' };
 import { digits } from './digits.ts';
@@ -24,6 +24,13 @@ describe('Cholesky', () => {
     const result = solveSymmetric(a, a.map((row) => row.reduce((sum, value, k) => sum + value * x[k]!, 0)));
     if (result.status !== 'solved') throw new Error(result.status);
     result.x.forEach((value, i) => expect(digits(value, x[i]!)).toBeGreaterThan(14));
+  });
+
+  test('its triangle is solved forward and transposed', () => {
+    const lower = [[2, 0, 0], [6, 1, 0], [-8, 5, 3]];
+    expect(forwardSubstitute(lower, [2, 5, 1])).toEqual([1, -1, 14 / 3]);
+    // Lᵀx for x = (1, 2, 3): 2 + 12 − 24, 2 + 15, 9.
+    expect(transposeSubstitute(lower, [-10, 17, 9])).toEqual([1, 2, 3]);
   });
 
   test('a matrix that is indefinite, singular or zero has its status', () => {
@@ -92,5 +99,31 @@ describe('least squares by QR', () => {
     expect(() => leastSquares([[1], [2, 3]], [1, 2])).toThrow(RangeError);
     expect(() => leastSquares([[1], [NaN]], [1, 2])).toThrow(RangeError);
     expect(() => leastSquares([], [])).toThrow(RangeError);
+  });
+});
+
+describe('orthonormal basis of columns', () => {
+  test('gives the columns back from Q R, and its triangle that of the hand case (3, 4), (1, 2)', () => {
+    const { q, r, fullRank } = columnBasis([[3, 4], [1, 2]]);
+    expect(fullRank).toBe(true);
+    // Q = (3, 4)/5 and (−4, 3)/5 by hand: R = 5, 11/5, 2/5.
+    [[0, 0, 5], [0, 1, 2.2], [1, 1, 0.4]].forEach(([i, k, value]) => expect(r[i!]![k!]).toBeCloseTo(value!, 14));
+    [[0.6, 0.8], [-0.8, 0.6]].forEach((column, k) => column.forEach((value, i) => expect(q[k]![i]).toBeCloseTo(value, 14)));
+  });
+
+  test('stays orthonormal where columns are nearly one (Läuchli’s columns, 1961, from memory)', () => {
+    const small = 1e-8;
+    const { q, fullRank } = columnBasis([[1, small, 0, 0], [1, 0, small, 0], [1, 0, 0, small]]);
+    expect(fullRank).toBe(true);
+    for (const [j, a] of q.entries()) for (const [k, b] of q.entries()) expect(a.reduce((sum, value, i) => sum + value * b[i]!, 0)).toBeCloseTo(j === k ? 1 : 0, 14);
+  });
+
+  test('a column that adds nothing loses full rank, and what is upright on all is parted', () => {
+    expect(columnBasis([[1, 2, 3], [2, 4, 6]]).fullRank).toBe(false);
+    expect(columnBasis([[0, 0]]).fullRank).toBe(false);
+    const { q } = columnBasis([[1, 0, 0], [1, 1, 0]]);
+    const { upright, coefficients } = uprightTo(q, [3, 4, 5]);
+    expect(upright).toEqual([0, 0, 5]);
+    expect(coefficients).toEqual([3, 4]);
   });
 });
