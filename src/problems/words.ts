@@ -28,6 +28,7 @@ export const ROLE_NAMES = {
   amplitude: 'amplitude at the start',
   massHung: 'mass hung for timing',
   massHungAt: 'radius of the mass hung',
+  maximumTime: 'time to the first maximum',
   swingBefore: 'swing before the shot',
   timeSinceMaximum: 'time since the maximum of that swing',
   note: 'note',

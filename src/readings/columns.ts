@@ -61,6 +61,7 @@ export const ROLE_DIMENSIONS: Readonly<Record<Role, readonly Dimension[]>> = {
   amplitude: ['angle'],
   massHung: ['mass'],
   massHungAt: ['length'],
+  maximumTime: ['time'],
   swingBefore: ['length', 'angle', 'pixel', 'count'],
   timeSinceMaximum: ['time'],
   kind: [],
@@ -78,7 +79,7 @@ export const unitsOfRole = (role: Role): readonly Unit[] => ROLE_DIMENSIONS[role
 /** Unit taken where none is written, told with the proposal. */
 export const USUAL_UNIT: Readonly<Record<Role, string>> = {
   rest: 'mm', restAfter: 'mm', nextSwingDown: 'px', firstSwing: 'mm', nextSwing: 'mm', restDown: 'px', firstSwingDown: 'px', time: 's', voltage: 'V', pressure: 'Pa', tapImpulse: 'mN·s',
-  hammerIn: '°', hammerRebound: '°', hammerFollow: '°', tapForce: 'mN', tapDuration: 'ms', weight: 'mg', loading: 'mm', unloading: 'mm', swingsTime: 's', cycles: 'counts', amplitude: '°', massHung: 'g', massHungAt: 'mm', swingBefore: 'mm', timeSinceMaximum: 's', kind: '', label: '', note: '', ignored: '',
+  hammerIn: '°', hammerRebound: '°', hammerFollow: '°', tapForce: 'mN', tapDuration: 'ms', weight: 'mg', loading: 'mm', unloading: 'mm', swingsTime: 's', cycles: 'counts', amplitude: '°', massHung: 'g', massHungAt: 'mm', swingBefore: 'mm', timeSinceMaximum: 's', maximumTime: 's', kind: '', label: '', note: '', ignored: '',
 };
 
 /** Where a column stands while the proposal is being made. */
@@ -174,7 +175,7 @@ function claimByHeader(table: TableRead, profile: ColumnProfile): Claim {
 }
 
 const SINGLE: readonly Role[] = [
-  'kind', 'label', 'rest', 'restAfter', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum',
+  'kind', 'label', 'rest', 'restAfter', 'firstSwing', 'time', 'voltage', 'pressure', 'tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum', 'maximumTime',
 ];
 
 /** Of two columns with one role the better named keeps it; a second first swing is a next swing, any other is left aside, with the reason. */

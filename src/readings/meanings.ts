@@ -6,7 +6,7 @@ export type RecordKind = (typeof RECORD_KINDS)[number];
 
 export const ROLES = [
   'kind', 'label', 'rest', 'restAfter', 'firstSwing', 'nextSwing', 'nextSwingDown', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', 'tapImpulse',
-  'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum', 'note', 'ignored',
+  'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'cycles', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum', 'maximumTime', 'note', 'ignored',
 ] as const;
 /**
  * restDown, firstSwingDown: the marker's row in a picture, counted downward, beside its column in rest and firstSwing.
@@ -17,6 +17,7 @@ export const ROLES = [
  * through beyond the contact. loading, unloading: the reading with a known weight on, while weights are put on and while they are taken off.
  * swingsTime: time of `cycles` full cycles, `amplitude` at their start, with `massHung` at the radius `massHungAt`.
  * swingBefore: amplitude with which the pendulum still swings at the shot; timeSinceMaximum: from its last maximum on the side of the thrust to the shot.
+ * maximumTime: from the shot or tap to its first maximum.
  */
 export type Role = (typeof ROLES)[number];
 

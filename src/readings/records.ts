@@ -60,6 +60,8 @@ export interface SheetRecord {
   readonly amplitude: CellRead | null;
   readonly massHung: CellRead | null;
   readonly massHungAt: CellRead | null;
+  /** From the shot or tap to its first maximum. */
+  readonly maximumTime: CellRead | null;
   readonly swingBefore: CellRead | null;
   readonly timeSinceMaximum: CellRead | null;
   /** What is wrong in this row, each with its place. */
@@ -77,7 +79,7 @@ export interface RecordsRead {
 }
 
 /** Roles beyond the readings of a swing, each of one column. */
-const EVIDENCE = ['tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum'] as const;
+const EVIDENCE = ['tapImpulse', 'hammerIn', 'hammerRebound', 'hammerFollow', 'tapForce', 'tapDuration', 'weight', 'loading', 'unloading', 'swingsTime', 'amplitude', 'massHung', 'massHungAt', 'swingBefore', 'timeSinceMaximum', 'maximumTime'] as const;
 
 const SINGLE: readonly Role[] = ['kind', 'label', 'rest', 'restAfter', 'firstSwing', 'restDown', 'firstSwingDown', 'time', 'voltage', 'pressure', ...EVIDENCE, 'cycles'];
 

@@ -97,6 +97,7 @@ const PHRASES: Readonly<Record<Role, string>> = {
     'masa dodatkowa|pridana hmotnost|добавленная масса|付加質量|附加质量',
   massHungAt:
     'hung at|mass at|at radius|radius|radius of the mass|mass radius|distance of mass|place of the mass|radius der masse|abstand der masse|a la distance|rayon|radio|raggio|raio|straal|promien|polomer|радиус|半径',
+  maximumTime: 'time to first maximum|time to the first maximum|time to maximum|time to peak|peak time|zeit bis zum ersten ausschlag|zeit bis maximum|temps au premier maximum|temps de montee|tiempo al primer maximo|tempo al primo massimo|время до максимума|最大到達時間|到达最大时间',
   swingBefore:
     'swing before|swing before shot|swing before the shot|still swinging|swinging before|background swing|residual swing|residual amplitude|amplitude before|amplitude before the shot|restschwingung|schwingung vorher|amplitude vorher|' +
     'oscillation avant|amplitude avant|oscilacion previa|amplitud previa|oscillazione prima|ampiezza prima|oscilacao anterior|uitslag vooraf|wahanie przed|kmit pred|колебание до|射前振れ|射前摆动',

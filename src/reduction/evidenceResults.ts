@@ -104,7 +104,7 @@ export interface TapStudy {
 
 /** The pendulum after taps, brought to that as fired, and after shots. */
 export interface Comparison {
-  readonly id: 'damping' | 'period';
+  readonly id: 'damping' | 'period' | 'maximumTime';
   readonly taps: Stated;
   readonly shots: Stated;
   /** (shots − taps)/taps. */

@@ -128,7 +128,7 @@ type Ready = PlanFacts & { readonly scale: Scale };
 
 const planned = (kind: RecordKind): SessionRecord => ({
   id: `plan.${kind}`, line: '', kind, kindBy: 'person', label: '', note: '', rest: null, firstSwing: null, restDown: null, firstSwingDown: null, restAfter: null, nextSwingsDown: [], nextSwings: [], time: null, voltage: null, pressure: null,
-  tapImpulse: null, hammerIn: null, hammerRebound: null, hammerFollow: null, tapForce: null, tapDuration: null,
+  tapImpulse: null, maximumTime: null, hammerIn: null, hammerRebound: null, hammerFollow: null, tapForce: null, tapDuration: null,
   weight: null, loading: null, unloading: null, swingsTime: null, cycles: 1, amplitude: null, massHung: null, massHungAt: null, swingBefore: null, timeSinceMaximum: null, problems: [], cells: [], edited: [], sheet: 'plan', sheetName: '',
 });
 

@@ -114,7 +114,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     addedMasses: masses,
     tapStudy: study,
     forceRecords: ground.forceRecords,
-    comparisons: tapsAgainst({ damping, timings, bodies }),
+    comparisons: tapsAgainst({ damping, timings, bodies, records: records.filter(counts) }),
     agreement,
     difference,
     runs: { geometry: runs.geometry?.result ?? null, taps: runs.taps?.result ?? null },

@@ -269,6 +269,28 @@ describe('force records of the hammer', () => {
   });
 });
 
+describe('taps against firings', () => {
+  const withTimes = (shot: number, tap: number): Session => withSheets(
+    { ...bench(), sheets: [] },
+    sheet('shots', [['rest', 'mm'], ['firstSwing', 'mm'], ['maximumTime', 's'], ['swingsTime', 's'], ['cycles', 'counts']], SHOTS.map(([rest, first]) => [rest, first, exactly(Number((shot / 4).toFixed(3))), exactly(Number((20 * shot).toFixed(2))), 20]), { kindOfAll: 'shot' }),
+    sheet('taps', [['tapImpulse', 'mN·s'], ['rest', 'mm'], ['firstSwing', 'mm'], ['maximumTime', 's'], ['swingsTime', 's'], ['cycles', 'counts']], SIZES.map((i) => [exactly(i * 1e3), 0, exactly(readingOf((i * TAP_ARM) / K)), exactly(Number((tap / 4).toFixed(3))), exactly(Number((20 * tap).toFixed(2))), 20]), { kindOfAll: 'tap' }),
+  );
+  const T = timed(0, 0);
+
+  it('agree in period and time to the first maximum where the pendulum is the same', () => {
+    const { comparisons } = reduce(withTimes(T, T), null);
+    expect(comparisons.map(({ id }) => id)).toEqual(['period', 'maximumTime']);
+    for (const { inU } of comparisons) expect(Math.abs(inU)).toBeLessThan(2);
+  });
+
+  it('differ where it changed by 2 % between them', () => {
+    for (const { inU, relative } of reduce(withTimes(T, T * 1.02), null).comparisons) {
+      expect(inU).toBeLessThan(-5);
+      expect(relative.value).toBeCloseTo(1 / 1.02 - 1, 2);
+    }
+  });
+});
+
 describe('the adjustment of all evidence', () => {
   const all = (massFactor: number, hammer = 1): Session => withEntry(withSheets(bench(massFactor), timings([timed(0, 0), 100, '', ''], [timed(0.02, 0.15), 100, 20, 150]), tapSheet('taps', SIZES, K * hammer)), 'period', `${exactly(timed(0, 0))} s ± 1 ms`);
 

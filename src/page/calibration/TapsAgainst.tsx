@@ -26,10 +26,11 @@ export function TapsAgainst({ reduction }: { readonly reduction: Reduction }) {
   );
 }
 
-const NAMES: Readonly<Record<Comparison['id'], string>> = { damping: 'Damping of the free swing', period: 'Period of the free swing' };
+const NAMES: Readonly<Record<Comparison['id'], string>> = { damping: 'Damping of the free swing', period: 'Period of the free swing', maximumTime: 'Time to the first maximum' };
 
 const WHAT_IT_WOULD_MEAN: Readonly<Record<Comparison['id'], string>> = {
   damping: 'the pressure, a cable or a rub changed between them, and the damping of the first swing with it',
+  maximumTime: 'one of the pulses is not short, the pendulum swung before it, or another mode was struck',
   period: 'the pendulum itself changed between them: a mass, a cable, the air it moves; the factor of the taps is then not that of the shots',
 };
 
@@ -37,7 +38,7 @@ const AGREES = 2;
 
 export function comparisonSentence({ id, taps, shots, relative, inU }: Comparison): string {
   const unit = id === 'damping' ? PLAIN : siUnit('time');
-  const symbol = id === 'damping' ? 'ζ' : 'T_0'.replace('_0', '₀');
+  const symbol = { damping: 'ζ', period: 'T₀', maximumTime: 'tₚ' }[id];
   const both = `${symbol} = ${withPlusMinus(taps.value, taps.u, unit)} after taps (brought to the pendulum as fired), ${withPlusMinus(shots.value, shots.u, unit)} after shots (± u)`;
   return Math.abs(inU) <= AGREES
     ? `${both}: agrees, ${timesU(Math.abs(inU))} standard uncertainties apart.`
