@@ -285,6 +285,26 @@ function words({ code, place, facts, weight }: Problem): string {
       return 'a force and its length make an impulse; one of the two is missing here, so this tap has none.';
     case 'tap-both-rebound-and-follow':
       return 'the hammer cannot come back and go on through at once; both angles are filled in, so this tap has no known impulse. Blank the one that was not seen.';
+    case 'trace-no-samples':
+      return 'no two columns of numbers, time and displacement, of twenty rows or more were found in it. Check that the whole record was saved.';
+    case 'trace-too-long':
+      return `the record has ${text('rows')} samples; up to ${text('most')} are read for now. Save every tenth sample, or a part of it.`;
+    case 'trace-time-not-rising':
+      return 'the time does not rise here; the record is left out. Check that it is one record, in order.';
+    case 'trace-constant':
+      return 'the displacement never changes: the sensor was not read, or this is another column.';
+    case 'trace-unit-assumed':
+      return `its header does not name both units; ${text('time')} and ${text('reading')} are taken. Write them in the header.`;
+    case 'trace-event-not-read':
+      return `line ${text('at')} of the list of shots, “${found}”, is not a time with a kind after it. Write 12.5, or 12.5 tap 1.2 mN·s, or 40.2 blank.`;
+    case 'trace-events-outside':
+      return `${many('events', 'shot')} of its list lie outside the record, which runs from ${quantity('from', 'time')} to ${quantity('to', 'time')}, and are left out. Check the clock of the list.`;
+    case 'trace-not-fitted':
+      return text('why') === 'noSwing' ? 'no swing stands out of it: fewer than three passages through the rest.' : 'its samples do not tell a swing with these shots: too few between them, or two at one time.';
+    case 'trace-position-step':
+      return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
+    case 'trace-large-swing':
+      return `a swing of ${figure('degrees', 3)}° is wide; its jump is solved with the linear equation, which is off by more than 0.1 % there.`;
     case 'force-record-no-samples':
       return 'no two columns of numbers, time and force, were found in it. Check that the whole record was saved.';
     case 'force-record-time-not-rising':

@@ -24,6 +24,7 @@ import { dampingOf, type Damping } from './swings.ts';
 import { tapsOf } from './tapImpulse.ts';
 import { placesInRun } from './taps.ts';
 import { barePeriod, timingsOf } from './timings.ts';
+import { tracesOf } from './traces.ts';
 import { weightsOf } from './weights.ts';
 
 export interface GroundRecords {
@@ -42,7 +43,7 @@ export function groundOf(session: Session, { records, counts, counted, exactly }
   const { choices } = session;
   const bench = readBench(session);
   problems.push(...bench.problems);
-  const asked = records.length > 0 || valueOf(bench, 'guessedImpulse') !== null;
+  const asked = records.length > 0 || session.traces.length > 0 || valueOf(bench, 'guessedImpulse') !== null;
   if (asked) {
     const timedInTable = records.some((record) => counts(record) && record.swingsTime !== null && record.massHung === null && record.massHungAt === null);
     for (const name of missingEntries(bench, choices)) if (name !== 'period' || !timedInTable) problems.push(problem('entry-missing', 'stops', { entry: name }, { label: ENTRIES[name].label }));
@@ -77,14 +78,16 @@ export function groundOf(session: Session, { records, counts, counted, exactly }
   const frequency = film ? exact((2 * Math.PI) / (film.told.period * (filmFactors?.stretch ?? 1))) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
   const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, { background: backgroundOf(records, { bench, choices, scale, frequency, ratio: damping.ratio.shots, spread }, problems), pulse: measuredPulse(session, problems) }, problems);
   const swung = film ? undampedOf(damping) : damping;
-  const swings = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
+  const traces = tracesOf(session.traces, choices, scale, problems);
+  const handRead = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
+  const swings = [...handRead, ...traces.swings];
   const tapped = bodies && propagate(naturalFrequency, { inertia: bodies.taps.inertia, stiffness: bodies.taps.stiffness });
   const forceRecords = forceRecordsOf(session.forceRecords, problems);
   const taps = tapsOf(swings, { bench, choices, forceRecords, gravity: stand.gravity, frequency: tapped ?? frequency, ratio: damping.ratio.taps }, problems);
   const taken = new Map(session.sheets.map((sheet) => [sheet.id, sheet.taken ?? ('asOrdered' as const)]));
   const places = placesInRun(swings, ({ record }) => taken.get(record.sheet) ?? 'asOrdered');
   const known = factorsOf({ bodies, film: filmFactors, stand, taps: taps.filter((tap) => counts(tap.swing.record)), places, choices });
-  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, forceRecords: forceRecords.told, taps, places, known };
+  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, traces: traces.told, forceRecords: forceRecords.told, taps, places, known };
 }
 
 /** The measured pulse, where it is the one chosen. */

@@ -113,6 +113,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     weights: weights?.told ?? null,
     addedMasses: masses,
     tapStudy: study,
+    traces: ground.traces,
     forceRecords: ground.forceRecords,
     comparisons: tapsAgainst({ damping, timings, bodies, records: records.filter(counts) }),
     agreement,

@@ -232,6 +232,25 @@ export interface BenchEffect {
   readonly matters: boolean;
 }
 
+/** A sampled trace as fitted. */
+export interface TraceTold {
+  readonly id: string;
+  readonly name: string;
+  readonly samples: number;
+  /** s. */
+  readonly from: number;
+  readonly to: number;
+  readonly events: number;
+  /** T₀ = 2π/ω_n, s, and ζ; null where no swing was fitted. */
+  readonly period: Stated | null;
+  readonly ratio: Stated | null;
+  /** sd of the residuals in the SI unit of the reading, and their power at the swing's frequency over white noise's. */
+  readonly noise: number | null;
+  readonly colour: number | null;
+  /** u of a jump by noise alone, as a throw in the unit of the reading. */
+  readonly least: number | null;
+}
+
 /** A column as found in a sheet, with what was proposed and why. */
 export interface SheetColumn {
   readonly header: string;
@@ -278,6 +297,7 @@ export interface Reduction {
   readonly weights: WeightsTold | null;
   readonly addedMasses: AddedMassesTold | null;
   readonly tapStudy: TapStudy | null;
+  readonly traces: readonly TraceTold[];
   readonly forceRecords: readonly ForceRecordTold[];
   readonly comparisons: readonly Comparison[];
   /** null where nothing measured stands against a prediction. */

@@ -3,7 +3,7 @@ import { RECORD_KINDS } from '../readings/meanings.ts';
 import type { ColumnMeaning, RecordKind, Role } from '../readings/meanings.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
 import { recordId } from './session.ts';
-import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet } from './session.ts';
+import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet, Trace } from './session.ts';
 
 export type Edit = (session: Session) => Session;
 
@@ -55,6 +55,14 @@ export const setChoice = <Name extends keyof Choices>(name: Name, value: Choices
 export const setChoices = (choices: Partial<Choices>): Edit => (session) => ({ ...session, choices: { ...session.choices, ...choices } });
 
 export const setFreeSwing = (text: string): Edit => (session) => ({ ...session, freeSwing: text });
+
+/** One more sampled trace, after those that are there. */
+export const addTrace = (trace: Omit<Trace, 'id' | 'events'>): Edit => (session) =>
+  ({ ...session, traces: [...session.traces, { ...trace, events: '', id: `t${nextNumber(session.traces.map(({ id }) => id), 't')}` }] });
+
+export const removeTrace = (id: string): Edit => (session) => ({ ...session, traces: session.traces.filter((trace) => trace.id !== id) });
+
+export const setTraceEvents = (id: string, events: string): Edit => (session) => ({ ...session, traces: session.traces.map((trace) => (trace.id === id ? { ...trace, events } : trace)) });
 
 /** One more record of the hammer's force, after those that are there. */
 export const addForceRecord = (record: Omit<ForceRecord, 'id'>): Edit => (session) =>

@@ -6,7 +6,7 @@ import type { ColumnMeaning } from '../readings/meanings.ts';
 import { ENTRY_NAMES, PART_ENTRIES } from './entries.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
 import { CHOICE_VALUES, emptySession, FIRST_CHOICES, MEASURED } from './session.ts';
-import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet } from './session.ts';
+import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet, Trace } from './session.ts';
 
 export interface SessionRead {
   /** null where the text is no session of ours, or of a later version. */
@@ -18,7 +18,7 @@ const VERSION = 1;
 
 /** Keys in the order in which they are written, whatever order edits left them in; others follow as they stand. */
 const KEY_ORDER = [
-  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'instruments', 'freeSwing', 'forceRecords', 'pulseSamples', 'choices', 'sheets', 'marks',
+  'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'instruments', 'freeSwing', 'traces', 'forceRecords', 'pulseSamples', 'choices', 'sheets', 'marks',
   'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
   'kind', 'setAside', 'reason', 'serial', 'certificate', 'due', 'measures', 'scale', 'instrument',
 ];
@@ -207,17 +207,26 @@ class Reading {
     });
   }
 
-  forceRecords(value: unknown): ForceRecord[] {
+  /** Records kept as text: of the force, and traces. */
+  texts(what: string, value: unknown): (ForceRecord & { readonly found: Json; readonly where: string })[] {
     const seen = new Set<string>();
-    return this.list('forceRecords', value).flatMap((record, index) => {
-      const where = `forceRecords[${index + 1}]`;
+    return this.list(what, value).flatMap((record, index) => {
+      const where = `${what}[${index + 1}]`;
       if (!isObject(record) || !isText(record['id']) || record['id'] === '' || seen.has(record['id']) || !isText(record['text'])) {
         this.miss(where, record);
         return [];
       }
       seen.add(record['id']);
-      return [{ id: record['id'], name: this.take(`${where}.name`, record['name'], isText, ''), text: record['text'], sha256: this.take(`${where}.sha256`, record['sha256'], isText, '') }];
+      return [{ id: record['id'], name: this.take(`${where}.name`, record['name'], isText, ''), text: record['text'], sha256: this.take(`${where}.sha256`, record['sha256'], isText, ''), found: record, where }];
     });
+  }
+
+  forceRecords(value: unknown): ForceRecord[] {
+    return this.texts('forceRecords', value).map(({ id, name, text, sha256 }) => ({ id, name, text, sha256 }));
+  }
+
+  traces(value: unknown): Trace[] {
+    return this.texts('traces', value).map(({ id, name, text, sha256, found, where }) => ({ id, name, text, sha256, events: this.take(`${where}.events`, found['events'], isText, '') }));
   }
 
   marks(value: unknown): Session['marks'] {
@@ -248,6 +257,7 @@ class Reading {
       parts: this.parts(found['parts']),
       instruments,
       freeSwing: this.take('freeSwing', found['freeSwing'], isText, ''),
+      traces: this.traces(found['traces'] ?? []),
       forceRecords: this.forceRecords(found['forceRecords'] ?? []),
       pulseSamples: this.take('pulseSamples', found['pulseSamples'], isText, ''),
       choices: this.choices(found['choices']),

@@ -132,6 +132,16 @@ export interface ForceRecord {
   readonly sha256: string;
 }
 
+/** A sampled record of the swing, as it came, with the list of its shots and taps. */
+export interface Trace {
+  readonly id: string;
+  readonly name: string;
+  readonly text: string;
+  readonly sha256: string;
+  /** One a line: "12.5", "12.5 tap 1.2 mN·s", "40.2 blank"; '': by the trigger. */
+  readonly events: string;
+}
+
 export interface Session {
   readonly format: 'firstswing-session';
   readonly version: 1;
@@ -143,6 +153,8 @@ export interface Session {
   readonly instruments: readonly Instrument[];
   /** Turning readings of one free swing, in order, typed as a list with its unit: "31.6 -29.1 26.9 mm"; '' for none. */
   readonly freeSwing: string;
+  /** Sampled records of the swing. */
+  readonly traces: readonly Trace[];
   /** Records of the hammer's force, one or more taps in each, in the order of the taps. */
   readonly forceRecords: readonly ForceRecord[];
   /** Samples of a measured pulse, a time and a thrust (or what goes with it) a line, a header line before them if there is one; '' for none. */
@@ -233,6 +245,7 @@ export function emptySession(): Session {
     parts: [],
     instruments: [],
     freeSwing: '',
+    traces: [],
     forceRecords: [],
     pulseSamples: '',
     choices: FIRST_CHOICES,

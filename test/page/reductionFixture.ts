@@ -133,6 +133,7 @@ export const REDUCTION: Reduction = {
   tapStudy: null,
   comparisons: [],
   forceRecords: [],
+  traces: [],
   agreement: null,
   calibrations: { geometry: calibration('geometry', FACTOR), taps: calibration('taps', FACTOR * 1.008) },
   chosen: 'geometry',
