@@ -2,7 +2,7 @@
 import { Suspense, useEffect, useRef, useState } from 'react';
 import { demoSession } from '../session/demo.ts';
 import { emptySession } from '../session/session.ts';
-import { FollowLater, useActions, useStateNow, useStore } from '../store/hooks.tsx';
+import { FollowLater, useActions, useStateNow, useStore, useTraces } from '../store/hooks.tsx';
 import styles from './App.module.css';
 import { BenchSection } from './bench/BenchSection.tsx';
 import { HeadLine } from './head/HeadLine.tsx';
@@ -23,8 +23,9 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
   const { change, undo, redo } = useActions();
   const now = useStateNow();
   const intake = useReadingsIntake();
-  const hasSheets = useStore((state) => state.session.sheets.length > 0);
-  const plans = useStore(({ session: { sheets, entries } }) => sheets.length === 0 || entries.guessedImpulse !== undefined || entries.scaleReach !== undefined);
+  const traces = useTraces();
+  const hasSheets = useStore(({ session }) => session.sheets.length + session.traces.length > 0);
+  const plans = useStore(({ session: { sheets, traces: taken, entries } }) => sheets.length + taken.length === 0 || entries.guessedImpulse !== undefined || entries.scaleReach !== undefined);
   const chooser = useRef<HTMLInputElement>(null);
   const [help, setHelp] = useState(false);
   const [messages, setMessages] = useState<readonly Message[]>(() => arrival.map((message, index) => ({ ...message, id: index })));
@@ -41,14 +42,14 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
   async function takeFiles(files: readonly File[]): Promise<void> {
     const tables: File[] = [];
     for (const file of files) {
-      if (await looksLikeSession(file)) say(await openSessionFile(file, change, now));
+      if (await looksLikeSession(file)) say(await openSessionFile(file, change, now, traces?.desk ?? null));
       else tables.push(file);
     }
     if (tables.length > 0) await intake.takeFiles(tables);
   }
 
   const choose = () => chooser.current?.click();
-  const save = () => saveSessionFile(now().session);
+  const save = () => void saveSessionFile(now().session, traces?.desk ?? null);
   const openDemo = () => change('open the demo', () => demoSession());
   const dragging = useSheetEvents({
     onUndo: undo,

@@ -102,6 +102,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
   for (const name of ['timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightFactor', 'weightSpread', 'pullArm', 'hammerMass', 'hammerLength', 'hammerAngleSpread', 'hammerZero'] as const) used.add(name);
   when(choices.form !== 'filmStrip', 'staticStiffness', 'forcePerDeflection');
   when(choices.hammerForm === 'compound', 'hammerContact', 'hammerPeriod', 'hammerInertia');
+  when(way.reads === 'length', 'sensorSlope', 'sensorOffset', 'sensorCorrelation');
   for (const name of ['guessedImpulse', 'scaleReach'] as const) used.add(name);
   if (choices.gravityWay === 'typed') used.add('gravity');
   else for (const name of ['latitude', 'height'] as const) needed.add(name);
@@ -116,7 +117,7 @@ export function entriesInUse(choices: Choices): { readonly used: ReadonlySet<Ent
 }
 
 /** Entries for which a value without ± is usual and no remark is due. */
-const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'pivotAcross', 'pivotDown', 'cameraYaw', 'cameraToPlane', 'lensDistortion', 'markerRadius', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'tapContact', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
+const QUIET: ReadonlySet<string> = new Set<string>(['division', 'readingSpread', 'tapSpread', 'periodCycles', 'periodAmplitude', 'calibrationMassInertia', 'ownInertia', 'scaleMark', 'height', 'latitude', 'windowThickness', 'windowIndex', 'parallaxGap', 'cameraDistance', 'eyeShift', 'faceOffset', 'screenTilt', 'beamIncidence', 'beamOutOfPlane', 'mirrorRadius', 'countsPerTurn', 'sensorOffset', 'sensorCorrelation', 'pivotAcross', 'pivotDown', 'cameraYaw', 'cameraToPlane', 'lensDistortion', 'markerRadius', 'plateInertia', 'gravityPart', 'filmMass', 'pulseDuration', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'tapContact', 'propellantUsed', 'propellantDistance', 'plumeExponent', 'pressure', 'tapPressure', 'barometer', 'dialFullScale', 'dialClass', 'vacuumBelow', 'stripWidth', 'stripThickness', 'airTemperature', 'capacitance', 'leadResistance', 'targetHalfAngle', 'timingSpread', 'hungMassSpread', 'hungAtSpread', 'hungMassInertia', 'weightSpread', 'hammerAngleSpread', 'hammerZero', 'guessedImpulse', 'scaleReach']);
 
 const LARGE_RELATIVE = 0.3;
 

@@ -2,8 +2,8 @@
 import { RECORD_KINDS } from '../readings/meanings.ts';
 import type { ColumnMeaning, RecordKind, Role } from '../readings/meanings.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
-import { recordId } from './session.ts';
-import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet, Trace } from './session.ts';
+import { FIRST_TRACE, recordId } from './session.ts';
+import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet, Trace, TraceLine } from './session.ts';
 
 export type Edit = (session: Session) => Session;
 
@@ -57,12 +57,38 @@ export const setChoices = (choices: Partial<Choices>): Edit => (session) => ({ .
 export const setFreeSwing = (text: string): Edit => (session) => ({ ...session, freeSwing: text });
 
 /** One more sampled trace, after those that are there. */
-export const addTrace = (trace: Omit<Trace, 'id' | 'events'>): Edit => (session) =>
-  ({ ...session, traces: [...session.traces, { ...trace, events: '', id: `t${nextNumber(session.traces.map(({ id }) => id), 't')}` }] });
+export const addTrace = (trace: Pick<Trace, 'name' | 'sha256' | 'bytes'> & Partial<Trace>): Edit => (session) =>
+  ({ ...session, traces: [...session.traces, { ...FIRST_TRACE, ...trace, id: `t${nextNumber(session.traces.map(({ id }) => id), 't')}` }] });
 
 export const removeTrace = (id: string): Edit => (session) => ({ ...session, traces: session.traces.filter((trace) => trace.id !== id) });
 
-export const setTraceEvents = (id: string, events: string): Edit => (session) => ({ ...session, traces: session.traces.map((trace) => (trace.id === id ? { ...trace, events } : trace)) });
+/** Changes how one trace is read. */
+export const setTrace = (id: string, change: Partial<Omit<Trace, 'id' | 'sha256' | 'bytes'>>): Edit => (session) =>
+  ({ ...session, traces: session.traces.map((trace) => (trace.id === id ? { ...trace, ...change } : trace)) });
+
+/** The lines of a list typed anew: a line that is there already keeps its id; where as many are left, so does one that changed. */
+export function linesAgain(before: readonly TraceLine[], text: string): readonly TraceLine[] {
+  const texts = text === '' ? [] : text.split('\n');
+  const free = [...before];
+  const same = texts.map((line) => {
+    const at = free.findIndex((one) => one.text === line);
+    return at < 0 ? null : free.splice(at, 1)[0]!;
+  });
+  const changed = texts.length === before.length ? free : [];
+  let next = nextNumber(before.map(({ id }) => id), 'e');
+  return texts.map((line, i) => same[i] ?? { id: changed.shift()?.id ?? `e${next++}`, text: line });
+}
+
+/** One line more in the list of a trace's shots, or of its bad stretches. */
+export const addTraceLine = (id: string, list: 'events' | 'bad', text: string): Edit => (session) => ({
+  ...session,
+  traces: session.traces.map((trace) => (trace.id === id ? { ...trace, [list]: [...trace[list], { id: `e${nextNumber(trace[list].map((line) => line.id), 'e')}`, text }] } : trace)),
+});
+
+export const setTraceLine = (id: string, list: 'events' | 'bad', line: string, text: string | null): Edit => (session) => ({
+  ...session,
+  traces: session.traces.map((trace) => (trace.id === id ? { ...trace, [list]: trace[list].flatMap((one) => (one.id !== line ? [one] : text === null ? [] : [{ ...one, text }])) } : trace)),
+});
 
 /** One more record of the hammer's force, after those that are there. */
 export const addForceRecord = (record: Omit<ForceRecord, 'id'>): Edit => (session) =>

@@ -5,8 +5,8 @@ import { RECORD_KINDS, ROLES } from '../readings/meanings.ts';
 import type { ColumnMeaning } from '../readings/meanings.ts';
 import { ENTRY_NAMES, PART_ENTRIES } from './entries.ts';
 import type { EntryName, PartEntryName } from './entries.ts';
-import { CHOICE_VALUES, emptySession, FIRST_CHOICES, MEASURED } from './session.ts';
-import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet, Trace } from './session.ts';
+import { CHOICE_VALUES, emptySession, FIRST_CHOICES, MEASURED, TRACE_USES } from './session.ts';
+import type { Choices, Entry, ForceRecord, Instrument, Mark, Part, Session, Sheet, Trace, TraceLine, TraceUse } from './session.ts';
 
 export interface SessionRead {
   /** null where the text is no session of ours, or of a later version. */
@@ -19,7 +19,7 @@ const VERSION = 1;
 /** Keys in the order in which they are written, whatever order edits left them in; others follow as they stand. */
 const KEY_ORDER = [
   'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'instruments', 'freeSwing', 'traces', 'forceRecords', 'pulseSamples', 'choices', 'sheets', 'marks',
-  'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
+  'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'bytes', 'uses', 'timeUnit', 'readingUnit', 'rate', 'exposure', 'eventsFrom', 'events', 'offset', 'blank', 'refine', 'bad', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
   'kind', 'setAside', 'reason', 'serial', 'certificate', 'due', 'measures', 'scale', 'instrument',
 ];
 
@@ -30,12 +30,28 @@ function inOrder(_key: string, value: unknown): unknown {
 }
 
 /** The file's text: JSON, indented and in one order, so that two versions of a session can be compared line by line. */
-export const sessionToText = (session: Session): string => `${JSON.stringify(session, inOrder, 1)}\n`;
+export const sessionToText = (session: Session, traceBytes: TraceBytesPacked = {}): string =>
+  `${JSON.stringify(Object.keys(traceBytes).length === 0 ? session : { ...session, traceBytes }, inOrder, 1)}\n`;
+
+/** The bytes of traces in a file of their own right: gzip in base64, by the SHA-256 of what they unpack to. */
+export type TraceBytesPacked = Readonly<Record<string, string>>;
+
+/** The bytes of traces that a session file brings along; those that are no text are told as damage by sessionFromText. */
+export function traceBytesIn(text: string): TraceBytesPacked {
+  try {
+    const found: unknown = JSON.parse(text.replace(/^\uFEFF/, ''));
+    const bytes = isObject(found) ? found['traceBytes'] : undefined;
+    return isObject(bytes) ? Object.fromEntries(Object.entries(bytes).filter((entry): entry is [string, string] => isText(entry[1]))) : {};
+  } catch {
+    return {};
+  }
+}
 
 type Json = Readonly<Record<string, unknown>>;
 
 const isObject = (value: unknown): value is Json => typeof value === 'object' && value !== null && !Array.isArray(value);
 const isText = (value: unknown): value is string => typeof value === 'string';
+const isCount = (value: unknown): value is number => typeof value === 'number' && Number.isSafeInteger(value) && value >= 0;
 const isOneOf = <Value extends string>(values: readonly Value[]) => (value: unknown): value is Value =>
   values.some((known) => known === value);
 
@@ -207,26 +223,57 @@ class Reading {
     });
   }
 
-  /** Records kept as text: of the force, and traces. */
-  texts(what: string, value: unknown): (ForceRecord & { readonly found: Json; readonly where: string })[] {
+  forceRecords(value: unknown): ForceRecord[] {
     const seen = new Set<string>();
-    return this.list(what, value).flatMap((record, index) => {
-      const where = `${what}[${index + 1}]`;
+    return this.list('forceRecords', value).flatMap((record, index) => {
+      const where = `forceRecords[${index + 1}]`;
       if (!isObject(record) || !isText(record['id']) || record['id'] === '' || seen.has(record['id']) || !isText(record['text'])) {
         this.miss(where, record);
         return [];
       }
       seen.add(record['id']);
-      return [{ id: record['id'], name: this.take(`${where}.name`, record['name'], isText, ''), text: record['text'], sha256: this.take(`${where}.sha256`, record['sha256'], isText, ''), found: record, where }];
+      return [{ id: record['id'], name: this.take(`${where}.name`, record['name'], isText, ''), text: record['text'], sha256: this.take(`${where}.sha256`, record['sha256'], isText, '') }];
     });
   }
 
-  forceRecords(value: unknown): ForceRecord[] {
-    return this.texts('forceRecords', value).map(({ id, name, text, sha256 }) => ({ id, name, text, sha256 }));
+  traces(value: unknown): Trace[] {
+    const seen = new Set<string>();
+    return this.list('traces', value).flatMap((found, index) => {
+      const where = `traces[${index + 1}]`;
+      if (!isObject(found) || !isText(found['id']) || found['id'] === '' || seen.has(found['id']) || !isText(found['sha256'])) {
+        this.miss(where, found);
+        return [];
+      }
+      seen.add(found['id']);
+      const text = (key: string): string => this.take(`${where}.${key}`, found[key], isText, '');
+      return [{
+        id: found['id'], name: text('name'), sha256: found['sha256'], bytes: this.take(`${where}.bytes`, found['bytes'], isCount, 0), uses: this.uses(`${where}.uses`, found['uses']),
+        timeUnit: text('timeUnit'), readingUnit: text('readingUnit'), rate: text('rate'), exposure: text('exposure'), eventsFrom: this.take(`${where}.eventsFrom`, found['eventsFrom'], isOneOf(['list', 'trigger', 'found']), 'list'), events: this.lines(`${where}.events`, found['events']),
+        offset: text('offset'), blank: text('blank'), refine: text('refine'), bad: this.lines(`${where}.bad`, found['bad']),
+      }];
+    });
   }
 
-  traces(value: unknown): Trace[] {
-    return this.texts('traces', value).map(({ id, name, text, sha256, found, where }) => ({ id, name, text, sha256, events: this.take(`${where}.events`, found['events'], isText, '') }));
+  uses(where: string, value: unknown): Trace['uses'] {
+    const uses: Partial<Record<TraceUse, number>> = {};
+    for (const [use, column] of Object.entries(this.object(where, value))) {
+      const known = TRACE_USES.find((one) => one === use);
+      if (known && (column === -1 || isCount(column))) uses[known] = column;
+      else this.miss(`${where}.${use}`, column);
+    }
+    return uses;
+  }
+
+  lines(where: string, value: unknown): TraceLine[] {
+    const seen = new Set<string>();
+    return this.list(where, value).flatMap((line, index) => {
+      if (!isObject(line) || !isText(line['id']) || line['id'] === '' || seen.has(line['id']) || !isText(line['text'])) {
+        this.miss(`${where}[${index + 1}]`, line);
+        return [];
+      }
+      seen.add(line['id']);
+      return [{ id: line['id'], text: line['text'] }];
+    });
   }
 
   marks(value: unknown): Session['marks'] {

@@ -132,15 +132,50 @@ export interface ForceRecord {
   readonly sha256: string;
 }
 
-/** A sampled record of the swing, as it came, with the list of its shots and taps. */
+/** One line of the list of a trace's shots and taps: "12.5", "12.5 s tap 1.2 mN·s", "40.2 blank". Its id stays when the text changes. */
+export interface TraceLine {
+  readonly id: string;
+  readonly text: string;
+}
+
+/** What a column of a trace is used as. */
+export const TRACE_USES = ['time', 'reading', 'down', 'pivotAcross', 'pivotDown', 'trigger'] as const;
+export type TraceUse = (typeof TRACE_USES)[number];
+
+/** A sampled record of the swing: which bytes they are, how they are read, and its shots and taps. The bytes are kept apart, by their sum. */
 export interface Trace {
   readonly id: string;
   readonly name: string;
-  readonly text: string;
+  /** SHA-256 of the bytes as they came, lower-case hex. */
   readonly sha256: string;
-  /** One a line: "12.5", "12.5 tap 1.2 mN·s", "40.2 blank"; '': by the trigger. */
-  readonly events: string;
+  /** Their number. */
+  readonly bytes: number;
+  /** Index of the column for each use; -1: none; absent: as found. */
+  readonly uses: Readonly<Partial<Record<TraceUse, number>>>;
+  /** Units as typed; '': as the header says. */
+  readonly timeUnit: string;
+  readonly readingUnit: string;
+  /** Samples or frames a second as typed: where the time column counts them, or there is none. */
+  readonly rate: string;
+  /** Time that one sample averages over, its stamp at the middle; '': none. */
+  readonly exposure: string;
+  /** Shots and taps: as listed, at each rise of the trigger, or found in the swing. */
+  readonly eventsFrom: 'list' | 'trigger' | 'found';
+  readonly events: readonly TraceLine[];
+  /** Added to the listed times: a time as typed, '' for none, or 'find': from the shots themselves. */
+  readonly offset: string;
+  /** Left out after each shot, for its discharge; '': nothing. */
+  readonly blank: string;
+  /** A shot's time may be moved by the fit this far; '': not at all. */
+  readonly refine: string;
+  /** Stretches marked as bad, "12.5 13.1" in s on the record's clock. */
+  readonly bad: readonly TraceLine[];
 }
+
+/** How a trace is read before anyone has said anything. */
+export const FIRST_TRACE: Omit<Trace, 'id' | 'name' | 'sha256' | 'bytes'> = {
+  uses: {}, timeUnit: '', readingUnit: '', rate: '', exposure: '', eventsFrom: 'list', events: [], offset: '', blank: '', refine: '', bad: [],
+};
 
 export interface Session {
   readonly format: 'firstswing-session';

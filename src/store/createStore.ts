@@ -10,6 +10,8 @@ export interface FirstswingStore {
   readonly actions: Actions;
   /** The session as it stands was kept on this device at this time (ms since epoch); null: it was not taken. */
   readonly noteKept: (at: number | null) => void;
+  /** Asks for the reduction of the session as it stands once more: the worker has come to know more. */
+  readonly askAgain: () => void;
 }
 
 interface StoreParts {
@@ -118,5 +120,5 @@ export function createFirstswingStore({ ask, first, now = Date.now }: StoreParts
   };
 
   request();
-  return { state, actions, noteKept: (at) => state.setState(at === null ? { notKept: true } : { keptAt: at, notKept: false }) };
+  return { state, actions, askAgain: request, noteKept: (at) => state.setState(at === null ? { notKept: true } : { keptAt: at, notKept: false }) };
 }

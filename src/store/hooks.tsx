@@ -2,9 +2,12 @@
 import { createContext, useContext, useDeferredValue, useMemo } from 'react';
 import type { ReactNode } from 'react';
 import { useStore as useZustand } from 'zustand';
-import type { StoreApi } from 'zustand';
+import { createStore } from 'zustand/vanilla';
+import type { StoreApi } from 'zustand/vanilla';
 import type { FirstswingStore } from './createStore.ts';
+import type { WorkerLine } from '../workers/askWorker.ts';
 import type { Actions, State } from './store.ts';
+import type { TraceDesk, TraceState } from './traceDesk.ts';
 
 interface Seen {
   readonly store: FirstswingStore;
@@ -14,10 +17,32 @@ interface Seen {
 
 const StoreContext = createContext<Seen | null>(null);
 
-export function StoreProvider({ store, children }: { readonly store: FirstswingStore; readonly children: ReactNode }) {
-  const seen = useMemo(() => ({ store, shown: store.state }), [store]);
-  return <StoreContext value={seen}>{children}</StoreContext>;
+export interface Traces {
+  readonly desk: TraceDesk;
+  readonly pictureOf: WorkerLine['pictureOf'];
 }
+
+const TracesContext = createContext<Traces | null>(null);
+
+interface ProviderProps extends Partial<Traces> {
+  readonly store: FirstswingStore;
+  readonly children: ReactNode;
+}
+
+/** Without a desk and pictures (in tests of other parts) the page takes no traces in. */
+export function StoreProvider({ store, desk, pictureOf, children }: ProviderProps) {
+  const seen = useMemo(() => ({ store, shown: store.state }), [store]);
+  const traces = useMemo(() => (desk && pictureOf ? { desk, pictureOf } : null), [desk, pictureOf]);
+  return <StoreContext value={seen}><TracesContext value={traces}>{children}</TracesContext></StoreContext>;
+}
+
+/** What looks after the bytes of traces; null where the page takes none. */
+export const useTraces = (): Traces | null => useContext(TracesContext);
+
+const NONE = createStore<Readonly<Record<string, TraceState>>>()(() => ({}));
+
+/** How far each trace has come, by the sum of its bytes. */
+export const useTraceStates = (): Readonly<Record<string, TraceState>> => useZustand(useTraces()?.desk.state ?? NONE);
 
 function useSeen(): Seen {
   const seen = useContext(StoreContext);

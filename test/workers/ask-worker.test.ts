@@ -1,8 +1,8 @@
 import { describe, expect, test } from 'vitest';
 import { emptySession } from '../../src/session/session.ts';
-import { createAskWorker, Overtaken } from '../../src/workers/askWorker.ts';
+import { createWorkerLine, Overtaken } from '../../src/workers/askWorker.ts';
 import type { WorkerLike } from '../../src/workers/askWorker.ts';
-import type { Asked } from '../../src/workers/messages.ts';
+import type { Answer, Asked } from '../../src/workers/messages.ts';
 import { bareReduction } from '../store/bare-reduction.ts';
 
 class HeldWorker implements WorkerLike {
@@ -17,14 +17,14 @@ class HeldWorker implements WorkerLike {
   terminate(): void {
     this.ended = true;
   }
-  answer(data: { readonly id: number; readonly reduction: ReturnType<typeof bareReduction> } | { readonly id: number; readonly failure: string }): void {
+  answer(data: Answer): void {
     this.onmessage?.(new MessageEvent('message', { data }));
   }
 }
 
 function bench() {
   const workers: HeldWorker[] = [];
-  const ask = createAskWorker(() => {
+  const line = createWorkerLine(() => {
     const worker = new HeldWorker();
     workers.push(worker);
     return worker;
@@ -34,7 +34,7 @@ function bench() {
     if (found === undefined) throw new Error(`No worker ${index} was made`);
     return found;
   };
-  return { ask, worker, workers };
+  return { line, ask: line.ask, worker, workers };
 }
 
 const idOf = (worker: HeldWorker, index: number): number => worker.asked[index]?.id ?? -1;
@@ -57,7 +57,7 @@ describe('asking the worker', () => {
     const third = ask(emptySession(), 'c');
     await expect(second).rejects.toBeInstanceOf(Overtaken);
     worker().answer({ id: idOf(worker(), 0), reduction: bareReduction() });
-    expect(worker().asked.map((message) => message.explain)).toEqual([null, 'c']);
+    expect(worker().asked).toMatchObject([{ explain: null }, { explain: 'c' }]);
     worker().answer({ id: idOf(worker(), 1), reduction: bareReduction() });
     expect(await first).toEqual(bareReduction());
     expect(await third).toEqual(bareReduction());
@@ -82,5 +82,67 @@ describe('asking the worker', () => {
     expect(workers).toHaveLength(2);
     worker(1).answer({ id: idOf(worker(1), 0), reduction: bareReduction() });
     expect(await second).toEqual(bareReduction());
+  });
+});
+
+describe('traces in the worker', () => {
+  const trace = { sha256: 'ab', name: 'sensor.csv', bytes: new Blob(['1;2']) };
+
+  test('progress is told, and the answer ends it', async () => {
+    const { line, worker } = bench();
+    const read: number[] = [];
+    const taken = line.takeTrace(trace, (bytes) => read.push(bytes));
+    const id = idOf(worker(), 0);
+    worker().answer({ id, progress: 1 });
+    worker().answer({ id, progress: 3 });
+    worker().answer({ id, taken: { rows: 1, problems: [] } });
+    worker().answer({ id, progress: 9 });
+    expect(await taken).toEqual({ rows: 1, problems: [] });
+    expect(read).toEqual([1, 3]);
+  });
+
+  test('a reduction is answered while a trace is still being read', async () => {
+    const { line, worker } = bench();
+    const taken = line.takeTrace(trace, () => undefined);
+    const asked = line.ask(emptySession(), null);
+    worker().answer({ id: idOf(worker(), 1), reduction: bareReduction() });
+    expect(await asked).toEqual(bareReduction());
+    worker().answer({ id: idOf(worker(), 0), taken: { rows: 1, problems: [] } });
+    expect((await taken).rows).toBe(1);
+  });
+
+  test('stopping is passed on, and the failure that comes back ends it', async () => {
+    const { line, worker } = bench();
+    const stop = new AbortController();
+    const taken = line.takeTrace(trace, () => undefined, stop.signal);
+    stop.abort();
+    expect(worker().asked.at(-1)).toMatchObject({ kind: 'stop', id: idOf(worker(), 0) });
+    worker().answer({ id: idOf(worker(), 0), failure: 'stopped' });
+    await expect(taken).rejects.toThrow('stopped');
+  });
+
+  test('a worker that takes the place of a dead one is given the traces before anything else', async () => {
+    const { line, worker } = bench();
+    const taken = line.takeTrace(trace, () => undefined);
+    worker().answer({ id: idOf(worker(), 0), taken: { rows: 1, problems: [] } });
+    await taken;
+    const waiting = line.sumOf(new Blob(['x']));
+    const first = line.ask(emptySession(), null);
+    const second = line.ask(emptySession(), 'b');
+    worker().onerror?.(new ErrorEvent('error', { message: 'out of memory' }));
+    await expect(first).rejects.toThrow('out of memory');
+    await expect(waiting).rejects.toThrow('out of memory');
+    expect(worker(1).asked).toMatchObject([{ kind: 'take', sha256: 'ab' }, { kind: 'reduce', explain: 'b' }]);
+    worker(1).answer({ id: idOf(worker(1), 1), reduction: bareReduction() });
+    await second;
+  });
+
+  test('a picture and a sum come back to who asked', async () => {
+    const { line, worker } = bench();
+    const picture = line.pictureOf(emptySession(), 't1');
+    const sum = line.sumOf(new Blob(['x']));
+    worker().answer({ id: idOf(worker(), 1), sum: 'cd' });
+    worker().answer({ id: idOf(worker(), 0), picture: null });
+    expect([await picture, await sum]).toEqual([null, 'cd']);
   });
 });

@@ -19,7 +19,7 @@ import { CorrectionsGroup, PulseSamples } from './CorrectionsGroup.tsx';
 import { EntryField } from './EntryField.tsx';
 import { ForceRecords } from './ForceRecords.tsx';
 import { FilmWords } from './FilmWords.tsx';
-import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, HAMMER_AFTER, HAMMER_FORMS, HUNG_AS, MASS_HUNG, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, REST_TAKEN, RESTORING, ROUTES, SCREENS, SHOWN_WITH, SWING_MEASURED, WEIGHTS_PULL, ZERO_TAKEN } from './groups.ts';
+import { CAUTIONS, DAMPING_LAWS, DAMPING_WAYS, FORMS, GRAVITY_WAYS, GROUP_ENTRIES, HAMMER_AFTER, HAMMER_FORMS, HUNG_AS, MASS_HUNG, OF_TRACES, PERIOD_TIMED, PLUME, PULSE_SHAPES, READING_WAYS, REPORTED, REST_TAKEN, RESTORING, ROUTES, SCREENS, SHOWN_WITH, SWING_MEASURED, WEIGHTS_PULL, ZERO_TAKEN } from './groups.ts';
 import type { GroupName } from './groups.ts';
 import { Instruments } from './Instruments.tsx';
 import { KeptBenches } from './KeptBenches.tsx';
@@ -73,11 +73,12 @@ export function BenchSection() {
   const readOf = (name: string): EntryRead | undefined => reads.get(name);
   const problemsOf = (name: string): readonly Problem[] => problemsByEntry.get(name) ?? NO_PROBLEMS;
   const roles = useStore((state) => rolesOf(state.session.sheets));
+  const hasTraces = useStore((state) => state.session.traces.length > 0);
   const swingsHammer = roles.includes('hammerIn') || entries.hammerMass !== undefined;
   const hangsWeights = roles.split(' ').includes('weight');
   const isShown = (name: EntryName): boolean => {
     const role = SHOWN_WITH[name];
-    return entries[name] !== undefined || (used.has(name) && (role === undefined || roles.includes(role)));
+    return entries[name] !== undefined || (used.has(name) && (role === undefined || roles.includes(role)) && (hasTraces || !OF_TRACES.has(name)));
   };
   const choose = <Name extends keyof Choices>(name: Name, what: string) => (value: Choices[Name]) => change(what, setChoice(name, value));
 

@@ -155,7 +155,7 @@ export const GROUP_ENTRIES: Readonly<Record<GroupName, readonly EntryName[]>> = 
   Corrections: ['pulseDuration', 'tiltOutOfPlane', 'tiltInPlane', 'exitAhead', 'exposure', 'frameInterval', 'backgroundSwing', 'backgroundPhase', 'backgroundTime', 'propellantUsed', 'propellantDistance'],
   Reading: [
     'readingRadius', 'rulerHeight', 'sensorHeight', 'faceOffset', 'screenDistance', 'screenTilt', 'mirrorRadius', 'beamIncidence', 'beamOutOfPlane', 'windowThickness', 'windowIndex',
-    'pixelScale', 'cameraYaw', 'cameraToPlane', 'lensDistortion', 'pivotAcross', 'pivotDown', 'markerRadius', 'countsPerTurn', 'scaleMark', 'scaleFactor', 'parallaxGap', 'cameraDistance', 'eyeShift', 'division', 'readingSpread',
+    'pixelScale', 'cameraYaw', 'cameraToPlane', 'lensDistortion', 'pivotAcross', 'pivotDown', 'markerRadius', 'countsPerTurn', 'sensorSlope', 'sensorOffset', 'sensorCorrelation', 'scaleMark', 'scaleFactor', 'parallaxGap', 'cameraDistance', 'eyeShift', 'division', 'readingSpread',
   ],
   Damping: ['logDecrement', 'dampingRatio', 'firstMaximumTime', 'quadraticDamping', 'frictionAngle'],
   'Local g': ['gravity', 'latitude', 'height'],
@@ -171,6 +171,9 @@ export const SHOWN_WITH: Readonly<Partial<Record<EntryName, Role>>> = {
   weightFactor: 'weight', weightSpread: 'weight',
   hammerMass: 'hammerIn', hammerLength: 'hammerIn', hammerContact: 'hammerIn', hammerPeriod: 'hammerIn', hammerInertia: 'hammerIn', hammerAngleSpread: 'hammerIn', hammerZero: 'hammerIn',
 };
+
+/** Entries that say something of sampled traces alone. */
+export const OF_TRACES: ReadonlySet<EntryName> = new Set(['sensorSlope', 'sensorOffset', 'sensorCorrelation']);
 
 export const CAUTIONS = {
   charge: 'Stored charge: a bank holds its charge after the supply is off and can recover some after a discharge. Discharge, short and earth it before reaching in; your site’s high-voltage rules and a licensed person decide.',

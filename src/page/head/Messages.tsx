@@ -1,6 +1,6 @@
 /** What the page has to say about session files and about itself, until it is taken away. */
 import { saveTextAsFile } from '../../platform/download.ts';
-import { useActions, useStore, useStateNow } from '../../store/hooks.tsx';
+import { useActions, useStore, useStateNow, useTraces } from '../../store/hooks.tsx';
 import styles from './head.module.css';
 import { saveSessionFile, takeBenchOnly } from './sessionFiles.ts';
 import type { Message } from './sessionFiles.ts';
@@ -45,6 +45,7 @@ export function Messages({ messages, onTake }: Props) {
 function Failure() {
   const failure = useStore((state) => state.failure);
   const now = useStateNow();
+  const traces = useTraces();
   if (failure === null) return null;
   return (
     <div className={styles.message} role="alert">
@@ -52,7 +53,7 @@ function Failure() {
         The reduction failed, which is a mistake of this program and not of your readings. The numbers below are those of before your last change; nothing
         typed is lost. <span className="quiet">{failure}</span>
       </p>
-      <button type="button" onClick={() => saveSessionFile(now().session)}>Save the session</button>
+      <button type="button" onClick={() => void saveSessionFile(now().session, traces?.desk ?? null)}>Save the session</button>
     </div>
   );
 }

@@ -1,7 +1,8 @@
 /** The way in for readings from anywhere on the page: files dropped or chosen, and text pasted. */
 import { useMemo } from 'react';
 import { readTableFile, sha256Of } from '../../platform/readFile.ts';
-import { useActions, useStateNow } from '../../store/hooks.tsx';
+import { useActions, useStateNow, useTraces } from '../../store/hooks.tsx';
+import { isTraceFile, takeTrace } from '../traces/takeTrace.ts';
 import { useNotices } from './notices.ts';
 import { takeIn } from './takeIn.ts';
 import type { Came } from './takeIn.ts';
@@ -19,6 +20,7 @@ export function useReadingsIntake(): ReadingsIntake {
   const { change } = useActions();
   const now = useStateNow();
   const notices = useNotices();
+  const traces = useTraces();
   return useMemo(() => {
     function take(came: Came): void {
       const { session } = now();
@@ -29,7 +31,8 @@ export function useReadingsIntake(): ReadingsIntake {
     async function takeFiles(files: Iterable<File>): Promise<void> {
       for (const file of files) {
         try {
-          take({ ...(await readTableFile(file)), origin: 'file' });
+          if (traces && (await isTraceFile(file))) notices.say(await takeTrace(file, traces.desk, change, now));
+          else take({ ...(await readTableFile(file)), origin: 'file' });
         } catch (reason) {
           // Reading fails for a folder, and for a file that has moved since it was dropped.
           if (!(reason instanceof DOMException)) throw reason;
@@ -42,5 +45,5 @@ export function useReadingsIntake(): ReadingsIntake {
       take({ name: PASTE_NAME, origin: 'paste', text, sha256, problems: [] });
     }
     return { takeFiles, takeText: (text: string) => void takePaste(text) };
-  }, [change, now, notices]);
+  }, [change, now, notices, traces]);
 }

@@ -1,0 +1,104 @@
+/** One sampled trace: where it came from, how it is read, its shots and taps, and what the fit tells of its swing. */
+import { useId } from 'react';
+import type { Problem } from '../../problems/problems.ts';
+import { sentence } from '../../problems/sentences.ts';
+import type { TraceTold } from '../../reduction/traceResults.ts';
+import { linesAgain, removeTrace, setTrace, type Edit } from '../../session/edits.ts';
+import type { Trace, TraceUse } from '../../session/session.ts';
+import type { TraceState } from '../../store/traceDesk.ts';
+import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
+import { counted } from '../readings/tradeWords.ts';
+import { TraceSettings } from './TraceSettings.tsx';
+import styles from './traceCard.module.css';
+
+interface Props {
+  readonly trace: Trace;
+  readonly told: TraceTold | undefined;
+  readonly state: TraceState | undefined;
+  readonly uses: readonly TraceUse[];
+  readonly problems: readonly Problem[];
+  readonly change: (what: string, edit: Edit, join?: string) => void;
+  readonly onStop: () => void;
+  readonly onBytes: (file: File) => void;
+}
+
+const DIGEST_SHOWN = 12;
+
+/** What the fit found, in a sentence. */
+function fitSentence({ fitted, dimension }: TraceTold): string {
+  if (!fitted) return 'No swing has been fitted yet.';
+  const { period, ratio, noise, colour, least } = fitted;
+  const second = chooseUnit([period.value], 'time');
+  const reading = chooseUnit([noise], dimension);
+  const parts = [
+    `It swings with T₀ = ${withPlusMinus(period.value, period.u, second)} and ζ = ${withPlusMinus(ratio.value, ratio.u, chooseUnit([1], 'number'))} (standard uncertainties)`,
+    `noise ${plain(noise, reading, 2)} ${reading.symbol} a sample${colour > 1.2 || colour < 0.8 ? `, which counts ${plain(Math.sqrt(colour), chooseUnit([1], 'number'), 2)} times at the swing, as it is not white` : ''}`,
+  ];
+  const throwUnit = chooseUnit([least ?? noise], dimension);
+  return `${parts.join('; ')}${least === null ? '' : `. A throw is known to ${plain(least, throwUnit, 2)} ${throwUnit.symbol} by the noise alone`}.`;
+}
+
+function sizeSentence({ rows, from, to, spacing }: TraceTold): string {
+  const span = chooseUnit([to - from], 'time');
+  const step = chooseUnit([spacing], 'time');
+  return rows === null ? '' : `${counted(rows, 'sample')}, ${plain(to - from, span, 4)} ${span.symbol}, one each ${plain(spacing, step, 4)} ${step.symbol}`;
+}
+
+export function TraceCard({ trace, told, state, uses, problems, change, onStop, onBytes }: Props) {
+  const id = useId();
+  const named = (what: string): string => `${trace.name}: ${what}`;
+  return (
+    <article className={styles.card} aria-labelledby={`${id}-name`}>
+      <header className={styles.head}>
+        <h3 id={`${id}-name`}>{trace.name}</h3>
+        <p className="quiet">
+          {told === undefined ? '' : sizeSentence(told)}
+          {' · '}
+          <span title={`SHA-256 of the bytes as they came: ${trace.sha256}`}>SHA-256 {trace.sha256.slice(0, DIGEST_SHOWN)}…</span>
+        </p>
+        <button type="button" className="plain-button unprinted" aria-label={`Take out trace ${trace.name}`} onClick={() => change(named('take out'), removeTrace(trace.id))}>take out</button>
+      </header>
+      {state?.status === 'reading' && (
+        <p className={styles.reading} role="status">
+          <label htmlFor={`${id}-read`}>Reading {trace.name}</label>
+          <progress id={`${id}-read`} max={state.bytes} value={state.read} />
+          <button type="button" onClick={onStop}>Stop</button>
+        </p>
+      )}
+      {(state?.status === 'missing' || state?.status === 'failed') && (
+        <p className="look">
+          {state.status === 'missing' ? `The bytes of ${trace.name} are not on this device. ` : `${trace.name} could not be read: ${state.why}. `}
+          <label htmlFor={`${id}-again`}>Choose the file itself again: </label>
+          <input
+            id={`${id}-again`}
+            type="file"
+            onChange={({ currentTarget }) => {
+              const [file] = currentTarget.files ?? [];
+              if (file) onBytes(file);
+            }}
+          />
+        </p>
+      )}
+      {problems.map((found, i) => <p key={`${found.code} ${i}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
+      {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told)}</p>}
+      <details className={styles.how} open={told?.fitted == null}>
+        <summary>How it is read</summary>
+        <TraceSettings trace={trace} told={told} uses={uses} onChange={(what, patch, join) => change(named(what), setTrace(trace.id, patch), join)} />
+      </details>
+      {trace.eventsFrom === 'list' && (
+        <details className={styles.how} open={trace.events.length === 0}>
+          <summary>List of its shots and taps ({trace.events.length})</summary>
+          <div className={styles.list}>
+            <label htmlFor={`${id}-list`} className="quiet">One a line: 12.5 · 17.25 s tap 1.2 mN·s · 40.2 blank; times on the record’s clock, in s</label>
+            <textarea
+              id={`${id}-list`}
+              spellCheck={false}
+              value={trace.events.map(({ text }) => text).join('\n')}
+              onChange={({ target: { value } }) => change(named('list of shots and taps'), setTrace(trace.id, { events: linesAgain(trace.events, value) }), `${trace.id}.events`)}
+            />
+          </div>
+        </details>
+      )}
+    </article>
+  );
+}

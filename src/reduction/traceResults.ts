@@ -1,0 +1,78 @@
+/** What the page is told of a sampled trace: how it was read, its shots and stretches, and the fitted swing. */
+import type { Problem } from '../problems/problems.ts';
+import type { RecordKind } from '../readings/meanings.ts';
+import type { SwingModel } from '../traces/swingModel.ts';
+import type { Stated } from './results.ts';
+
+/** A shot, tap or blank of a trace; times in s on the record's clock, throws in the SI unit of the reading. */
+export interface TraceEventTold {
+  /** Id of the line in the session's list, or of the trigger. */
+  readonly id: string;
+  /** Its record in the run, where it has one. */
+  readonly record: string | null;
+  readonly kind: RecordKind;
+  /** As listed or found, moved by the clock offset. */
+  readonly listed: number;
+  /** As used: refined by the fit where that was asked for. */
+  readonly time: number;
+  /** u of the refined time; null where it was not refined. */
+  readonly timeU: number | null;
+  /** Jump of x′ over ω_n: the throw that an undamped small swing from rest would show. null: not fitted. */
+  readonly jump: Stated | null;
+  /** Step of position over its u. */
+  readonly stepInU: number;
+  /** What picking the peak after it would give, damping taken out; null where no peak stands alone. */
+  readonly picked: number | null;
+}
+
+/** A part of the record that plays no part in the fit. */
+export interface Stretch {
+  readonly from: number;
+  readonly to: number;
+  readonly why: 'gap' | 'clipped' | 'spike' | 'blanked' | 'marked';
+}
+
+export interface TraceFitted {
+  /** T₀ = 2π/ω_n, s. */
+  readonly period: Stated;
+  readonly ratio: Stated;
+  /** sd of the residuals, SI unit of the reading. */
+  readonly noise: number;
+  /** Variance of a jump with the correlation of the residuals over that with white noise as strong (middle one of the jumps). */
+  readonly colour: number;
+  readonly model: SwingModel;
+  /** Amplitude spectrum of the residuals: frequencies in Hz, amplitudes in the SI unit of the reading; thinned for a picture. */
+  readonly spectrum: { readonly frequency: readonly number[]; readonly amplitude: readonly number[] };
+  /** Lines that stand out of it: pump hum, building sway. */
+  readonly hums: readonly { readonly frequency: number; readonly amplitude: number }[];
+  /** u of a jump by noise alone, as a throw in the unit of the reading, and the impulse that it stands for, N·s (null without a calibration). */
+  readonly least: number | null;
+  readonly noiseEquivalent: number | null;
+}
+
+export interface TraceColumn {
+  readonly header: string;
+  readonly unit: string;
+}
+
+/** A sampled trace as read and fitted. */
+export interface TraceTold {
+  readonly id: string;
+  readonly name: string;
+  /** null where the bytes are not at hand. */
+  readonly rows: number | null;
+  readonly columns: readonly TraceColumn[];
+  /** Index of the column of each use; null for none (time: by a stated rate). */
+  readonly uses: { readonly time: number | null; readonly reading: number | null; readonly trigger: number | null };
+  /** s on the record's clock. */
+  readonly from: number;
+  readonly to: number;
+  /** Middle spacing of the samples, s. */
+  readonly spacing: number;
+  readonly dimension: 'length' | 'angle' | 'pixel' | 'count';
+  readonly events: readonly TraceEventTold[];
+  readonly stretches: readonly Stretch[];
+  readonly offset: { readonly value: number; readonly u: number | null; readonly found: boolean } | null;
+  readonly fitted: TraceFitted | null;
+  readonly problems: readonly Problem[];
+}
