@@ -17,7 +17,9 @@ const PURE = ORDER.slice(0, ORDER.indexOf('platform'));
 /** Each package, and the folders it may enter by. A package that is not here may not be imported at all. */
 const GATES: Readonly<Record<string, readonly string[]>> = {
   papaparse: ['readings'],
+  'fft.js': ['numeric'],
   'idb-keyval': ['platform'],
+  '@noble/hashes': ['workers'],
   zustand: ['store'],
   uplot: ['plots'],
   react: ['store', 'page', 'main.tsx'],

@@ -3,6 +3,7 @@ import { dateWords } from '../units/calendarDate.ts';
 import { chooseUnit, plain } from '../units/format.ts';
 import type { Dimension } from '../units/units.ts';
 import type { Place, Problem } from './problems.ts';
+import { sampledRecordWords } from './sampledRecord.ts';
 import { checksInWords, slipWords } from './slips.ts';
 import { KIND_WORDS, ROLE_WORDS } from './words.ts';
 
@@ -286,11 +287,21 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'tap-both-rebound-and-follow':
       return 'the hammer cannot come back and go on through at once; both angles are filled in, so this tap has no known impulse. Blank the one that was not seen.';
     case 'trace-no-samples':
-      return 'no two columns of numbers, time and displacement, of twenty rows or more were found in it. Check that the whole record was saved.';
+      return number('rows') >= 20
+        ? 'no two columns of numbers, time and displacement, were found in it. Check that the whole record was saved.'
+        : `${number('rows') > 0 ? many('rows', 'row') : 'no row'} of numbers ${number('rows') > 1 ? 'were' : 'was'} found in it; a swing takes twenty or more. Check that the whole record was saved.`;
     case 'trace-too-long':
       return `the record has ${text('rows')} samples; up to ${text('most')} are read for now. Save every tenth sample, or a part of it.`;
     case 'trace-time-not-rising':
-      return 'the time does not rise here; the record is left out. Check that it is one record, in order.';
+    case 'trace-samples-repeated':
+    case 'trace-time-coarse':
+    case 'trace-samples-missing':
+    case 'trace-spacing-uneven':
+    case 'trace-numbers-missing':
+    case 'trace-rows-passed-over':
+    case 'trace-cut-off':
+    case 'trace-gzip-broken':
+      return sampledRecordWords(code, weight, { has, text, number, figure, quantity, many });
     case 'trace-constant':
       return 'the displacement never changes: the sensor was not read, or this is another column.';
     case 'trace-unit-assumed':

@@ -35,7 +35,9 @@ export function readSampledCell(text: string, decimal: DecimalMark, into: Sample
     return;
   }
   if (PLAIN[decimal].test(text)) {
-    const value = Number((decimal === ',' ? text.replace(',', '.') : text).replace(/[dD]/, 'e')) + 0;
+    const pointed = decimal === ',' ? text.replace(',', '.') : text;
+    let value = Number(pointed) + 0;
+    if (Number.isNaN(value)) value = Number(pointed.replace(/[dD]/, 'e')) + 0;
     into.kind = Number.isFinite(value) ? 'number' : 'empty';
     if (into.kind === 'number') into.value = value;
     return;

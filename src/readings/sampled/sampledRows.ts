@@ -19,6 +19,10 @@ const LONGEST_TOLD = 200;
 /** Numbers that are kept of one record; 1.6 GB. */
 export const MOST_NUMBERS = 200_000_000;
 
+/** Rows that there is room for at the least, and growth where the file has more rows than its beginning promised. */
+const FEWEST = 1024;
+const GROWTH = 1.5;
+
 /** Rows told of by which columns they lack: beyond this many different sets they count for every column. */
 const MOST_SETS = 1000;
 
@@ -32,7 +36,12 @@ const bitOf = (column: number): number => 1 << Math.min(column, LAST_BIT);
 /** A line that begins with one of these is a comment. */
 const COMMENT = /^\s*(?:#|%|\/\/)/;
 
-const UNPRINTED = /[\0\u001a]/g;
+/** What stands where a file was not written to its end: zeros, and the sign that once ended a text. */
+const UNPRINTED = ['\0', '\u001a'];
+const isFilled = (cell: string): boolean => UNPRINTED.reduce((text, sign) => text.replaceAll(sign, ''), cell).trim() !== '';
+const filledCells = (cells: readonly string[]): number => cells.findLastIndex(isFilled) + 1;
+
+const NO_NUMBER: Readonly<SampledCell> = { kind: 'word', value: Number.NaN };
 
 /** The cells of a line without quotation marks. */
 export function cellsOfLine(text: string, delimiter: SampledDialect['delimiter']): string[] {
@@ -59,6 +68,7 @@ export class SampledRows {
   private readonly breakLines: number[];
   private readonly passed = new Map<number, { count: number; readonly first: PassedOver[] }>();
   private readonly cell: SampledCell = { kind: 'empty', value: Number.NaN };
+  private readonly kinds: SampledCell['kind'][] = [];
   private readonly headerText: string;
 
   constructor(dialect: SampledDialect, rowsExpected: number) {
@@ -66,7 +76,7 @@ export class SampledRows {
     this.buffers = Array.from({ length: dialect.columns }, () => NONE);
     this.missing = new Float64Array(dialect.columns);
     this.clocks = new Float64Array(dialect.columns);
-    this.capacity = Math.max(1024, Math.ceil(Math.min(rowsExpected, MOST_NUMBERS)));
+    this.capacity = Math.max(FEWEST, Math.ceil(Math.min(rowsExpected, MOST_NUMBERS / dialect.columns)));
     this.line = dialect.firstLine;
     this.breakLines = [dialect.firstLine];
     this.headerText = dialect.headerCells.map((cell) => cell.trim()).join('\n');
@@ -74,13 +84,17 @@ export class SampledRows {
 
   /** Room for one row more; false where the record is full. */
   makeRoom(): boolean {
-    const open = this.buffers.filter((buffer) => buffer !== NONE).length;
-    if (this.rows * Math.max(1, open) >= MOST_NUMBERS) this.full = true;
-    if (this.full || this.rows < this.capacity) return !this.full;
-    this.capacity = Math.ceil(this.capacity * 1.5);
+    if (this.rows < this.capacity) return true;
+    const open = Math.max(1, this.buffers.filter((buffer) => buffer !== NONE).length);
+    const capacity = Math.min(Math.ceil(this.capacity * GROWTH), Math.floor(MOST_NUMBERS / open));
+    if (capacity <= this.rows) {
+      this.full = true;
+      return false;
+    }
+    this.capacity = capacity;
     this.buffers.forEach((buffer, i) => {
       if (buffer === NONE) return;
-      const larger = new Float64Array(this.capacity);
+      const larger = new Float64Array(capacity);
       larger.set(buffer);
       this.buffers[i] = larger;
     });
@@ -132,49 +146,51 @@ export class SampledRows {
    * @param cutOff its last cell was cut off where the file ends
    */
   take(cells: readonly string[], lines = 1, cutOff = false): void {
-    const { usual, columns, delimiter } = this.dialect;
-    const first = (cells[0] ?? '').replace(UNPRINTED, '');
-    const filled = cells.findLastIndex((cell) => cell.replace(UNPRINTED, '').trim() !== '') + 1;
-    if (filled === 0 && cells.length < Math.max(2, usual)) {
-      this.skip(lines);
-      return;
-    }
     if (!this.makeRoom()) return;
-    const row = this.rows;
-    const kinds: SampledCell['kind'][] = [];
+    const { usual, columns, delimiter } = this.dialect;
+    const { rows: row, kinds } = this;
+    const cut = cutOff ? filledCells(cells) - 1 : -1;
     let numbers = 0;
     let lacks = 0;
     let shifted = delimiter === ' ' && cells.length < usual;
-    for (const [c, text] of cells.entries()) {
-      const { kind, value } = cutOff && c === filled - 1 ? { kind: 'word' as const, value: Number.NaN } : this.read(text);
+    for (let c = 0; c < cells.length; c += 1) {
+      const { kind, value } = c === cut ? NO_NUMBER : this.read(cells[c]!);
       const isNumber = kind === 'number' || kind === 'clock';
       if (isNumber) numbers += 1;
       if (c >= columns) {
         shifted ||= isNumber;
         continue;
       }
-      kinds.push(kind);
+      kinds[c] = kind;
       if (kind === 'word') lacks |= bitOf(c);
       const buffer = this.buffers[c]!;
       if (buffer !== NONE) buffer[row] = value;
       else if (isNumber) this.open(c)[row] = value;
     }
-    if (COMMENT.test(first) || (numbers === 0 && this.isNoRow(cells))) {
+    if (numbers === 0 && cells.length < Math.max(2, usual) && filledCells(cells) === 0) {
+      this.skip(lines);
+      return;
+    }
+    if (COMMENT.test(cells[0] ?? '') || (numbers === 0 && this.isNoRow(cells))) {
       this.tell(EVERY_COLUMN, this.line, () => cells);
       this.skip(lines);
       return;
     }
-    for (let c = kinds.length; c < usual; c += 1) lacks |= bitOf(c);
+    for (let c = cells.length; c < columns; c += 1) {
+      kinds[c] = 'word';
+      if (c < usual) lacks |= bitOf(c);
+    }
     if (shifted) lacks = EVERY_COLUMN;
     if (lacks !== 0) this.tell(lacks, this.line, () => cells);
-    this.buffers.forEach((buffer, c) => {
-      const kind = shifted ? 'word' : (kinds[c] ?? 'word');
+    for (let c = 0; c < columns; c += 1) {
+      const kind = shifted ? 'word' : kinds[c]!;
+      if (kind === 'number') continue;
       if (kind === 'clock') this.clocks[c] = this.clocks[c]! + 1;
-      else if (kind !== 'number') {
+      else {
         this.missing[c] = this.missing[c]! + 1;
-        if (buffer !== NONE) buffer[row] = Number.NaN;
+        if (this.buffers[c] !== NONE) this.buffers[c]![row] = Number.NaN;
       }
-    });
+    }
     this.rows += 1;
     this.emptyTail = numbers === 0 || shifted ? this.emptyTail + 1 : 0;
     if (lines === 1) this.line += 1;

@@ -1,0 +1,17 @@
+import { createSampledReader } from './sampledRecord.ts';
+const enc=new TextEncoder(); const N=1_000_000;
+const make=(f:(i:number)=>string)=>enc.encode('a,b,c,d\n'+Array.from({length:N},(_,i)=>f(i)).join('\n')+'\n');
+const x=(i:number)=>(12.5+8*Math.sin(i/170)).toFixed(6), t=(i:number)=>(i/1000).toFixed(4);
+const time=(name:string,b:Uint8Array)=>{let best=1e9,r:any; for(let k=0;k<3;k++){const s=performance.now(); const rd=createSampledReader({bytes:b.length}); for(let f=0;f<b.length;f+=1<<20) rd.take(b.subarray(f,f+(1<<20))); r=rd.finish(); best=Math.min(best,performance.now()-s);} console.log(name.padEnd(30),best|0,'ms',(b.length/1e6)|0,'MB',r.columns.length,r.plain,r.passedOverCount)};
+time('two columns',make(i=>`${t(i)},${x(i)}`));
+time('trailing delimiter',make(i=>`${t(i)},${x(i)},`));
+time('CRLF',make(i=>`${t(i)},${x(i)}\r`));
+time('text column',make(i=>`${t(i)},${x(i)},ok`));
+time('clock column',make(i=>`14:02:03.123,${t(i)},${x(i)}`));
+time('half NaN',make(i=>`${t(i)},${i%2?'NaN':x(i)},${x(i)}`));
+time('scientific',make(i=>`${(i/1000).toExponential(6)},${(12.5+8*Math.sin(i/170)).toExponential(6)}`));
+time('17 digits',make(i=>`${i/1000},${12.5+8*Math.sin(i/170)}`));
+time('semicolon, decimal comma',make(i=>`${t(i)};${x(i)}`.replaceAll('.',',')));
+time('spaces',make(i=>`  ${t(i)}   ${x(i)}`));
+time('comment every 2nd line',make(i=>`${t(i)},${x(i)}\n# x`));
+time('blank every 2nd line',make(i=>`${t(i)},${x(i)}\n`));
