@@ -4,6 +4,7 @@ import type { DecimalMark } from '../../units/quantity.ts';
 import { encodingOf, textOf, type Encoding } from './encodedText.ts';
 import { findSampledHeader } from './sampledHeader.ts';
 import { readSampledCell, type SampledCell } from './sampledCell.ts';
+import { useOfHeader } from './sampledWords.ts';
 
 /** ' ' stands for any run of spaces and tabs. */
 export type SampledDelimiter = '\t' | ';' | ',' | ' ';
@@ -58,8 +59,10 @@ const TELLING = 300;
 /** A word costs nearly what a number gains, so that a cut through numbers never wins. */
 const WORD = 0.9;
 
-/** A heading this soon after what looked like rows says that they were none. */
-const SOON = 5;
+/** A heading this soon after what looked like rows says that they were none: "2 5000" above it tells columns and rows. */
+const SOON = 3;
+
+const COMMENT = /^\s*(?:#|%|\/\/)/;
 
 const MOST_COLUMNS = 512;
 
@@ -133,14 +136,15 @@ function bestShape(text: string, newline: string): Shape {
 /** Index of the first row of the record. */
 function beginning(rows: readonly HeadRow[], { usual, words, firstNumber }: Shape): number {
   const isWide = (row: HeadRow): boolean => row.filled <= usual && (row.cells.length === usual || row.filled * 2 > usual);
-  const isRow = (row: HeadRow): boolean => row.numbers > 0 && isWide(row) && (row.words <= words || row.firstNumber === firstNumber) && !/^\s*(?:#|%|\/\/)/.test(row.cells[0] ?? '');
+  const isRow = (row: HeadRow): boolean => row.numbers > 0 && isWide(row) && (row.words <= words || row.firstNumber === firstNumber) && !COMMENT.test(row.cells[0] ?? '');
   let from = rows.findIndex(isRow);
-  for (let at = from; at !== -1 && at < Math.min(rows.length, from + SOON); at += 1) {
-    const { numbers, filled } = rows[at]!;
-    if (numbers > 0 || filled * 2 < usual) continue;
+  for (let at = from + 1; from !== -1 && at <= from + SOON && at < rows.length; at += 1) {
+    const { numbers, filled, cells } = rows[at]!;
+    const known = cells.filter((cell) => useOfHeader(cell) !== null).length;
+    if (numbers > 0 || filled < usual || known * 2 < filled || COMMENT.test(cells[0] ?? '')) continue;
     const next = rows.findIndex((row, i) => i > at && isRow(row));
-    if (next === -1) break;
-    from = next;
+    if (next !== -1) from = next;
+    break;
   }
   return from;
 }

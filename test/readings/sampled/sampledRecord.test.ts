@@ -148,6 +148,11 @@ describe('rows that are not whole', () => {
     expect(record.problems.map(sentence)).toEqual(['Line 22: 2 lines with a word or too few cells are passed over; the first reads “trigger lost”.']);
   });
 
+  it('comments and messages from the first rows on cost no row', () => {
+    const record = text(rowsOf((i) => `${i},${i}.5\n# marker\n${i % 2 === 0 ? 'stirred by hand' : ''}`));
+    expect([record.rows, record.firstLine, record.passedOverCount, record.lineOfRow(1)]).toEqual([N, 2, 1.5 * N, 5]);
+  });
+
   it('a word in place of a number costs that number alone', () => {
     const record = text(rowsOf((i) => (i === 20 ? '20,OVR' : `${i},${i}`)));
     expect([record.rows, record.columns[0]!.values[20], record.columns[1]!.values[20], record.columns[1]!.missing]).toEqual([N, 20, Number.NaN, 1]);
