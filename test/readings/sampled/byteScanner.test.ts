@@ -15,9 +15,9 @@ function read(bytes: Uint8Array, lengths: readonly number[], plain: boolean, pie
 }
 
 /** All that a record says, its numbers bit by bit. */
-function told({ columns, lineOfRow, plain: _, ...rest }: SampledRecord): unknown {
+function told({ columns, lineOfRow, ...rest }: SampledRecord): unknown {
   return {
-    ...rest,
+    ...rest, plain: undefined,
     columns: columns.map(({ values, ...column }) => ({ ...column, bits: [...new BigUint64Array(values.slice().buffer)].map(String) })),
     lines: Array.from({ length: rest.rows }, (_row, row) => lineOfRow(row)),
   };

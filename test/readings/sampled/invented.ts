@@ -48,7 +48,7 @@ const style: fc.Arbitrary<Style> = fc.record({
   columns: fc.integer({ min: 1, max: 5 }),
   trailing: fc.boolean(), mark: fc.boolean(), header: fc.boolean(),
   notes: fc.array(fc.constantFrom('An invented record', 'Operator: nobody', '# Rate: 1000 Hz', '% made up', ''), { maxLength: 6 }),
-}).map(({ dialect: [delimiter, decimal], ...rest }) => ({ ...rest, delimiter: delimiter as Style['delimiter'], decimal: decimal as DecimalMark }));
+}).map(({ dialect: [delimiter, decimal], ...rest }) => ({ ...rest, delimiter, decimal }));
 
 const NAMES = ['time (s)', 'displacement (mm)', 'trigger (V)', 'note', 'x'];
 

@@ -74,11 +74,15 @@ describe('by values, where headers say nothing', () => {
 
 describe('a rate in the notes', () => {
   it.each([
-    ['Sample rate: 1000 Hz', 1000], ['Sampling rate,2.5 kHz', 2500], ['# fps = 59.94', 59.94], ['Frame rate; 240 fps', 240], ['Sampling interval: 2 ms', 500], ['Abtastrate 5.000,0', null], ['Abtastfrequenz: 500 Hz', 500],
-    ['Fréquence d’échantillonnage : 200 Hz', 200], ['采样率: 100', 100], ['Sample time: 12 s of nothing', 1 / 12], ['Samples: 5000', null], ['Rate of change, none', null], ['Operator: nobody 12', null],
+    ['Sample rate: 1000 Hz', 1000], ['Sampling rate,2.5 kHz', 2500], ['# fps = 59.94', 59.94], ['Frame rate; 240 fps', 240], ['Sampling interval: 2 ms', 500], ['Abtastfrequenz: 500 Hz', 500],
+    ['Fréquence d’échantillonnage : 200 Hz', 200], ['采样率: 100', 100], ['Sample time: 2 s', 0.5],
   ] as const)('%s', (line, perSecond) => {
     const found = rateInNotes(['Made up', line]);
-    if (perSecond === null) expect(found === null || found.perSecond > 0).toBe(true);
-    else expect(found!.perSecond / perSecond).toBeCloseTo(1, 12);
+    expect(found!.perSecond / perSecond).toBeCloseTo(1, 12);
+    expect(found!.text).toBe(line);
+  });
+
+  it.each(['Samples: 5000', 'Rate of change, none', 'Operator: nobody 12', 'Sample rate: 0 Hz', 'Sample rate: 3 s'])('is not in “%s”', (line) => {
+    expect(rateInNotes([line])).toBeNull();
   });
 });
