@@ -98,7 +98,7 @@ describe('columns', () => {
     const rows = rowsOf((i) => `14:02:${String(Math.floor(i / 2)).padStart(2, '0')}.${i % 2 === 0 ? '000' : '500'},ok,${i},${-i / 2},`);
     const record = readSampledText(['Clock,State,Frame,x (px),', ...rows].join('\n'));
     expect(record.columns.map(({ header, clock, missing }) => [header, clock, missing])).toEqual([['Clock', true, 0], ['Frame', false, 0], ['x (px)', false, 0]]);
-    expect([...record.columns[0]!.values].slice(0, 4)).toEqual([50_520, 50_520.5, 50_521, 50_521.5]);
+    expect([...record.columns[0]!.values.slice(0, 4)]).toEqual([50_520, 50_520.5, 50_521, 50_521.5]);
     expect(record.plain).toBe(true);
   });
 
