@@ -46,6 +46,7 @@ export const PROBLEM_CODES = [
   'hammer-angle-too-wide', 'hammer-entry-missing', 'tap-force-without-time', 'tap-both-rebound-and-follow',
   'force-record-no-samples', 'force-record-time-not-rising', 'force-record-too-long', 'force-record-unit-assumed', 'force-record-no-pulse', 'force-record-clipped', 'force-record-after-contact', 'force-records-do-not-fit',
   'trace-no-samples', 'trace-too-long', 'trace-time-not-rising', 'trace-constant', 'trace-unit-assumed', 'trace-event-not-read', 'trace-events-outside', 'trace-not-fitted', 'trace-position-step', 'trace-large-swing',
+  'trace-bytes-missing', 'trace-clipped', 'trace-spikes', 'trace-no-trigger', 'trace-unit-unknown', 'trace-wrong-unit', 'trace-rate-missing', 'trace-pivot-missing', 'trace-sensor-slope-missing', 'trace-offset-found', 'trace-offset-open', 'trace-clock-drifts', 'trace-jumps-found', 'trace-swing-from-bench', 'trace-times-moved', 'trace-too-close',
   'trace-rows-passed-over', 'trace-cut-off', 'trace-gzip-broken', 'trace-numbers-missing', 'trace-samples-repeated', 'trace-time-coarse', 'trace-samples-missing', 'trace-spacing-uneven',
   // evidence of the calibration
   'timing-spread-missing', 'timing-without-place', 'timing-not-positive', 'weights-too-few', 'weights-wrong-way', 'taps-one-size', 'taps-drifted', 'taps-intercept', 'taps-curved', 'masses-tell-little', 'mass-heavier-than-pendulum', 'masses-inertia-negative', 'evidence-contradicts', 'bench-disagrees', 'chosen-evidence-missing',

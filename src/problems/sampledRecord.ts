@@ -7,7 +7,7 @@ export interface FactWords {
   readonly has: (name: string) => boolean;
   readonly text: (name: string) => string;
   readonly number: (name: string) => number;
-  readonly figure: (name: string) => string;
+  readonly figure: (name: string, digits?: number) => string;
   readonly quantity: (name: string, dimension: Dimension) => string;
   readonly many: (name: string, one: string) => string;
 }

@@ -5,6 +5,7 @@ import type { Dimension } from '../units/units.ts';
 import type { Place, Problem } from './problems.ts';
 import { sampledRecordWords } from './sampledRecord.ts';
 import { checksInWords, slipWords } from './slips.ts';
+import { traceWords } from './traces.ts';
 import { KIND_WORDS, ROLE_WORDS } from './words.ts';
 
 /** Figures in a sentence: enough to find the thing, not to compute with. */
@@ -286,12 +287,6 @@ function words({ code, place, facts, weight }: Problem): string {
       return 'a force and its length make an impulse; one of the two is missing here, so this tap has none.';
     case 'tap-both-rebound-and-follow':
       return 'the hammer cannot come back and go on through at once; both angles are filled in, so this tap has no known impulse. Blank the one that was not seen.';
-    case 'trace-no-samples':
-      return number('rows') >= 20
-        ? 'no two columns of numbers, time and displacement, were found in it. Check that the whole record was saved.'
-        : `${number('rows') > 0 ? many('rows', 'row') : 'no row'} of numbers ${number('rows') > 1 ? 'were' : 'was'} found in it; a swing takes twenty or more. Check that the whole record was saved.`;
-    case 'trace-too-long':
-      return `the record has ${text('rows')} samples; up to ${text('most')} are read for now. Save every tenth sample, or a part of it.`;
     case 'trace-time-not-rising':
     case 'trace-samples-repeated':
     case 'trace-time-coarse':
@@ -302,20 +297,32 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'trace-cut-off':
     case 'trace-gzip-broken':
       return sampledRecordWords(code, weight, { has, text, number, figure, quantity, many });
+    case 'trace-no-samples':
+    case 'trace-too-long':
     case 'trace-constant':
-      return 'the displacement never changes: the sensor was not read, or this is another column.';
     case 'trace-unit-assumed':
-      return `its header does not name both units; ${text('time')} and ${text('reading')} are taken. Write them in the header.`;
     case 'trace-event-not-read':
-      return `line ${text('at')} of the list of shots, “${found}”, is not a time with a kind after it. Write 12.5, or 12.5 tap 1.2 mN·s, or 40.2 blank.`;
     case 'trace-events-outside':
-      return `${many('events', 'shot')} of its list lie outside the record, which runs from ${quantity('from', 'time')} to ${quantity('to', 'time')}, and are left out. Check the clock of the list.`;
     case 'trace-not-fitted':
-      return text('why') === 'noSwing' ? 'no swing stands out of it: fewer than three passages through the rest.' : 'its samples do not tell a swing with these shots: too few between them, or two at one time.';
     case 'trace-position-step':
-      return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
     case 'trace-large-swing':
-      return `a swing of ${figure('degrees', 3)}° is wide; its jump is solved with the linear equation, which is off by more than 0.1 % there.`;
+    case 'trace-bytes-missing':
+    case 'trace-clipped':
+    case 'trace-spikes':
+    case 'trace-no-trigger':
+    case 'trace-unit-unknown':
+    case 'trace-wrong-unit':
+    case 'trace-rate-missing':
+    case 'trace-pivot-missing':
+    case 'trace-sensor-slope-missing':
+    case 'trace-offset-found':
+    case 'trace-offset-open':
+    case 'trace-clock-drifts':
+    case 'trace-jumps-found':
+    case 'trace-swing-from-bench':
+    case 'trace-times-moved':
+    case 'trace-too-close':
+      return traceWords(code, { has, text, number, figure, quantity, many });
     case 'force-record-no-samples':
       return 'no two columns of numbers, time and force, were found in it. Check that the whole record was saved.';
     case 'force-record-time-not-rising':

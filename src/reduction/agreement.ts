@@ -5,7 +5,7 @@ import { peakTimeOfSmall } from '../pendulum/launch.ts';
 import { problem, type Problem } from '../problems/problems.ts';
 import { entry, type Choices, type Session } from '../session/session.ts';
 import { stiffnessAs } from './evidence.ts';
-import { groundOf, type Ground } from './ground.ts';
+import { groundOf, type Ground, type GroundRecords } from './ground.ts';
 import type { Agreement, AgreementCheck } from './evidenceResults.ts';
 import { stated } from './run.ts';
 import { readSheets, type SessionRecord } from './sheets.ts';
@@ -55,7 +55,7 @@ function recordsForChecks(records: readonly SessionRecord[], counts: (record: Se
   }).map(({ id }) => id));
 }
 
-export function agreementOf(session: Session, ground: Ground, { records, counts }: { readonly records: readonly SessionRecord[]; readonly counts: (record: SessionRecord) => boolean }): Agreement | null {
+export function agreementOf(session: Session, ground: Ground, { records, counts, library }: Pick<GroundRecords, 'records' | 'counts' | 'library'>): Agreement | null {
   const checks = checksOf(session.choices, ground);
   if (checks.length === 0) return null;
   const off = checks.filter(isOff).map(({ id }) => id);
@@ -64,7 +64,7 @@ export function agreementOf(session: Session, ground: Ground, { records, counts 
   const again = (slipped: Session): readonly Check[] => {
     // Texts are cut once and kept; only the columns that a slip renames are read anew.
     const few = (slipped.sheets === session.sheets ? records : readSheets(slipped).records).filter(({ id }) => kept.has(id));
-    return checksOf(slipped.choices, groundOf(slipped, { records: few, counts, counted: few, exactly: true }, []));
+    return checksOf(slipped.choices, groundOf(slipped, { records: few, counts, counted: few, exactly: true, ...(library ? { library } : {}) }, []));
   };
   return { checks: checks.map(checkTold), off, slips: slipsThatReconcile({ asTyped: session, bare: withDampingKnown(withoutSpreads(session), ground) }, checks, off, again) };
 }

@@ -45,7 +45,7 @@ function changeInputs(change: Change, as: ConfigurationName): Readonly<Record<'d
   return as === 'taps' ? { dJ: signed(change.inertia), dK: signed(change.stiffness) } : { dJ: NONE, dK: NONE };
 }
 
-export const TIMING_WORDS = (timing: Timing): string => (timing.hung ? `Period with ${Number((timing.hung.mass.value * 1e3).toPrecision(4))} g at ${Number((timing.hung.radius.value * 1e3).toPrecision(4))} mm` : timing.configuration === 'taps' ? 'Period as tapped, table' : 'Period, table');
+export const TIMING_WORDS = (timing: Timing): string => (timing.hung ? `Period with ${Number((timing.hung.mass.value * 1e3).toPrecision(4))} g at ${Number((timing.hung.radius.value * 1e3).toPrecision(4))} mm` : timing.trace !== undefined ? `Period of the swing in ${timing.trace}` : timing.configuration === 'taps' ? 'Period as tapped, table' : 'Period, table');
 
 function timingItem(timing: Timing, { choices, stand, change }: EvidenceFacts): Item {
   const hung = timing.hung;

@@ -24,7 +24,9 @@ import { dampingOf, type Damping } from './swings.ts';
 import { tapsOf } from './tapImpulse.ts';
 import { placesInRun } from './taps.ts';
 import { barePeriod, timingsOf } from './timings.ts';
-import { tracesOf } from './traces.ts';
+import type { Expected } from './traceFit.ts';
+import { NO_TRACES, type TraceLibrary } from './traceRead.ts';
+import { knownTraces, swingsOfTraces, timingsOfTraces } from './traces.ts';
 import { weightsOf } from './weights.ts';
 
 export interface GroundRecords {
@@ -33,19 +35,21 @@ export interface GroundRecords {
   readonly counted: readonly SessionRecord[];
   /** Readings without uncertainty: values alone are asked for. */
   readonly exactly?: true;
+  /** Records of the session's traces; absent: none are at hand. */
+  readonly library?: TraceLibrary;
 }
 
 const EXACT: ReadingSpread = { division: 0, divisionTyped: true, eye: 0 };
 
 export type Ground = ReturnType<typeof groundOf>;
 
-export function groundOf(session: Session, { records, counts, counted, exactly }: GroundRecords, problems: Problem[]) {
+export function groundOf(session: Session, { records, counts, counted, exactly, library = NO_TRACES }: GroundRecords, problems: Problem[]) {
   const { choices } = session;
   const bench = readBench(session);
   problems.push(...bench.problems);
   const asked = records.length > 0 || session.traces.length > 0 || valueOf(bench, 'guessedImpulse') !== null;
   if (asked) {
-    const timedInTable = records.some((record) => counts(record) && record.swingsTime !== null && record.massHung === null && record.massHungAt === null);
+    const timedInTable = session.traces.length > 0 || records.some((record) => counts(record) && record.swingsTime !== null && record.massHung === null && record.massHungAt === null);
     for (const name of missingEntries(bench, choices)) if (name !== 'period' || !timedInTable) problems.push(problem('entry-missing', 'stops', { entry: name }, { label: ENTRIES[name].label }));
   }
   const pressures = pressuresOf(bench, choices, records, counts, problems);
@@ -62,7 +66,8 @@ export function groundOf(session: Session, { records, counts, counted, exactly }
   const damping = dampingOf(session, bench, stand, scale, records, read.byRecord, spread, counts, problems);
   const unknown = anchor(exact(stand.shareUnknown));
   const shareOf = (name: ConfigurationName): Anchor => stand.masses?.[name].gravityShare ?? unknown;
-  const timings = timingsOf(counted, { bench, choices, ratio: damping.ratio, shares: { shots: shareOf('shots'), taps: shareOf('taps') } }, problems);
+  const known = knownTraces(session, library, bench, expectedSwing(stand, damping), problems);
+  const timings = [...timingsOf(counted, { bench, choices, ratio: damping.ratio, shares: { shots: shareOf('shots'), taps: shareOf('taps') } }, problems), ...timingsOfTraces(known)];
   const typedPeriod = timedPeriod(session, bench, stand, damping, problems);
   const period = typedPeriod ?? barePeriod(timings, choices.periodTimedAs);
   const weights = weightsOf(counted, { bench, choices, scale, spread, gravity: stand.gravity, share: shareOf(choices.weightsHungAs) }, problems);
@@ -78,16 +83,21 @@ export function groundOf(session: Session, { records, counts, counted, exactly }
   const frequency = film ? exact((2 * Math.PI) / (film.told.period * (filmFactors?.stretch ?? 1))) : bodies ? propagate(naturalFrequency, { inertia: bodies.shots.inertia, stiffness: bodies.shots.stiffness }) : period && propagate(({ T }) => (2 * Math.PI) / T, { T: period });
   const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, { background: backgroundOf(records, { bench, choices, scale, frequency, ratio: damping.ratio.shots, spread }, problems), pulse: measuredPulse(session, problems) }, problems);
   const swung = film ? undampedOf(damping) : damping;
-  const traces = tracesOf(session.traces, choices, scale, problems);
   const handRead = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
-  const swings = [...handRead, ...traces.swings];
+  const swings = [...handRead, ...swingsOfTraces(known, bench, scale, problems)];
   const tapped = bodies && propagate(naturalFrequency, { inertia: bodies.taps.inertia, stiffness: bodies.taps.stiffness });
   const forceRecords = forceRecordsOf(session.forceRecords, problems);
   const taps = tapsOf(swings, { bench, choices, forceRecords, gravity: stand.gravity, frequency: tapped ?? frequency, ratio: damping.ratio.taps }, problems);
   const taken = new Map(session.sheets.map((sheet) => [sheet.id, sheet.taken ?? ('asOrdered' as const)]));
   const places = placesInRun(swings, ({ record }) => taken.get(record.sheet) ?? 'asOrdered');
-  const known = factorsOf({ bodies, film: filmFactors, stand, taps: taps.filter((tap) => counts(tap.swing.record)), places, choices });
-  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, traces: traces.told, forceRecords: forceRecords.told, taps, places, known };
+  const factors = factorsOf({ bodies, film: filmFactors, stand, taps: taps.filter((tap) => counts(tap.swing.record)), places, choices });
+  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, traces: known, forceRecords: forceRecords.told, taps, places, known: factors };
+}
+
+/** Frequency and damping that the bench makes, for traces that show none. */
+function expectedSwing(stand: Stand, damping: Damping): Expected {
+  const body = stand.masses?.shots;
+  return body ? { frequency: naturalFrequency({ inertia: body.inertia.value, stiffness: body.stiffness.value }), ratio: Math.min(0.9, Math.max(0, damping.ratio.shots.value)) } : null;
 }
 
 /** The measured pulse, where it is the one chosen. */

@@ -1,6 +1,6 @@
 /** Jumps of a fitted trace as uncertain values: its noise by sources that the jumps near one another share, its frequency and damping common to all. */
-import type { Source } from '../metrology/source.ts';
-import { anchor, combine, ofSource, type Uncertain } from '../metrology/uncertain.ts';
+import type { Family, Source } from '../metrology/source.ts';
+import { anchor, combine, ofSource, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import type { Dimension } from '../units/units.ts';
 
 /** What a fit tells of its jumps, all in the unit of the reading. */
@@ -12,6 +12,15 @@ export interface JumpsKnown {
   readonly covariance: readonly [ww: number, wz: number, zz: number];
   readonly byFrequency: readonly number[];
   readonly byRatio: readonly number[];
+  /** ω_n, rad/s, and ζ. */
+  readonly frequency: number;
+  readonly ratio: number;
+}
+
+export interface UncertainJumps {
+  readonly jumps: readonly Uncertain[];
+  readonly frequency: Anchor;
+  readonly ratio: Anchor;
 }
 
 /** Jumps correlated by less than this share no source. */
@@ -50,24 +59,29 @@ function widthOf(n: number, covariance: (i: number, j: number) => number): numbe
   return width;
 }
 
-export function uncertainJumps(id: string, dimension: Dimension, { jumps, noiseCovariance, covariance: [ww, wz, zz], byFrequency, byRatio }: JumpsKnown): readonly Uncertain[] {
+export function uncertainJumps(id: string, dimension: Dimension, { jumps, noiseCovariance, covariance: [ww, wz, zz], byFrequency, byRatio, frequency, ratio }: JumpsKnown): UncertainJumps {
   const n = jumps.length;
   const width = widthOf(n, noiseCovariance);
   const root = bandedRoot(n, noiseCovariance, width) ?? jumps.map((_, i) => Float64Array.of(Math.sqrt(Math.max(0, noiseCovariance(i, i)))));
-  const unit = (name: string, of: Dimension, family: Source['family']): Source => ({ id: `${id}.${name}`, label: family!.label, symbol: 'x', dimension: of, estimate: 0, u: 1, distribution: 'normal', dof: Infinity, ...(family ? { family } : {}) });
+  const unit = (name: string, of: Dimension, family: Family): Source => ({ id: `${id}.${name}`, label: family.label, symbol: 'x', dimension: of, estimate: 0, u: 1, distribution: 'normal', dof: Infinity, family });
   const noise = jumps.map((_, i) => unit(`noise${i + 1}`, dimension, { id: 'traces.noise', label: 'Noise of the traces' }));
-  const oscillation = { id: 'traces.oscillation', label: 'Frequency and damping of the traces' };
-  const [first, second] = ['oscillation1', 'oscillation2'].map((name) => anchor(ofSource(unit(name, 'number', oscillation))));
+  const oscillation: Family = { id: 'traces.oscillation', label: 'Frequency and damping of the traces' };
+  const [first, second] = ['oscillation1', 'oscillation2'].map((name) => ofSource(unit(name, 'number', oscillation)));
   // (ω_n, ζ) by the lower triangle of their covariance.
   const l00 = Math.sqrt(Math.max(0, ww));
   const l10 = l00 === 0 ? 0 : wz / l00;
   const l11 = Math.sqrt(Math.max(0, zz - l10 * l10));
-  return jumps.map((value, i) => {
-    const row = root[i]!;
-    const own = new Map<Source, number>();
-    row.forEach((part, at) => {
-      if (part !== 0) own.set(noise[i - row.length + 1 + at]!, part);
-    });
-    return combine([[1, { value, own, through: new Map() }], [byFrequency[i]! * l00 + byRatio[i]! * l10, first!], [byRatio[i]! * l11, second!]]);
-  });
+  const w = anchor({ ...combine([[l00, first!]]), value: frequency });
+  const z = anchor({ ...combine([[l10, first!], [l11, second!]]), value: ratio });
+  return {
+    frequency: w, ratio: z,
+    jumps: jumps.map((value, i) => {
+      const row = root[i]!;
+      const own = new Map<Source, number>();
+      row.forEach((part, at) => {
+        if (part !== 0) own.set(noise[i - row.length + 1 + at]!, part);
+      });
+      return { ...combine([[1, { value, own, through: new Map() }], [byFrequency[i]!, w], [byRatio[i]!, z]]), value };
+    }),
+  };
 }

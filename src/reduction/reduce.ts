@@ -24,9 +24,11 @@ import type { Swing, Way } from './shots.ts';
 import { periodOfBody, standByRoute, typedStiffness, valueOf, type Body, type ByConfiguration, type ConfigurationName, type Stand } from './stand.ts';
 import type { Damping } from './swings.ts';
 import { tapsAgainst } from './tapsAgainst.ts';
+import { NO_TRACES, type TraceLibrary } from './traceRead.ts';
+import { angleOfThrow, traceTold } from './traces.ts';
 import { tapStudyOf } from './tapStudy.ts';
 
-export function reduce(session: Session, explain: string | null): Reduction {
+export function reduce(session: Session, explain: string | null, library: TraceLibrary = NO_TRACES): Reduction {
   const choices = session.choices;
   const problems: Problem[] = [];
 
@@ -36,7 +38,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
   const setAside = (record: SessionRecord): string | null => session.marks[record.id]?.setAside?.reason ?? null;
   const counts = (record: SessionRecord): boolean => setAside(record) === null;
 
-  const ground = groundOf(session, { records, counts, counted: records.filter(counts) }, problems);
+  const ground = groundOf(session, { records, counts, counted: records.filter(counts), library }, problems);
   const { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, bodies, shares, corrections, swings, taps, places, known } = ground;
   const tapCalibration = known[choices.swingForm].tapCalibration;
   const evidence = evidenceFrom({ choices, stand, change, period: typedPeriod, timings, stiffness: typedStiffness(bench), weights: weights?.stiffness ?? null, taps: tapCalibration, ratio: seenRatios(damping) }, bodies);
@@ -79,11 +81,17 @@ export function reduce(session: Session, explain: string | null): Reduction {
     choices, chosenKnown: factors[form][way].shots !== null, anyShots: shots.length > 0, study, adjustment, masses, runRelativeU: chosenRun ? chosenRun.result.mean.u / Math.abs(chosenRun.result.mean.value) : null,
   }));
 
-  const agreement = agreementOf(session, ground, { records, counts });
+  const agreement = agreementOf(session, ground, { records, counts, library });
   problems.push(...agreementRemark(agreement));
   // A slip that is named says the same and more.
   const told: ReadonlySet<string> = new Set(agreement && agreement.slips.length > 0 ? agreement.off.flatMap((id) => (id === 'period' ? ['period-differs'] : id === 'taps' ? ['calibrations-differ'] : [])) : []);
   const said = problems.filter(({ code }) => !told.has(code));
+
+  const [K, arm] = [factors[form][way].shots, arms.shots];
+  const impulseOfThrow = (jump: number, inVolts: boolean): number | null => {
+    const angle = scale && angleOfThrow(jump, inVolts, scale, bench);
+    return K && arm && angle !== null ? (K.value * angle) / arm.value : null;
+  };
 
   const opened = explain === null ? undefined : swings.find((s) => s.record.id === explain);
   return {
@@ -113,7 +121,7 @@ export function reduce(session: Session, explain: string | null): Reduction {
     weights: weights?.told ?? null,
     addedMasses: masses,
     tapStudy: study,
-    traces: ground.traces,
+    traces: ground.traces.map((known) => traceTold(known, choices, impulseOfThrow)),
     forceRecords: ground.forceRecords,
     comparisons: tapsAgainst({ damping, timings, bodies, records: records.filter(counts) }),
     agreement,

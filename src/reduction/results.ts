@@ -1,4 +1,5 @@
 /** What the road returns: plain values in SI units that survive a trip from a worker; screens and exports read this and nothing else. */
+import type { TraceTold } from './traceResults.ts';
 import type { Line } from '../metrology/budget.ts';
 import type { DateRead } from '../units/calendarDate.ts';
 import type { Dimension } from '../units/units.ts';
@@ -230,25 +231,6 @@ export interface BenchEffect {
   readonly taken: readonly { readonly what: string; readonly value: number; readonly dimension: Dimension }[];
   /** More than a fifth of the run's relative u, or more than half a percent. */
   readonly matters: boolean;
-}
-
-/** A sampled trace as fitted. */
-export interface TraceTold {
-  readonly id: string;
-  readonly name: string;
-  readonly samples: number;
-  /** s. */
-  readonly from: number;
-  readonly to: number;
-  readonly events: number;
-  /** T₀ = 2π/ω_n, s, and ζ; null where no swing was fitted. */
-  readonly period: Stated | null;
-  readonly ratio: Stated | null;
-  /** sd of the residuals in the SI unit of the reading, and their power at the swing's frequency over white noise's. */
-  readonly noise: number | null;
-  readonly colour: number | null;
-  /** u of a jump by noise alone, as a throw in the unit of the reading. */
-  readonly least: number | null;
 }
 
 /** A column as found in a sheet, with what was proposed and why. */

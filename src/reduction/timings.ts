@@ -21,6 +21,8 @@ export interface Timing {
   /** T₀, undamped, small swing, s. */
   readonly period: Anchor;
   readonly pooled: Pooled;
+  /** The trace whose swing it is; absent: timed by hand. */
+  readonly trace?: string;
   readonly records: readonly SessionRecord[];
 }
 

@@ -1,5 +1,4 @@
 /** What the page is told of a sampled trace: how it was read, its shots and stretches, and the fitted swing. */
-import type { Problem } from '../problems/problems.ts';
 import type { RecordKind } from '../readings/meanings.ts';
 import type { SwingModel } from '../traces/swingModel.ts';
 import type { Stated } from './results.ts';
@@ -69,10 +68,9 @@ export interface TraceTold {
   readonly to: number;
   /** Middle spacing of the samples, s. */
   readonly spacing: number;
-  readonly dimension: 'length' | 'angle' | 'pixel' | 'count';
+  readonly dimension: 'length' | 'angle' | 'pixel' | 'count' | 'voltage';
   readonly events: readonly TraceEventTold[];
   readonly stretches: readonly Stretch[];
   readonly offset: { readonly value: number; readonly u: number | null; readonly found: boolean } | null;
   readonly fitted: TraceFitted | null;
-  readonly problems: readonly Problem[];
 }

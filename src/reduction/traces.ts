@@ -1,126 +1,192 @@
 /** Sampled traces: each shot and tap a jump of the velocity, all jumps of a record solved together, to records like any other. */
-import type { Source } from '../metrology/source.ts';
-import { anchor, combine, ofSource, propagate, exact, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
-import { cholesky } from '../numeric/linearAlgebra.ts';
+import { ownParts, pooledMean } from '../metrology/pooled.ts';
+import { anchor, combine, exact, propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { problem, type Problem } from '../problems/problems.ts';
-import { swingFromRest } from '../readings/angle.ts';
+import { angleOfReading, swingFromMark, swingFromRest } from '../readings/angle.ts';
 import type { CellRead } from '../readings/cellReads.ts';
-import { readTrace, readTraceEvents, type TraceEvent, type TraceRead } from '../readings/traceText.ts';
-import type { Choices, Trace } from '../session/session.ts';
-import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
+import { WAYS } from '../readings/ways.ts';
+import type { Choices, Session, Trace } from '../session/session.ts';
+import { pickedThrow } from '../traces/pickPeak.ts';
+import { residualSpectrum, type ResidualSpectrum } from '../traces/residualSpectrum.ts';
+import { restAt } from '../traces/swingModel.ts';
 import { readQuantity } from '../units/quantity.ts';
-import type { Dimension } from '../units/units.ts';
-import { readingDimension } from './entries.ts';
-import type { TraceTold } from './results.ts';
+import { readingDimension, type BenchRead } from './entries.ts';
+import { uncertainJumps } from './jumpSources.ts';
 import type { SessionRecord } from './sheets.ts';
 import type { Swing } from './shots.ts';
+import { valueOf } from './stand.ts';
 import type { Scale } from './swings.ts';
+import type { Timing } from './timings.ts';
+import { fitTrace, type Expected, type TimedEvent, type TraceFit, type TraceFitted } from './traceFit.ts';
+import { readTrace, type TraceLibrary, type TraceRead } from './traceRead.ts';
+import type { TraceEventTold, TraceTold } from './traceResults.ts';
 
-export interface TracesRead {
-  readonly swings: readonly Swing[];
-  readonly told: readonly TraceTold[];
+/** A trace read and fitted, in the unit of its own column. */
+export interface TraceKnown {
+  readonly trace: Trace;
+  readonly read: TraceRead;
+  readonly fitted: TraceFitted;
+  readonly jumps: readonly Uncertain[];
+  /** (ω_n, ζ) as uncertain values, shared by all that rests on them. */
+  readonly frequency: Anchor | null;
+  readonly ratio: Anchor | null;
 }
 
-/** Wider swings are not those of the linear equation that the jumps are solved with, rad: sin θ and θ part by 0.13 % there. */
-const SMALL_SWING = (5 * Math.PI) / 180;
 /** A step of position beyond this many u is a fault. */
 const STEP_FAULT = 4;
-/** Records that no one has read as such: cells that a trace has none of. */
+/** Cells that a record of a trace has none of. */
 const NO_CELLS = {
   rest: null, restAfter: null, firstSwing: null, restDown: null, firstSwingDown: null, nextSwings: [], nextSwingsDown: [], voltage: null, pressure: null, hammerIn: null, hammerRebound: null, hammerFollow: null, tapForce: null, tapDuration: null,
   weight: null, loading: null, unloading: null, swingsTime: null, cycles: 1, amplitude: null, massHung: null, massHungAt: null, maximumTime: null, swingBefore: null, timeSinceMaximum: null, problems: [], cells: [], edited: [],
 } as const;
 
-function recordOf(trace: Trace, event: TraceEvent, number: number): SessionRecord {
-  const cell = (value: number, unit: string, text: string, spread: number | null = null): CellRead => ({ value, spread, decimals: 3, unit, text });
-  const impulse = event.impulse === '' ? null : readQuantity(event.impulse, 'impulse', 'mN·s');
-  return {
-    ...NO_CELLS, id: `${trace.id}/${number}`, line: String(number), sheet: trace.id, sheetName: trace.name, kind: event.kind, kindBy: 'person', label: `${trace.name} ${number}`, note: '',
-    time: cell(event.time, 's', String(event.time)), tapImpulse: impulse?.ok ? cell(impulse.value, impulse.unit.symbol, event.impulse, impulse.spread) : null,
-  };
-}
-
-/** Jumps as uncertain values: noise with its covariance as independent sources, ω_n and ζ of the record common to them. */
-function jumpsOf(trace: Trace, fit: SwingFit, dimension: Dimension): readonly Uncertain[] {
-  const { linear, noise, colour, covariance: [ww, wz, zz], byFrequency, byRatio } = fit;
-  const k = linear.jumps.length;
-  if (k === 0) return [];
-  const variance = noise * noise * colour;
-  const block = linear.jumps.map((_, i) => linear.jumps.map((__, j) => variance * linear.inverse[linear.columnOfJump(i)]![linear.columnOfJump(j)]!));
-  const factored = cholesky(block);
-  const lower = factored.status === 'factored' ? factored.lower : block.map((row, i) => row.map((value, j) => (i === j ? Math.sqrt(Math.max(0, value)) : 0)));
-  const unit = (id: string, label: string): Source => ({ id: `${trace.id}.${id}`, label, symbol: 'x', dimension, estimate: 0, u: 1, distribution: 'normal', dof: Infinity, family: { id: `traces.noise`, label: 'Noise of the traces' } });
-  const noiseSources = Array.from({ length: k }, (_, i) => unit(`noise${i + 1}`, 'Noise of the trace'));
-  // (ω, ζ) by the lower triangle of their covariance.
-  const l00 = Math.sqrt(Math.max(0, ww));
-  const l10 = l00 === 0 ? 0 : wz / l00;
-  const l11 = Math.sqrt(Math.max(0, zz - l10 * l10));
-  const shared: readonly Anchor[] = ['frequency', 'ratio'].map((name) => anchor(ofSource({ ...unit(name, 'Frequency and damping of the trace'), dimension: 'number', family: { id: 'traces.oscillation', label: 'Frequency and damping of the traces' } })));
-  return linear.jumps.map((jump, i) => {
-    const own = new Map<Source, number>();
-    for (let j = 0; j <= i; j++) if (lower[i]![j] !== 0) own.set(noiseSources[j]!, lower[i]![j]!);
-    return combine([[1, { value: jump, own, through: new Map() }], [byFrequency[i]! * l00 + byRatio[i]! * l10, shared[0]!], [byRatio[i]! * l11, shared[1]!]]);
+/** Reads and fits every trace of the session; what is expected of the swing serves where a record shows none. */
+export function knownTraces(session: Session, library: TraceLibrary, bench: BenchRead, expected: Expected, problems: Problem[]): readonly TraceKnown[] {
+  return session.traces.map((trace) => {
+    const read = readTrace(trace, library, session.choices, bench);
+    const fitted = fitTrace(trace, read, expected);
+    problems.push(...read.problems, ...fitted.problems);
+    const { found } = fitted;
+    if (!found) return { trace, read, fitted, jumps: [], frequency: null, ratio: null };
+    const { fit, factors, factorOfSwing } = found;
+    const variance = fit.noise ** 2;
+    const [ww, wz, zz] = fit.covariance.map((value) => value * variance * factorOfSwing) as [number, number, number];
+    const { jumps, frequency, ratio } = uncertainJumps(trace.id, read.inVolts ? 'voltage' : readingDimension(session.choices), {
+      jumps: fit.jumps, noiseCovariance: (i, j) => variance * Math.sqrt(factors[i]! * factors[j]!) * fit.noiseCovariance(i, j), covariance: [ww, wz, zz], byFrequency: fit.byFrequency, byRatio: fit.byRatio,
+      frequency: fit.frequency, ratio: fit.ratio,
+    });
+    return { trace, read, fitted, jumps, frequency, ratio };
   });
 }
 
-/** The fit rests on the samples and the times alone; an edit of the bench asks for it again. */
-const FITTED = new WeakMap<object, { readonly times: string; readonly fit: SwingFitResult }>();
-
-function fitOnce(samples: NonNullable<TraceRead['samples']>, times: readonly number[]): SwingFitResult {
-  const key = times.join(' ');
-  const kept = FITTED.get(samples);
-  if (kept?.times === key) return kept.fit;
-  const fit = fitSwing(samples, times);
-  FITTED.set(samples, { times: key, fit });
-  return fit;
+function recordOf(trace: Trace, event: TimedEvent, time: number, number: number): SessionRecord {
+  const cell = (value: number, unit: string, text: string, spread: number | null = null): CellRead => ({ value, spread, decimals: 3, unit, text });
+  const impulse = event.impulse === '' ? null : readQuantity(event.impulse, 'impulse', 'mN·s');
+  return {
+    ...NO_CELLS, id: `${trace.id}/${event.id}`, line: String(number), sheet: trace.id, sheetName: trace.name, kind: event.kind, kindBy: 'person', label: `${trace.name} ${number}`, note: '',
+    time: cell(time, 's', time.toPrecision(9)), tapImpulse: impulse?.ok ? cell(impulse.value, impulse.unit.symbol, event.impulse, impulse.spread) : null,
+  };
 }
 
-export function tracesOf(traces: readonly Trace[], choices: Choices, scale: Scale | null, problems: Problem[]): TracesRead {
-  const swings: Swing[] = [];
-  const told: TraceTold[] = [];
-  for (const trace of traces) {
-    const dimension = readingDimension(choices);
-    const read = readTrace(trace.name, trace.text, dimension);
-    const place = { sheetName: trace.name };
-    problems.push(...read.problems);
-    const listed = readTraceEvents(trace.events, `trace.${trace.id}`);
-    problems.push(...listed.problems);
-    const [from, to] = read.samples ? [read.samples.t[0]!, read.samples.t.at(-1)!] : [0, 0];
-    const all: readonly TraceEvent[] = listed.events.length > 0 ? listed.events : read.triggered.map((time) => ({ time, kind: 'shot', impulse: '', line: 0 }));
-    const events = all.filter(({ time }) => time > from && time < to);
-    if (read.samples && events.length < all.length) problems.push(problem('trace-events-outside', 'doubt', place, { events: all.length - events.length, from, to }));
-    const fit = read.samples && fitOnce(read.samples, events.map(({ time }) => time));
-    const bare = { id: trace.id, name: trace.name, samples: read.samples?.t.length ?? 0, from, to, events: events.length };
-    if (!fit || fit.status !== 'fitted') {
-      if (fit) problems.push(problem('trace-not-fitted', 'stops', place, { why: fit.status }));
-      told.push({ ...bare, period: null, ratio: null, noise: null, colour: null, least: null });
-      continue;
+/** Records of the run from the jumps of all traces. */
+export function swingsOfTraces(known: readonly TraceKnown[], bench: BenchRead, scale: Scale | null, problems: Problem[]): readonly Swing[] {
+  if (!scale) return [];
+  return known.flatMap(({ trace, read, fitted, jumps }) => {
+    const { found } = fitted;
+    if (!found) return [];
+    const sensor = read.inVolts ? sensorOf(bench) : null;
+    if (read.inVolts && !sensor) {
+      problems.push(problem('trace-sensor-slope-missing', 'stops', { sheetName: trace.name, entry: 'sensorSlope' }, {}));
+      return [];
     }
-    const T = (2 * Math.PI) / fit.frequency;
-    told.push({
-      ...bare, period: { value: T, u: (T * Math.sqrt(Math.max(0, fit.covariance[0]))) / fit.frequency }, ratio: { value: fit.ratio, u: Math.sqrt(Math.max(0, fit.covariance[2])) }, noise: fit.noise, colour: fit.colour,
-      least: events.length === 0 ? null : Math.min(...events.map((_, k) => fit.noise * Math.sqrt(fit.colour * fit.linear.inverse[fit.linear.columnOfJump(k)]![fit.linear.columnOfJump(k)]!))),
-    });
-    if (!scale) continue;
-    const jumps = jumpsOf(trace, fit, dimension);
-    events.forEach((event, k) => swings.push(swingOfJump(recordOf(trace, event, k + 1), jumps[k]!, fit.stepsInU[k]!, scale, problems)));
-  }
-  return { swings, told };
+    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor }, scale, problems));
+  });
 }
 
-function swingOfJump(record: SessionRecord, jump: Uncertain, stepInU: number, scale: Scale, problems: Problem[]): Swing {
+/** The step over its u with the residuals' correlation. */
+const stepOf = ({ fit, factors }: TraceFit, k: number): number => fit.stepsInU[k]! / Math.sqrt(factors[k]!);
+
+interface Sensor {
+  readonly slope: Uncertain;
+  readonly offset: Uncertain;
+}
+
+/** The sensor's line x = a + b V, its two parameters correlated as typed. Source: GUM F.1.2.3 (from memory). */
+function sensorOf(bench: BenchRead): Sensor | null {
+  const slope = valueOf(bench, 'sensorSlope');
+  if (!slope || slope.value === 0) return null;
+  const offset = valueOf(bench, 'sensorOffset') ?? exact(0);
+  const r = Math.max(-1, Math.min(1, valueOf(bench, 'sensorCorrelation')?.value ?? 0));
+  const [ua, ub] = [standardUncertainty(offset), standardUncertainty(slope)];
+  if (r === 0 || ua === 0 || ub === 0) return { slope, offset };
+  const own = Math.sqrt(1 - r * r);
+  return { slope, offset: { ...combine([[own, offset], [(r * ua) / ub, slope]]), value: offset.value } };
+}
+
+interface JumpFacts {
+  readonly jump: Uncertain;
+  readonly rest: number;
+  readonly stepInU: number;
+  readonly sensor: Sensor | null;
+}
+
+function swingOfJump(record: SessionRecord, { jump, rest, stepInU, sensor }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
   const place = { sheetName: record.sheetName, record: record.id };
   const swing: Swing = { record, configuration: record.kind === 'tap' ? 'taps' : 'shots', readings: { restFrom: null, rest: null, first: null, next: [] }, angle: null, launch: null };
   if (Math.abs(stepInU) > STEP_FAULT) problems.push(problem('trace-position-step', 'doubt', place, { time: record.time!.value, inU: stepInU }));
+  const length = sensor ? propagate(({ b, v }) => b * v, { b: sensor.slope, v: jump }) : jump;
+  const from = sensor ? propagate(({ a, b }) => a + b * rest, { a: sensor.offset, b: sensor.slope }) : exact(rest);
   try {
-    const turned = propagate(swingFromRest(scale.way), { ...scale.stand, first: jump, rest: exact(0), scale: scale.scale });
-    const angle = scale.sense === 1 ? turned : combine([[-1, turned]]);
-    if (Math.abs(angle.value) > SMALL_SWING) problems.push(problem('trace-large-swing', 'doubt', place, { degrees: (angle.value * 180) / Math.PI }));
+    // About the plumb mark where there is one; else the rest line is taken as the plumb point.
+    const unsigned = scale.mark
+      ? propagate(swingFromMark(scale.way), { ...scale.stand, first: combine([[1, from], [1, length]]), rest: from, mark: scale.mark, scale: scale.scale })
+      : propagate(swingFromRest(scale.way), { ...scale.stand, first: length, rest: exact(0), scale: scale.scale });
+    const angle = scale.sense === 1 ? unsigned : combine([[-1, unsigned]]);
     return { ...swing, angle, launch: { full: angle, smallAngle: angle } };
   } catch (failure) {
     if (!(failure instanceof RangeError)) throw failure;
-    problems.push(problem('record-reading-beyond-radius', 'stops', place, { reading: Math.abs(jump.value), radius: (scale.stand['readingRadius'] ?? scale.stand['screenDistance'])?.value ?? 0 }));
+    problems.push(problem('record-reading-beyond-radius', 'stops', place, { reading: Math.abs(length.value), radius: (scale.stand['readingRadius'] ?? scale.stand['screenDistance'])?.value ?? 0 }));
     return swing;
   }
 }
 
+/** Angle of a small throw in the unit of the trace's column, rad; null where the geometry does not reach. */
+export function angleOfThrow(jump: number, inVolts: boolean, scale: Scale, bench: BenchRead): number | null {
+  const slope = inVolts ? valueOf(bench, 'sensorSlope')?.value : 1;
+  const stand = Object.fromEntries(Object.entries(scale.stand).map(([name, { value }]) => [name, value]));
+  try {
+    return slope === undefined ? null : Math.abs(angleOfReading(scale.way, slope * jump, 0, scale.scale.value, stand));
+  } catch (failure) {
+    if (!(failure instanceof RangeError)) throw failure;
+    return null;
+  }
+}
+
+const SPECTRA = new WeakMap<TraceFit, ResidualSpectrum | null>();
+
+/** Natural periods that the traces show, as timings of the pendulum as it hung then: with taps alone in it as tapped, else as fired. */
+export function timingsOfTraces(known: readonly TraceKnown[]): readonly Timing[] {
+  return known.flatMap(({ trace, fitted, frequency }): Timing[] => {
+    const { found } = fitted;
+    if (!found || !frequency || found.fit.covariance[0] === 0) return [];
+    const configuration = found.events.length > 0 && found.events.every(({ kind }) => kind === 'tap') ? 'taps' : 'shots';
+    const period = anchor(propagate(({ w }) => (2 * Math.PI) / w, { w: frequency }));
+    const pooled = pooledMean([period], ownParts([period]), { id: `traces.period.${trace.id}`, label: 'Scatter of the timings', symbol: 'T', dimension: 'time', family: { id: 'traces.oscillation', label: 'Frequency and damping of the traces' } });
+    return [{ id: `trace.${trace.id}`, configuration, hung: null, period, pooled, records: [], trace: trace.name }];
+  });
+}
+
+/** What the page is told of each trace; impulses by the records that its jumps became. */
+export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null): TraceTold {
+  const { found } = fitted;
+  const { samples, timeline } = read;
+  const dimension = choices.readingWay === 'cameraPivotMarker' ? 'angle' : WAYS[choices.readingWay].reads;
+  const bare: TraceTold = {
+    id: trace.id, name: trace.name, rows: read.record?.rows ?? null, columns: read.columns, uses: { time: read.uses.time ?? null, reading: read.uses.reading ?? null, trigger: read.uses.trigger ?? null },
+    from: samples?.t[0] ?? 0, to: samples?.t[samples.t.length - 1] ?? 0, spacing: timeline?.spacing.usual ?? 0, dimension: read.inVolts ? 'voltage' : dimension, offset: fitted.offset, stretches: fitted.stretches, fitted: null,
+    events: fitted.events.map((event): TraceEventTold => ({ id: event.id, record: null, kind: event.kind, listed: event.listed, time: event.time, timeU: null, jump: null, stepInU: 0, picked: null })),
+  };
+  if (!found || !frequency || !ratio) return bare;
+  const { fit, factors } = found;
+  const uOf = (k: number): number => {
+    const [p, q] = [fit.byFrequency[k]!, fit.byRatio[k]!];
+    const [ww, wz, zz] = fit.covariance;
+    return fit.noise * Math.sqrt(Math.max(0, factors[k]! * fit.noiseCovariance(k, k) + found.factorOfSwing * (p * p * ww + 2 * p * q * wz + q * q * zz)));
+  };
+  const byNoise = fit.jumps.map((_, k) => fit.noise * Math.sqrt(factors[k]! * fit.noiseCovariance(k, k)));
+  const least = byNoise.length === 0 ? null : Math.min(...byNoise);
+  if (!SPECTRA.has(found)) SPECTRA.set(found, residualSpectrum(fit.residuals, bare.spacing));
+  const spectrum = SPECTRA.get(found)!;
+  return {
+    ...bare,
+    events: found.events.map((event, k): TraceEventTold => ({
+      id: event.id, record: `${trace.id}/${event.id}`, kind: event.kind, listed: event.listed, time: fit.times[k]!, timeU: fit.timeU[k]!, jump: { value: fit.jumps[k]!, u: uOf(k) }, stepInU: stepOf(found, k),
+      picked: pickedThrow(found.samples, fit.model, fit.times[k]!, fit.times[k + 1] ?? Infinity),
+    })),
+    fitted: {
+      period: { value: (2 * Math.PI) / frequency.value, u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
+      noise: fit.noise, colour: found.factorOfSwing, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
+      least, noiseEquivalent: least === null || !impulseOfThrow ? null : impulseOfThrow(least, read.inVolts),
+    },
+  };
+}

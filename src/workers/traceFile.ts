@@ -127,7 +127,7 @@ function unread(found: Problem, place: Place): SampledRecord {
   return { ...createSampledReader({ place }).finish(), problems: [found] };
 }
 
-/** The platform's own sum is four times as fast and wants all the bytes at once. */
+/** The platform's own sum is faster and wants all the bytes at once. */
 const SUMMED_WHOLE = 64_000_000;
 
 /**

@@ -36,7 +36,7 @@ const solveByChain = ({ segments, shared, links, rows }: Chain) =>
   });
 
 /** State of segment k as a row over the free unknowns: p₀, v₀, then v (and p where no link) of each next segment, then γ. */
-function dense({ segments, shared, links, rows }: Chain) {
+function dense({ shared, links, rows }: Chain) {
   const free = 2 + links.reduce((sum, link) => sum + (link ? 1 : 2), 0);
   const m = free + shared;
   const unit = (at: number): number[] => Array.from({ length: m }, (_, i) => (i === at ? 1 : 0));

@@ -13,7 +13,7 @@ describe('jumps as uncertain values', () => {
       const [uw, uz] = [0.3, 0.2];
       const byFrequency = Array.from({ length: n }, (_, i) => Math.sin(i));
       const byRatio = Array.from({ length: n }, (_, i) => Math.cos(i));
-      const jumps = uncertainJumps('t1', 'length', { jumps: Array.from({ length: n }, (_, i) => i + 1), noiseCovariance: noise, covariance: [uw * uw, r * uw * uz, uz * uz], byFrequency, byRatio });
+      const jumps = uncertainJumps('t1', 'length', { jumps: Array.from({ length: n }, (_, i) => i + 1), noiseCovariance: noise, covariance: [uw * uw, r * uw * uz, uz * uz], byFrequency, byRatio, frequency: 6, ratio: 0.01 }).jumps;
       const expected = (i: number, j: number): number => noise(i, j) + byFrequency[i]! * byFrequency[j]! * uw * uw + byRatio[i]! * byRatio[j]! * uz * uz + (byFrequency[i]! * byRatio[j]! + byRatio[i]! * byFrequency[j]!) * r * uw * uz;
       for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) expect(Math.abs(covariance(jumps[i]!, jumps[j]!) - expected(i, j))).toBeLessThan(0.02);
       expect(standardUncertainty(jumps[0]!)).toBeCloseTo(Math.sqrt(expected(0, 0)), 6);
@@ -21,7 +21,7 @@ describe('jumps as uncertain values', () => {
   });
 
   it('far apart share no source of noise', () => {
-    const jumps = uncertainJumps('t1', 'length', { jumps: Array.from({ length: 200 }, () => 1), noiseCovariance: chain(0.1, () => 1), covariance: [0, 0, 0], byFrequency: new Array(200).fill(0), byRatio: new Array(200).fill(0) });
+    const jumps = uncertainJumps('t1', 'length', { jumps: Array.from({ length: 200 }, () => 1), noiseCovariance: chain(0.1, () => 1), covariance: [0, 0, 0], byFrequency: new Array(200).fill(0), byRatio: new Array(200).fill(0), frequency: 6, ratio: 0.01 }).jumps;
     expect(jumps[100]!.own.size).toBeLessThan(5);
   });
 

@@ -196,7 +196,7 @@ it('frequency, decay and amplitudes of the damped-sinusoid reference sets are th
     const fit = fitted({ t: Float64Array.from({ length: n }, (_, i) => i * dt), x: Float64Array.from(y) }, [], { stretches: 0 });
     const { fit: expected, sd } = set.expected;
     const root = Math.sqrt(1 - fit.ratio ** 2);
-    const [{ position, velocity }] = fit.model.stretches;
+    const { position, velocity } = fit.model.stretches[0]!;
     expect(Math.abs(fit.frequency * root - expected.omega)).toBeLessThan(1e-3 * sd.omega);
     expect(Math.abs(fit.frequency * fit.ratio - expected.gamma)).toBeLessThan(1e-3 * sd.gamma);
     expect(Math.abs(Math.hypot(position, (velocity + fit.ratio * position) / root) - Math.abs(expected.A))).toBeLessThan(1e-3 * sd.A);

@@ -26,7 +26,7 @@ const LONGEST_EXPONENT = 4;
  * @returns `to`, or where the line begins that holds a quotation mark: it and what follows are to be cut by their quotes
  */
 export function scanLines(rows: SampledRows, bytes: Uint8Array, from: number, to: number): number {
-  const { usual, encoding, delimiter: delimiterText, newline: newlineText, decimal: decimalText } = rows.dialect;
+  const { usual, columns, encoding, delimiter: delimiterText, newline: newlineText, decimal: decimalText } = rows.dialect;
   const [delimiter, newline, decimal] = [delimiterText.charCodeAt(0), newlineText.charCodeAt(0), decimalText.charCodeAt(0)];
   const spaced = delimiter === SPACE;
   // A tab is white where it parts no cells; a return is white where lines end with line feeds.
@@ -148,6 +148,11 @@ export function scanLines(rows: SampledRows, bytes: Uint8Array, from: number, to
         }
         const stop = i - 1;
         if (lacks !== 0) rows.tell(lacks, rows.line, () => cellsOfLine(textOf(bytes.subarray(begin, stop), encoding), delimiterText));
+      }
+      // A column that few rows have was opened by one of them.
+      for (let c = usual; c < columns; c += 1) {
+        missing[c] = missing[c]! + 1;
+        if (buffers[c]!.length > 0) buffers[c]![row] = Number.NaN;
       }
       rows.rows += 1;
       rows.line += 1;

@@ -67,15 +67,15 @@ function headingCells(row: HeadRow, delimiter: SampledDelimiter, usual: number, 
 }
 
 /** How much a row above the rows looks like their heading; 0: not at all. */
-function headingScore(row: HeadRow, cells: readonly string[], usual: number, mayBeTorn: boolean, adjacent: boolean): number {
+function headingScore(row: HeadRow, cells: readonly string[], usual: number, delimiter: SampledDelimiter, adjacent: boolean): number {
   const filled = cells.filter((cell) => cell !== '').length;
   if (row.words === 0 || row.numbers * 3 > row.filled || RULE.test(cells.join(''))) return 0;
   const known = cells.filter((cell) => unitIn(cell) !== '' || useOfHeader(cell) !== null).length;
   // One heading above two cells may be that of one number with a decimal comma.
-  const fits = filled === 1 ? !/[:=]|\s\d+$/.test(cells[0] ?? '') && (usual === 1 || (mayBeTorn && adjacent && known > 0)) : filled >= Math.ceil(usual / 2);
+  const fits = filled === 1 ? !/[:=]|\s\d+$/.test(cells[0] ?? '') && (usual === 1 || (usual === 2 && delimiter === ',' && adjacent && known > 0)) : filled >= Math.ceil(usual / 2);
   if (!fits || cells.some((cell) => cell.length > LONGEST_HEADER)) return 0;
   // Free text with a comma in it is no heading.
-  if (known === 0 && (!adjacent || filled < usual || cells.some((cell) => cell.length > LONGEST_UNKNOWN || /[:=]/.test(cell)) || COMMENT.test(row.cells[0] ?? ''))) return 0;
+  if (known === 0 && (!adjacent || filled < usual || (delimiter === ' ' && filled > usual) || cells.some((cell) => cell.length > LONGEST_UNKNOWN || /[:=]/.test(cell)) || COMMENT.test(row.cells[0] ?? ''))) return 0;
   return known * 10 + (adjacent ? 5 : 0) + (filled === usual ? 2 : 0);
 }
 
@@ -106,7 +106,7 @@ export function findSampledHeader(all: readonly HeadRow[], begins: number, { del
   for (let at = nearest; at >= 0 && at > nearest - ABOVE && all[at]!.numbers * 3 <= all[at]!.filled; at -= 1) {
     const row = all[at]!;
     const heading = headingCells(row, delimiter, usual, lines[row.line - 1] ?? '');
-    const score = headingScore(row, heading, usual, usual === 2 && delimiter === ',', at === nearest);
+    const score = headingScore(row, heading, usual, delimiter, at === nearest);
     if (score > best) [header, best, cells] = [at, score, heading];
   }
   const unitRow = units === -1 ? null : all[units]!;

@@ -39,10 +39,10 @@ describe('both ways read the same', () => {
       expect(told(scannedInPieces)).toEqual(told(whole));
       expect(told(odd)).toEqual(told(whole));
       expect(told(oddInPieces)).toEqual(told(whole));
-    }), { numRuns: 1500 });
-    expect(rows).toBeGreaterThan(10_000);
-    expect(scanned).toBeGreaterThan(1000);
-  });
+    }), { numRuns: 500 });
+    expect(rows).toBeGreaterThan(5000);
+    expect(scanned).toBeGreaterThan(350);
+  }, 20_000);
 
   it('byte by byte', () => {
     fc.assert(fc.property(invented, ({ text }) => {
@@ -51,7 +51,7 @@ describe('both ways read the same', () => {
       if (whole === null) return;
       expect(told(read(bytes, [1], true)!)).toEqual(told(whole));
       expect(told(read(bytes, [1], false, 1)!)).toEqual(told(whole));
-    }), { numRuns: 1500 });
+    }), { numRuns: 200 });
   });
 
   it('where quotation marks begin in the middle of a record', () => {

@@ -60,7 +60,7 @@ export const invented: fc.Arbitrary<Invented> = style.chain((chosen) =>
       { weight: 12, arbitrary: fc.array(fc.tuple(between, cell, between), { minLength: chosen.columns, maxLength: chosen.columns }) },
       { weight: 1, arbitrary: fc.array(fc.tuple(between, cell, between), { minLength: 1, maxLength: chosen.columns + 2 }) },
       { weight: 1, arbitrary: interrupting },
-    ), { maxLength: 40 }),
+    ), { maxLength: 40, size: 'max' }),
     ended: fc.boolean(),
     cut: fc.integer({ min: 0, max: 12 }),
   }).map(({ first, lines, ended, cut }) => {

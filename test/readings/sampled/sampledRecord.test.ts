@@ -98,7 +98,7 @@ describe('columns', () => {
     const rows = rowsOf((i) => `14:02:${String(Math.floor(i / 2)).padStart(2, '0')}.${i % 2 === 0 ? '000' : '500'},ok,${i},${-i / 2},`);
     const record = readSampledText(['Clock,State,Frame,x (px),', ...rows].join('\n'));
     expect(record.columns.map(({ header, clock, missing }) => [header, clock, missing])).toEqual([['Clock', true, 0], ['Frame', false, 0], ['x (px)', false, 0]]);
-    expect([...record.columns[0]!.values.slice(0, 4)]).toEqual([50_520, 50_520.5, 50_521, 50_521.5]);
+    expect(record.columns[0]!.values.slice(0, 4)).toEqual(Float64Array.of(50_520, 50_520.5, 50_521, 50_521.5));
     expect(record.plain).toBe(true);
   });
 
@@ -106,7 +106,7 @@ describe('columns', () => {
     const text = ['a,b,c,d', ...rowsOf((i) => `${i},${i < N / 2 ? i : ''},${i < N / 2 - 1 ? '' : i},note ${i}`)].join('\n');
     const record = readSampledText(text);
     expect(record.columns.map(({ header, missing }) => [header, missing])).toEqual([['a', 0], ['c', N / 2 - 1]]);
-    expect([...record.columns[1]!.values.slice(N / 2 - 2, N / 2)]).toEqual([Number.NaN, N / 2 - 1]);
+    expect(record.columns[1]!.values.slice(N / 2 - 2, N / 2)).toEqual(Float64Array.of(Number.NaN, N / 2 - 1));
   });
 
   it('that begin with words for a long time become columns of numbers all the same, and the words are told', () => {
@@ -162,6 +162,11 @@ describe('rows that are not whole', () => {
     const record = text(rowsOf((i) => (i === 10 ? '10' : i === 20 ? '0,020,4' : i === 30 ? '30,30,a note' : `${i},${i}`)));
     expect([10, 20, 30].map((row) => record.columns.map(({ values: all }) => all[row]))).toEqual([[10, Number.NaN], [Number.NaN, Number.NaN], [30, 30]]);
     expect(record.passedOver.map(({ line }) => line)).toEqual([12, 22]);
+  });
+
+  it('a number in a note here and there makes no column', () => {
+    const record = readSampledText(['t,x,note', ...rowsOf((i) => (i % 20 === 3 ? `${i},${i},${i}` : `${i},${i}`))].join('\n'));
+    expect([record.columns.map(({ header }) => header), record.passedOverCount]).toEqual([['t', 'x'], 0]);
   });
 
   it('a header that comes again where files were put together is passed over', () => {

@@ -1,0 +1,191 @@
+/** The fit of one trace: its shots found or brought on to its clock, its swing, and how far its noise is from white. */
+import { problem, type Place, type Problem } from '../problems/problems.ts';
+import type { TraceEvent } from '../readings/traceEvents.ts';
+import type { Trace } from '../session/session.ts';
+import { clockOffset } from '../traces/clockOffset.ts';
+import { maskOf } from '../traces/faults.ts';
+import { findJumps } from '../traces/findShots.ts';
+import { noiseCorrelation, varianceFactor, type NoiseCorrelation } from '../traces/noiseColour.ts';
+import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
+import { likelyFrequencies } from '../traces/swingStart.ts';
+import { firstAtOrAfter, type Oscillation, type SwingSamples } from '../traces/swingSums.ts';
+import type { TraceRead } from './traceRead.ts';
+import type { Stretch, TraceTold } from './traceResults.ts';
+
+/** A shot of a trace: when it was listed to be, on the record's clock. */
+export interface TimedEvent extends TraceEvent {
+  readonly listed: number;
+}
+
+export interface TraceFit {
+  readonly samples: SwingSamples;
+  readonly events: readonly TimedEvent[];
+  readonly stretches: readonly Stretch[];
+  readonly offset: TraceTold['offset'];
+  readonly fit: SwingFit;
+  /** By how much the residuals' correlation widens the variance of each jump, and of frequency and damping. */
+  readonly factors: readonly number[];
+  readonly factorOfSwing: number;
+}
+
+export interface TraceFitted {
+  /** null where no swing could be fitted. */
+  readonly found: TraceFit | null;
+  readonly stretches: readonly Stretch[];
+  readonly events: readonly TimedEvent[];
+  readonly offset: TraceTold['offset'];
+  readonly problems: readonly Problem[];
+}
+
+/** What the bench says of the swing: for records that show none, or something else more strongly. */
+export type Expected = Oscillation | null;
+
+/** A frequency off the expected one by more than this factor is something else's. */
+const FAR = 2;
+/** First guess of the damping where shots are to be found. */
+const SOME_DAMPING = 0.01;
+const FINDING_ROUNDS = 2;
+/** Part of a period by which listed and found times may differ, and by which found ones are moved by the fit. */
+const TOLERANCE = 1 / 8;
+/** Jumps whose own correlation factor is worked out; those between take that of the nearest. */
+const FACTORS = 16;
+/** Periods over which the residuals' correlation is followed, and samples at the most. */
+const CORRELATED_PERIODS = 4;
+const MOST_LAGS = 20_000;
+
+const FITTED = new WeakMap<TraceRead, { readonly key: string; readonly fitted: TraceFitted }>();
+
+/** The fit rests on the trace alone, and on the bench only where the trace shows no swing of its own: an edit of the bench finds it ready. */
+export function fitTrace(trace: Trace, read: TraceRead, expected: Expected): TraceFitted {
+  const key = expected ? `${expected.frequency.toPrecision(3)} ${expected.ratio.toPrecision(2)}` : '';
+  const kept = FITTED.get(read);
+  if (kept && (kept.key === key || !leansOnBench(kept.fitted, expected))) return kept.fitted;
+  const fitted = fitAfresh(trace, read, expected);
+  FITTED.set(read, { key, fitted });
+  return fitted;
+}
+
+const isFar = (frequency: number, expected: Expected): boolean => expected !== null && Math.abs(Math.log(frequency / expected.frequency)) > Math.log(FAR);
+
+function leansOnBench({ found }: TraceFitted, expected: Expected): boolean {
+  return !found || found.fit.covariance[0] === 0 || isFar(found.fit.frequency, expected);
+}
+
+function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitted {
+  const none: TraceFitted = { found: null, stretches: read.stretches, events: [], offset: null, problems: [] };
+  if (!read.samples) return none;
+  const { t, x } = read.samples;
+  const place: Place = { sheetName: trace.name };
+  const problems: Problem[] = [];
+  const use = maskOf(t, read.stretches.filter(({ why }) => why !== 'gap'));
+  const bare: SwingSamples = { t, x, use };
+  const timed = timedEvents(trace, read, bare, expected, place, problems);
+  const inside = timed.events.filter(({ time }) => time > t[0]! && time < t[t.length - 1]!);
+  if (inside.length < timed.events.length) problems.push(problem('trace-events-outside', 'doubt', place, { events: timed.events.length - inside.length, from: t[0]!, to: t[t.length - 1]! }));
+  const blanks = read.blank > 0 ? inside.map(({ time }): Stretch => ({ from: time, to: time + read.blank, why: 'blanked' })) : [];
+  if (blanks.length > 0) {
+    const off = maskOf(t, blanks);
+    for (let i = 0; i < use.length; i++) if (off[i] === 0) use[i] = 0;
+  }
+  const events = apart(inside, bare, place, problems);
+  const stretches = [...read.stretches, ...blanks].sort((a, b) => a.from - b.from);
+  const told = { stretches, events, offset: timed.offset };
+  const fit = fitWithBench(bare, events.map(({ time }) => time), read, trace.eventsFrom === 'found', expected);
+  if (fit.status !== 'fitted') {
+    const from = fit.status === 'notTold' ? (events[fit.segment - 1]?.time ?? t[0]!) : 0;
+    problems.push(problem('trace-not-fitted', 'stops', place, { why: fit.status, from }));
+    return { ...none, ...told, problems };
+  }
+  if (fit.covariance[0] === 0) problems.push(problem('trace-swing-from-bench', 'note', place, {}));
+  const moved = fit.times.map((time, k) => Math.abs(time - events[k]!.time)).filter((by, k) => fit.timeU[k] !== null && by > 0);
+  if (moved.length > 0 && trace.eventsFrom !== 'found') problems.push(problem('trace-times-moved', 'note', place, { times: moved.length, most: Math.max(...moved) }));
+  return { ...told, problems, found: { samples: bare, ...told, fit, ...factorsOf(fit, bare) } };
+}
+
+/** Fitted by itself; where it shows no swing, or one far from the bench's, with what the bench says. */
+function fitWithBench(samples: SwingSamples, times: readonly number[], read: TraceRead, found: boolean, expected: Expected): SwingFitResult {
+  const { exposure } = read;
+  const options = { exposure, refineWithin: read.refine };
+  const own = fitSwing(samples, times, options);
+  const settled = own.status === 'fitted' && found && read.refine === 0 ? fitSwing(samples, times, { exposure, start: { frequency: own.frequency, ratio: own.ratio }, refineWithin: (TOLERANCE * 2 * Math.PI) / own.frequency }) : own;
+  if (!expected || (settled.status === 'fitted' && !isFar(settled.frequency, expected))) return settled;
+  const near = fitSwing(samples, times, { ...options, near: expected.frequency });
+  if (near.status === 'fitted') return near;
+  const fixed = fitSwing(samples, times, { exposure, fixed: expected });
+  return fixed.status === 'fitted' ? fixed : settled;
+}
+
+/** The events on the record's clock: as listed and moved by the offset, or as found. */
+function timedEvents(trace: Trace, read: TraceRead, samples: SwingSamples, expected: Expected, place: Place, problems: Problem[]): { readonly events: readonly TimedEvent[]; readonly offset: TraceTold['offset'] } {
+  if (trace.eventsFrom === 'found') {
+    const jumps = jumpsOf(samples, expected);
+    problems.push(problem('trace-jumps-found', 'note', place, { jumps: jumps.length }));
+    return { events: jumps.map((time, i) => ({ id: `found${i + 1}`, time, listed: time, kind: 'shot', impulse: '' })), offset: null };
+  }
+  if (read.offset !== null || trace.eventsFrom === 'trigger') {
+    const offset = trace.eventsFrom === 'trigger' ? 0 : (read.offset ?? 0);
+    return { events: read.events.map((event) => ({ ...event, time: event.time + offset, listed: event.time + offset })), offset: offset === 0 ? null : { value: offset, u: null, found: false } };
+  }
+  const period = periodOf(samples, expected);
+  const result = clockOffset(read.events.map(({ time }) => time), jumpsOf(samples, expected), TOLERANCE * period);
+  if (result.status !== 'found') {
+    problems.push(problem('trace-offset-open', 'doubt', place, { why: result.status, one: result.status === 'ambiguous' ? result.offsets[0]! : 0, other: result.status === 'ambiguous' ? result.offsets[1]! : 0 }));
+    return { events: read.events.map((event) => ({ ...event, listed: event.time })), offset: null };
+  }
+  problems.push(problem('trace-offset-found', 'note', place, { offset: result.offset, u: result.u, matched: result.matched, listed: read.events.length }));
+  const span = samples.t[samples.t.length - 1]! - samples.t[0]!;
+  const { drift } = result;
+  if (drift && Math.abs(drift.value) > 4 * drift.u && Math.abs(drift.value) * span > 0.02 * period) problems.push(problem('trace-clock-drifts', 'doubt', place, { perMillion: 1e6 * drift.value, over: Math.abs(drift.value) * span }));
+  return { events: read.events.map((event) => ({ ...event, time: event.time + result.offset, listed: event.time + result.offset })), offset: { value: result.offset, u: result.u, found: true } };
+}
+
+const periodOf = (samples: SwingSamples, expected: Expected): number => (2 * Math.PI) / (expected?.frequency ?? likelyFrequencies(samples, 1)[0] ?? Infinity);
+
+/** Times of the jumps of a swing that nobody listed: found roughly, then with the frequency and damping that they tell. */
+function jumpsOf(samples: SwingSamples, expected: Expected): readonly number[] {
+  let swing: Oscillation | null = expected;
+  if (!swing) {
+    const [frequency] = likelyFrequencies(samples, 1);
+    if (frequency === undefined) return [];
+    swing = { frequency, ratio: SOME_DAMPING };
+  }
+  let times: readonly number[] = [];
+  for (let round = 0; round < FINDING_ROUNDS; round++) {
+    times = findJumps(samples, swing).map(({ time }) => time);
+    const fit = fitSwing(samples, times);
+    if (fit.status !== 'fitted' || isFar(fit.frequency, expected)) break;
+    swing = { frequency: fit.frequency, ratio: Math.max(0, fit.ratio) };
+  }
+  return times;
+}
+
+/** Events with a sample in use between each and the next; of two without, the first. */
+function apart(events: readonly TimedEvent[], { t, use }: SwingSamples, place: Place, problems: Problem[]): readonly TimedEvent[] {
+  const kept: TimedEvent[] = [];
+  for (const event of [...events].sort((a, b) => a.time - b.time)) {
+    const last = kept.at(-1);
+    let between = last === undefined;
+    if (last) for (let i = firstAtOrAfter(t, last.time, 0); i < t.length && t[i]! < event.time && !between; i++) between = use?.[i] !== 0;
+    if (between) kept.push(event);
+    else problems.push(problem('trace-too-close', 'doubt', place, { time: last!.time }));
+  }
+  return kept;
+}
+
+function factorsOf(fit: SwingFit, { t, use }: SwingSamples): Pick<TraceFit, 'factors' | 'factorOfSwing'> {
+  const spacing = (t[t.length - 1]! - t[0]!) / (t.length - 1);
+  const lags = Math.min(MOST_LAGS, Math.ceil((CORRELATED_PERIODS * 2 * Math.PI) / (fit.frequency * spacing)));
+  const correlation = noiseCorrelation(fit.residuals, use, lags);
+  const n = fit.jumps.length;
+  const every = Math.max(1, Math.ceil(n / FACTORS));
+  const worked = new Map<number, number>();
+  for (let k = 0; k < n; k += every) worked.set(k, varianceFactor(correlation, fit.weightsOf(k).weights));
+  const factors = fit.jumps.map((_, k) => worked.get(every * Math.floor(k / every))!);
+  return { factors, factorOfSwing: n > 0 ? [...factors].sort((a, b) => a - b)[n >> 1]! : swingFactor(correlation, fit, spacing) };
+}
+
+/** Without a jump: the factor of a free swing of some periods. */
+function swingFactor(correlation: NoiseCorrelation, { frequency, ratio }: SwingFit, spacing: number): number {
+  const n = correlation.correlation.length;
+  return varianceFactor(correlation, Float64Array.from({ length: n }, (_, i) => Math.exp(-Math.max(0, ratio) * frequency * i * spacing) * Math.sin(frequency * i * spacing)));
+}
