@@ -50,7 +50,7 @@ export function findJumps(samples: SwingSamples, { frequency: w, ratio: z }: Osc
   const raw = new Float64Array(x.length - 2 * reach);
   for (let i = 0; i < raw.length; i++) raw[i] = x[i + 2 * reach]! - turn * x[i + reach]! + fall * x[i]!;
   // What the rest line makes of it changes slowly.
-  const slow = runningMean(raw, Math.round((SLOW * period) / step));
+  const slow = slowLevel(raw, Math.round((SLOW * period) / step));
   const wrong = new Float64Array(x.length);
   for (let i = 0; i < raw.length; i++) wrong[i + reach] = raw[i]! - slow[i]!;
   for (let i = 2 * reach; i < x.length - 2 * reach; i++) {
@@ -82,13 +82,17 @@ function evenBins({ t, x, use }: SwingSamples, step: number): Float64Array {
   return values;
 }
 
-/** Mean over `half` values to each side, fewer at the ends. */
-function runningMean(x: Float64Array, half: number): Float64Array {
-  const sums = new Float64Array(x.length + 1);
-  for (let i = 0; i < x.length; i++) sums[i + 1] = sums[i]! + x[i]!;
+/** Median over `half` values to each side, taken at intervals and joined by straight lines: the pulses of a few jumps do not move it. */
+function slowLevel(x: Float64Array, half: number): Float64Array {
+  const every = Math.max(1, half >> 2);
+  const at = Array.from({ length: Math.floor((x.length - 1) / every) + 1 }, (_, k) => {
+    const about = x.slice(Math.max(0, k * every - half), k * every + half + 1).sort();
+    return about[about.length >> 1]!;
+  });
   return x.map((_, i) => {
-    const [from, to] = [Math.max(0, i - half), Math.min(x.length, i + half + 1)];
-    return (sums[to]! - sums[from]!) / (to - from);
+    const k = Math.floor(i / every);
+    const next = at[k + 1] ?? at[k]!;
+    return at[k]! + ((next - at[k]!) * (i - k * every)) / every;
   });
 }
 

@@ -78,6 +78,76 @@ describe('impulses come back from a trace', () => {
   });
 });
 
+describe('a trace read as it came', () => {
+  it('its shots found in the swing', () => {
+    const found = bits(bench(trace({ noise: 3 }), '', {}, { eventsFrom: 'found' }));
+    expect(found).toHaveLength(4);
+    found.forEach((bit, k) => expect(Math.abs(bit / SHOTS[k]! - 1)).toBeLessThan(0.02));
+  });
+
+  it('its list on another clock, the offset found from the shots themselves, typed, or open', () => {
+    const late = TIMES.map((time) => exactly(Number((time - 3.7).toFixed(3)))).join('\n');
+    const traced = bench(trace({ noise: 3 }), late, {}, { offset: 'find', refine: '50 ms' });
+    expect(codes(traced)).toContain('trace-offset-found');
+    expect(reduced(traced).traces[0]!.offset!.value).toBeCloseTo(3.7, 1);
+    bits(traced).forEach((bit, k) => expect(Math.abs(bit / SHOTS[k]! - 1)).toBeLessThan(0.02));
+    bits(bench(trace(), late, {}, { offset: '3.7 s' })).forEach((bit, k) => expect(bit / SHOTS[k]!).toBeCloseTo(1, 3));
+    expect(codes(bench(trace({ jumps: [0, 0, 0, 0], noise: 3 }), late, {}, { offset: 'find' }))).toContain('trace-offset-open');
+  });
+
+  it('times that were a little wrong, moved by the fit within what is allowed', () => {
+    const wrong = TIMES.map((time, k) => exactly(Number((time + 0.02 * (-1) ** k).toFixed(3)))).join('\n');
+    const traced = bench(trace({ noise: 3 }), wrong, {}, { refine: '50 ms' });
+    expect(codes(traced)).toContain('trace-times-moved');
+    expect(codes(traced)).not.toContain('trace-position-step');
+    const { records, traces } = reduced(traced);
+    records.forEach(({ impulseBit }, k) => expect(Math.abs(impulseBit!.value - SHOTS[k]!)).toBeLessThan(3.5 * impulseBit!.u));
+    traces[0]!.events.forEach(({ time, timeU }, k) => expect(Math.abs(time - TIMES[k]!)).toBeLessThan(4 * timeU!));
+  });
+
+  it('its discharge left out after each shot', () => {
+    const { t, theta } = struck({ frequency: W, ratio: Z, share: 1, events: TIMES, jumps: SHOTS.map((i) => (i * ARM) / K), seconds: 60, rate: RATE });
+    const text = ['Time (s);Displacement (µm)', ...t.map((time, i) => `${exactly(time)};${exactly(Number((1e6 * L * Math.sin(theta[i]!) + (TIMES.some((at) => time >= at && time < at + 0.05) ? 5000 : 0)).toFixed(3)))}`)].join('\n');
+    bits(bench(text, list, {}, { blank: '50 ms' })).forEach((bit, k) => expect(bit / SHOTS[k]!).toBeCloseTo(1, 3));
+    expect(reduced(bench(text, list, {}, { blank: '50 ms' })).traces[0]!.stretches.filter(({ why }) => why === 'blanked')).toHaveLength(4);
+  });
+
+  it('in volts by the line of its sensor, whose slope is common to all shots', () => {
+    const volts = trace({ header: 'Time (s);Sensor (V)' }).split('\n').map((line, i) => (i === 0 ? line : `${line.split(';')[0]};${Number(line.split(';')[1]) / 500}`)).join('\n');
+    const r = reduced(bench(volts, list, {}, {}, { sensorSlope: '500 µm/V ± 1 %' }));
+    r.records.forEach(({ impulseBit }, k) => expect(impulseBit!.value / SHOTS[k]!).toBeCloseTo(1, 3));
+    expect(r.run!.uCommon / r.run!.mean.value).toBeCloseTo(Math.hypot(0.01, 0.005), 3);
+    expect(r.traces[0]!.dimension).toBe('voltage');
+  });
+
+  it('with about the plumb mark the offset of that line and its correlation with the slope', () => {
+    const volts = trace({ header: 'Time (s);Sensor (V)' }).split('\n').map((line, i) => (i === 0 ? line : `${line.split(';')[0]};${Number(line.split(';')[1]) / 500}`)).join('\n');
+    const u = (correlation: string): number => reduced(bench(volts, list, {}, {}, { sensorSlope: '500 µm/V ± 1 %', sensorOffset: '90 mm ± 3 mm', sensorCorrelation: correlation, scaleMark: '10 mm' })).records[0]!.impulseBit!.u;
+    // Far from the plumb mark the angle of a millimetre depends on where it is.
+    expect(u('0.9')).toBeGreaterThan(1.02 * u('0'));
+    expect(u('-0.9')).toBeLessThan(0.98 * u('0'));
+  });
+
+  it('by a camera at a stated frame rate, pivot and marker both tracked, y downward', () => {
+    const { t, theta } = struck({ frequency: W, ratio: Z, share: 1, events: TIMES, jumps: SHOTS.map((i) => (i * ARM) / K), seconds: 60, rate: RATE });
+    const rows = t.flatMap((_, i) => (i % 4 === 0 ? [`${i / 4};${(400 + 200 * Math.sin(theta[i]!)).toFixed(5)};${(100 + 200 * Math.cos(theta[i]!)).toFixed(5)};400;100`] : []));
+    const traced = bench(`frame;marker x (px);marker y (px);pivot x (px);pivot y (px)\n${rows.join('\n')}`, list, { readingWay: 'cameraPivotMarker' }, { rate: '25 fps' });
+    bits(traced).forEach((bit, k) => expect(bit / SHOTS[k]!).toBeCloseTo(1, 3));
+  });
+
+  it('a stretch that a person marked as bad plays no part', () => {
+    const lines = trace().split('\n').map((line, i) => (i > 3000 && i < 3100 ? `${line.split(';')[0]};${i}` : line)).join('\n');
+    bits(bench(lines, list, {}, { bad: [{ id: 'e1', text: '29.9 31.1' }] })).forEach((bit, k) => expect(bit / SHOTS[k]!).toBeCloseTo(1, 3));
+  });
+
+  it('its period stands among the evidence, and serves where none was timed', () => {
+    const traced = bench(trace({ noise: 3 }), list, { route: 'massesAndPeriod' });
+    const r = reduced(traced);
+    expect(r.problems.map((p) => p.code)).not.toContain('entry-missing');
+    expect(r.records[0]!.impulseBit!.value / SHOTS[0]!).toBeCloseTo(1, 2);
+  });
+});
+
 describe('what is wrong with a trace is said, and the rest goes on', () => {
   it('a wrong time is a step of the position', () => {
     const wrong = ['5.06', ...TIMES.slice(1).map(exactly)].join('\n');
@@ -92,9 +162,47 @@ describe('what is wrong with a trace is said, and the rest goes on', () => {
     ['trace-time-not-rising', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i === 30 ? 2 : i};${i % 7}`).join('\n')}`, '5'],
     ['trace-constant', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i};3`).join('\n')}`, '5'],
     ['trace-unit-assumed', trace({ header: 'Time;Displacement' }), list],
-    ['trace-not-fitted', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i};${i}`).join('\n')}`, '5'],
+['trace-not-fitted', `t (s);x (mm)\n${Array.from({ length: 30 }, (_, i) => `${i};${Math.sin(i)}`).join('\n')}`, Array.from({ length: 15 }, (_, i) => String(i + 5.5)).join('\n')],
+    ['trace-swing-from-bench', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i / 10};${i}`).join('\n')}`, '2'],
+    ['trace-too-close', trace(), `${list}\n${exactly(TIMES[1]! + 0.001)}\n${exactly(TIMES[1]! + 0.002)}`],
   ] as const)('%s', (code, text, events) => {
     expect(codes(bench(text, events))).toContain(code);
+  });
+
+  it.each([
+    ['trace-no-trigger', { eventsFrom: 'trigger' }, {}],
+    ['trace-unit-unknown', { timeUnit: 'moons' }, {}],
+    ['trace-wrong-unit', { readingUnit: 'kg' }, {}],
+    ['trace-rate-missing', { uses: { time: -1 } }, {}],
+    ['trace-sensor-slope-missing', { readingUnit: 'V' }, {}],
+    ['trace-pivot-missing', {}, { readingWay: 'cameraPivotMarker' }],
+    ['entry-not-a-number', { blank: 'long' }, {}],
+    ['trace-jumps-found', { eventsFrom: 'found' }, {}],
+  ] as const)('%s', (code, more: Partial<Trace>, choices) => {
+    expect(codes(bench(trace({ noise: 3 }), list, choices, more))).toContain(code);
+  });
+
+  it('bytes that are not at hand', () => {
+    const { session } = bench(trace(), list);
+    const r = reduce(session, null);
+    expect(r.problems.map((p) => p.code)).toContain('trace-bytes-missing');
+    expect(r.records).toEqual([]);
+    expect(r.traces[0]!.rows).toBeNull();
+  });
+
+  it('a sensor at the end of its range, and spikes: left out, and the impulses come back', () => {
+    const { t, theta } = struck({ frequency: W, ratio: Z, share: 1, events: TIMES, jumps: SHOTS.map((i) => (i * ARM) / K), seconds: 60, rate: RATE });
+    const most = 300;
+    const rows = t.map((time, i) => {
+      const x = 1e6 * L * Math.sin(theta[i]!);
+      return `${exactly(time)};${exactly(Number((i === 1500 || i === 2000 ? x + 4000 : Math.min(most, x)).toFixed(3)))}`;
+    });
+    const clipped = bench(`Time (s);Displacement (µm)\n${rows.filter((_, i) => i !== 1500 && i !== 2000).join('\n')}`, list);
+    expect(codes(clipped)).toContain('trace-clipped');
+    bits(clipped).forEach((bit, k) => expect(bit / SHOTS[k]!).toBeCloseTo(1, 3));
+    const spiked = bench(trace({ noise: 3 }).split('\n').map((line, i) => (i === 1500 || i === 2000 ? `${line.split(';')[0]};9000` : line)).join('\n'), list);
+    expect(codes(spiked)).toContain('trace-spikes');
+    bits(spiked).forEach((bit, k) => expect(Math.abs(bit / SHOTS[k]! - 1)).toBeLessThan(0.01));
   });
 
   it('a record without a shot gives no impulse bit', () => {
