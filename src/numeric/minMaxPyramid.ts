@@ -1,39 +1,77 @@
 /** A long record thinned for a picture: the least and greatest sample of blocks, and of blocks of blocks, so that any stretch of it is drawn as it is seen. */
 
+/** Blocks of one size: the least and the greatest sample of each, and where they stand. Of a block of gaps alone: Infinity and −Infinity. */
+export interface MinMaxLevel {
+  readonly low: Float32Array;
+  readonly high: Float32Array;
+  readonly lowAt: Int32Array;
+  readonly highAt: Int32Array;
+}
+
 export interface MinMaxPyramid {
-  /** By level: index of the least and of the greatest sample of each block, one after the other. Level 0 has blocks of FIRST samples, each further one of FACTOR times as many. */
-  readonly levels: readonly Int32Array[];
+  /** Level 0 has blocks of FIRST samples, each further one of FACTOR times as many. */
+  readonly levels: readonly MinMaxLevel[];
+}
+
+/** When the samples were taken: evenly from a first one, or each at its own time, s. */
+export type SampleTimes = { readonly from: number; readonly step: number } | Float64Array;
+
+/** What the page has of a trace: samples in single precision, enough for a picture. */
+export interface TracePicture {
+  readonly times: SampleTimes;
+  /** SI unit of the reading; NaN: no sample. */
+  readonly values: Float32Array;
+  readonly pyramid: MinMaxPyramid;
+}
+
+/** A stretch of the record as it is drawn; null: the line is broken there. */
+export interface Envelope {
+  readonly times: readonly number[];
+  readonly values: readonly (number | null)[];
 }
 
 /** Samples of the finest blocks, and blocks of the next level. */
 const FIRST = 64;
 const FACTOR = 8;
 
-/** Valid: no NaN among the values. */
+const emptyLevel = (blocks: number): MinMaxLevel => ({ low: new Float32Array(blocks).fill(Infinity), high: new Float32Array(blocks).fill(-Infinity), lowAt: new Int32Array(blocks), highAt: new Int32Array(blocks) });
+
+/** Extremes of blocks, and of blocks of blocks. Samples that are NaN count for nothing. */
 export function buildPyramid(values: Float32Array): MinMaxPyramid {
-  const levels: Int32Array[] = [];
-  let blocks = Math.ceil(values.length / FIRST);
-  const first = new Int32Array(2 * blocks);
+  const n = values.length;
+  let blocks = Math.ceil(n / FIRST);
+  const first = emptyLevel(blocks);
   for (let b = 0; b < blocks; b++) {
-    let [low, high] = [b * FIRST, b * FIRST];
-    for (let i = b * FIRST + 1; i < Math.min(values.length, (b + 1) * FIRST); i++) {
-      if (values[i]! < values[low]!) low = i;
-      if (values[i]! > values[high]!) high = i;
+    let [low, high, lowAt, highAt] = [Infinity, -Infinity, 0, 0];
+    const to = Math.min(n, (b + 1) * FIRST);
+    for (let i = b * FIRST; i < to; i++) {
+      const value = values[i]!;
+      if (value < low) {
+        low = value;
+        lowAt = i;
+      }
+      if (value > high) {
+        high = value;
+        highAt = i;
+      }
     }
-    [first[2 * b], first[2 * b + 1]] = [low, high];
+    first.low[b] = low; first.high[b] = high; first.lowAt[b] = lowAt; first.highAt[b] = highAt;
   }
-  levels.push(first);
+  const levels = [first];
   while (blocks > FACTOR) {
     const below = levels.at(-1)!;
     const next = Math.ceil(blocks / FACTOR);
-    const level = new Int32Array(2 * next);
-    for (let b = 0; b < next; b++) {
-      let [low, high] = [below[2 * b * FACTOR]!, below[2 * b * FACTOR + 1]!];
-      for (let c = b * FACTOR + 1; c < Math.min(blocks, (b + 1) * FACTOR); c++) {
-        if (values[below[2 * c]!]! < values[low]!) low = below[2 * c]!;
-        if (values[below[2 * c + 1]!]! > values[high]!) high = below[2 * c + 1]!;
+    const level = emptyLevel(next);
+    for (let c = 0; c < blocks; c++) {
+      const b = Math.floor(c / FACTOR);
+      if (below.low[c]! < level.low[b]!) {
+        level.low[b] = below.low[c]!;
+        level.lowAt[b] = below.lowAt[c]!;
       }
-      [level[2 * b], level[2 * b + 1]] = [low, high];
+      if (below.high[c]! > level.high[b]!) {
+        level.high[b] = below.high[c]!;
+        level.highAt[b] = below.highAt[c]!;
+      }
     }
     levels.push(level);
     blocks = next;
@@ -41,50 +79,37 @@ export function buildPyramid(values: Float32Array): MinMaxPyramid {
   return { levels };
 }
 
-/** Index of the least and of the greatest sample in [from, to). Valid: from < to. */
-export function extremesIn(values: Float32Array, { levels }: MinMaxPyramid, from: number, to: number): readonly [number, number] {
-  let [low, high] = [from, from];
-  const take = (l: number, h: number): void => {
-    if (values[l]! < values[low]!) low = l;
-    if (values[h]! > values[high]!) high = h;
-  };
+/** Index of the least and of the greatest sample in [from, to); null where all of them are NaN. */
+export function extremesIn(values: Float32Array, { levels }: MinMaxPyramid, from: number, to: number): readonly [number, number] | null {
+  let [low, high, lowAt, highAt] = [Infinity, -Infinity, -1, -1];
   let at = from;
   while (at < to) {
     let level = -1;
-    let size = FIRST;
-    while (level + 1 < levels.length && at % size === 0 && at + size <= to) {
+    let size = 1;
+    for (let next = FIRST; level + 1 < levels.length && at % next === 0 && at + next <= to; next *= FACTOR) {
       level += 1;
-      size *= FACTOR;
+      size = next;
     }
     if (level < 0) {
-      take(at, at);
-      at += 1;
-      continue;
+      const value = values[at]!;
+      if (value < low) [low, lowAt] = [value, at];
+      if (value > high) [high, highAt] = [value, at];
+    } else {
+      const block = at / size;
+      const { low: lows, high: highs, lowAt: lowsAt, highAt: highsAt } = levels[level]!;
+      if (lows[block]! < low) [low, lowAt] = [lows[block]!, lowsAt[block]!];
+      if (highs[block]! > high) [high, highAt] = [highs[block]!, highsAt[block]!];
     }
-    const block = at / (size / FACTOR);
-    take(levels[level]![2 * block]!, levels[level]![2 * block + 1]!);
-    at += size / FACTOR;
+    at += size;
   }
-  return [low, high];
+  return lowAt < 0 ? null : [lowAt, highAt];
 }
 
-/** When the samples were taken: evenly from a first one, or each at its own time, s. */
-export type SampleTimes = { readonly from: number; readonly step: number; readonly count: number } | Float64Array;
+export const timeOf = (times: SampleTimes, i: number): number => (times instanceof Float64Array ? times[i]! : times.from + i * times.step);
 
-/** What the page has of a trace: samples in single precision, enough for a picture. */
-export interface TracePicture {
-  readonly times: SampleTimes;
-  /** SI unit of the reading, less `base`, which single precision would take digits from. */
-  readonly values: Float32Array;
-  readonly base: number;
-  readonly pyramid: MinMaxPyramid;
-}
-
-export const timeAt = (times: SampleTimes, i: number): number => (times instanceof Float64Array ? times[i]! : times.from + i * times.step);
-
-/** First sample not before a time. */
-export function indexAt(times: SampleTimes, time: number): number {
-  if (!(times instanceof Float64Array)) return Math.min(times.count, Math.max(0, Math.ceil((time - times.from) / times.step - 1e-9)));
+/** First sample of `count` not before a time. */
+export function indexAt(times: SampleTimes, count: number, time: number): number {
+  if (!(times instanceof Float64Array)) return Math.min(count, Math.max(0, Math.ceil((time - times.from) / times.step - 1e-9)));
   let [low, high] = [0, times.length];
   while (low < high) {
     const middle = (low + high) >> 1;
@@ -94,28 +119,33 @@ export function indexAt(times: SampleTimes, time: number): number {
   return low;
 }
 
-export interface Thinned {
-  readonly t: readonly number[];
-  readonly y: readonly number[];
-}
-
 /**
  * The record from one time to another for so many columns of the picture: every sample where there are few, else the least and the greatest of
- * each column in their order. The samples just outside are taken in, so that the line goes on to the edge.
+ * each column in their order. The samples just outside are taken in, so that the line goes on to the edge; where samples are NaN it is broken.
  */
-export function windowOf({ times, values, base, pyramid }: TracePicture, from: number, to: number, columns: number): Thinned {
+export function window({ times, values, pyramid }: TracePicture, from: number, to: number, columns: number): Envelope {
   const n = values.length;
-  const [first, last] = [Math.max(0, indexAt(times, from) - 1), Math.min(n, indexAt(times, to) + 1)];
-  const indices: number[] = [];
-  if (last - first <= 2 * columns) for (let i = first; i < last; i++) indices.push(i);
-  else {
-    for (let c = 0; c < columns; c++) {
-      const [a, b] = [first + Math.floor(((last - first) * c) / columns), first + Math.floor(((last - first) * (c + 1)) / columns)];
-      if (a >= b) continue;
-      const [low, high] = extremesIn(values, pyramid, a, b);
-      if (low === high) indices.push(low);
-      else indices.push(Math.min(low, high), Math.max(low, high));
+  const [first, last] = [Math.max(0, indexAt(times, n, from) - 1), Math.min(n, indexAt(times, n, to) + 1)];
+  const found: { readonly times: number[]; readonly values: (number | null)[] } = { times: [], values: [] };
+  const put = (i: number): void => {
+    const value = values[i]!;
+    found.times.push(timeOf(times, i));
+    found.values.push(Number.isNaN(value) ? null : value);
+  };
+  if (last - first <= 2 * columns) {
+    for (let i = first; i < last; i++) put(i);
+    return found;
+  }
+  for (let c = 0; c < columns; c++) {
+    const [a, b] = [first + Math.floor(((last - first) * c) / columns), first + Math.floor(((last - first) * (c + 1)) / columns)];
+    if (a >= b) continue;
+    const extremes = extremesIn(values, pyramid, a, b);
+    if (!extremes) put(a);
+    else if (extremes[0] === extremes[1]) put(extremes[0]);
+    else {
+      put(Math.min(...extremes));
+      put(Math.max(...extremes));
     }
   }
-  return { t: indices.map((i) => timeAt(times, i)), y: indices.map((i) => values[i]! + base) };
+  return found;
 }

@@ -14,7 +14,7 @@ import { looksLikeSession, openSessionFile, saveSessionFile } from './head/sessi
 import type { Message } from './head/sessionFiles.ts';
 import { Start } from './head/Start.tsx';
 import { useSheetEvents } from './head/useSheetEvents.ts';
-import { AtTheBenchSection, BudgetSection, CalibrationSection, fetchSections, PlanSection, RecordSection, RunSection, RunStrip, TableSection } from './later.ts';
+import { AtTheBenchSection, BudgetSection, CalibrationSection, fetchSections, PlanSection, RecordSection, RunSection, RunStrip, TableSection, TracesSection } from './later.ts';
 import { ReadingsSection } from './readings/ReadingsSection.tsx';
 import { useReadingsIntake } from './readings/intake.ts';
 
@@ -25,6 +25,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
   const intake = useReadingsIntake();
   const traces = useTraces();
   const hasSheets = useStore(({ session }) => session.sheets.length + session.traces.length > 0);
+  const hasTraces = useStore(({ session }) => session.traces.length > 0);
   const plans = useStore(({ session: { sheets, traces: taken, entries } }) => sheets.length + taken.length === 0 || entries.guessedImpulse !== undefined || entries.scaleReach !== undefined);
   const chooser = useRef<HTMLInputElement>(null);
   const [help, setHelp] = useState(false);
@@ -69,7 +70,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
         hidden
         type="file"
         multiple
-        aria-label="Open a session file or tables of readings"
+        aria-label="Open a session file, tables of readings, or traces"
         onChange={(event) => {
           const files = [...(event.target.files ?? [])];
           event.target.value = '';
@@ -85,6 +86,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
         <BenchSection />
         {plans && <Suspense><PlanSection /></Suspense>}
         <ReadingsSection />
+        {hasTraces && <Suspense><TracesSection /></Suspense>}
         {hasSheets && (
           <Suspense>
             <FollowLater>
@@ -99,7 +101,7 @@ export function App({ arrival = [] }: { readonly arrival?: readonly Omit<Message
         <LookList />
       </main>
       <Help open={help} onClose={() => setHelp(false)} />
-      {dragging && <p className={styles.drop} aria-hidden="true">Drop a table of readings, or a session file</p>}
+      {dragging && <p className={styles.drop} aria-hidden="true">Drop a table of readings, a sampled trace, or a session file</p>}
     </div>
   );
 }

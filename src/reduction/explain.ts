@@ -10,6 +10,7 @@ import { factorAt, launchAt } from './factors.ts';
 import type { Road } from './road.ts';
 import type { ChainStep, Reduction } from './results.ts';
 import type { Form, Swing, Way } from './shots.ts';
+import { valueOf } from './stand.ts';
 import { WAY_WORDS } from './wayWords.ts';
 import type { Damping, Scale } from './swings.ts';
 
@@ -66,11 +67,18 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   }
   const scaled = scale.bySheet.get(swing.record.sheet);
   if (scaled) add('scale', 'Scale of the readings', 's', 'scale of the ruler times the calibration of what was read with', 'number', scaled, by(readWith));
-  add('angle', 'First-swing angle', 'θ_p', (scale.sense === -1 ? '−' : '') + angleEquation(scale), 'angle', swing.angle);
+  const { jump } = swing;
+  if (jump) {
+    add('jump', 'Jump of the swing in its trace', 'Δx′/ω_n', 'all jumps of the record by least squares, position continuous', jump.dimension, jump.value);
+    if (jump.dimension === 'voltage') add('slope', 'Slope of the sensor', 'b_s', 'x = a_s + b_s V', 'sensorSlope', valueOf(road.bench, 'sensorSlope'));
+  }
+  add('angle', jump ? 'The same as an angle' : 'First-swing angle', jump ? 'φ' : 'θ_p', (scale.sense === -1 ? '−' : '') + (jump ? WAYS[scale.way].equation : angleEquation(scale)), 'angle', swing.angle);
   if (!swing.angle || !swing.launch) return steps;
   const ratio = damping.ratio[swing.configuration];
   const D = propagate(({ z }) => dampingFactor(z), { z: ratio });
-  if (damping.law === 'viscous') {
+  if (jump) {
+    // The damping is in the fit.
+  } else if (damping.law === 'viscous') {
     add('ratio', 'Damping ratio', 'ζ', 'ζ = δ/√(4π² + δ²)', 'number', ratio);
     add('damping', 'Damping of the first swing', 'D', 'D = exp[ζ arccos ζ/√(1 − ζ²)]', 'number', D, { factor: D.value });
   } else if (damping.law === 'quadratic') add('quadratic', 'Quadratic damping', 'β', 'J θ″ = −b|θ′|θ′ − …, β = b/J', 'number', damping.quadratic[swing.configuration]);
@@ -80,6 +88,10 @@ function chainOf(swing: Swing, scale: Scale, road: Road): readonly ChainStep[] {
   add('share', 'Gravity share of the stiffness', 'p', 'p = M g d/κ', 'number', road.shares[c]);
   const form = (f: Form, aside: boolean): void => {
     const y = swing.launch![f];
+    if (jump) {
+      if (!aside) add(`launch.${f}`, 'Launch', 'φ', 'φ = Δθ′/ω_n, the jump itself', 'angle', y, { factor: 1 });
+      return;
+    }
     const label = f === 'full' ? 'Launch, full pendulum' : 'Launch, small angle';
     const equation = before ? `φ = [θ′(0⁺) − θ′(0⁻)]/ω_n: ${f === 'full' ? 'the full pendulum' : 'the same with p = 0'} solved back from θ_p to x_f` : f === 'full' ? EQUATION_OF_MOTION[damping.law] : damping.law === 'viscous' ? 'φ = D θ_p' : 'the same with p = 0';
     const factor = swing.angle!.value === 0 ? 1 : y.value / swing.angle!.value;

@@ -7,6 +7,7 @@ import { problem, type Problem } from '../problems/problems.ts';
 import { swingFromMark, swingFromRest, swingFromSides } from '../readings/angle.ts';
 import type { RecordKind } from '../readings/meanings.ts';
 import type { Choices } from '../session/session.ts';
+import type { Dimension } from '../units/units.ts';
 import { launchFromSwing, smallLaunchFromSwing, swingBefore } from './background.ts';
 import { correctedLaunch, restOfFriction, throughReading, type Corrections } from './corrections.ts';
 import type { Readings } from './readings.ts';
@@ -25,6 +26,8 @@ export interface Swing {
   readonly readings: Readings;
   readonly angle: Uncertain | null;
   readonly launch: Readonly<Record<Form, Uncertain>> | null;
+  /** Of a trace: the jump of x′ over ω_n, in the unit of its column. */
+  readonly jump?: { readonly value: Uncertain; readonly dimension: Dimension };
 }
 
 type LaunchInputs = Readonly<Record<'angle' | 'ratio' | 'quadratic' | 'friction' | 'share', number>>;

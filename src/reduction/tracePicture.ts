@@ -17,9 +17,8 @@ export function pictureOfTrace(session: Session, id: string, library: TraceLibra
   const step = (t[n - 1]! - t[0]!) / (n - 1);
   let even = true;
   for (let i = 1; i < n && even; i++) even = Math.abs(t[i]! - t[0]! - i * step) < EVEN * step;
-  const base = x[0]!;
-  const values = Float32Array.from(x, (value) => value - base);
+  const values = Float32Array.from(x);
   const pyramid = buildPyramid(values);
-  const times = even ? { from: t[0]!, step, count: n } : t.slice();
-  return { picture: { times, values, base, pyramid }, transfer: [values.buffer, ...pyramid.levels.map(({ buffer }) => buffer as ArrayBuffer), ...(times instanceof Float64Array ? [times.buffer] : [])] };
+  const times = even ? { from: t[0]!, step } : t.slice();
+  return { picture: { times, values, pyramid }, transfer: [values, ...pyramid.levels.flatMap(({ low, high, lowAt, highAt }) => [low, high, lowAt, highAt])].map(({ buffer }) => buffer as ArrayBuffer).concat(times instanceof Float64Array ? [times.buffer] : []) };
 }

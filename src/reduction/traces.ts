@@ -10,6 +10,7 @@ import { pickedThrow } from '../traces/pickPeak.ts';
 import { residualSpectrum, type ResidualSpectrum } from '../traces/residualSpectrum.ts';
 import { restAt } from '../traces/swingModel.ts';
 import { readQuantity } from '../units/quantity.ts';
+import type { Dimension } from '../units/units.ts';
 import { readingDimension, type BenchRead } from './entries.ts';
 import { uncertainJumps } from './jumpSources.ts';
 import type { SessionRecord } from './sheets.ts';
@@ -79,7 +80,7 @@ export function swingsOfTraces(known: readonly TraceKnown[], bench: BenchRead, s
       problems.push(problem('trace-sensor-slope-missing', 'stops', { sheetName: trace.name, entry: 'sensorSlope' }, {}));
       return [];
     }
-    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor }, scale, problems));
+    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, dimension: read.inVolts ? 'voltage' : WAYS[scale.way].reads === 'pixel' && scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor }, scale, problems));
   });
 }
 
@@ -105,14 +106,15 @@ function sensorOf(bench: BenchRead): Sensor | null {
 
 interface JumpFacts {
   readonly jump: Uncertain;
+  readonly dimension: Dimension;
   readonly rest: number;
   readonly stepInU: number;
   readonly sensor: Sensor | null;
 }
 
-function swingOfJump(record: SessionRecord, { jump, rest, stepInU, sensor }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
+function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, sensor }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
   const place = { sheetName: record.sheetName, record: record.id };
-  const swing: Swing = { record, configuration: record.kind === 'tap' ? 'taps' : 'shots', readings: { restFrom: null, rest: null, first: null, next: [] }, angle: null, launch: null };
+  const swing: Swing = { record, configuration: record.kind === 'tap' ? 'taps' : 'shots', readings: { restFrom: null, rest: null, first: null, next: [] }, angle: null, launch: null, jump: { value: jump, dimension } };
   if (Math.abs(stepInU) > STEP_FAULT) problems.push(problem('trace-position-step', 'doubt', place, { time: record.time!.value, inU: stepInU }));
   const length = sensor ? propagate(({ b, v }) => b * v, { b: sensor.slope, v: jump }) : jump;
   const from = sensor ? propagate(({ a, b }) => a + b * rest, { a: sensor.offset, b: sensor.slope }) : exact(rest);

@@ -27,10 +27,10 @@ const STEPS_KEPT = 500;
 
 const messageOf = (reason: unknown): string => (reason instanceof Error ? reason.message : String(reason));
 
-/** A selected record stays selected as long as its sheet is there. */
+/** A selected record stays selected as long as its sheet or trace is there. */
 function stillSelected(selected: string | null, session: Session): string | null {
   if (selected === null) return null;
-  return session.sheets.some((sheet) => selected.startsWith(`${sheet.id}/`)) ? selected : null;
+  return [...session.sheets, ...session.traces].some(({ id }) => selected.startsWith(`${id}/`)) ? selected : null;
 }
 
 /** Asks for the first reduction at once. */

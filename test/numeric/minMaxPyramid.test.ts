@@ -1,27 +1,29 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { buildPyramid, extremesIn, indexAt, timeAt, windowOf, type TracePicture } from '../../src/numeric/minMaxPyramid.ts';
+import { buildPyramid, extremesIn, indexAt, timeOf, window, type TracePicture } from '../../src/numeric/minMaxPyramid.ts';
 import { draws } from '../metrology/sources.ts';
 
-const values = (n: number, seed: number): Float32Array => {
-  const { normal } = draws(seed);
-  return Float32Array.from({ length: n }, () => Math.round(10 * normal()));
+const values = (n: number, seed: number, gaps = 0): Float32Array => {
+  const { normal, uniform } = draws(seed);
+  return Float32Array.from({ length: n }, () => (uniform() < gaps ? NaN : Math.round(10 * normal())));
 };
 const picture = (n: number, seed: number, even = true): TracePicture => {
   const v = values(n, seed);
-  const times = even ? { from: 5, step: 0.01, count: n } : Float64Array.from({ length: n }, (_, i) => 5 + 0.01 * i + 0.004 * Math.sin(i));
-  return { times, values: v, base: 3, pyramid: buildPyramid(v) };
+  const times = even ? { from: 5, step: 0.01 } : Float64Array.from({ length: n }, (_, i) => 5 + 0.01 * i + 0.004 * Math.sin(i));
+  return { times, values: v, pyramid: buildPyramid(v) };
 };
 
 describe('least and greatest of a stretch', () => {
   it('are those of all its samples', () => {
-    fc.assert(fc.property(fc.integer({ min: 1, max: 9000 }), fc.integer({ min: 1, max: 1e6 }), fc.double({ min: 0, max: 1, noNaN: true }), fc.double({ min: 0, max: 1, noNaN: true }), (n, seed, a, b) => {
-      const v = values(n, seed);
-      const [from, to] = [Math.floor(Math.min(a, b) * n), Math.max(Math.floor(Math.min(a, b) * n) + 1, Math.ceil(Math.max(a, b) * n))];
-      const [low, high] = extremesIn(v, buildPyramid(v), from, to);
-      const part = v.subarray(from, to);
-      expect([v[low], v[high]]).toEqual([Math.min(...part), Math.max(...part)]);
-      expect(low >= from && low < to && high >= from && high < to).toBe(true);
+    const part = fc.double({ min: 0, max: 1, noNaN: true });
+    fc.assert(fc.property(fc.integer({ min: 1, max: 9000 }), fc.integer({ min: 1, max: 1e6 }), part, part, fc.constantFrom(0, 0.3, 1), (n, seed, a, b, gaps) => {
+      const v = values(n, seed, gaps);
+      const from = Math.min(n - 1, Math.floor(Math.min(a, b) * n));
+      const to = Math.max(from + 1, Math.ceil(Math.max(a, b) * n));
+      const seen = Array.from(v.subarray(from, to)).filter((value) => !Number.isNaN(value));
+      const found = extremesIn(v, buildPyramid(v), from, to);
+      expect(found && [v[found[0]], v[found[1]]]).toEqual(seen.length === 0 ? null : [Math.min(...seen), Math.max(...seen)]);
+      if (found) expect(found.every((i) => i >= from && i < to)).toBe(true);
     }));
   });
 });
@@ -29,25 +31,33 @@ describe('least and greatest of a stretch', () => {
 describe('a window of the record', () => {
   it.each([true, false])('has every sample where there are few, those just outside too (even times: %s)', (even) => {
     const one = picture(2000, 3, even);
-    const { t, y } = windowOf(one, 7, 8, 500);
-    expect(t[0]).toBeLessThanOrEqual(7);
-    expect(t.at(-1)).toBeGreaterThanOrEqual(8);
-    t.forEach((time, i) => expect(y[i]).toBe(one.values[indexAt(one.times, time - 1e-6)]! + 3));
+    const { times, values: y } = window(one, 7, 8, 500);
+    expect(times[0]).toBeLessThanOrEqual(7);
+    expect(times.at(-1)).toBeGreaterThanOrEqual(8);
+    times.forEach((time, i) => expect(y[i]).toBe(one.values[indexAt(one.times, 2000, time - 1e-6)]));
   });
 
   it('has the extremes of each column, in order of time', () => {
     const one = picture(200_000, 9);
-    const { t, y } = windowOf(one, 100, 1500, 300);
-    expect(t.length).toBeLessThanOrEqual(600);
-    t.slice(1).forEach((time, i) => expect(time).toBeGreaterThanOrEqual(t[i]!));
-    const [a, b] = [indexAt(one.times, 100), indexAt(one.times, 1500)];
-    expect(Math.max(...y)).toBe(one.values.subarray(a - 1, b + 1).reduce((m, v) => Math.max(m, v), -Infinity) + 3);
-    expect(Math.min(...y)).toBe(one.values.subarray(a - 1, b + 1).reduce((m, v) => Math.min(m, v), Infinity) + 3);
+    const { times, values: y } = window(one, 100, 1500, 300);
+    expect(times.length).toBeLessThanOrEqual(600);
+    times.slice(1).forEach((time, i) => expect(time).toBeGreaterThanOrEqual(times[i]!));
+    const inside = Array.from(one.values.subarray(indexAt(one.times, 200_000, 100) - 1, indexAt(one.times, 200_000, 1500) + 1));
+    const drawn = y.filter((value) => value !== null);
+    expect(Math.max(...drawn)).toBe(inside.reduce((m, v) => Math.max(m, v), -Infinity));
+    expect(Math.min(...drawn)).toBe(inside.reduce((m, v) => Math.min(m, v), Infinity));
+  });
+
+  it('is broken where there is no sample', () => {
+    const v = values(100_000, 4);
+    v.fill(NaN, 40_000, 60_000);
+    const { values: y } = window({ times: { from: 0, step: 1 }, values: v, pyramid: buildPyramid(v) }, 0, 100_000, 100);
+    expect(y.filter((value) => value === null).length).toBeGreaterThan(15);
   });
 
   it('of times before or after the record is its end', () => {
     const one = picture(100, 2);
-    expect(windowOf(one, -9, -5, 10).t).toEqual([5]);
-    expect(windowOf(one, 90, 95, 10).t).toEqual([timeAt(one.times, 99)]);
+    expect(window(one, -9, -5, 10).times).toEqual([5]);
+    expect(window(one, 90, 95, 10).times).toEqual([timeOf(one.times, 99)]);
   });
 });

@@ -19,7 +19,8 @@ export function IntakeRow({ hasSheets }: { readonly hasSheets: boolean }) {
       {!hasSheets && (
         <p>
           Drop a file of readings anywhere on this page, or paste cells from a spreadsheet. One row a record: shots, taps, blanks and zeros,
-          with the rest reading, the first swing and, if taken, the swings after it.
+          with the rest reading, the first swing and, if taken, the swings after it. A sampled trace of a sensor or camera, packed (.gz) or not,
+          is told by its even rows and goes to Traces.
         </p>
       )}
       <p className={styles.ways}>
@@ -30,7 +31,7 @@ export function IntakeRow({ hasSheets }: { readonly hasSheets: boolean }) {
           type="file"
           multiple
           hidden
-          accept=".csv,.txt,.tsv,text/csv,text/plain,text/tab-separated-values"
+          accept=".csv,.txt,.tsv,.dat,.gz,text/csv,text/plain,text/tab-separated-values"
           aria-label="File of readings"
           onChange={({ currentTarget }) => {
             const files = [...(currentTarget.files ?? [])];

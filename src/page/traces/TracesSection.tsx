@@ -1,0 +1,46 @@
+/** The sampled traces: each with how it is read, its shots and taps, and its swing. */
+import { useMemo } from 'react';
+import type { Problem } from '../../problems/problems.ts';
+import { usesOfWay } from '../../reduction/traceRead.ts';
+import type { TraceTold } from '../../reduction/traceResults.ts';
+import { useActions, useStateNow, useStore, useTraces, useTraceStates } from '../../store/hooks.tsx';
+import { useNotices } from '../readings/notices.ts';
+import { takeTrace } from './takeTrace.ts';
+import { TraceCard } from './TraceCard.tsx';
+import styles from './traceCard.module.css';
+
+const NO_TOLD: readonly TraceTold[] = [];
+const NO_PROBLEMS: readonly Problem[] = [];
+
+export function TracesSection() {
+  const { change } = useActions();
+  const now = useStateNow();
+  const notices = useNotices();
+  const traces = useStore((state) => state.session.traces);
+  const way = useStore((state) => state.session.choices.readingWay);
+  const told = useStore((state) => state.reduction?.traces ?? NO_TOLD);
+  const problems = useStore((state) => state.reduction?.problems ?? NO_PROBLEMS);
+  const looked = useTraces();
+  const states = useTraceStates();
+  const uses = useMemo(() => usesOfWay(way), [way]);
+  return (
+    <section id="traces" className={styles.section} aria-labelledby="traces-heading">
+      <h2 id="traces-heading">Traces</h2>
+      {traces.map((trace) => (
+        <TraceCard
+          key={trace.id}
+          trace={trace}
+          told={told.find(({ id }) => id === trace.id)}
+          state={states[trace.sha256]}
+          uses={uses}
+          problems={problems.filter(({ place }) => place.record === undefined && (place.entry === `trace.${trace.id}` || (place.sheetName === trace.name && place.sheet === undefined)))}
+          change={change}
+          onStop={() => looked?.desk.stop(trace.sha256)}
+          onBytes={(file) => {
+            if (looked) void takeTrace(file, looked.desk, change, now).then((notice) => notices.say(notice));
+          }}
+        />
+      ))}
+    </section>
+  );
+}
