@@ -26,7 +26,7 @@ export function laggedProducts(x: Float64Array, lags: number): Float64Array {
     out[2 * j] = out[2 * j]! ** 2 + out[2 * j + 1]! ** 2;
     out[2 * j + 1] = 0;
   }
-  const back = fft.createComplexArray();
+  const back: number[] = fft.createComplexArray();
   fft.inverseTransform(back, out);
   return Float64Array.from({ length: lags + 1 }, (_, l) => back[2 * l]!);
 }

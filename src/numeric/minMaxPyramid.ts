@@ -125,7 +125,7 @@ export function indexAt(times: SampleTimes, count: number, time: number): number
  */
 export function window({ times, values, pyramid }: TracePicture, from: number, to: number, columns: number): Envelope {
   const n = values.length;
-  const [first, last] = [Math.max(0, indexAt(times, n, from) - 1), Math.min(n, indexAt(times, n, to) + 1)];
+  const [first, last] = [indexAt(times, n, from), indexAt(times, n, to)];
   const found: { readonly times: number[]; readonly values: (number | null)[] } = { times: [], values: [] };
   const put = (i: number): void => {
     const value = values[i]!;
@@ -133,11 +133,13 @@ export function window({ times, values, pyramid }: TracePicture, from: number, t
     found.values.push(Number.isNaN(value) ? null : value);
   };
   if (last - first <= 2 * columns) {
-    for (let i = first; i < last; i++) put(i);
+    for (let i = Math.max(0, first - 1); i < Math.min(n, last + 1); i++) put(i);
     return found;
   }
-  for (let c = 0; c < columns; c++) {
-    const [a, b] = [first + Math.floor(((last - first) * c) / columns), first + Math.floor(((last - first) * (c + 1)) / columns)];
+  if (first > 0) put(first - 1);
+  // Columns of time, not of samples: a burst of fast samples must not take the columns of the slow ones beside it.
+  for (let c = 0, a = first; c < columns; c++) {
+    const b = c === columns - 1 ? last : Math.min(last, indexAt(times, n, from + ((to - from) * (c + 1)) / columns));
     if (a >= b) continue;
     const extremes = extremesIn(values, pyramid, a, b);
     if (!extremes) put(a);
@@ -146,6 +148,8 @@ export function window({ times, values, pyramid }: TracePicture, from: number, t
       put(Math.min(...extremes));
       put(Math.max(...extremes));
     }
+    a = b;
   }
+  if (last < n) put(last);
   return found;
 }

@@ -58,7 +58,7 @@ export function traceWords(code: TraceCode, { text, number, figure, quantity, ma
     case 'trace-position-step':
       return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
     case 'trace-large-swing':
-      return text('how') === 'full' ? `swings reach ${figure('degrees', 3)}°: its jumps are solved with the full pendulum, which differs from the small swing by up to ${figure('percent', 2)} %.` : `swings reach ${figure('degrees', 3)}°, and the full pendulum could not be fitted; the small swing’s equation is used, off by up to ${figure('percent', 2)} %.`;
+      return text('how') === 'full' ? `swings reach ${figure('degrees', 3)}°: its jumps are solved with the full pendulum, which differs from the small swing by up to ${figure('percent', 2)} %${number('drag') > 0 ? `, with a drag that goes as the square of the speed (β = ${figure('drag', 2)} a radian)` : ''}.` : `swings reach ${figure('degrees', 3)}°, and the full pendulum could not be fitted; the small swing’s equation is used, off by up to ${figure('percent', 2)} %.`;
     case 'trace-bytes-missing':
       return 'its bytes are not here, so its shots have no impulse bits. Choose the file itself again, under Traces.';
     case 'trace-clipped':

@@ -27,6 +27,7 @@ import { barePeriod, timingsOf } from './timings.ts';
 import type { Expected } from './traceFit.ts';
 import { NO_TRACES, type TraceLibrary } from './traceRead.ts';
 import { knownTraces, swingsOfTraces, timingsOfTraces } from './traces.ts';
+import { wideSwings, type WideSwing } from './wideSwings.ts';
 import { weightsOf } from './weights.ts';
 
 export interface GroundRecords {
@@ -67,7 +68,8 @@ export function groundOf(session: Session, { records, counts, counted, exactly, 
   const unknown = anchor(exact(stand.shareUnknown));
   const shareOf = (name: ConfigurationName): Anchor => stand.masses?.[name].gravityShare ?? unknown;
   const known = knownTraces(session, library, bench, expectedSwing(stand, damping), problems);
-  const timings = [...timingsOf(counted, { bench, choices, ratio: damping.ratio, shares: { shots: shareOf('shots'), taps: shareOf('taps') } }, problems), ...timingsOfTraces(known)];
+  const wide = choices.form === 'filmStrip' ? new Map<string, WideSwing>() : wideSwings(known, bench, scale, (name) => shareOf(name).value, problems);
+  const timings = [...timingsOf(counted, { bench, choices, ratio: damping.ratio, shares: { shots: shareOf('shots'), taps: shareOf('taps') } }, problems), ...timingsOfTraces(known, wide)];
   const typedPeriod = timedPeriod(session, bench, stand, damping, problems);
   const period = typedPeriod ?? barePeriod(timings, choices.periodTimedAs);
   const weights = weightsOf(counted, { bench, choices, scale, spread, gravity: stand.gravity, share: shareOf(choices.weightsHungAs) }, problems);
@@ -84,14 +86,14 @@ export function groundOf(session: Session, { records, counts, counted, exactly, 
   const corrections = correctionsOf(bench, choices, { body: bodies?.shots ?? null, frequency, ratio: damping.ratio.shots, gravity: stand.gravity }, { background: backgroundOf(records, { bench, choices, scale, frequency, ratio: damping.ratio.shots, spread }, problems), pulse: measuredPulse(session, problems) }, problems);
   const swung = film ? undampedOf(damping) : damping;
   const handRead = records.map((record) => swingOf(record, read.byRecord.get(record.id)!, scale, swung, shares, corrections, problems));
-  const swings = [...handRead, ...swingsOfTraces(known, bench, scale, problems)];
+  const swings = [...handRead, ...swingsOfTraces(known, bench, scale, wide, problems)];
   const tapped = bodies && propagate(naturalFrequency, { inertia: bodies.taps.inertia, stiffness: bodies.taps.stiffness });
   const forceRecords = forceRecordsOf(session.forceRecords, problems);
   const taps = tapsOf(swings, { bench, choices, forceRecords, gravity: stand.gravity, frequency: tapped ?? frequency, ratio: damping.ratio.taps }, problems);
   const taken = new Map(session.sheets.map((sheet) => [sheet.id, sheet.taken ?? ('asOrdered' as const)]));
   const places = placesInRun(swings, ({ record }) => taken.get(record.sheet) ?? 'asOrdered');
   const factors = factorsOf({ bodies, film: filmFactors, stand, taps: taps.filter((tap) => counts(tap.swing.record)), places, choices });
-  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, traces: known, forceRecords: forceRecords.told, taps, places, known: factors };
+  return { bench, pressures, air, stand, scale, spread, damping, swung, timings, typedPeriod, period, weights, change, film, filmStiffness: frequency && filmFactors?.geometry.shots ? filmFactors.geometry.shots.value * frequency.value : null, bodies, shares, corrections, swings, traces: known, wide, forceRecords: forceRecords.told, taps, places, known: factors };
 }
 
 /** Frequency and damping that the bench makes, for traces that show none. */

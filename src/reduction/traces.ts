@@ -15,12 +15,13 @@ import { readingDimension, type BenchRead } from './entries.ts';
 import { uncertainJumps } from './jumpSources.ts';
 import type { SessionRecord } from './sheets.ts';
 import type { Swing } from './shots.ts';
-import { valueOf } from './stand.ts';
+import { valueOf, type ConfigurationName } from './stand.ts';
 import type { Scale } from './swings.ts';
 import type { Timing } from './timings.ts';
 import { fitTrace, type Expected, type TimedEvent, type TraceFit, type TraceFitted } from './traceFit.ts';
 import { readTrace, type TraceLibrary, type TraceRead } from './traceRead.ts';
 import type { TraceEventTold, TraceTold } from './traceResults.ts';
+import type { WideSwing } from './wideSwings.ts';
 
 /** A trace read and fitted, in the unit of its own column. */
 export interface TraceKnown {
@@ -70,7 +71,7 @@ function recordOf(trace: Trace, event: TimedEvent, time: number, number: number)
 }
 
 /** Records of the run from the jumps of all traces. */
-export function swingsOfTraces(known: readonly TraceKnown[], bench: BenchRead, scale: Scale | null, problems: Problem[]): readonly Swing[] {
+export function swingsOfTraces(known: readonly TraceKnown[], bench: BenchRead, scale: Scale | null, wide: ReadonlyMap<string, WideSwing>, problems: Problem[]): readonly Swing[] {
   if (!scale) return [];
   return known.flatMap(({ trace, read, fitted, jumps }) => {
     const { found } = fitted;
@@ -80,7 +81,7 @@ export function swingsOfTraces(known: readonly TraceKnown[], bench: BenchRead, s
       problems.push(problem('trace-sensor-slope-missing', 'stops', { sheetName: trace.name, entry: 'sensorSlope' }, {}));
       return [];
     }
-    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, dimension: read.inVolts ? 'voltage' : WAYS[scale.way].reads === 'pixel' && scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor }, scale, problems));
+    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, dimension: read.inVolts ? 'voltage' : WAYS[scale.way].reads === 'pixel' && scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor, correction: wide.get(trace.id)?.corrections[k] ?? 0 }, scale, problems));
   });
 }
 
@@ -110,9 +111,11 @@ interface JumpFacts {
   readonly rest: number;
   readonly stepInU: number;
   readonly sensor: Sensor | null;
+  /** What the full pendulum's equation adds, rad. */
+  readonly correction: number;
 }
 
-function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, sensor }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
+function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, sensor, correction }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
   const place = { sheetName: record.sheetName, record: record.id };
   const swing: Swing = { record, configuration: record.kind === 'tap' ? 'taps' : 'shots', readings: { restFrom: null, rest: null, first: null, next: [] }, angle: null, launch: null, jump: { value: jump, dimension } };
   if (Math.abs(stepInU) > STEP_FAULT) problems.push(problem('trace-position-step', 'doubt', place, { time: record.time!.value, inU: stepInU }));
@@ -123,7 +126,8 @@ function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, se
     const unsigned = scale.mark
       ? propagate(swingFromMark(scale.way), { ...scale.stand, first: combine([[1, from], [1, length]]), rest: from, mark: scale.mark, scale: scale.scale })
       : propagate(swingFromRest(scale.way), { ...scale.stand, first: length, rest: exact(0), scale: scale.scale });
-    const angle = scale.sense === 1 ? unsigned : combine([[-1, unsigned]]);
+    const solved = correction === 0 ? unsigned : combine([[1, unsigned], [1, exact(correction)]]);
+    const angle = scale.sense === 1 ? solved : combine([[-1, solved]]);
     return { ...swing, angle, launch: { full: angle, smallAngle: angle } };
   } catch (failure) {
     if (!(failure instanceof RangeError)) throw failure;
@@ -144,22 +148,26 @@ export function angleOfThrow(jump: number, inVolts: boolean, scale: Scale, bench
   }
 }
 
+/** With taps alone in it a trace shows the pendulum as it was tapped. */
+export const configurationOf = ({ events }: Pick<TraceFit, 'events'>): ConfigurationName => (events.length > 0 && events.every(({ kind }) => kind === 'tap') ? 'taps' : 'shots');
+
 const SPECTRA = new WeakMap<TraceFit, ResidualSpectrum | null>();
 
 /** Natural periods that the traces show, as timings of the pendulum as it hung then: with taps alone in it as tapped, else as fired. */
-export function timingsOfTraces(known: readonly TraceKnown[]): readonly Timing[] {
+export function timingsOfTraces(known: readonly TraceKnown[], wide: ReadonlyMap<string, WideSwing>): readonly Timing[] {
   return known.flatMap(({ trace, fitted, frequency }): Timing[] => {
     const { found } = fitted;
     if (!found || !frequency || found.fit.covariance[0] === 0) return [];
-    const configuration = found.events.length > 0 && found.events.every(({ kind }) => kind === 'tap') ? 'taps' : 'shots';
-    const period = anchor(propagate(({ w }) => (2 * Math.PI) / w, { w: frequency }));
+    const configuration = configurationOf(found);
+    const factor = wide.get(trace.id)?.frequencyFactor ?? 1;
+    const period = anchor(propagate(({ w }) => (2 * Math.PI) / (factor * w), { w: frequency }));
     const pooled = pooledMean([period], ownParts([period]), { id: `traces.period.${trace.id}`, label: 'Scatter of the timings', symbol: 'T', dimension: 'time', family: { id: 'traces.oscillation', label: 'Frequency and damping of the traces' } });
     return [{ id: `trace.${trace.id}`, configuration, hung: null, period, pooled, records: [], trace: trace.name }];
   });
 }
 
 /** What the page is told of each trace; impulses by the records that its jumps became. */
-export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null): TraceTold {
+export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, wide: WideSwing | null, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null): TraceTold {
   const { found } = fitted;
   const { samples, timeline } = read;
   const dimension = choices.readingWay === 'cameraPivotMarker' ? 'angle' : WAYS[choices.readingWay].reads;
@@ -170,6 +178,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
   };
   if (!found || !frequency || !ratio) return bare;
   const { fit, factors } = found;
+  const factor = wide?.frequencyFactor ?? 1;
   const uOf = (k: number): number => {
     const [p, q] = [fit.byFrequency[k]!, fit.byRatio[k]!];
     const [ww, wz, zz] = fit.covariance;
@@ -186,7 +195,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
       picked: pickedThrow(found.samples, fit.model, fit.times[k]!, fit.times[k + 1] ?? Infinity),
     })),
     fitted: {
-      period: { value: (2 * Math.PI) / frequency.value, u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
+      period: { value: (2 * Math.PI) / (factor * frequency.value), u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
       noise: fit.noise, colour: found.factorOfSwing, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
       least, noiseEquivalent: least === null || !impulseOfThrow ? null : impulseOfThrow(least, read.inVolts),
     },

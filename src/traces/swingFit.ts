@@ -1,9 +1,10 @@
 /** One sampled record of a pendulum that is struck at known times: its frequency and damping, every jump, the rest line, and what noise leaves unknown of each. */
 import { solveSymmetric } from '../numeric/linearAlgebra.ts';
-import { solveChain, type ChainCovariances, type ChainSolved, type JointValue, type Link } from '../numeric/struckChain.ts';
+import { ALL, freeSteps, isPlace, NONE, placeAt, Struck, type Free, type Place } from './struck.ts';
+import { described } from './swingDescribed.ts';
 import type { SwingModel } from './swingModel.ts';
 import { likelyFrequencies } from './swingStart.ts';
-import { cellsOf, evenBlocks, firstAtOrAfter, motionColumns, motionOver, productIn, slopeColumns, squaresIn, swingSums, exposureFactor, type Cell, type Column, type Oscillation, type SwingSamples } from './swingSums.ts';
+import { firstAtOrAfter, productIn, squaresIn, type Column, type Oscillation, type SwingSamples } from './swingSums.ts';
 
 export interface SwingOptions {
   /** ω_n as expected, rad/s: the search keeps within a factor 2 of it. */
@@ -70,133 +71,9 @@ const GREATEST_RATIO = 0.95;
 /** Periods between knots of the rest line at the closest, and the most stretches between knots. */
 const PERIODS_A_KNOT = 5;
 const FINEST = 64;
-/** Jumps further apart in order than this share noise through the rest line alone, which is little. */
-const NEIGHBOURS = 40;
-/** Periods about an event in which its weights are given. */
-const PERIODS_OF_WEIGHTS = 12;
 const REFINING_ROUNDS = 12;
 /** A swing that takes less off the sum of squares than this ratio of variances is none. */
 const LEAST_RATIO_OF_VARIANCES = 12;
-
-/** The record with its events: what stays the same whatever the frequency. */
-class Struck {
-  readonly samples: SwingSamples;
-  readonly events: readonly number[];
-  readonly cells: readonly Cell[];
-  readonly even: Uint8Array;
-  readonly base: number;
-  readonly exposure: number;
-  /** Stretches between the finest knots. */
-  readonly finest: number;
-  readonly count: number;
-  readonly firstCell: Int32Array;
-  /** Σ (x − x̄)² of the samples in use. */
-  readonly deviations: number;
-
-  constructor(samples: SwingSamples, events: readonly number[], exposure: number, finest: number) {
-    this.samples = samples;
-    this.events = events;
-    this.exposure = exposure;
-    this.finest = finest;
-    const { t, x, use } = samples;
-    const [from, span] = [t[0]!, t[t.length - 1]! - t[0]!];
-    this.cells = cellsOf(samples, events, Array.from({ length: finest + 1 }, (_, j) => from + (span * j) / finest));
-    this.even = evenBlocks(samples, this.cells);
-    let [count, sum] = [0, 0];
-    for (let i = 0; i < x.length; i++) if (!use || use[i] !== 0) {
-      count += 1;
-      sum += x[i]!;
-    }
-    this.count = count;
-    this.base = count > 0 ? sum / count : 0;
-    let squares = 0;
-    for (let i = 0; i < x.length; i++) if (!use || use[i] !== 0) squares += (x[i]! - this.base) ** 2;
-    this.deviations = squares;
-    this.firstCell = new Int32Array(events.length + 2).fill(this.cells.length);
-    for (let c = this.cells.length - 1; c >= 0; c--) this.firstCell[this.cells[c]!.segment] = c;
-    for (let k = events.length; k >= 0; k--) if (this.firstCell[k] === this.cells.length || this.firstCell[k]! > this.firstCell[k + 1]!) this.firstCell[k] = this.firstCell[k + 1]!;
-  }
-
-  get segments(): number {
-    return this.events.length + 1;
-  }
-
-  begins(k: number): number {
-    return k === 0 ? this.samples.t[0]! : this.events[k - 1]!;
-  }
-
-  sums(o: Oscillation): Float64Array {
-    return swingSums(this.samples, this.cells, this.even, o, this.base, this.exposure);
-  }
-
-  /** Hats of the two knots about a cell, with `stretches` of the rest line (a part of `finest`). */
-  hats(cell: Cell, stretches: number): { readonly at: number; readonly first: Column; readonly second: Column } {
-    if (stretches === 0) return { at: 0, first: [0, 0, 0, 0, 1, 0], second: [0, 0, 0, 0, 0, 0] };
-    const each = this.finest / stretches;
-    const at = Math.floor(cell.knot / each);
-    const into = cell.knot / each - at;
-    return { at, first: [0, 0, 0, 0, 1 - into, -1 / each], second: [0, 0, 0, 0, into, 1 / each] };
-  }
-
-  links(o: Oscillation, free: Free, slopes: Slopes | null, shared: number): readonly (Link | null)[] {
-    return this.events.map((_, k): Link | null => {
-      if (free(k)) return null;
-      const m = motionOver(this.begins(k + 1) - this.begins(k), o);
-      if (!slopes) return { a: m.pp, b: m.pv, drive: [] };
-      const [byFrequency, byRatio] = m.slopes(slopes.positions[k]!, slopes.velocities[k]!).position;
-      return { a: m.pp, b: m.pv, drive: [[shared - 2, byFrequency], [shared - 1, byRatio]] };
-    });
-  }
-
-  /** Everything at (ω, ζ): states, jumps and rest line, and with `slopes` the step that lowers the sum of squares. */
-  solve(sums: Float64Array, o: Oscillation, stretches: number, free: Free, slopes: Slopes | null): ReturnType<typeof solveChain> {
-    const knots = stretches + 1;
-    const shared = knots + (slopes ? 2 : 0);
-    const n = shared + 3;
-    const last = n - 1;
-    const { p, v } = motionColumns(o);
-    return solveChain(this.segments, shared, this.links(o, free, slopes, shared), (k, form) => {
-      for (let c = this.firstCell[k]!; c < this.firstCell[k + 1]! && this.cells[c]!.segment === k; c++) {
-        const { at, first, second } = this.hats(this.cells[c]!, stretches);
-        const columns: (readonly [number, Column])[] = [[0, p], [1, v], [2 + at, first]];
-        if (stretches > 0) columns.push([3 + at, second]);
-        if (slopes) {
-          const by = slopeColumns(o, slopes.positions[k]!, slopes.velocities[k]!);
-          columns.push([shared, by.frequency], [shared + 1, by.ratio]);
-        }
-        for (const [i, [row, one]] of columns.entries()) {
-          for (const [column, other] of columns.slice(i)) form[Math.min(row, column) * n + Math.max(row, column)]! += productIn(sums, c, one, other);
-          form[row * n + last]! += productIn(sums, c, one, null);
-        }
-        form[last * n + last]! += squaresIn(sums, c);
-      }
-    });
-  }
-}
-
-/** Whether the position may step at an event. */
-type Free = (event: number) => boolean;
-const NONE: Free = () => false;
-const ALL: Free = () => true;
-
-interface Slopes {
-  readonly positions: Float64Array;
-  readonly velocities: Float64Array;
-}
-
-interface Place {
-  readonly o: Oscillation;
-  readonly sums: Float64Array;
-  readonly solved: ChainSolved;
-}
-
-function placeAt(struck: Struck, o: Oscillation, stretches: number, free: Free = NONE): Place | { readonly status: 'notTold'; readonly segment: number } {
-  const sums = struck.sums(o);
-  const solved = struck.solve(sums, o, stretches, free, null);
-  return solved.status === 'solved' ? { o, sums, solved } : solved;
-}
-
-const isPlace = (found: Place | { readonly status: 'notTold' }): found is Place => 'o' in found;
 
 /** Gauss–Newton steps from a start, all linear unknowns solved exactly at each. */
 function descend(struck: Struck, start: Place, stretches: number, free: Free = NONE): Place {
@@ -323,7 +200,9 @@ export function fitSwing(given: SwingSamples, events: readonly number[], options
   if (struck.count < 8 + 2 * events.length) return { status: 'tooFewSamples' };
   const first = placeAt(struck, start, options.stretches ?? 1);
   if (!isPlace(first)) return first;
-  let { stretches, place } = options.stretches === undefined ? stretchesOf(struck, first) : { stretches: options.stretches, place: first };
+  const began = options.stretches === undefined ? stretchesOf(struck, first) : { stretches: options.stretches, place: first };
+  const { stretches } = began;
+  let { place } = began;
   if (!options.fixed) {
     place = descend(struck, place, stretches);
     if (!swings(struck, place, stretches)) return { status: 'noSwing' };
@@ -368,24 +247,6 @@ function restAlone(struck: Struck, sums: Float64Array, stretches: number): numbe
   return solved.status === 'solved' ? Math.max(0, squares - solved.x.reduce((sum, value, i) => sum + value * right[i]!, 0)) : Infinity;
 }
 
-/** Position step and jump of velocity at each event with both left free, and their u with unit noise. */
-function freeSteps(struck: Struck, { sums, o }: Place, stretches: number): { readonly step: Float64Array; readonly jump: Float64Array; readonly u: Float64Array; readonly noise: number } | null {
-  const free = struck.solve(sums, o, stretches, ALL, null);
-  if (free.status !== 'solved') return null;
-  const covariances = free.covariances();
-  const many = struck.events.length;
-  const [step, jump, u] = [new Float64Array(many), new Float64Array(many), new Float64Array(many)];
-  for (let k = 0; k < many; k++) {
-    const m = motionOver(struck.begins(k + 1) - struck.begins(k), o);
-    const [p, v] = [free.positions[k]!, free.velocities[k]!];
-    step[k] = free.positions[k + 1]! - (m.pp * p + m.pv * v);
-    jump[k] = free.velocities[k + 1]! - (m.vp * p + m.vv * v);
-    u[k] = Math.sqrt(Math.max(0, covariances.ofJoint(k, { nextPosition: 1, nextVelocity: 0, position: -m.pp, velocity: -m.pv, shared: [] })));
-  }
-  const dof = struck.count - 2 * struck.segments - (stretches + 1) - 2;
-  return { step, jump, u, noise: dof > 0 ? Math.sqrt(free.sumOfSquares / dof) : 0 };
-}
-
 /** Moves event times by −step/(ω_n jump), within bounds and in their order; at those that were moved the position is left free from then on. */
 function refine(samples: SwingSamples, listed: readonly number[], from: { readonly struck: Struck; readonly place: Place; readonly stretches: number }, within: number): { readonly struck: Struck; readonly place: Place; readonly timeU: readonly (number | null)[] } {
   let { struck, place } = from;
@@ -410,110 +271,4 @@ function refine(samples: SwingSamples, listed: readonly number[], from: { readon
   const free: Free = (k) => timeU[k] !== null;
   const held = placeAt(struck, place.o, from.stretches, free);
   return { struck, place: isPlace(held) ? descend(struck, held, from.stretches, free) : place, timeU };
-}
-
-function described(struck: Struck, place: Place, stretches: number, times: readonly number[], timeU: readonly (number | null)[], isFixed: boolean): SwingFitResult {
-  const { o, sums, solved } = place;
-  const joint = struck.solve(sums, o, stretches, (k) => timeU[k] !== null, isFixed ? null : solved);
-  if (joint.status !== 'solved') return joint;
-  const covariances = joint.covariances();
-  const [iw, iz] = [stretches + 1, stretches + 2];
-  const S = covariances.shared;
-  const [ww, wz, zz] = isFixed ? [0, 0, 0] : [S[iw]![iw]!, S[iw]![iz]!, S[iz]![iz]!];
-  const det = ww * zz - wz * wz;
-  const jointAt = (k: number): JointValue => {
-    const m = motionOver(struck.begins(k + 1) - struck.begins(k), o);
-    const [byFrequency, byRatio] = m.slopes(solved.positions[k]!, solved.velocities[k]!).velocity;
-    return { nextPosition: 0, nextVelocity: 1, position: -m.vp, velocity: -m.vv, shared: isFixed ? [] : [[iw, -byFrequency], [iz, -byRatio]] };
-  };
-  const many = struck.events.length;
-  const values = struck.events.map((_, k) => jointAt(k));
-  const jumps = values.map((value, k) => solved.velocities[k + 1]! + value.position * solved.positions[k]! + value.velocity * solved.velocities[k]!);
-  const withShared = values.map((value, k) => covariances.withShared(k, value));
-  const by = withShared.map((row) => isFixed ? ([0, 0] as const) : [(row[iw]! * zz - row[iz]! * wz) / det, (row[iz]! * ww - row[iw]! * wz) / det] as const);
-  const neighbours = Math.min(NEIGHBOURS, Math.max(0, many - 1));
-  const rows = values.map((value, k) => {
-    const earlier = covariances.withEarlier(k, value, (j) => values[j]!, neighbours);
-    return Float64Array.from({ length: earlier.length + 1 }, (_, d) => (d === 0 ? covariances.ofJoint(k, value) : earlier[d - 1]!) - (isFixed ? 0 : by[k]![0] * withShared[k - d]![iw]! + by[k]![1] * withShared[k - d]![iz]!));
-  });
-  const model = modelOf(struck, place, stretches);
-  const { residuals, sumOfSquares } = residualsOf(struck, place, stretches);
-  const dof = struck.count - many - 2 - (stretches + 1) - 2;
-  const steps = freeSteps(struck, place, stretches);
-  return {
-    ...o, status: 'fitted', times, timeU, jumps, covariance: [ww, wz, zz], byFrequency: by.map(([w]) => w), byRatio: by.map(([, z]) => z), neighbours,
-    noiseCovariance: (i, j) => rows[Math.max(i, j)]![Math.abs(i - j)] ?? 0,
-    weightsOf: (k) => weightsAt(struck, place, stretches, covariances, values[k]!, k),
-    model, residuals, sumOfSquares, dof, noise: Math.sqrt(sumOfSquares / Math.max(1, dof)),
-    stepsInU: struck.events.map((_, k) => (steps && steps.noise > 0 && steps.u[k]! > 0 ? steps.step[k]! / (steps.noise * steps.u[k]!) : 0)),
-  };
-}
-
-function modelOf(struck: Struck, { o, solved }: Place, stretches: number): SwingModel {
-  const { t } = struck.samples;
-  const [from, span] = [t[0]!, t[t.length - 1]! - t[0]!];
-  return {
-    frequency: o.frequency, ratio: o.ratio,
-    stretches: Array.from({ length: struck.segments }, (_, k) => ({ begins: struck.begins(k), position: solved.positions[k]!, velocity: solved.velocities[k]! })),
-    rest: { times: Array.from({ length: stretches + 1 }, (_, j) => from + (span * j) / Math.max(1, stretches)), values: Array.from(solved.shared.slice(0, stretches + 1), (value) => value + struck.base) },
-  };
-}
-
-/** Calls back with every sample in use: C and D of its stretch, as seen over the exposure, and the hats of the rest line. */
-function eachSample(struck: Struck, o: Oscillation, stretches: number, cells: readonly [number, number], take: (i: number, cell: Cell, c: number, d: number, knot: number, first: number, second: number) => void): void {
-  const root = Math.sqrt(1 - o.ratio * o.ratio);
-  const [fall, turn] = [-o.ratio * o.frequency, o.frequency * root];
-  const [kr, ki] = exposureFactor(fall, turn, struck.exposure);
-  const { t, use } = struck.samples;
-  for (let k = cells[0]; k < cells[1]; k++) {
-    const cell = struck.cells[k]!;
-    const { at, first, second } = struck.hats(cell, stretches);
-    for (let i = cell.from; i < cell.to; i++) {
-      if (use && use[i] === 0) continue;
-      const s = t[i]! - cell.begins;
-      const e = Math.exp(fall * s);
-      const [p, q] = [e * Math.cos(turn * s), e * Math.sin(turn * s)];
-      const u = (t[i]! - cell.knotTime) / cell.knotStep;
-      take(i, cell, kr * p - ki * q, kr * q + ki * p, at, first[4] + first[5] * u, second[4] + second[5] * u);
-    }
-  }
-}
-
-function residualsOf(struck: Struck, { o, solved }: Place, stretches: number): { readonly residuals: Float64Array; readonly sumOfSquares: number } {
-  const { x } = struck.samples;
-  const residuals = new Float64Array(x.length);
-  const root = Math.sqrt(1 - o.ratio * o.ratio);
-  let sumOfSquares = 0;
-  eachSample(struck, o, stretches, [0, struck.cells.length], (i, cell, c, d, knot, first, second) => {
-    const [p, v] = [solved.positions[cell.segment]!, solved.velocities[cell.segment]!];
-    const r = x[i]! - struck.base - (c * p + (d * (o.ratio * p + v)) / root + first * solved.shared[knot]! + (second === 0 ? 0 : second * solved.shared[knot + 1]!));
-    residuals[i] = r;
-    sumOfSquares += r * r;
-  });
-  return { residuals, sumOfSquares };
-}
-
-/** The samples' part in jump k: each row of the problem times the covariances of the jump with the unknowns. */
-function weightsAt(struck: Struck, { o, solved }: Place, stretches: number, covariances: ChainCovariances, value: JointValue, k: number): { readonly from: number; readonly weights: Float64Array } {
-  const reach = (PERIODS_OF_WEIGHTS * 2 * Math.PI) / o.frequency;
-  const event = struck.events[k]!;
-  let [first, last] = [k, k + 1];
-  while (first > 0 && struck.begins(first) > event - reach) first -= 1;
-  while (last < struck.segments - 1 && struck.begins(last + 1) < event + reach) last += 1;
-  const { positions, velocities } = covariances.withStates(k, value, first, last);
-  const gamma = covariances.withShared(k, value);
-  const [iw, iz] = [stretches + 1, stretches + 2];
-  const { t } = struck.samples;
-  const [from, to] = [firstAtOrAfter(t, event - reach, 0), firstAtOrAfter(t, event + reach, 0)];
-  const weights = new Float64Array(to - from);
-  const root = Math.sqrt(1 - o.ratio * o.ratio);
-  eachSample(struck, o, stretches, [struck.firstCell[first]!, struck.firstCell[last + 1]!], (i, cell, c, d, knot, one, other) => {
-    if (i < from || i >= to) return;
-    const [P, V] = [positions[cell.segment - first]!, velocities[cell.segment - first]!];
-    const by = slopeColumns(o, solved.positions[cell.segment]!, solved.velocities[cell.segment]!);
-    const s = t[i]! - cell.begins;
-    const slope = (column: Column): number => column[0] * c + column[1] * d + s * (column[2] * c + column[3] * d);
-    weights[i - from] = c * P + (d * (o.ratio * P + V)) / root + one * gamma[knot]! + (other === 0 ? 0 : other * gamma[knot + 1]!) + (iw < gamma.length ? slope(by.frequency) * gamma[iw]! + slope(by.ratio) * gamma[iz]! : 0);
-  });
-  return { from, weights };
 }

@@ -212,3 +212,33 @@ describe('what is wrong with a trace is said, and the rest goes on', () => {
     expect(r.traces[0]!.fitted!.period.value).toBeCloseTo((2 * Math.PI) / W, 3);
   });
 });
+
+describe('a trace whose swings are wide', () => {
+  const WIDE = [0.14, 0.12, 0.1, 0.12].map((jump) => jump * 3);
+  const large = (noise = 0, quiet = 1): Traced => {
+    const { normal } = draws(8);
+    const { t, theta } = struck({ frequency: W, ratio: Z, share: 1, events: TIMES, jumps: WIDE.map((jump) => jump * quiet), seconds: 60, rate: RATE, start: [0.02, 0.01] });
+    const text = ['Time (s);Displacement (mm)', ...t.map((time, i) => `${exactly(time)};${(1e3 * (L * Math.sin(theta[i]!) + noise * normal())).toFixed(6)}`)].join('\n');
+    return bench(text, list, {}, {});
+  };
+
+  it('gives the impulses of the full pendulum, and says so', () => {
+    const found = bits(large());
+    found.forEach((bit, k) => expect(bit / ((WIDE[k]! * K) / ARM)).toBeCloseTo(1, 4));
+    const r = reduced(large());
+    const told = r.problems.find(({ code }) => code === 'trace-large-swing')!;
+    expect(told.facts['how']).toBe('full');
+    expect(told.facts['degrees']).toBeGreaterThan(20);
+    expect(told.facts['percent']).toBeGreaterThan(0.3);
+    expect(r.traces[0]!.fitted!.period.value).toBeCloseTo((2 * Math.PI) / W, 4);
+  });
+
+  it('with noise, within what the fit says of it', () => {
+    const r = reduced(large(2e-4));
+    r.records.forEach(({ impulseBit }, k) => expect(Math.abs(impulseBit!.value - (WIDE[k]! * K) / ARM)).toBeLessThan(3.5 * impulseBit!.u));
+  });
+
+  it('and says nothing where they are small', () => {
+    expect(codes(large(0, 0.05))).not.toContain('trace-large-swing');
+  });
+});

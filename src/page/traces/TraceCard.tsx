@@ -79,7 +79,7 @@ export function TraceCard({ trace, told, state, uses, problems, change, onStop, 
           />
         </p>
       )}
-      {problems.map((found, i) => <p key={`${found.code} ${i}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
+      {problems.map((found) => <p key={`${found.code} ${found.place.line ?? ''} ${JSON.stringify(found.facts)}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
       {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told)}</p>}
       <details className={styles.how} open={told?.fitted == null}>
         <summary>How it is read</summary>

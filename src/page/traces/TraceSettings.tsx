@@ -47,7 +47,7 @@ export function TraceSettings({ trace, told, uses, onChange }: Props) {
           >
             <option value="">{trace.uses[use] === undefined && typeof used(use) === 'number' ? `${columns[used(use)!]?.header ?? ''}, as found` : 'as found'}</option>
             <option value="-1">none</option>
-            {columns.map(({ header, unit }, i) => <option key={`${i} ${header}`} value={i}>{`${i + 1}: ${header}${unit === '' ? '' : ` (${unit})`}`}</option>)}
+            {columns.map(({ header, unit }, i) => <option key={`${String(i + 1)}: ${header}`} value={i}>{`${i + 1}: ${header}${unit === '' ? '' : ` (${unit})`}`}</option>)}
           </select>
         </p>
       ))}
