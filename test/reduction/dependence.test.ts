@@ -77,6 +77,10 @@ const AWAKENED: Readonly<Partial<Record<EntryName, { readonly typed: string; rea
   parallaxGap: { typed: '5 mm', beside: { cameraDistance: '500 mm' }, reaches: ['shot: angle', 'tap: angle'] },
   cameraDistance: { typed: '500 mm', beside: { parallaxGap: '5 mm' }, reaches: ['shot: angle', 'tap: angle'] },
   eyeShift: { typed: '30 mm', beside: { parallaxGap: '5 mm', cameraDistance: '500 mm' }, reaches: ['u of the run by geometry'] },
+  // Of traces in volts alone.
+  sensorSlope: { typed: '2 mm/V', reaches: [] },
+  sensorOffset: { typed: '1 mm', reaches: [] },
+  sensorCorrelation: { typed: '0.5', reaches: [] },
   pulseDuration: { typed: '50 ms', reaches: BY_BOTH },
   tiltInPlane: { typed: '3°', beside: { exitAhead: '50 mm' }, reaches: BY_BOTH },
   exitAhead: { typed: '50 mm', beside: { tiltInPlane: '3°' }, reaches: BY_BOTH },

@@ -125,7 +125,7 @@ describe('the bench of a session file', () => {
   test('a session file opened whole offers its bench alone, and undo goes back to all of it', async () => {
     const here = setTitle({ name: 'monday' })(emptySession());
     const { user, session, store } = await onSheet(<App />, here);
-    await user.upload(screen.getByLabelText('Open a session file or tables of readings'), file);
+    await user.upload(screen.getByLabelText('Open a session file, tables of readings, or traces'), file);
     await waitFor(() => expect(session().title.name).toBe('friday'));
     await user.click(button('Take its bench only'));
     expect(session()).toEqual({ ...here, ...benchOf(demoLike()) });
