@@ -4,6 +4,7 @@ import type { TraceEvent } from '../readings/traceEvents.ts';
 import type { Trace } from '../session/session.ts';
 import { clockOffset } from '../traces/clockOffset.ts';
 import { maskOf } from '../traces/faults.ts';
+import { whiteFactor } from '../traces/fittedAway.ts';
 import { findJumps } from '../traces/findShots.ts';
 import { noiseCorrelation, varianceFactor, type NoiseCorrelation } from '../traces/noiseColour.ts';
 import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
@@ -45,6 +46,8 @@ const FAR = 2;
 /** First guess of the damping where shots are to be found. */
 const SOME_DAMPING = 0.01;
 const FINDING_ROUNDS = 2;
+/** A found jump of fewer u is none. */
+const CLEAR = 4;
 /** Part of a period by which listed and found times may differ, and by which found ones are moved by the fit. */
 const TOLERANCE = 1 / 8;
 /** Jumps whose own correlation factor is worked out; those between take that of the nearest. */
@@ -87,10 +90,11 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
     const off = maskOf(t, blanks);
     for (let i = 0; i < use.length; i++) if (off[i] === 0) use[i] = 0;
   }
-  const events = apart(inside, bare, place, problems);
+  const listed = apart(inside, bare, place, problems);
   const stretches = [...read.stretches, ...blanks].sort((a, b) => a.from - b.from);
+  const { events, fit } = trace.eventsFrom === 'found' ? clearJumps(listed, bare, read, expected) : { events: listed, fit: fitWithBench(bare, listed.map(({ time }) => time), read, false, expected) };
   const told = { stretches, events, offset: timed.offset };
-  const fit = fitWithBench(bare, events.map(({ time }) => time), read, trace.eventsFrom === 'found', expected);
+  if (trace.eventsFrom === 'found') problems.push(problem('trace-jumps-found', 'note', place, { jumps: events.length }));
   if (fit.status !== 'fitted') {
     const from = fit.status === 'notTold' ? (events[fit.segment - 1]?.time ?? t[0]!) : 0;
     problems.push(problem('trace-not-fitted', 'stops', place, { why: fit.status, from }));
@@ -100,6 +104,19 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
   const moved = fit.times.map((time, k) => Math.abs(time - events[k]!.time)).filter((by, k) => fit.timeU[k] !== null && by > 0);
   if (moved.length > 0 && trace.eventsFrom !== 'found') problems.push(problem('trace-times-moved', 'note', place, { times: moved.length, most: Math.max(...moved) }));
   return { ...told, problems, found: { samples: bare, ...told, fit, ...factorsOf(fit, bare) } };
+}
+
+/** The found jumps that stand clear of the noise when all are solved together; what does not, a gap or a sway made. */
+function clearJumps(found: readonly TimedEvent[], samples: SwingSamples, read: TraceRead, expected: Expected): { readonly events: readonly TimedEvent[]; readonly fit: SwingFitResult } {
+  let events = found;
+  for (;;) {
+    const fit = fitWithBench(samples, events.map(({ time }) => time), read, true, expected);
+    if (fit.status !== 'fitted') return { events, fit };
+    const { factors } = factorsOf(fit, samples);
+    const clear = events.filter((_, k) => Math.abs(fit.jumps[k]!) > CLEAR * fit.noise * Math.sqrt(factors[k]! * fit.noiseCovariance(k, k)));
+    if (clear.length === events.length) return { events, fit };
+    events = clear;
+  }
 }
 
 /** Fitted by itself; where it shows no swing, or one far from the bench's, with what the bench says. */
@@ -119,7 +136,6 @@ function fitWithBench(samples: SwingSamples, times: readonly number[], read: Tra
 function timedEvents(trace: Trace, read: TraceRead, samples: SwingSamples, expected: Expected, place: Place, problems: Problem[]): { readonly events: readonly TimedEvent[]; readonly offset: TraceTold['offset'] } {
   if (trace.eventsFrom === 'found') {
     const jumps = jumpsOf(samples, expected);
-    problems.push(problem('trace-jumps-found', 'note', place, { jumps: jumps.length }));
     return { events: jumps.map((time, i) => ({ id: `found${i + 1}`, time, listed: time, kind: 'shot', impulse: '' })), offset: null };
   }
   if (read.offset !== null || trace.eventsFrom === 'trigger') {
@@ -172,20 +188,22 @@ function apart(events: readonly TimedEvent[], { t, use }: SwingSamples, place: P
   return kept;
 }
 
-function factorsOf(fit: SwingFit, { t, use }: SwingSamples): Pick<TraceFit, 'factors' | 'factorOfSwing'> {
+function factorsOf(fit: SwingFit, samples: SwingSamples): Pick<TraceFit, 'factors' | 'factorOfSwing'> {
+  const { t, use } = samples;
   const spacing = (t[t.length - 1]! - t[0]!) / (t.length - 1);
   const lags = Math.min(MOST_LAGS, Math.ceil((CORRELATED_PERIODS * 2 * Math.PI) / (fit.frequency * spacing)));
   const correlation = noiseCorrelation(fit.residuals, use, lags);
+  const kept = whiteFactor(fit, samples, (lags * spacing * fit.frequency) / (2 * Math.PI));
   const n = fit.jumps.length;
   const every = Math.max(1, Math.ceil(n / FACTORS));
   const worked = new Map<number, number>();
-  for (let k = 0; k < n; k += every) worked.set(k, varianceFactor(correlation, fit.weightsOf(k).weights));
+  for (let k = 0; k < n; k += every) worked.set(k, varianceFactor(correlation, fit.weightsOf(k).weights, kept));
   const factors = fit.jumps.map((_, k) => worked.get(every * Math.floor(k / every))!);
-  return { factors, factorOfSwing: n > 0 ? [...factors].sort((a, b) => a - b)[n >> 1]! : swingFactor(correlation, fit, spacing) };
+  return { factors, factorOfSwing: n > 0 ? [...factors].sort((a, b) => a - b)[n >> 1]! : swingFactor(correlation, fit, spacing, kept) };
 }
 
 /** Without a jump: the factor of a free swing of some periods. */
-function swingFactor(correlation: NoiseCorrelation, { frequency, ratio }: SwingFit, spacing: number): number {
+function swingFactor(correlation: NoiseCorrelation, { frequency, ratio }: SwingFit, spacing: number, kept: number): number {
   const n = correlation.correlation.length;
-  return varianceFactor(correlation, Float64Array.from({ length: n }, (_, i) => Math.exp(-Math.max(0, ratio) * frequency * i * spacing) * Math.sin(frequency * i * spacing)));
+  return varianceFactor(correlation, Float64Array.from({ length: n }, (_, i) => Math.exp(-Math.max(0, ratio) * frequency * i * spacing) * Math.sin(frequency * i * spacing)), kept);
 }

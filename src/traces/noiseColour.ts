@@ -12,7 +12,7 @@ export interface NoiseCorrelation {
 const MOST = 262_144;
 
 /** Parzen's taper, which leaves no variance negative. Source: Priestley, Spectral Analysis and Time Series (1981) 6.2.3, from memory. */
-const parzen = (u: number): number => (u <= 0.5 ? 1 - 6 * u * u * (1 - u) : 2 * (1 - u) ** 3);
+export const parzen = (u: number): number => (u <= 0.5 ? 1 - 6 * u * u * (1 - u) : 2 * (1 - u) ** 3);
 
 /**
  * Autocorrelation of the residuals up to `lags` samples; those that were left out count for nothing.
@@ -41,11 +41,11 @@ const LEAST = 0.05;
 
 /**
  * Variance of Σ w_i x_i with the correlation over that with white noise as strong: 1 + 2 Σ ρ(l) Σ_i w_i w_{i+l}/Σ w².
- * 1 where the difference is no more than white noise itself would show.
+ * 1 where the difference is no more than white noise itself would show. `kept`: what the fit leaves of it on the average (fittedAway.ts).
  *
  * Source: variance of a sum of correlated values (GUM 5.2.2); u of the sum by Bartlett's formula for white noise, var ρ(l) = 1/n (from memory).
  */
-export function varianceFactor({ correlation, count }: NoiseCorrelation, weights: Float64Array): number {
+export function varianceFactor({ correlation, count }: NoiseCorrelation, weights: Float64Array, kept = 1): number {
   const lags = Math.min(correlation.length - 1, weights.length - 1);
   if (lags < 1) return 1;
   const products = laggedProducts(weights, lags);
@@ -57,5 +57,6 @@ export function varianceFactor({ correlation, count }: NoiseCorrelation, weights
     factor += part * correlation[l]!;
     chance += (part * parzen(l / correlation.length)) ** 2 / count;
   }
-  return Math.abs(factor - 1) < BY_CHANCE * Math.sqrt(chance) ? 1 : Math.max(LEAST, factor);
+  const corrected = factor / kept;
+  return Math.abs(corrected - 1) < (BY_CHANCE * Math.sqrt(chance)) / kept ? 1 : Math.max(LEAST, corrected);
 }

@@ -1,4 +1,4 @@
-/** A figure on the sheet: drawn, pointed at, walked through by keys, read aloud, and repeated as a table. */
+/** A figure on the sheet: drawn, pointed at, walked through by keys where it has marks, read aloud, and repeated as a table. */
 import { useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
 import type { CSSProperties, KeyboardEvent } from 'react';
 import type { Figure, Inks, Mark } from '../../plots/figure.ts';
@@ -10,10 +10,10 @@ import styles from './FigureView.module.css';
 interface Props {
   readonly figure: Figure;
   readonly inks: Inks;
-  readonly selected: string | null;
-  readonly onSelect: (record: string) => void;
+  readonly selected?: string | null;
+  readonly onSelect?: (record: string) => void;
   /** What Enter does: to where the selected record is open. */
-  readonly onOpen: () => void;
+  readonly onOpen?: () => void;
   /** Little height: the selected record is named above; the summary is for assistive technology only, and the table opens in a corner. */
   readonly slim?: boolean;
 }
@@ -48,7 +48,9 @@ function markAfter(key: string, marks: readonly Mark[], present: number): Mark |
   }
 }
 
-export function FigureView({ figure, inks, selected, onSelect, onOpen, slim = false }: Props) {
+const nothing = (): void => undefined;
+
+export function FigureView({ figure, inks, selected = null, onSelect = nothing, onOpen = nothing, slim = false }: Props) {
   const surface = useRef<HTMLDivElement>(null);
   const canvas = useRef<HTMLDivElement>(null);
   const mounted = useRef<Mounted | null>(null);
@@ -120,14 +122,10 @@ export function FigureView({ figure, inks, selected, onSelect, onOpen, slim = fa
       <div
         ref={surface}
         className={styles.surface}
-        role="slider"
-        tabIndex={0}
-        aria-label={`${figure.title}: selected record`}
-        aria-valuemin={0}
-        aria-valuemax={marks.length}
-        aria-valuenow={present + 1}
-        aria-valuetext={mark?.reading ?? 'none selected'}
-        onKeyDown={onKeyDown}
+        {...(marks.length === 0 ? {} : {
+          role: 'slider', tabIndex: 0, 'aria-label': `${figure.title}: selected record`, 'aria-valuemin': 0, 'aria-valuemax': marks.length, 'aria-valuenow': present + 1,
+          'aria-valuetext': mark?.reading ?? 'none selected', onKeyDown,
+        })}
       >
         <div ref={canvas} className={styles.canvas} aria-hidden="true" style={{ minHeight: figure.options.height }} />
         {hover !== null && (

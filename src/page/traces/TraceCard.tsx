@@ -1,5 +1,7 @@
 /** One sampled trace: where it came from, how it is read, its shots and taps, and what the fit tells of its swing. */
 import { useId } from 'react';
+import type { TracePicture } from '../../numeric/minMaxPyramid.ts';
+import { humWords } from '../../plots/traceSpectrum.ts';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
 import type { TraceTold } from '../../reduction/traceResults.ts';
@@ -8,6 +10,8 @@ import type { Trace, TraceUse } from '../../session/session.ts';
 import type { TraceState } from '../../store/traceDesk.ts';
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
 import { counted } from '../readings/tradeWords.ts';
+import { EventTable } from './EventTable.tsx';
+import { TracePictures } from './TracePictures.tsx';
 import { TraceSettings } from './TraceSettings.tsx';
 import styles from './traceCard.module.css';
 
@@ -15,6 +19,8 @@ interface Props {
   readonly trace: Trace;
   readonly told: TraceTold | undefined;
   readonly state: TraceState | undefined;
+  /** null until it can be drawn. */
+  readonly picture: TracePicture | null;
   readonly uses: readonly TraceUse[];
   readonly problems: readonly Problem[];
   readonly change: (what: string, edit: Edit, join?: string) => void;
@@ -25,26 +31,33 @@ interface Props {
 const DIGEST_SHOWN = 12;
 
 /** What the fit found, in a sentence. */
-function fitSentence({ fitted, dimension }: TraceTold): string {
+function fitSentence(told: TraceTold): string {
+  const { fitted, dimension } = told;
   if (!fitted) return 'No swing has been fitted yet.';
-  const { period, ratio, noise, colour, least } = fitted;
+  const { period, ratio, noise, colour, least, noiseEquivalent } = fitted;
   const second = chooseUnit([period.value], 'time');
   const reading = chooseUnit([noise], dimension);
   const parts = [
     `It swings with T₀ = ${withPlusMinus(period.value, period.u, second)} and ζ = ${withPlusMinus(ratio.value, ratio.u, chooseUnit([1], 'number'))} (standard uncertainties)`,
-    `noise ${plain(noise, reading, 2)} ${reading.symbol} a sample${colour > 1.2 || colour < 0.8 ? `, which counts ${plain(Math.sqrt(colour), chooseUnit([1], 'number'), 2)} times at the swing, as it is not white` : ''}`,
+    `noise ${plain(noise, reading, 2)} a sample${colour > 1.2 || colour < 0.8 ? `, which counts ${plain(Math.sqrt(colour), chooseUnit([1], 'number'), 2)} times at the swing, as it is not white` : ''}`,
   ];
   const throwUnit = chooseUnit([least ?? noise], dimension);
-  return `${parts.join('; ')}${least === null ? '' : `. A throw is known to ${plain(least, throwUnit, 2)} ${throwUnit.symbol} by the noise alone`}.`;
+  const impulse = chooseUnit([noiseEquivalent ?? 1e-6], 'impulse');
+  const hums = humWords(told);
+  return [
+    `${parts.join('; ')}.`,
+    ...(least === null ? [] : [`A throw is known to ${plain(least, throwUnit, 2)} by the noise alone${noiseEquivalent === null ? '' : `: a noise-equivalent impulse bit of ${plain(noiseEquivalent, impulse, 2)} for this record in this band`}.`]),
+    ...(hums.length === 0 ? [] : [`Out of the residuals stand ${hums.join(', ')}.`]),
+  ].join(' ');
 }
 
 function sizeSentence({ rows, from, to, spacing }: TraceTold): string {
   const span = chooseUnit([to - from], 'time');
   const step = chooseUnit([spacing], 'time');
-  return rows === null ? '' : `${counted(rows, 'sample')}, ${plain(to - from, span, 4)} ${span.symbol}, one each ${plain(spacing, step, 4)} ${step.symbol}`;
+  return rows === null ? '' : `${counted(rows, 'sample')}, ${plain(to - from, span, 4)}, one each ${plain(spacing, step, 4)}`;
 }
 
-export function TraceCard({ trace, told, state, uses, problems, change, onStop, onBytes }: Props) {
+export function TraceCard({ trace, told, state, picture, uses, problems, change, onStop, onBytes }: Props) {
   const id = useId();
   const named = (what: string): string => `${trace.name}: ${what}`;
   return (
@@ -81,6 +94,13 @@ export function TraceCard({ trace, told, state, uses, problems, change, onStop, 
       )}
       {problems.map((found) => <p key={`${found.code} ${found.place.line ?? ''} ${JSON.stringify(found.facts)}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
       {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told)}</p>}
+      {told !== undefined && picture !== null && <TracePictures trace={trace} told={told} picture={picture} change={change} />}
+      {told !== undefined && told.events.length > 0 && told.fitted !== null && (
+        <details className={styles.how}>
+          <summary>Its shots and taps as fitted, and by the peak alone</summary>
+          <EventTable told={told} />
+        </details>
+      )}
       <details className={styles.how} open={told?.fitted == null}>
         <summary>How it is read</summary>
         <TraceSettings trace={trace} told={told} uses={uses} onChange={(what, patch, join) => change(named(what), setTrace(trace.id, patch), join)} />
@@ -99,6 +119,18 @@ export function TraceCard({ trace, told, state, uses, problems, change, onStop, 
           </div>
         </details>
       )}
+      <details className={styles.how} open={trace.bad.length > 0}>
+        <summary>Stretches marked as bad ({trace.bad.length})</summary>
+        <div className={styles.list}>
+          <label htmlFor={`${id}-bad`} className="quiet">One a line, from and to: 12.5 13.1; on the record’s clock, in s. They are left out of the fit.</label>
+          <textarea
+            id={`${id}-bad`}
+            spellCheck={false}
+            value={trace.bad.map(({ text }) => text).join('\n')}
+            onChange={({ target: { value } }) => change(named('stretches marked as bad'), setTrace(trace.id, { bad: linesAgain(trace.bad, value) }), `${trace.id}.bad`)}
+          />
+        </div>
+      </details>
     </article>
   );
 }

@@ -4,9 +4,13 @@ import type { Problem } from '../../problems/problems.ts';
 import { usesOfWay } from '../../reduction/traceRead.ts';
 import type { TraceTold } from '../../reduction/traceResults.ts';
 import { useActions, useStateNow, useStore, useTraces, useTraceStates } from '../../store/hooks.tsx';
+import { swingsOverlaid } from '../../plots/swingsOverlaid.ts';
+import { FigureView } from '../plot/FigureView.tsx';
+import { useInks } from '../plot/useInks.ts';
 import { useNotices } from '../readings/notices.ts';
 import { takeTrace } from './takeTrace.ts';
 import { TraceCard } from './TraceCard.tsx';
+import { usePictures } from './usePictures.ts';
 import styles from './traceCard.module.css';
 
 const NO_TOLD: readonly TraceTold[] = [];
@@ -23,6 +27,12 @@ export function TracesSection() {
   const looked = useTraces();
   const states = useTraceStates();
   const uses = useMemo(() => usesOfWay(way), [way]);
+  const pictures = usePictures(traces, states);
+  const inks = useInks();
+  const overlaid = useMemo(() => swingsOverlaid(told.flatMap((one) => {
+    const picture = pictures.get(one.id);
+    return picture === undefined ? [] : [{ told: one, picture }];
+  }), inks), [told, pictures, inks]);
   return (
     <section id="traces" className={styles.section} aria-labelledby="traces-heading">
       <h2 id="traces-heading">Traces</h2>
@@ -32,6 +42,7 @@ export function TracesSection() {
           trace={trace}
           told={told.find(({ id }) => id === trace.id)}
           state={states[trace.sha256]}
+          picture={pictures.get(trace.id) ?? null}
           uses={uses}
           problems={problems.filter(({ place }) => place.record === undefined && (place.entry === `trace.${trace.id}` || (place.sheetName === trace.name && place.sheet === undefined)))}
           change={change}
@@ -41,6 +52,7 @@ export function TracesSection() {
           }}
         />
       ))}
+      {overlaid !== null && <FigureView figure={overlaid} inks={inks} />}
     </section>
   );
 }
