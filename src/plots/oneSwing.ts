@@ -99,7 +99,7 @@ export function oneSwing(told: TraceTold, picture: TracePicture, event: TraceEve
       marks: [], nearest: 'x', table,
       columns: [merged.map(({ t }) => t - zero), readings, fit, fit, rest],
       options: {
-        ...frame(x, roomFor([...readings, ...fit].filter((value): value is number => value !== null)), HEIGHT),
+        ...frame(x, roomFor([...readings.filter((_, i) => merged[i]!.sample === null || !isOut(merged[i]!.sample)), ...fit].filter((value): value is number => value !== null)), HEIGHT),
         axes: [bottom, axis({ label: `Reading  (${unit.symbol})`, side: 'left' }, inks)],
         series: [
           {},

@@ -41,15 +41,18 @@ function responsesOf({ told, picture }: TraceSeen, kind: 'tap' | 'shot', grid: r
     const until = Math.min(to, ordered[k + 1]?.time ?? Infinity, event.time + grid.at(-1)!);
     if (before === null || until - event.time < grid.at(-1)! / 4) return [];
     const { times, values } = samplesBetween(picture, event.time, until, 20_000);
-    const went = swingOver(before, times);
+    const fit = swingOver(fitted.model, times);
+    const gridTimes = Float64Array.from(grid, (s) => event.time + s);
+    const [withIt, went] = [swingOver(fitted.model, gridTimes), swingOver(before, gridTimes)];
+    // What the fit leaves is averaged about each grid time, and put upon the fit there: no sample is at another time than its own.
     const sums = grid.map(() => ({ sum: 0, count: 0 }));
     times.forEach((t, i) => {
       const place = sums[Math.round((t - event.time) / step)];
       if (!place || t < event.time || t >= until || Number.isNaN(values[i]!)) return;
-      place.sum += (values[i]! - went[i]!) / event.jump!.value;
+      place.sum += values[i]! - fit[i]!;
       place.count += 1;
     });
-    return [{ kind, name: `${several ? `${told.name}: ` : ''}${names.get(event.id) ?? event.id}`, values: sums.map(({ sum, count }) => (count === 0 ? null : sum / count)) }];
+    return [{ kind, name: `${several ? `${told.name}: ` : ''}${names.get(event.id) ?? event.id}`, values: sums.map(({ sum, count }, i) => (count === 0 ? null : (sum / count + withIt[i]! - went[i]!) / event.jump!.value)) }];
   });
 }
 

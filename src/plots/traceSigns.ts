@@ -51,6 +51,7 @@ export function drawSigns(u: uPlot, events: readonly RecordEvent[], chosen: stri
   pen.fillStyle = inks.paper;
   if (seen.length > 0) pen.fillRect(left, top, width, SIGNS_HEIGHT * px);
   pen.font = `${11 * px}px ${inks.font}`;
+  pen.textAlign = 'left';
   pen.textBaseline = 'middle';
   for (const { id, kind, time, missing, name } of seen) {
     const x = u.valToPos(time, 'x', true);

@@ -11,11 +11,24 @@ const HERTZ = siUnit('number');
 /** Room about the outermost values, as a factor. */
 const ROOM = 1.3;
 
-/** A power of ten and its halves as they are said: "0.01", "300". */
+/** A power of ten as it is said: "0.01", "100". */
 const inPlain = (value: number): string => (value >= 1e5 || value < 1e-4 ? value.toExponential(0).replace('e', ' · 10^').replace('+', '').replace('-', '−') : String(Number(value.toPrecision(3))));
 
+/** 1, 2 … 9 of each decade within the range, the powers of ten with their digits, and 2 and 5 too where there are few. The plotter's own splits may never end where a range begins between powers. */
 function logarithmic(base: uPlot.Axis): uPlot.Axis {
-  return { ...base, values: (_, splits) => splits.map((split) => (Math.abs(Math.log10(split) - Math.round(Math.log10(split))) < 1e-6 ? inPlain(split) : '')) };
+  return {
+    ...base,
+    splits: (_, __, min, max) => {
+      const splits: number[] = [];
+      for (let decade = Math.floor(Math.log10(min)); decade <= Math.ceil(Math.log10(max)); decade += 1) for (let digit = 1; digit < 10; digit += 1) splits.push(Number((digit * 10 ** decade).toPrecision(1)));
+      return splits.filter((split) => split >= min && split <= max);
+    },
+    filter: (_, splits) => splits,
+    values: (_, splits) => {
+      const isFew = splits.filter((split) => /^1/.test(split.toExponential())).length < 3;
+      return splits.map((split) => ((isFew ? /^[125]/ : /^1/).test(split.toExponential()) ? inPlain(split) : ''));
+    },
+  };
 }
 
 /** Words of the lines that stand out: "49.9 Hz (1.2 µm)". */

@@ -1,4 +1,5 @@
 /** Samples that tell nothing of the swing: at the end of the sensor's range, struck by a spike, or in a stretch that is left out. */
+import { solveSymmetric } from '../numeric/linearAlgebra.ts';
 
 /** From one time to another, s; both ends belong to it. */
 export interface Span {
@@ -70,6 +71,43 @@ const SPIKE = 8;
 /** Of samples so close in a row that stand off, the whole run is one spike. */
 const LONGEST_SPIKE = 40;
 
+/** Samples on either side of a run that is looked at again. */
+const BESIDE = 6;
+/** A sample of a spike is off the curves from both sides by this part of what made it suspect. */
+const OFF_BOTH = 0.5;
+
+/** A strike bends the record without a spike: each sample goes on from one side or from the other. */
+function isKink(t: Float64Array, x: Float64Array, from: number, to: number, off: (i: number) => number): boolean {
+  if (from < BESIDE || to + BESIDE >= x.length) return false;
+  let most = 0;
+  for (let i = from; i <= to; i++) most = Math.max(most, Math.abs(off(i)));
+  const [before, after] = [parabola(t, x, from - BESIDE), parabola(t, x, to + 1)];
+  for (let i = from; i <= to; i++) if (Math.min(Math.abs(x[i]! - before(t[i]!)), Math.abs(x[i]! - after(t[i]!))) > OFF_BOTH * most) return false;
+  return true;
+}
+
+/** The least-squares parabola through `BESIDE` samples from one on. */
+function parabola(t: Float64Array, x: Float64Array, first: number): (time: number) => number {
+  const middle = (t[first]! + t[first + BESIDE - 1]!) / 2;
+  const half = (t[first + BESIDE - 1]! - t[first]!) / 2 || 1;
+  const normal = [[0, 0, 0], [0, 0, 0], [0, 0, 0]];
+  const right = [0, 0, 0];
+  for (let i = first; i < first + BESIDE; i++) {
+    const s = (t[i]! - middle) / half;
+    const row = [1, s, s * s];
+    row.forEach((a, j) => {
+      right[j]! += a * x[i]!;
+      row.forEach((b, k) => (normal[j]![k]! += a * b));
+    });
+  }
+  const solved = solveSymmetric(normal, right);
+  const [a, b, c] = solved.status === 'solved' ? solved.x : [x[first]!, 0, 0];
+  return (time) => {
+    const s = (time - middle) / half;
+    return a! + s * (b! + s * c!);
+  };
+}
+
 /**
  * Isolated samples, or short runs of them, off the cubic through two neighbours on each side.
  *
@@ -94,7 +132,7 @@ export function spikeSpans(t: Float64Array, x: Float64Array): readonly Span[] {
     while (k + 1 < marked.length && marked[k + 1]! - marked[k]! <= 3) k += 1;
     const to = marked[k]!;
     // A run as long as that is no spike: noise of another size, or a step.
-    if (to - from <= LONGEST_SPIKE) spans.push({ from: t[from]!, to: t[to]! });
+    if (to - from <= LONGEST_SPIKE && !isKink(t, x, from, to, off)) spans.push({ from: t[from]!, to: t[to]! });
   }
   return spans;
 }

@@ -44,6 +44,16 @@ describe('spikes', () => {
     const white = t.map((time) => swing(time) + 0.05 * normal() + (time > 500 ? 10 * Math.max(0, Math.sin(5 * (time - 500))) : 0));
     for (const x of [coloured, white, white.map((value) => Math.round(value * 5) / 5)]) expect(spikeSpans(t, x)).toEqual([]);
   });
+
+  it.each([50, 200, 1000])('are not the bends that a strike makes, at %d samples a second', (rate) => {
+    const { normal } = draws(2);
+    const t = times(12 * rate, 1 / rate);
+    const x = t.map((time) => (time < 5 ? 0 : swing(time - 5)) + 0.01 * normal());
+    expect(spikeSpans(t, x)).toEqual([]);
+    const i = 8 * rate;
+    x[i]! += 2;
+    expect(maskOf(t, spikeSpans(t, x))[i]).toBe(0);
+  });
 });
 
 it('the least step of a record is that of its divisions', () => {

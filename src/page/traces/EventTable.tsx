@@ -35,7 +35,7 @@ export function EventTable({ told }: { readonly told: TraceTold }) {
               <th scope="row">{names.get(event.id)}</th>
               <td className="num">{event.timeU === null ? timeWords(event.time, spacing) : withPlusMinus(event.time, event.timeU, siUnit('time'))}</td>
               <td className="num">{event.jump === null ? '—' : withPlusMinus(event.jump.value, event.jump.u, unit)}</td>
-              <td className="num">{event.jump === null ? '—' : plain(event.stepInU, ONE, 2)}</td>
+              <td className="num">{event.jump === null ? '—' : event.timeU !== null ? 'in its time' : plain(event.stepInU, ONE, 2)}</td>
               <td className="num">{event.picked === null ? '—' : plain(event.picked, unit, 5)}</td>
               <td className="num">{offBy(event)}</td>
             </tr>
@@ -43,7 +43,7 @@ export function EventTable({ told }: { readonly told: TraceTold }) {
         </tbody>
       </SheetTable>
       <p className="quiet">
-        The throw is what a small swing from rest without damping would show; the impulse bit follows from it. The peak alone is the first maximum of what
+        A swing has no step of position; where the fit may move a strike’s time it is taken up by the time. The throw is what a small swing from rest without damping would show; the impulse bit follows from it. The peak alone is the first maximum of what
         the strike added to the swing before it, damping taken out: a few samples where the fit uses them all, so that noise and hum move it more; none is had where the next strike comes first.
         {events.length > SHOWN ? ` The first ${SHOWN} of ${events.length} stand here; all are in the per-shot table.` : ''}
       </p>
