@@ -1,6 +1,6 @@
 /** A sampled record cut into cells at its events: the linear problem that is solved exactly at each frequency and damping. */
 import { solveChain, type ChainSolved, type Link } from '../numeric/struckChain.ts';
-import { cellsOf, evenBlocks, motionColumns, motionOver, productIn, slopeColumns, squaresIn, swingSums, type Cell, type Column, type Oscillation, type SwingSamples } from './swingSums.ts';
+import { BLOCK, cellsOf, evenBlocks, motionColumns, motionOver, productIn, slopeColumns, squaresIn, swingSums, type Cell, type Column, type Oscillation, type SwingSamples } from './swingSums.ts';
 
 /** The record with its events: what stays the same whatever the frequency. */
 export class Struck {
@@ -8,6 +8,8 @@ export class Struck {
   readonly events: readonly number[];
   readonly cells: readonly Cell[];
   readonly even: Uint8Array;
+  /** Block of even spacing with which each cell begins. */
+  readonly firstBlock: Int32Array;
   readonly base: number;
   readonly exposure: number;
   /** Stretches between the finest knots. */
@@ -26,6 +28,8 @@ export class Struck {
     const [from, span] = [t[0]!, t[t.length - 1]! - t[0]!];
     this.cells = cellsOf(samples, events, Array.from({ length: finest + 1 }, (_, j) => from + (span * j) / finest));
     this.even = evenBlocks(samples, this.cells);
+    this.firstBlock = new Int32Array(this.cells.length + 1);
+    this.cells.forEach(({ from: first, to }, c) => (this.firstBlock[c + 1] = this.firstBlock[c]! + Math.ceil((to - first) / BLOCK)));
     let [count, sum] = [0, 0];
     for (let i = 0; i < x.length; i++) if (!use || use[i] !== 0) {
       count += 1;

@@ -3,7 +3,7 @@ import type { ChainCovariances, JointValue } from '../numeric/struckChain.ts';
 import { freeSteps, type Place, type Struck } from './struck.ts';
 import type { SwingFitResult } from './swingFit.ts';
 import type { SwingModel } from './swingModel.ts';
-import { exposureFactor, firstAtOrAfter, motionOver, slopeColumns, type Cell, type Column, type Oscillation } from './swingSums.ts';
+import { BLOCK, blockMotion, firstAtOrAfter, motionOver, slopeColumns, type Cell, type Column, type Oscillation } from './swingSums.ts';
 
 /** Jumps further apart in order than this share noise through the rest line alone, which is little. */
 const NEIGHBOURS = 40;
@@ -37,13 +37,19 @@ export function described(struck: Struck, place: Place, stretches: number, times
   const model = modelOf(struck, place, stretches);
   const { residuals, sumOfSquares } = residualsOf(struck, place, stretches);
   const dof = struck.count - many - 2 - (stretches + 1) - 2;
-  const steps = freeSteps(struck, place, stretches);
+  let stepsInU: readonly number[] | null = null;
   return {
     ...o, status: 'fitted', times, timeU, jumps, covariance: [ww, wz, zz], byFrequency: by.map(([w]) => w), byRatio: by.map(([, z]) => z), neighbours,
     noiseCovariance: (i, j) => rows[Math.max(i, j)]![Math.abs(i - j)] ?? 0,
     weightsOf: (k) => weightsAt(struck, place, stretches, covariances, values[k]!, k),
     model, residuals, sumOfSquares, dof, noise: Math.sqrt(sumOfSquares / Math.max(1, dof)),
-    stepsInU: struck.events.map((_, k) => (steps && steps.noise > 0 && steps.u[k]! > 0 ? steps.step[k]! / (steps.noise * steps.u[k]!) : 0)),
+    // A solution of its own, made when it is asked for.
+    get stepsInU() {
+      if (stepsInU) return stepsInU;
+      const steps = freeSteps(struck, place, stretches);
+      stepsInU = struck.events.map((_, k) => (steps && steps.noise > 0 && steps.u[k]! > 0 ? steps.step[k]! / (steps.noise * steps.u[k]!) : 0));
+      return stepsInU;
+    },
   };
 }
 
@@ -59,20 +65,21 @@ function modelOf(struck: Struck, { o, solved }: Place, stretches: number): Swing
 
 /** Calls back with every sample in use: C and D of its stretch, as seen over the exposure, and the hats of the rest line. */
 function eachSample(struck: Struck, o: Oscillation, stretches: number, cells: readonly [number, number], take: (i: number, cell: Cell, c: number, d: number, knot: number, first: number, second: number) => void): void {
-  const root = Math.sqrt(1 - o.ratio * o.ratio);
-  const [fall, turn] = [-o.ratio * o.frequency, o.frequency * root];
-  const [kr, ki] = exposureFactor(fall, turn, struck.exposure);
   const { t, use } = struck.samples;
+  const motion = blockMotion(t, o, struck.exposure);
+  let block = struck.firstBlock[cells[0]]!;
   for (let k = cells[0]; k < cells[1]; k++) {
     const cell = struck.cells[k]!;
     const { at, first, second } = struck.hats(cell, stretches);
-    for (let i = cell.from; i < cell.to; i++) {
-      if (use && use[i] === 0) continue;
-      const s = t[i]! - cell.begins;
-      const e = Math.exp(fall * s);
-      const [p, q] = [e * Math.cos(turn * s), e * Math.sin(turn * s)];
-      const u = (t[i]! - cell.knotTime) / cell.knotStep;
-      take(i, cell, kr * p - ki * q, kr * q + ki * p, at, first[4] + first[5] * u, second[4] + second[5] * u);
+    for (let from = cell.from; from < cell.to; from += BLOCK) {
+      motion.begin(from, Math.min(from + BLOCK, cell.to), cell.begins, struck.even[block++] === 1);
+      for (let i = from; i < motion.end; i++) {
+        motion.at(i);
+        if (!use || use[i] !== 0) {
+          const u = (t[i]! - cell.knotTime) / cell.knotStep;
+          take(i, cell, motion.c, motion.d, at, first[4] + first[5] * u, second[4] + second[5] * u);
+        }
+      }
     }
   }
 }

@@ -33,7 +33,7 @@ export interface Cell {
 export const SUMS = 27;
 
 /** The recurrence for evenly spaced samples begins anew after so many. */
-const BLOCK = 256;
+export const BLOCK = 256;
 /** Spacings that differ by less than this part of themselves are even. */
 const EVEN = 1e-6;
 
@@ -140,6 +140,38 @@ export function swingSums({ t, x, use }: SwingSamples, cells: readonly Cell[], e
     sums.set([cc, cd, dd, scc, scd, sdd, sscc, sscd, ssdd, c1, d1, sc1, sd1, cu, du, scu, sdu, cx, dx, scx, sdx, n, su, suu, sx, sux, sxx], k * SUMS);
   }
   return sums;
+}
+
+/** C and D of sample after sample of a block, by recurrence where it is even. */
+export function blockMotion(t: Float64Array, { frequency: w, ratio: z }: Oscillation, exposure: number) {
+  const root = Math.sqrt(1 - z * z);
+  const [fall, turn] = [-z * w, w * root];
+  const [kr, ki] = exposureFactor(fall, turn, exposure);
+  let [from, begins, isEven, rc, rd] = [0, 0, false, 1, 0];
+  const motion = {
+    c: 0, d: 0, end: 0,
+    begin(first: number, end: number, stretchBegins: number, even: boolean): void {
+      [from, begins, isEven, motion.end] = [first, stretchBegins, even, end];
+      const step = even && end - first > 1 ? (t[end - 1]! - t[first]!) / (end - first - 1) : 0;
+      const e = Math.exp(fall * step);
+      [rc, rd] = [e * Math.cos(turn * step), e * Math.sin(turn * step)];
+    },
+    /** To be called for each sample of the block, in order. */
+    at(i: number): void {
+      if (isEven && i > from) {
+        const next = rc * motion.c - rd * motion.d;
+        motion.d = rc * motion.d + rd * motion.c;
+        motion.c = next;
+        return;
+      }
+      const s = t[i]! - begins;
+      const e = Math.exp(fall * s);
+      const [p, q] = [e * Math.cos(turn * s), e * Math.sin(turn * s)];
+      motion.c = kr * p - ki * q;
+      motion.d = kr * q + ki * p;
+    },
+  };
+  return motion;
 }
 
 /** sinh(λt/2)/(λt/2) for λ = fall + i turn; 1 without exposure. */
