@@ -3,18 +3,14 @@ import Papa from 'papaparse';
 import { readTable } from '../../src/readings/table.ts';
 import { reduce } from '../../src/reduction/reduce.ts';
 import { demoSession } from '../../src/session/demo.ts';
-import type { Session } from '../../src/session/session.ts';
-
-export interface Case {
-  readonly name: string;
-  /** Does the work once, and answers with a number that depends on all of it and is the same each time. */
-  readonly run: () => number;
-}
-
-export interface Group {
-  readonly title: string;
-  readonly cases: Case[];
-}
+import type { Session, Sheet } from '../../src/session/session.ts';
+import { browserGroup } from './browser.ts';
+import { fits } from './fits.ts';
+import { manyShots } from './manyShots.ts';
+import { pictures } from './pictures.ts';
+import { longRecord, sampledFiles } from './sampledFiles.ts';
+import { QUICK, timed } from './timing.ts';
+import type { Group } from './timing.ts';
 
 const ROWS = 10_000;
 
@@ -29,48 +25,50 @@ function handTable(rows: number): string {
   return `${lines.join('\n')}\n`;
 }
 
-const table = handTable(ROWS);
-
-const parsing: Group = {
-  title: `A table of ${ROWS} rows`,
-  cases: [
-    {
-      name: 'PapaParse alone',
-      run: () => Papa.parse<string[]>(table, { delimiter: ',', skipEmptyLines: true }).data.length,
-    },
-    { name: 'readTable', run: () => readTable(table).rows.length },
-  ],
-};
+function demoSheet({ sheets: [sheet] }: Session): Sheet {
+  if (sheet === undefined) throw new Error('bench: the demo has no sheet');
+  return sheet;
+}
 
 /** The demo's bench with a table of its own. */
 function benchWith(text: string): Session {
   const demo = demoSession();
-  const sheet = demo.sheets[0];
-  if (sheet === undefined) throw new Error('bench: the demo has no sheet');
   const columns = (['label', 'kind', 'rest', 'firstSwing', 'voltage'] as const).map((role) => ({ role, unit: role === 'voltage' ? 'V' : role === 'rest' || role === 'firstSwing' ? 'mm' : '', by: 'person' as const }));
-  return { ...demo, marks: {}, choices: { ...demo.choices, calibration: 'geometry' }, sheets: [{ ...sheet, text, columns }] };
+  return { ...demo, marks: {}, choices: { ...demo.choices, calibration: 'geometry' }, sheets: [{ ...demoSheet(demo), text, columns }] };
 }
-
-const whole = benchWith(table);
-parsing.cases.push({ name: 'parse and reduce to the run mean', run: () => reduce(whole, null).run?.n ?? 0 });
 
 /** The demo's run, repeated: shots with three turning points each, taps, zeros. */
 function demoRepeated(times: number): Session {
   const demo = demoSession();
-  const sheet = demo.sheets[0];
-  if (sheet === undefined) throw new Error('bench: the demo has no sheet');
+  const sheet = demoSheet(demo);
   const [head = '', ...rows] = sheet.text.trim().split('\n');
   return { ...demo, marks: {}, sheets: [{ ...sheet, text: [head, ...Array.from({ length: times }, () => rows).flat()].join('\n') }] };
 }
 
-const few = demoRepeated(9);
-const many = demoRepeated(42);
-const reducing: Group = {
-  title: 'The whole road on the demo’s bench, 24 shots and 10 taps a round, three turning points each',
-  cases: [
-    { name: '216 shots', run: () => reduce(few, 'demo/20').run?.n ?? 0 },
-    { name: '1,008 shots', run: () => reduce(many, 'demo/20').run?.n ?? 0 },
-  ],
+const parsing: Group = {
+  name: 'table',
+  title: `A table of ${ROWS} rows`,
+  report: timed(() => {
+    const text = handTable(ROWS);
+    const whole = benchWith(text);
+    return [
+      { name: 'PapaParse alone', run: () => Papa.parse<string[]>(text, { delimiter: ',', skipEmptyLines: true }).data.length },
+      { name: 'readTable', run: () => readTable(text).rows.length },
+      { name: 'parse and reduce to the run mean', run: () => reduce(whole, null).run?.n ?? 0 },
+    ];
+  }, QUICK),
 };
 
-export const groups: readonly Group[] = [parsing, reducing];
+const reducing: Group = {
+  name: 'road',
+  title: 'The whole road on the demo’s bench, 24 shots and 10 taps a round, three turning points each',
+  report: timed(() => {
+    const [few, many] = [demoRepeated(9), demoRepeated(42)];
+    return [
+      { name: '216 shots', run: () => reduce(few, 'demo/20').run?.n ?? 0 },
+      { name: '1,008 shots', run: () => reduce(many, 'demo/20').run?.n ?? 0 },
+    ];
+  }, QUICK),
+};
+
+export const groups: readonly Group[] = [parsing, reducing, sampledFiles, longRecord, fits, manyShots, pictures, browserGroup];
