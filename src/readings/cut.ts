@@ -1,4 +1,4 @@
-/** Text to rows of cells with the line each row starts on; the only PapaParse in the project. */
+/** Text to rows of cells with the line each row starts on. */
 import Papa from 'papaparse';
 
 export type Delimiter = ',' | ';' | '\t';

@@ -304,8 +304,8 @@ async function report(here: Here): Promise<readonly string[]> {
   let program: Awaited<ReturnType<typeof findBrowser>>;
   try {
     program = await findBrowser();
-  } catch {
-    return ['No browser here.'];
+  } catch (reason) {
+    return [`No browser here. ${reason instanceof Error ? reason.message : String(reason)}`];
   }
   const browser = await chromium.launch({ executablePath: program.executablePath, env: { ...env, ...program.env } });
   try {
