@@ -7,6 +7,7 @@ import { maskOf } from '../traces/faults.ts';
 import { whiteFactor } from '../traces/fittedAway.ts';
 import { findJumps } from '../traces/findShots.ts';
 import { noiseCorrelation, varianceFactor, type NoiseCorrelation } from '../traces/noiseColour.ts';
+import { noFireJumps, type NoFire } from '../traces/noFire.ts';
 import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
 import { likelyFrequencies } from '../traces/swingStart.ts';
 import { firstAtOrAfter, type Oscillation, type SwingSamples } from '../traces/swingSums.ts';
@@ -27,6 +28,8 @@ export interface TraceFit {
   /** By how much the residuals' correlation widens the variance of each jump, and of frequency and damping. */
   readonly factors: readonly number[];
   readonly factorOfSwing: number;
+  /** What the same fit makes of the record where nothing was fired. */
+  readonly noFire: NoFire | null;
 }
 
 export interface TraceFitted {
@@ -103,7 +106,13 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
   if (fit.covariance[0] === 0) problems.push(problem('trace-swing-from-bench', 'note', place, {}));
   const moved = fit.times.map((time, k) => Math.abs(time - events[k]!.time)).filter((by, k) => fit.timeU[k] !== null && by > 0);
   if (moved.length > 0 && trace.eventsFrom !== 'found') problems.push(problem('trace-times-moved', 'note', place, { times: moved.length, most: Math.max(...moved) }));
-  return { ...told, problems, found: { samples: bare, ...told, fit, ...factorsOf(fit, bare) } };
+  const noFire = noFireJumps(bare, { frequency: fit.frequency, ratio: fit.ratio }, between(t, fit.times, read.blank), read.exposure);
+  return { ...told, problems, found: { samples: bare, ...told, fit, ...factorsOf(fit, bare), noFire } };
+}
+
+/** The stretches between the events. */
+function between(t: Float64Array, times: readonly number[], blank: number): readonly { readonly from: number; readonly to: number }[] {
+  return [t[0]!, ...times].map((from, k) => ({ from: k === 0 ? from : from + blank, to: times[k] ?? t[t.length - 1]! }));
 }
 
 /** The found jumps that stand clear of the noise when all are solved together; what does not, a gap or a sway made. */

@@ -185,7 +185,10 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
     return fit.noise * Math.sqrt(Math.max(0, factors[k]! * fit.noiseCovariance(k, k) + found.factorOfSwing * (p * p * ww + 2 * p * q * wz + q * q * zz)));
   };
   const byNoise = fit.jumps.map((_, k) => fit.noise * Math.sqrt(factors[k]! * fit.noiseCovariance(k, k)));
-  const least = byNoise.length === 0 ? null : Math.min(...byNoise);
+  const { noFire } = found;
+  const least = byNoise.length === 0 ? (noFire?.sd ?? null) : Math.min(...byNoise);
+  const impulseOf = (jump: number): number | null => impulseOfThrow && impulseOfThrow(jump, read.inVolts);
+  const usual = [...byNoise].sort((a, b) => a - b)[byNoise.length >> 1];
   if (!SPECTRA.has(found)) SPECTRA.set(found, residualSpectrum(fit.residuals, bare.spacing));
   const spectrum = SPECTRA.get(found)!;
   return {
@@ -197,7 +200,8 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
     fitted: {
       period: { value: (2 * Math.PI) / (factor * frequency.value), u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
       noise: fit.noise, colour: found.factorOfSwing, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
-      least, noiseEquivalent: least === null || !impulseOfThrow ? null : impulseOfThrow(least, read.inVolts),
+      least, noiseEquivalent: least === null ? null : impulseOf(least),
+      noFire: noFire && { jumps: noFire.jumps.length, sd: noFire.sd, impulse: impulseOf(noFire.sd), overFit: usual === undefined || usual === 0 ? null : noFire.sd / usual },
     },
   };
 }

@@ -205,7 +205,21 @@ describe('what is wrong with a trace is said, and the rest goes on', () => {
     bits(spiked).forEach((bit, k) => expect(Math.abs(bit / SHOTS[k]! - 1)).toBeLessThan(0.01));
   });
 
-  it('a record without a shot gives no impulse bit', () => {
+  it('a record without a shot gives no impulse bit, but the scatter of jumps that are none, as shots in the same noise would have it', () => {
+    const quiet = reduced(bench(trace({ jumps: [0, 0, 0, 0], noise: 20 }), ''));
+    const fired = reduced(bench(trace({ noise: 20 }), list));
+    expect(quiet.records).toEqual([]);
+    const { noFire, noiseEquivalent } = quiet.traces[0]!.fitted!;
+    expect(noFire!.jumps).toBeGreaterThan(10);
+    expect(noiseEquivalent).toBe(noFire!.impulse);
+    const own = Math.sqrt(fired.records[1]!.impulseBit!.u ** 2 - (0.005 * fired.records[1]!.impulseBit!.value) ** 2);
+    expect(noFire!.impulse! / own).toBeGreaterThan(0.6);
+    expect(noFire!.impulse! / own).toBeLessThan(1.6);
+    expect(fired.traces[0]!.fitted!.noFire!.overFit).toBeGreaterThan(0.6);
+    expect(fired.traces[0]!.fitted!.noFire!.overFit).toBeLessThan(1.6);
+  });
+
+  it('a record without a shot and without noise gives nothing', () => {
     const r = reduced(bench(trace({ jumps: [0, 0, 0, 0] }), ''));
     expect(r.records).toEqual([]);
     expect(r.run).toBeNull();

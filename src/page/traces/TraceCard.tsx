@@ -34,7 +34,7 @@ const DIGEST_SHOWN = 12;
 function fitSentence(told: TraceTold): string {
   const { fitted, dimension } = told;
   if (!fitted) return 'No swing has been fitted yet.';
-  const { period, ratio, noise, colour, least, noiseEquivalent } = fitted;
+  const { period, ratio, noise, colour, least, noiseEquivalent, noFire } = fitted;
   const second = chooseUnit([period.value], 'time');
   const reading = chooseUnit([noise], dimension);
   const parts = [
@@ -47,8 +47,22 @@ function fitSentence(told: TraceTold): string {
   return [
     `${parts.join('; ')}.`,
     ...(least === null ? [] : [`A throw is known to ${plain(least, throwUnit, 2)} by the noise alone${noiseEquivalent === null ? '' : `: a noise-equivalent impulse bit of ${plain(noiseEquivalent, impulse, 2)} for this record in this band`}.`]),
+    ...(noFire === null ? [] : [noFireSentence(noFire, dimension, told.events.length === 0)]),
     ...(hums.length === 0 ? [] : [`Out of the residuals stand ${hums.join(', ')}.`]),
   ].join(' ');
+}
+
+/** Decision and detection limit in standard deviations of what no shot gives, one-sided, 5 % each way. Source: Currie, Anal. Chem. 40 (1968) 586, from memory. */
+const [DECISION, DETECTION] = [1.645, 3.29];
+/** Scatter that differs from the fit's noise by no more than this agrees with it. */
+const ALIKE = 1.5;
+
+/** What the same fit finds where nothing was fired. */
+function noFireSentence({ jumps, sd, impulse, overFit }: NonNullable<NonNullable<TraceTold['fitted']>['noFire']>, dimension: TraceTold['dimension'], isBlank: boolean): string {
+  const words = (times: number): string => (impulse === null ? plain(times * sd, chooseUnit([sd], dimension), 2) : plain(times * impulse, chooseUnit([impulse], 'impulse'), 2));
+  const begin = `Where nothing was fired the same fit finds ${counted(jumps, 'jump')} that scatter by ${words(1)}`;
+  const fits = overFit === null ? '' : overFit < ALIKE && overFit > 1 / ALIKE ? ', as the noise of the shots has it' : `, ${plain(overFit, chooseUnit([1], 'number'), 2)} times what the noise of the shots has: ${overFit > 1 ? 'look for a sway, a knock or a drift between them' : 'the shots stand in a noisier part'}`;
+  return isBlank ? `No shot is in it, so it gives its limits alone. ${begin}: decision limit ${words(DECISION)}, detection limit ${words(DETECTION)} (5 % each way).` : `${begin}${fits}; detection limit ${words(DETECTION)}.`;
 }
 
 function sizeSentence({ rows, from, to, spacing }: TraceTold): string {
