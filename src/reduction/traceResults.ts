@@ -47,7 +47,7 @@ export interface TraceFitted {
   /** u of a jump by noise alone, as a throw in the unit of the reading, and the impulse that it stands for, N·s (null without a calibration). */
   readonly least: number | null;
   readonly noiseEquivalent: number | null;
-  /** Scatter of the jumps that the same fit finds where nothing was fired: how many, its sd as a throw and as an impulse, N·s (null without a calibration), and over what the fit says of the noise at a shot (null without one). */
+  /** Scatter of the jumps that the same fit finds where nothing was fired: how many, its sd as a throw and as an impulse, N·s (null without a calibration), and over what the fit says of the noise there (null without noise). */
   readonly noFire: { readonly jumps: number; readonly sd: number; readonly impulse: number | null; readonly overFit: number | null } | null;
 }
 

@@ -188,7 +188,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
   const { noFire } = found;
   const least = byNoise.length === 0 ? (noFire?.sd ?? null) : Math.min(...byNoise);
   const impulseOf = (jump: number): number | null => impulseOfThrow && impulseOfThrow(jump, read.inVolts);
-  const usual = [...byNoise].sort((a, b) => a - b)[byNoise.length >> 1];
+  const byFit = fit.noise * Math.sqrt(found.factorOfSwing);
   if (!SPECTRA.has(found)) SPECTRA.set(found, residualSpectrum(fit.residuals, bare.spacing));
   const spectrum = SPECTRA.get(found)!;
   return {
@@ -201,7 +201,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
       period: { value: (2 * Math.PI) / (factor * frequency.value), u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
       noise: fit.noise, colour: found.factorOfSwing, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
       least, noiseEquivalent: least === null ? null : impulseOf(least),
-      noFire: noFire && { jumps: noFire.jumps.length, sd: noFire.sd, impulse: impulseOf(noFire.sd), overFit: usual === undefined || usual === 0 ? null : noFire.sd / usual },
+      noFire: noFire && { jumps: noFire.jumps.length, sd: noFire.sd, impulse: impulseOf(noFire.sd), overFit: byFit === 0 ? null : Math.sqrt(noFire.jumps.reduce((sum, jump, k) => sum + (jump / (byFit * noFire.units[k]!)) ** 2, 0) / noFire.jumps.length) },
     },
   };
 }

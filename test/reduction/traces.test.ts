@@ -210,13 +210,14 @@ describe('what is wrong with a trace is said, and the rest goes on', () => {
     const fired = reduced(bench(trace({ noise: 20 }), list));
     expect(quiet.records).toEqual([]);
     const { noFire, noiseEquivalent } = quiet.traces[0]!.fitted!;
-    expect(noFire!.jumps).toBeGreaterThan(10);
+    expect(noFire!.jumps).toBeGreaterThan(5);
     expect(noiseEquivalent).toBe(noFire!.impulse);
     const own = Math.sqrt(fired.records[1]!.impulseBit!.u ** 2 - (0.005 * fired.records[1]!.impulseBit!.value) ** 2);
-    expect(noFire!.impulse! / own).toBeGreaterThan(0.6);
-    expect(noFire!.impulse! / own).toBeLessThan(1.6);
-    expect(fired.traces[0]!.fitted!.noFire!.overFit).toBeGreaterThan(0.6);
-    expect(fired.traces[0]!.fitted!.noFire!.overFit).toBeLessThan(1.6);
+    // Eight jumps know their scatter to 25 %.
+    expect(noFire!.impulse! / own).toBeGreaterThan(0.4);
+    expect(noFire!.impulse! / own).toBeLessThan(1.9);
+    expect(fired.traces[0]!.fitted!.noFire!.overFit).toBeGreaterThan(0.4);
+    expect(fired.traces[0]!.fitted!.noFire!.overFit).toBeLessThan(1.9);
   });
 
   it('a record without a shot and without noise gives nothing', () => {

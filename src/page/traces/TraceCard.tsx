@@ -61,7 +61,7 @@ const ALIKE = 1.5;
 function noFireSentence({ jumps, sd, impulse, overFit }: NonNullable<NonNullable<TraceTold['fitted']>['noFire']>, dimension: TraceTold['dimension'], isBlank: boolean): string {
   const words = (times: number): string => (impulse === null ? plain(times * sd, chooseUnit([sd], dimension), 2) : plain(times * impulse, chooseUnit([impulse], 'impulse'), 2));
   const begin = `Where nothing was fired the same fit finds ${counted(jumps, 'jump')} that scatter by ${words(1)}`;
-  const fits = overFit === null ? '' : overFit < ALIKE && overFit > 1 / ALIKE ? ', as the noise of the shots has it' : `, ${plain(overFit, chooseUnit([1], 'number'), 2)} times what the noise of the shots has: ${overFit > 1 ? 'look for a sway, a knock or a drift between them' : 'the shots stand in a noisier part'}`;
+  const fits = overFit === null ? '' : overFit < ALIKE && overFit > 1 / ALIKE ? ', as its noise has it' : `, ${plain(overFit, chooseUnit([1], 'number'), 2)} times what its noise has: ${overFit > 1 ? 'look for a sway, a knock or a drift between the shots' : 'it is noisier about the shots'}`;
   return isBlank ? `No shot is in it, so it gives its limits alone. ${begin}: decision limit ${words(DECISION)}, detection limit ${words(DETECTION)} (5 % each way).` : `${begin}${fits}; detection limit ${words(DETECTION)}.`;
 }
 
