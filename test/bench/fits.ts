@@ -85,7 +85,7 @@ async function report(here: Here): Promise<readonly string[]> {
   const rows = all.map(([name, seconds]) => [name, (seconds / all[0]![1]).toFixed(4), (1e6 * seconds).toFixed(0)]);
   return [
     ...table(['case', 'ratio', 'median µs'], other === null ? [['no scipy here', '—', '—'], ...rows] : rows), '',
-    ...(other === null ? [] : [agreement(record, other)]), `Medians of ${RUNS} fits of scipy, of ${2 * RUNS} of ours.`,
+    ...(other === null ? [] : [agreement(record, other)]), `Medians of ${other === null ? '' : `${RUNS} fits of scipy, of `}${2 * RUNS} fits of ours.`,
   ];
 }
 
