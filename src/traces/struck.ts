@@ -2,16 +2,21 @@
 import { solveChain, type ChainSolved, type Link } from '../numeric/struckChain.ts';
 import { BLOCK, cellsOf, evenBlocks, motionColumns, motionOver, productIn, slopeColumns, squaresIn, swingSums, type Cell, type Column, type Oscillation, type SwingSamples } from './swingSums.ts';
 
+const NO_TIMES: ReadonlySet<number> = new Set();
+
 /** The record with its events: what stays the same whatever the frequency. */
 export class Struck {
   readonly samples: SwingSamples;
   readonly events: readonly number[];
+  /** Whether the swing begins anew at an event, position and all. */
+  readonly isAnew: readonly boolean[];
   readonly cells: readonly Cell[];
   readonly even: Uint8Array;
   /** Block of even spacing with which each cell begins. */
   readonly firstBlock: Int32Array;
   readonly base: number;
   readonly exposure: number;
+  readonly anew: ReadonlySet<number>;
   /** Stretches between the finest knots. */
   readonly finest: number;
   readonly count: number;
@@ -19,9 +24,11 @@ export class Struck {
   /** Σ (x − x̄)² of the samples in use. */
   readonly deviations: number;
 
-  constructor(samples: SwingSamples, events: readonly number[], exposure: number, finest: number) {
+  constructor(samples: SwingSamples, events: readonly number[], exposure: number, finest: number, anew: ReadonlySet<number> = NO_TIMES) {
     this.samples = samples;
     this.events = events;
+    this.anew = anew;
+    this.isAnew = events.map((time) => anew.has(time));
     this.exposure = exposure;
     this.finest = finest;
     const { t, x, use } = samples;
@@ -68,7 +75,7 @@ export class Struck {
 
   links(o: Oscillation, free: Free, slopes: Slopes | null, shared: number): readonly (Link | null)[] {
     return this.events.map((_, k): Link | null => {
-      if (free(k)) return null;
+      if (free(k) || this.isAnew[k]) return null;
       const m = motionOver(this.begins(k + 1) - this.begins(k), o);
       if (!slopes) return { a: m.pp, b: m.pv, drive: [] };
       const [byFrequency, byRatio] = m.slopes(slopes.positions[k]!, slopes.velocities[k]!).position;

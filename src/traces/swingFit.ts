@@ -19,6 +19,8 @@ export interface SwingOptions {
   readonly stretches?: number;
   /** Event times may be moved so far, s; 0: not at all. */
   readonly refineWithin?: number;
+  /** Times at which the swing begins anew, position and all: after a stretch in which it was pushed. */
+  readonly anew?: readonly number[];
 }
 
 export interface SwingFit extends Oscillation {
