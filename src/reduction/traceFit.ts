@@ -6,6 +6,7 @@ import { clockOffset } from '../traces/clockOffset.ts';
 import { maskOf } from '../traces/faults.ts';
 import { whiteFactor } from '../traces/fittedAway.ts';
 import { findJumps } from '../traces/findShots.ts';
+import { binned, everyFor } from '../traces/binned.ts';
 import { noiseCorrelation, varianceFactor, type NoiseCorrelation } from '../traces/noiseColour.ts';
 import { noFireJumps, type NoFire } from '../traces/noFire.ts';
 import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
@@ -20,7 +21,9 @@ export interface TimedEvent extends TraceEvent {
 }
 
 export interface TraceFit {
+  /** As the record has them, and the means of some that the fit is made of in a long one. */
   readonly samples: SwingSamples;
+  readonly every: number;
   readonly events: readonly TimedEvent[];
   readonly stretches: readonly Stretch[];
   readonly offset: TraceTold['offset'];
@@ -95,7 +98,9 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
   }
   const listed = apart(inside, bare, place, problems);
   const stretches = [...read.stretches, ...blanks].sort((a, b) => a.from - b.from);
-  const { events, fit } = trace.eventsFrom === 'found' ? clearJumps(listed, bare, read, expected) : { events: listed, fit: fitWithBench(bare, listed.map(({ time }) => time), read, false, expected) };
+  const { few, every, exposure } = meansOf(bare, read.exposure, expected);
+  const asked: Asked = { exposure, refine: read.refine };
+  const { events, fit } = trace.eventsFrom === 'found' ? clearJumps(listed, few, asked, expected) : { events: listed, fit: fitWithBench(few, listed.map(({ time }) => time), asked, false, expected) };
   const told = { stretches, events, offset: timed.offset };
   if (trace.eventsFrom === 'found') problems.push(problem('trace-jumps-found', 'note', place, { jumps: events.length }));
   if (fit.status !== 'fitted') {
@@ -106,8 +111,23 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
   if (fit.covariance[0] === 0) problems.push(problem('trace-swing-from-bench', 'note', place, {}));
   const moved = fit.times.map((time, k) => Math.abs(time - events[k]!.time)).filter((by, k) => fit.timeU[k] !== null && by > 0);
   if (moved.length > 0 && trace.eventsFrom !== 'found') problems.push(problem('trace-times-moved', 'note', place, { times: moved.length, most: Math.max(...moved) }));
-  const noFire = noFireJumps(bare, { frequency: fit.frequency, ratio: fit.ratio }, between(t, fit.times, read.blank), read.exposure);
-  return { ...told, problems, found: { samples: bare, ...told, fit, ...factorsOf(fit, bare), noFire } };
+  const noFire = noFireJumps(few, { frequency: fit.frequency, ratio: fit.ratio }, between(t, fit.times, read.blank), exposure);
+  return { ...told, problems, found: { samples: bare, every, ...told, fit, ...factorsOf(fit, few), noFire } };
+}
+
+/** What a fit is asked for beside the samples: the time that each averages over, and how far times may be moved; s. */
+interface Asked {
+  readonly exposure: number;
+  readonly refine: number;
+}
+
+/** The record as the fit takes it: a long one by means of some samples, as many as the swing that is expected, or stands out, allows. */
+function meansOf(samples: SwingSamples, exposure: number, expected: Expected): { readonly few: SwingSamples; readonly every: number; readonly exposure: number } {
+  const fastest = FAR * (expected?.frequency ?? likelyFrequencies(samples, 1)[0] ?? Infinity);
+  const every = everyFor(samples, fastest);
+  if (every === 1) return { few: samples, every, exposure };
+  const made = binned(samples, every);
+  return { few: made.samples, every, exposure: Math.hypot(exposure, made.blur) };
 }
 
 /** The stretches between the events. */
@@ -116,10 +136,10 @@ function between(t: Float64Array, times: readonly number[], blank: number): read
 }
 
 /** The found jumps that stand clear of the noise when all are solved together; what does not, a gap or a sway made. */
-function clearJumps(found: readonly TimedEvent[], samples: SwingSamples, read: TraceRead, expected: Expected): { readonly events: readonly TimedEvent[]; readonly fit: SwingFitResult } {
+function clearJumps(found: readonly TimedEvent[], samples: SwingSamples, asked: Asked, expected: Expected): { readonly events: readonly TimedEvent[]; readonly fit: SwingFitResult } {
   let events = found;
   for (;;) {
-    const fit = fitWithBench(samples, events.map(({ time }) => time), read, true, expected);
+    const fit = fitWithBench(samples, events.map(({ time }) => time), asked, true, expected);
     if (fit.status !== 'fitted') return { events, fit };
     const { factors } = factorsOf(fit, samples);
     const clear = events.filter((_, k) => Math.abs(fit.jumps[k]!) > CLEAR * fit.noise * Math.sqrt(factors[k]! * fit.noiseCovariance(k, k)));
@@ -129,11 +149,10 @@ function clearJumps(found: readonly TimedEvent[], samples: SwingSamples, read: T
 }
 
 /** Fitted by itself; where it shows no swing, or one far from the bench's, with what the bench says. */
-function fitWithBench(samples: SwingSamples, times: readonly number[], read: TraceRead, found: boolean, expected: Expected): SwingFitResult {
-  const { exposure } = read;
-  const options = { exposure, refineWithin: read.refine };
+function fitWithBench(samples: SwingSamples, times: readonly number[], { exposure, refine }: Asked, found: boolean, expected: Expected): SwingFitResult {
+  const options = { exposure, refineWithin: refine };
   const own = fitSwing(samples, times, options);
-  const settled = own.status === 'fitted' && found && read.refine === 0 ? fitSwing(samples, times, { exposure, start: { frequency: own.frequency, ratio: own.ratio }, refineWithin: (TOLERANCE * 2 * Math.PI) / own.frequency }) : own;
+  const settled = own.status === 'fitted' && found && refine === 0 ? fitSwing(samples, times, { exposure, start: { frequency: own.frequency, ratio: own.ratio }, refineWithin: (TOLERANCE * 2 * Math.PI) / own.frequency }) : own;
   if (!expected || (settled.status === 'fitted' && !isFar(settled.frequency, expected))) return settled;
   const near = fitSwing(samples, times, { ...options, near: expected.frequency });
   if (near.status === 'fitted') return near;
@@ -167,7 +186,8 @@ function timedEvents(trace: Trace, read: TraceRead, samples: SwingSamples, expec
 const periodOf = (samples: SwingSamples, expected: Expected): number => (2 * Math.PI) / (expected?.frequency ?? likelyFrequencies(samples, 1)[0] ?? Infinity);
 
 /** Times of the jumps of a swing that nobody listed: found roughly, then with the frequency and damping that they tell. */
-function jumpsOf(samples: SwingSamples, expected: Expected): readonly number[] {
+function jumpsOf(all: SwingSamples, expected: Expected): readonly number[] {
+  const { few: samples, exposure } = meansOf(all, 0, expected);
   let swing: Oscillation | null = expected;
   if (!swing) {
     const [frequency] = likelyFrequencies(samples, 1);
@@ -177,7 +197,7 @@ function jumpsOf(samples: SwingSamples, expected: Expected): readonly number[] {
   let times: readonly number[] = [];
   for (let round = 0; round < FINDING_ROUNDS; round++) {
     times = findJumps(samples, swing).map(({ time }) => time);
-    const fit = fitSwing(samples, times);
+    const fit = fitSwing(samples, times, { exposure });
     if (fit.status !== 'fitted' || isFar(fit.frequency, expected)) break;
     swing = { frequency: fit.frequency, ratio: Math.max(0, fit.ratio) };
   }

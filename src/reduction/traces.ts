@@ -8,7 +8,7 @@ import { WAYS } from '../readings/ways.ts';
 import type { Choices, Session, Trace } from '../session/session.ts';
 import { pickedThrow } from '../traces/pickPeak.ts';
 import { residualSpectrum, type ResidualSpectrum } from '../traces/residualSpectrum.ts';
-import { restAt } from '../traces/swingModel.ts';
+import { restAt, swingOver } from '../traces/swingModel.ts';
 import { readQuantity } from '../units/quantity.ts';
 import type { Dimension } from '../units/units.ts';
 import { readingDimension, type BenchRead } from './entries.ts';
@@ -151,7 +151,27 @@ export function angleOfThrow(jump: number, inVolts: boolean, scale: Scale, bench
 /** With taps alone in it a trace shows the pendulum as it was tapped. */
 export const configurationOf = ({ events }: Pick<TraceFit, 'events'>): ConfigurationName => (events.length > 0 && events.every(({ kind }) => kind === 'tap') ? 'taps' : 'shots');
 
-const SPECTRA = new WeakMap<TraceFit, ResidualSpectrum | null>();
+const LEFT = new WeakMap<TraceFit, { readonly spectrum: ResidualSpectrum | null; readonly noise: number }>();
+
+/** What the fit leaves of the samples themselves: by frequency, and its sd. */
+function leftOver({ samples: { t, x, use }, every, fit }: TraceFit, spacing: number): { readonly spectrum: ResidualSpectrum | null; readonly noise: number } {
+  let [squares, count] = [0, 0];
+  const residualsIn = (from: number, to: number): Float64Array => {
+    if (every === 1) return fit.residuals.slice(from, to);
+    const found = swingOver(fit.model, t.subarray(from, to));
+    for (let i = from; i < to; i++) {
+      if (use && use[i] === 0) found[i - from] = 0;
+      else {
+        found[i - from] = x[i]! - found[i - from]!;
+        squares += found[i - from]! ** 2;
+        count += 1;
+      }
+    }
+    return found;
+  };
+  const spectrum = residualSpectrum(t.length, residualsIn, spacing);
+  return { spectrum, noise: count > 0 ? Math.sqrt(squares / count) : fit.noise };
+}
 
 /** Natural periods that the traces show, as timings of the pendulum as it hung then: with taps alone in it as tapped, else as fired. */
 export function timingsOfTraces(known: readonly TraceKnown[], wide: ReadonlyMap<string, WideSwing>): readonly Timing[] {
@@ -189,8 +209,8 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
   const least = byNoise.length === 0 ? (noFire?.sd ?? null) : Math.min(...byNoise);
   const impulseOf = (jump: number): number | null => impulseOfThrow && impulseOfThrow(jump, read.inVolts);
   const byFit = fit.noise * Math.sqrt(found.factorOfSwing);
-  if (!SPECTRA.has(found)) SPECTRA.set(found, residualSpectrum(fit.residuals, bare.spacing));
-  const spectrum = SPECTRA.get(found)!;
+  if (!LEFT.has(found)) LEFT.set(found, leftOver(found, bare.spacing));
+  const { spectrum, noise } = LEFT.get(found)!;
   return {
     ...bare,
     events: found.events.map((event, k): TraceEventTold => ({
@@ -199,7 +219,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
     })),
     fitted: {
       period: { value: (2 * Math.PI) / (factor * frequency.value), u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
-      noise: fit.noise, colour: found.factorOfSwing, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
+      noise, colour: noise > 0 ? (found.factorOfSwing * found.every * fit.noise ** 2) / noise ** 2 : 1, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
       least, noiseEquivalent: least === null ? null : impulseOf(least),
       noFire: noFire && { jumps: noFire.jumps.length, sd: noFire.sd, impulse: impulseOf(noFire.sd), overFit: byFit === 0 ? null : Math.sqrt(noFire.jumps.reduce((sum, jump, k) => sum + (jump / (byFit * noFire.units[k]!)) ** 2, 0) / noFire.jumps.length) },
     },

@@ -12,6 +12,8 @@ export interface ResidualSpectrum {
 const MOST_POINTS = 1200;
 /** Samples of a piece; pieces overlap by half and are averaged. */
 const LONGEST_PIECE = 65_536;
+/** Of more pieces, evenly some. */
+const MOST_PIECES = 12;
 /** A line stands so many times above the median power about it. */
 const STANDS_OUT = 25;
 /** Half-width of what is about a line, bins. */
@@ -20,19 +22,23 @@ const MOST_LINES = 6;
 const SMALLEST_RECORD = 64;
 
 /**
- * Amplitudes by averaged, Hann-windowed pieces. Valid: samples evenly spaced, or nearly so; left-out samples are 0.
+ * Amplitudes by averaged, Hann-windowed pieces. Valid: samples evenly spaced, or nearly so; left-out samples are 0. `residualsIn`: a copy of those of a stretch.
  * Source: P. D. Welch, IEEE Trans. Audio Electroacoust. 15 (1967) 70, from memory.
  */
-export function residualSpectrum(residuals: Float64Array, spacing: number): ResidualSpectrum | null {
-  const n = residuals.length;
+export function residualSpectrum(n: number, residualsIn: (from: number, to: number) => Float64Array, spacing: number): ResidualSpectrum | null {
   if (n < SMALLEST_RECORD || !(spacing > 0)) return null;
   const piece = Math.min(LONGEST_PIECE, powerOfTwo(n / 2 + 1) / 2 < SMALLEST_RECORD ? powerOfTwo(n) / 2 : powerOfTwo(n / 2 + 1) / 2);
   const window = Float64Array.from({ length: piece }, (_, i) => 0.5 - 0.5 * Math.cos((2 * Math.PI * (i + 0.5)) / piece));
   const gain = window.reduce((sum, value) => sum + value, 0);
   const sum = new Float64Array(piece / 2 + 1);
   let pieces = 0;
-  for (let from = 0; from + piece <= n; from += piece / 2) {
-    const found = powers(Float64Array.from(window, (value, i) => value * residuals[from + i]!));
+  const steps = Math.max(1, Math.floor((n - piece) / (piece / 2)) + 1);
+  const taken = Math.min(steps, MOST_PIECES);
+  for (let k = 0; k < taken; k++) {
+    const from = Math.floor(((k * (steps - 1)) / Math.max(1, taken - 1))) * (piece / 2);
+    const residuals = residualsIn(from, from + piece);
+    for (let i = 0; i < piece; i++) residuals[i]! *= window[i]!;
+    const found = powers(residuals);
     for (let j = 0; j < sum.length; j++) sum[j]! += found[j]!;
     pieces += 1;
   }

@@ -2,6 +2,8 @@
 import { solveChain, type ChainSolved, type Link } from '../numeric/struckChain.ts';
 import { BLOCK, cellsOf, evenBlocks, motionColumns, motionOver, productIn, slopeColumns, squaresIn, swingSums, type Cell, type Column, type Oscillation, type SwingSamples } from './swingSums.ts';
 
+/** Weight of a knot's tie to the next, in samples. */
+const TIE = 1e-6;
 const NO_TIMES: ReadonlySet<number> = new Set();
 
 /** The record with its events: what stays the same whatever the frequency. */
@@ -91,6 +93,12 @@ export class Struck {
     const last = n - 1;
     const { p, v } = motionColumns(o);
     return solveChain(this.segments, shared, this.links(o, free, slopes, shared), (k, form) => {
+      // Knots with no sample about them go on from their neighbours; the others do not feel it.
+      if (k === 0) for (let j = 2; j < 2 + stretches; j++) {
+        form[j * n + j]! += TIE;
+        form[(j + 1) * n + j + 1]! += TIE;
+        form[j * n + j + 1]! -= TIE;
+      }
       for (let c = this.firstCell[k]!; c < this.firstCell[k + 1]! && this.cells[c]!.segment === k; c++) {
         const { at, first, second } = this.hats(this.cells[c]!, stretches);
         const columns: (readonly [number, Column])[] = [[0, p], [1, v], [2 + at, first]];

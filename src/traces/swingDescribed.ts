@@ -25,6 +25,8 @@ export function described(struck: Struck, place: Place, stretches: number, times
     return { nextPosition: 0, nextVelocity: 1, position: -m.vp, velocity: -m.vv, shared: isFixed ? [] : [[iw, -byFrequency], [iz, -byRatio]] };
   };
   const many = struck.events.length;
+  // Where the swing begins anew there is no jump to tell.
+  const told = struck.events.flatMap((_, k) => (struck.isAnew[k] ? [] : [k]));
   const values = struck.events.map((_, k) => jointAt(k));
   const jumps = values.map((value, k) => solved.velocities[k + 1]! + value.position * solved.positions[k]! + value.velocity * solved.velocities[k]!);
   const withShared = values.map((value, k) => covariances.withShared(k, value));
@@ -39,15 +41,15 @@ export function described(struck: Struck, place: Place, stretches: number, times
   const dof = struck.count - many - 2 - (stretches + 1) - 2;
   let stepsInU: readonly number[] | null = null;
   return {
-    ...o, status: 'fitted', times, timeU, jumps, covariance: [ww, wz, zz], byFrequency: by.map(([w]) => w), byRatio: by.map(([, z]) => z), neighbours,
-    noiseCovariance: (i, j) => rows[Math.max(i, j)]![Math.abs(i - j)] ?? 0,
-    weightsOf: (k) => weightsAt(struck, place, stretches, covariances, values[k]!, k),
+    ...o, status: 'fitted', times: told.map((k) => times[k]!), timeU: told.map((k) => timeU[k]!), jumps: told.map((k) => jumps[k]!), covariance: [ww, wz, zz], byFrequency: told.map((k) => by[k]![0]), byRatio: told.map((k) => by[k]![1]), neighbours,
+    noiseCovariance: (i, j) => rows[Math.max(told[i]!, told[j]!)]![Math.abs(told[i]! - told[j]!)] ?? 0,
+    weightsOf: (k) => weightsAt(struck, place, stretches, covariances, values[told[k]!]!, told[k]!),
     model, residuals, sumOfSquares, dof, noise: Math.sqrt(sumOfSquares / Math.max(1, dof)),
     // A solution of its own, made when it is asked for.
     get stepsInU() {
       if (stepsInU) return stepsInU;
       const steps = freeSteps(struck, place, stretches);
-      stepsInU = struck.events.map((_, k) => (steps && steps.noise > 0 && steps.u[k]! > 0 ? steps.step[k]! / (steps.noise * steps.u[k]!) : 0));
+      stepsInU = told.map((k) => (steps && steps.noise > 0 && steps.u[k]! > 0 ? steps.step[k]! / (steps.noise * steps.u[k]!) : 0));
       return stepsInU;
     },
   };

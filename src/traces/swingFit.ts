@@ -53,8 +53,10 @@ export interface SwingFit extends Oscillation {
 export type SwingFitResult = SwingFit | { readonly status: 'tooFewSamples' | 'noSwing' } | { readonly status: 'notTold'; readonly segment: number };
 
 const ROUNDS = 30;
-/** Settled where the next step is this part of an u. */
+/** Settled where the next step is this part of an u; after a step of CLOSE what is left is far less than that. */
 const SETTLED = 1e-5;
+const CLOSE = 1e-4;
+const NEAR = 1e-2;
 const PEAKS_TRIED = 6;
 const START_RATIOS = [0.002, 0.01, 0.04, 0.15, 0.4] as const;
 /** The search goes on this many samples of a long record, taken evenly. */
@@ -67,7 +69,7 @@ const EVENTS_SEARCHED = 25;
 const POORLY = 0.2;
 const GRID = 30;
 /** Part of Σ (x − x̄)² that is lost in differences. */
-const ROUNDING = 1e-13;
+const ROUNDING = 1e-10;
 const LEAST_RATIO = -0.4;
 const GREATEST_RATIO = 0.95;
 /** Periods between knots of the rest line at the closest, and the most stretches between knots. */
@@ -89,19 +91,23 @@ function descend(struck: Struck, start: Place, stretches: number, free: Free = N
     const [dw, dz] = [stepped.shared[shared - 2]!, stepped.shared[shared - 1]!];
     const [ww, zz] = [stepped.variances[shared - 2]!, stepped.variances[shared - 1]!];
     const noise2 = Math.max(here.solved.sumOfSquares, rounding) / Math.max(1, struck.count - shared - struck.segments - 1);
-    if (dw * dw <= SETTLED ** 2 * ww * noise2 && dz * dz <= SETTLED ** 2 * zz * noise2) return here;
+    const inU = Math.max(Math.abs(dw) / Math.sqrt(ww * noise2), Math.abs(dz) / Math.sqrt(zz * noise2));
+    if (!(inU > SETTLED)) return here;
     let next: Place | null = null;
+    // So near to the end the sums of squares differ by rounding alone: the step is taken as it is.
+    const isNear = inU < NEAR;
     for (let part = 1; part > 1e-3; part /= 2) {
       const o = { frequency: here.o.frequency + part * dw, ratio: Math.min(GREATEST_RATIO, Math.max(LEAST_RATIO, here.o.ratio + part * dz)) };
       if (!(o.frequency > 0)) continue;
       const tried = placeAt(struck, o, stretches, free);
-      if (isPlace(tried) && tried.solved.sumOfSquares <= here.solved.sumOfSquares + rounding) {
+      if (isPlace(tried) && (isNear || tried.solved.sumOfSquares <= here.solved.sumOfSquares + rounding)) {
         next = tried;
         break;
       }
     }
     if (!next) return here;
     here = next;
+    if (inU < CLOSE) return here;
   }
   return here;
 }
@@ -120,7 +126,7 @@ function thinned({ t, x, use }: SwingSamples, every: number): SwingSamples {
 }
 
 /** The frequency and damping from which all of the samples are fitted. */
-function startOf(samples: SwingSamples, events: readonly number[], { near, exposure = 0 }: SwingOptions): Oscillation | SwingFitResult {
+function startOf(samples: SwingSamples, events: readonly number[], { near, exposure = 0, anew = [] }: SwingOptions): Oscillation | SwingFitResult {
   const { t } = samples;
   const n = t.length;
   const omegas = likelyFrequencies(samples, PEAKS_TRIED, near === undefined ? undefined : [near / 2, near * 2]);
@@ -131,7 +137,7 @@ function startOf(samples: SwingSamples, events: readonly number[], { near, expos
   // Frequency and damping are the same all along: the first events tell where they are.
   const many = events.length > EVENTS_SEARCHED ? firstAtOrAfter(t, events[EVENTS_SEARCHED]!, 0) : n;
   const few = thinned(upTo(samples, many), Math.max(1, Math.min(Math.floor(many / SEARCHED), everyBySwing)));
-  const struck = new Struck(few, events.slice(0, EVENTS_SEARCHED), exposure, SEARCHED_STRETCHES);
+  const struck = new Struck(few, events.slice(0, EVENTS_SEARCHED), exposure, SEARCHED_STRETCHES, new Set(anew));
   const stretchesAt = (omega: number): number => Math.min(SEARCHED_STRETCHES, finestFor(few, omega));
   let best: Place | null = null;
   let failed: SwingFitResult = { status: 'noSwing' };
@@ -191,14 +197,15 @@ function withoutStraddling(samples: SwingSamples, events: readonly number[], exp
  * Valid: viscous damping, small swings, events in order and inside the record.
  * Source: Golub & Pereyra, SIAM J. Numer. Anal. 10 (1973) 413, from memory.
  */
-export function fitSwing(given: SwingSamples, events: readonly number[], options: SwingOptions = {}): SwingFitResult {
-  const { exposure = 0, refineWithin = 0 } = options;
+export function fitSwing(given: SwingSamples, strikes: readonly number[], options: SwingOptions = {}): SwingFitResult {
+  const { exposure = 0, refineWithin = 0, anew = [] } = options;
+  const events = anew.length === 0 ? strikes : [...strikes, ...anew].sort((a, b) => a - b);
   const samples = withoutStraddling(given, events, exposure);
   if (samples.t.length < 8 + 2 * events.length) return { status: 'tooFewSamples' };
   const start = options.fixed ?? options.start ?? startOf(samples, events, options);
   if ('status' in start) return start;
   const finest = options.stretches === undefined ? finestFor(samples, start.frequency) : Math.max(1, options.stretches);
-  let struck = new Struck(samples, events, exposure, finest);
+  let struck = new Struck(samples, events, exposure, finest, new Set(anew));
   if (struck.count < 8 + 2 * events.length) return { status: 'tooFewSamples' };
   const first = placeAt(struck, start, options.stretches ?? 1);
   if (!isPlace(first)) return first;
@@ -260,14 +267,14 @@ function refine(samples: SwingSamples, listed: readonly number[], from: { readon
     if (!steps) break;
     const u = steps.u.map((unit, k) => Math.abs((steps.noise * unit) / (place.o.frequency * steps.jump[k]!)));
     // A time that the record tells no better than its bounds stays as listed.
-    const moved = struck.events.map((time, k) => (u[k]! < within ? Math.min(listed[k]! + within, Math.max(listed[k]! - within, time - steps.step[k]! / (place.o.frequency * steps.jump[k]!))) : listed[k]!));
+    const moved = struck.events.map((time, k) => (u[k]! < within && !struck.isAnew[k] ? Math.min(listed[k]! + within, Math.max(listed[k]! - within, time - steps.step[k]! / (place.o.frequency * steps.jump[k]!))) : listed[k]!));
     if (!moved.every((time, k) => (k === 0 || time > moved[k - 1]!) && time > samples.t[0]! && time < samples.t[samples.t.length - 1]!)) break;
-    const next = new Struck(withoutStraddling(samples, moved, struck.exposure), moved, struck.exposure, struck.finest);
+    const next = new Struck(withoutStraddling(samples, moved, struck.exposure), moved, struck.exposure, struck.finest, struck.anew);
     const tried = placeAt(next, place.o, from.stretches, ALL);
     if (!isPlace(tried)) break;
     const largest = Math.max(...moved.map((time, k) => Math.abs(time - struck.events[k]!)));
     [struck, place] = [next, tried];
-    timeU = Array.from(u, (value) => (value < within ? value : null));
+    timeU = Array.from(u, (value, k) => (value < within && !struck.isAnew[k] ? value : null));
     if (largest < 1e-4 * Math.min(...u)) break;
   }
   const free: Free = (k) => timeU[k] !== null;

@@ -237,3 +237,15 @@ it('noise without a swing is no swing; with frequency and damping as given its j
   const { from, weights } = fit.weightsOf(1);
   expect(weights.reduce((sum, w, i) => sum + w * (samples.x[from + i]! - 7), 0) - fit.jumps[1]!).toBeCloseTo(0, 3);
 });
+
+it('after a stretch in which it was pushed a swing begins anew, and the jumps about it come back', () => {
+  const samples = record([1, 0.8, 0.9], [5, 12, 40], 60, 40, { x: 0.05 });
+  // Somebody holds it between 20 s and 30 s and lets it go off its rest.
+  const held = { ...samples, x: samples.x.map((value, i) => (samples.t[i]! >= 30 && samples.t[i]! < 40 ? 0.3 * Math.exp(-Z * W * (samples.t[i]! - 30)) * Math.cos(W * Math.sqrt(1 - Z * Z) * (samples.t[i]! - 30)) : samples.t[i]! >= 40 ? NaN : value)) };
+  const use = Uint8Array.from(samples.t, (time) => (time >= 20 && time < 30 ? 0 : time >= 40 ? 0 : 1));
+  const fit = fitted({ t: held.t, x: held.x.map((value) => (Number.isNaN(value) ? 0 : value)), use }, [5, 12], { anew: [30] });
+  expect(fit.jumps).toHaveLength(2);
+  expect(fit.jumps[0]! / 1).toBeCloseTo(1, 4);
+  expect(fit.jumps[1]! / 0.8).toBeCloseTo(1, 4);
+  expect(fit.frequency / W).toBeCloseTo(1, 5);
+});
