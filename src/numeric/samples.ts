@@ -50,3 +50,16 @@ export function median(values: readonly number[]): number {
   const upper = Math.floor(sorted.length / 2);
   return sorted.length % 2 === 1 ? sorted[upper]! : sorted[upper - 1]! + (sorted[upper]! - sorted[upper - 1]!) / 2;
 }
+
+/** Least and greatest; NaN are passed over; (∞, −∞) of none. */
+export function extentOf(x: Float64Array): readonly [number, number] {
+  let low = Infinity;
+  let high = -Infinity;
+  // An iterator over millions takes several times as long.
+  for (let i = 0; i < x.length; i++) {
+    const value = x[i]!;
+    if (value < low) low = value;
+    if (value > high) high = value;
+  }
+  return [low, high];
+}

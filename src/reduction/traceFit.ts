@@ -123,10 +123,12 @@ interface Asked {
 
 /** The record as the fit takes it: a long one by means of some samples, as many as the swing that is expected, or stands out, allows. */
 function meansOf(samples: SwingSamples, exposure: number, expected: Expected): { readonly few: SwingSamples; readonly every: number; readonly exposure: number } {
-  const fastest = FAR * (expected?.frequency ?? likelyFrequencies(samples, 1)[0] ?? Infinity);
-  const every = everyFor(samples, fastest);
+  const most = everyFor(samples, 0);
+  if (most === 1) return { few: samples, every: 1, exposure };
+  const coarse = binned(samples, most);
+  const every = everyFor(samples, FAR * (expected?.frequency ?? likelyFrequencies(coarse.samples, 1)[0] ?? Infinity));
   if (every === 1) return { few: samples, every, exposure };
-  const made = binned(samples, every);
+  const made = every === most ? coarse : binned(samples, every);
   return { few: made.samples, every, exposure: Math.hypot(exposure, made.blur) };
 }
 

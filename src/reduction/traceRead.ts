@@ -7,7 +7,8 @@ import { atSamples, timelineOf, timeUnitNamed, type SampleClock, type Timeline }
 import { readStretches, readTraceEvents, type TraceEvent } from '../readings/traceEvents.ts';
 import { pictureAngle, WAYS } from '../readings/ways.ts';
 import { TRACE_USES, type Choices, type Trace, type TraceUse } from '../session/session.ts';
-import { clippedSpans, leastStep, maskOf, rangeOf, spikeSpans } from '../traces/faults.ts';
+import { extentOf } from '../numeric/samples.ts';
+import { clippedSpans, leastStep, maskOf, spikeSpans } from '../traces/faults.ts';
 import { risesOf } from '../traces/findShots.ts';
 import { readNumber, readQuantity } from '../units/quantity.ts';
 import { toSi, unitNamed, type Dimension, type Unit } from '../units/units.ts';
@@ -102,7 +103,7 @@ function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWa
   const values = valuesOf(trace, record, { uses, timeline, way, pivot, place }, problems);
   if (!values) return { ...bare, problems };
   const { x, inVolts } = values;
-  const [low, high] = rangeOf(x);
+  const [low, high] = extentOf(x);
   if (low === high) return stop(problem('trace-constant', 'stops', place, {}));
   const stretches = leftOut(t, x, timeline, marked.stretches);
   const clipped = stretches.filter(({ why }) => why === 'clipped').length;

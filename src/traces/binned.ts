@@ -7,11 +7,11 @@ const LEAST_A_PERIOD = 48;
 /** A bin longer than so many times its samples' usual length has a gap in it. */
 const GAP = 1.5;
 
-/** How many samples go into one; 1 where the record is short, or a period has few. `frequency`: the fastest that the swing may have, rad/s. */
+/** How many samples go into one; 1 where the record is short, or a period has few. `frequency`: the fastest that the swing may have, rad/s; 0: not known. */
 export function everyFor({ t }: SwingSamples, frequency: number): number {
   const n = t.length;
   const spacing = (t[n - 1]! - t[0]!) / Math.max(1, n - 1);
-  return Math.max(1, Math.min(Math.floor(n / ENOUGH), Math.floor((2 * Math.PI) / (frequency * spacing * LEAST_A_PERIOD))));
+  return Math.max(1, Math.min(Math.floor(n / ENOUGH), frequency > 0 ? Math.floor((2 * Math.PI) / (frequency * spacing * LEAST_A_PERIOD)) : Infinity));
 }
 
 /**

@@ -1,5 +1,6 @@
 /** Samples that tell nothing of the swing: at the end of the sensor's range, struck by a spike, or in a stretch that is left out. */
 import { solveSymmetric } from '../numeric/linearAlgebra.ts';
+import { extentOf } from '../numeric/samples.ts';
 
 /** From one time to another, s; both ends belong to it. */
 export interface Span {
@@ -27,7 +28,7 @@ export function leastStep(x: Float64Array): number {
  * Valid: samples in order.
  */
 export function clippedSpans(t: Float64Array, x: Float64Array): readonly Span[] {
-  const [low, high] = rangeOf(x);
+  const [low, high] = extentOf(x);
   if (!(high > low)) return [];
   const step = leastStep(x);
   return [low, high].flatMap((end) => {
@@ -41,15 +42,6 @@ export function clippedSpans(t: Float64Array, x: Float64Array): readonly Span[] 
     }
     return far * 2 > edges ? runs.map(([from, to]) => ({ from: t[from]!, to: t[to]! })) : [];
   }).sort((a, b) => a.from - b.from);
-}
-
-export function rangeOf(x: Float64Array): readonly [number, number] {
-  let [low, high] = [Infinity, -Infinity];
-  for (const value of x) {
-    if (value < low) low = value;
-    if (value > high) high = value;
-  }
-  return [low, high];
 }
 
 /** Runs at a value, of FEWEST_AT_END samples or more; first and last index. */

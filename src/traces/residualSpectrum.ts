@@ -13,7 +13,7 @@ const MOST_POINTS = 1200;
 /** Samples of a piece; pieces overlap by half and are averaged. */
 const LONGEST_PIECE = 65_536;
 /** Of more pieces, evenly some. */
-const MOST_PIECES = 12;
+const MOST_PIECES = 6;
 /** A line stands so many times above the median power about it. */
 const STANDS_OUT = 25;
 /** Half-width of what is about a line, bins. */

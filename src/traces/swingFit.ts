@@ -64,7 +64,7 @@ const SEARCHED = 20_000;
 /** Samples a period that the search keeps. */
 const KEPT_A_PERIOD = 12;
 const SEARCHED_STRETCHES = 16;
-const EVENTS_SEARCHED = 25;
+const EVENTS_SEARCHED = 10;
 /** A start that leaves more than this part of the squares calls for a search over a grid of so many frequencies. */
 const POORLY = 0.2;
 const GRID = 30;

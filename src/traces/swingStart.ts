@@ -6,6 +6,8 @@ import type { SwingSamples } from './swingSums.ts';
 const MOST_BINS = 131_072;
 /** Bins of a spectrum of fewer than this hold no peak. */
 const FEWEST_BINS = 16;
+/** Peaks that are kept: among them is any that stands in a range asked for. */
+const MOST_PEAKS = 1000;
 /** Peaks slower than so many cycles in the record are its drift. */
 const FEWEST_CYCLES = 1.2;
 
@@ -41,7 +43,22 @@ function evenly({ t, x, use }: SwingSamples): { readonly values: Float64Array; r
  * Valid: samples in order. Source: periodogram with a Hann window, peak by a parabola through three of its bins.
  */
 export function likelyFrequencies(samples: SwingSamples, many: number, within: readonly [number, number] = [0, Infinity]): readonly number[] {
-  if (samples.t.length < FEWEST_BINS) return [];
+  return peaksOf(samples).filter((omega) => omega >= within[0] && omega <= within[1]).slice(0, many);
+}
+
+/** Asked for again at every step of a reduction. */
+const PEAKS = new WeakMap<Float64Array, { readonly use: Uint8Array | undefined; readonly found: readonly number[] }>();
+
+function peaksOf(samples: SwingSamples): readonly number[] {
+  const kept = PEAKS.get(samples.x);
+  if (kept && kept.use === samples.use) return kept.found;
+  const found = samples.t.length < FEWEST_BINS ? [] : findPeaks(samples);
+  PEAKS.set(samples.x, { use: samples.use, found });
+  return found;
+}
+
+/** Places of the peaks, rad/s, the tallest first. */
+function findPeaks(samples: SwingSamples): readonly number[] {
   const { values, step, filled } = evenly(samples);
   for (let i = 0; i < filled; i++) values[i]! *= 0.5 - 0.5 * Math.cos((2 * Math.PI * (i + 0.5)) / filled);
   // A peak between two bins of the record's own length would be cut by half: twice as many.
@@ -53,11 +70,11 @@ export function likelyFrequencies(samples: SwingSamples, many: number, within: r
   const peaks: { readonly at: number; readonly power: number }[] = [];
   for (let j = Math.max(1, Math.floor(FEWEST_CYCLES * cycle)); j < found.length - 1; j++) {
     const [a, b, c] = [found[j - 1]!, found[j]!, found[j + 1]!];
-    if (!(b >= a && b > c)) continue;
-    const [la, lb, lc] = [a, b, c].map((value) => Math.log(Math.max(value, 1e-300)));
-    const bend = la! - 2 * lb! + lc!;
-    const omega = (j + (bend < 0 ? (la! - lc!) / (2 * bend) : 0)) * unit;
-    if (omega >= within[0] && omega <= within[1]) peaks.push({ at: omega, power: b });
+    if (b >= a && b > c) peaks.push({ at: j, power: b });
   }
-  return peaks.sort((a, b) => b.power - a.power).slice(0, many).map(({ at }) => at);
+  return peaks.sort((a, b) => b.power - a.power).slice(0, MOST_PEAKS).map(({ at }) => {
+    const [la, lb, lc] = [found[at - 1]!, found[at]!, found[at + 1]!].map((value) => Math.log(Math.max(value, 1e-300)));
+    const bend = la! - 2 * lb! + lc!;
+    return (at + (bend < 0 ? (la! - lc!) / (2 * bend) : 0)) * unit;
+  });
 }

@@ -38,7 +38,8 @@ function curveFit({ t, x }: SwingSamples, { root }: Here): CurveFit | null {
 }
 
 function fitted(record: SwingSamples, options: SwingOptions): SwingFit {
-  const fit = fitSwing(record, [SHOT], options);
+  // Arrays of its own, as peaks found once are kept with them.
+  const fit = fitSwing({ ...record, x: record.x.slice() }, [SHOT], options);
   if (fit.status !== 'fitted') throw new Error(`Timing a fit: ${fit.status}`);
   return fit;
 }

@@ -1,6 +1,7 @@
 /** What the columns of a sampled record are, told from their headers, units and values: proposals to be checked. */
 import { unitNamed, type Unit } from '../../units/units.ts';
 import { columnUnit } from '../headerUnits.ts';
+import { extentOf } from '../../numeric/samples.ts';
 import type { SampledColumnRead, SampledRecord } from './sampledRecord.ts';
 import { useOfHeader, type SampledUse } from './sampledWords.ts';
 import { timeUnitNamed } from './timeline.ts';
@@ -54,21 +55,12 @@ function counts({ values }: SampledColumnRead): boolean {
   return n > 1 && ones * 2 >= n - 1;
 }
 
-function rangeOf(values: Float64Array): readonly [number, number] {
-  let [low, high] = [Infinity, -Infinity];
-  for (const value of values) {
-    if (value < low) low = value;
-    if (value > high) high = value;
-  }
-  return [low, high];
-}
-
 /**
  * How far the samples lie from two levels, as a part of their range: 0 for a signal of two values; null where it is no such signal.
  * One of more values must stay on each level for two samples or more on the average: a swing with spikes does not.
  */
 function offLevels({ values, missing }: SampledColumnRead): number | null {
-  const [low, high] = rangeOf(values);
+  const [low, high] = extentOf(values);
   if (!(high > low)) return null;
   let [atLow, atHigh, off, stays] = [0, 0, 0, 0];
   let before = '';
@@ -120,8 +112,8 @@ export function proposeUses(record: SampledRecord): ProposedUses {
   const unitOf = ({ unitText }: SampledColumnRead): string => columnUnit(unitText)?.dimension ?? '';
   const isLength = (column: SampledColumnRead): boolean => ['length', 'angle', 'pixel'].includes(unitOf(column));
   const moves = ({ values }: SampledColumnRead): boolean => {
-    const [low, high] = rangeOf(values);
-    return high > low;
+    const first = values.find((value) => !Number.isNaN(value));
+    return values.some((value) => value < first! || value > first!);
   };
   for (const use of ['trigger', 'pivotAcross', 'pivotDown'] as const) set(use, said.findIndex((one, i) => one === use && free(i)));
   const first = (is: (column: SampledColumnRead, index: number) => boolean): number => columns.findIndex((column, i) => free(i) && is(column, i));
