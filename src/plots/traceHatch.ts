@@ -19,6 +19,7 @@ export const HATCHES: Readonly<Record<Stretch['why'], Hatch>> = {
   clipped: { tile: 5, lines: [[0, 2.5, 5, 2.5]], dots: [] },
   spike: { tile: 4, lines: [[2, 0, 2, 4]], dots: [] },
   blanked: { tile: 6, lines: [], dots: [[1.5, 1.5, 0.9], [4.5, 4.5, 0.9]] },
+  train: { tile: 7, lines: [[0, 3.5, 7, 3.5], [3.5, 0, 3.5, 3.5]], dots: [] },
   marked: { tile: 8, lines: [...rising(8), ...falling(8)], dots: [] },
 };
 

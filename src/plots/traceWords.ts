@@ -34,10 +34,10 @@ export function eventNames(events: readonly Pick<TraceEventTold, 'id' | 'kind' |
 }
 
 export const WHY_WORDS: Readonly<Record<Stretch['why'], string>> = {
-  gap: 'no samples', clipped: 'at the end of the sensor’s range', spike: 'spikes', blanked: 'left out after a shot', marked: 'marked as bad',
+  gap: 'no samples', clipped: 'at the end of the sensor’s range', spike: 'spikes', blanked: 'left out after a shot', marked: 'marked as bad', train: 'a train of pulses',
 };
 
-export const WHYS: readonly Stretch['why'][] = ['gap', 'clipped', 'spike', 'blanked', 'marked'];
+export const WHYS: readonly Stretch['why'][] = ['gap', 'clipped', 'spike', 'blanked', 'marked', 'train'];
 
 /** Reasons that occur, each with how often. */
 export function countedWhys(stretches: readonly Stretch[]): readonly { readonly why: Stretch['why']; readonly count: number }[] {

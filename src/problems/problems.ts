@@ -45,7 +45,7 @@ export const PROBLEM_CODES = [
   'record-no-rest', 'record-rest-from-zero', 'record-zero-moved', 'record-no-throw', 'record-negative-throw', 'record-reading-beyond-radius', 'record-angle-too-large', 'record-tap-without-impulse', 'swings-not-decaying', 'reading-wrong-kind-of-unit',
   'hammer-angle-too-wide', 'hammer-entry-missing', 'tap-force-without-time', 'tap-both-rebound-and-follow',
   'force-record-no-samples', 'force-record-time-not-rising', 'force-record-too-long', 'force-record-unit-assumed', 'force-record-no-pulse', 'force-record-clipped', 'force-record-after-contact', 'force-records-do-not-fit',
-  'trace-no-samples', 'trace-too-long', 'trace-time-not-rising', 'trace-constant', 'trace-unit-assumed', 'trace-event-not-read', 'trace-events-outside', 'trace-not-fitted', 'trace-position-step', 'trace-large-swing',
+  'trace-no-samples', 'trace-too-long', 'trace-time-not-rising', 'trace-constant', 'trace-unit-assumed', 'trace-event-not-read', 'trace-events-outside', 'trace-not-fitted', 'trace-position-step', 'trace-large-swing', 'trace-train-not-read', 'trace-train-not-fitted', 'trace-train-slow',
   'trace-bytes-missing', 'trace-clipped', 'trace-spikes', 'trace-no-trigger', 'trace-unit-unknown', 'trace-wrong-unit', 'trace-rate-missing', 'trace-pivot-missing', 'trace-sensor-slope-missing', 'trace-offset-found', 'trace-offset-open', 'trace-clock-drifts', 'trace-jumps-found', 'trace-swing-from-bench', 'trace-times-moved', 'trace-too-close',
   'trace-rows-passed-over', 'trace-cut-off', 'trace-gzip-broken', 'trace-numbers-missing', 'trace-samples-repeated', 'trace-time-coarse', 'trace-samples-missing', 'trace-spacing-uneven',
   // evidence of the calibration

@@ -306,6 +306,9 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'trace-not-fitted':
     case 'trace-position-step':
     case 'trace-large-swing':
+    case 'trace-train-not-read':
+    case 'trace-train-not-fitted':
+    case 'trace-train-slow':
     case 'trace-bytes-missing':
     case 'trace-clipped':
     case 'trace-spikes':

@@ -13,6 +13,9 @@ export type TraceCode = Extract<
   | 'trace-not-fitted'
   | 'trace-position-step'
   | 'trace-large-swing'
+  | 'trace-train-not-read'
+  | 'trace-train-not-fitted'
+  | 'trace-train-slow'
   | 'trace-bytes-missing'
   | 'trace-clipped'
   | 'trace-spikes'
@@ -59,6 +62,12 @@ export function traceWords(code: TraceCode, { text, number, figure, quantity, ma
       return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
     case 'trace-large-swing':
       return text('how') === 'full' ? `swings reach ${figure('degrees', 3)}°: its jumps are solved with the full pendulum, which differs from the small swing by up to ${figure('percent', 2)} %${number('drag') > 0 ? `, with a drag that goes as the square of the speed (β = ${figure('drag', 2)} a radian)` : ''}.` : `swings reach ${figure('degrees', 3)}°, and the full pendulum could not be fitted; the small swing’s equation is used, off by up to ${figure('percent', 2)} %.`;
+    case 'trace-train-not-read':
+      return `line ${text('at')} of its trains, “${text('found')}”, cannot be read. A train is written 20 60 50 Hz: from, to, pulses a second.`;
+    case 'trace-train-not-fitted':
+      return `the train from ${quantity('from', 'time')} to ${quantity('to', 'time')} gives no steady deflection: the record needs twenty samples of it, and twenty of the rest beside it without another shot.`;
+    case 'trace-train-slow':
+      return `its pulses, ${quantity('rate', 'frequency')}, are not much faster than the swing: the reading goes up and down by ${figure('percent', 2)} % of the deflection between them. List them as shots, which are solved one by one.`;
     case 'trace-bytes-missing':
       return 'its bytes are not here, so its shots have no impulse bits. Choose the file itself again, under Traces.';
     case 'trace-clipped':

@@ -62,6 +62,31 @@ export interface MarkedStretch {
   readonly to: number;
 }
 
+/** A train of pulses. */
+export interface TimedTrain extends MarkedStretch {
+  /** Pulses a second, Hz, with its ± as a standard uncertainty (0: none). */
+  readonly rate: number;
+  readonly spread: number;
+}
+
+/** One train a line: "20 60 50 Hz"; times in s and rates in Hz where no unit is written. */
+export function readTrains(lines: readonly Line[], entry: string): { readonly trains: readonly TimedTrain[]; readonly problems: readonly Problem[] } {
+  const problems: Problem[] = [];
+  const trains = lines.flatMap(({ id, text }, i): TimedTrain[] => {
+    const line = text.trim();
+    if (line === '') return [];
+    const start = leadingTime(line);
+    const end = leadingTime(start.rest.join(' '));
+    const rate = readQuantity(end.rest.join(' '), 'frequency', 'Hz');
+    if (start.time === null || end.time === null || !(end.time > start.time) || !rate.ok || !(rate.value > 0)) {
+      problems.push(problem('trace-train-not-read', 'stops', { entry }, { found: line, at: i + 1 }));
+      return [];
+    }
+    return [{ id, from: start.time, to: end.time, rate: rate.value, spread: rate.spread ?? 0 }];
+  });
+  return { trains: trains.sort((a, b) => a.from - b.from), problems };
+}
+
 /** One stretch a line: "12.5 13.1", in s. */
 export function readStretches(lines: readonly Line[], entry: string): { readonly stretches: readonly MarkedStretch[]; readonly problems: readonly Problem[] } {
   const problems: Problem[] = [];

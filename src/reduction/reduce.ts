@@ -1,5 +1,6 @@
 /** The road: session → readings → angles → swings → calibration → impulse bits → run. It reads like a method section; one file a step. */
-import { propagate, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
+import { expanded, finiteSources } from '../metrology/coverage.ts';
+import { propagate, standardUncertainty, type Anchor, type Uncertain } from '../metrology/uncertain.ts';
 import { dampingFactor, decrementOfRatio } from '../pendulum/damping.ts';
 import { naturalFrequency } from '../pendulum/forms.ts';
 import type { Problem } from '../problems/problems.ts';
@@ -25,7 +26,9 @@ import { periodOfBody, standByRoute, typedStiffness, valueOf, type Body, type By
 import type { Damping } from './swings.ts';
 import { tapsAgainst } from './tapsAgainst.ts';
 import { NO_TRACES, type TraceLibrary } from './traceRead.ts';
-import { angleOfThrow, traceTold } from './traces.ts';
+import { angleOfThrow, traceTold, type TraceKnown } from './traces.ts';
+import type { TrainTold } from './traceResults.ts';
+import { trainSwings, trainTold } from './trains.ts';
 import { tapStudyOf } from './tapStudy.ts';
 
 export function reduce(session: Session, explain: string | null, library: TraceLibrary = NO_TRACES): Reduction {
@@ -93,6 +96,13 @@ export function reduce(session: Session, explain: string | null, library: TraceL
     return K && arm && angle !== null ? (K.value * angle) / arm.value : null;
   };
 
+  const finite = finiteSources([factors[form].geometry, factors[form].taps, factors[form][way]].flatMap((f) => (f.shots ? [f.shots] : [])));
+  const trains = trainSwings(ground.traces, bench, scale, shares.shots);
+  const trainsOf = ({ trace, frequency, ratio }: TraceKnown): readonly TrainTold[] => trains.filter((one) => one.trace === trace.id).map((one) => {
+    const y = impulse(one.swing, form, way);
+    return trainTold(one, frequency!.value, ratio!.value, standardUncertainty(one.deflection), y && expanded(y, finite));
+  });
+
   const opened = explain === null ? undefined : swings.find((s) => s.record.id === explain);
   return {
     problems: said,
@@ -121,7 +131,7 @@ export function reduce(session: Session, explain: string | null, library: TraceL
     weights: weights?.told ?? null,
     addedMasses: masses,
     tapStudy: study,
-    traces: ground.traces.map((known) => traceTold(known, choices, ground.wide.get(known.trace.id) ?? null, impulseOfThrow)),
+    traces: ground.traces.map((known) => traceTold(known, choices, ground.wide.get(known.trace.id) ?? null, impulseOfThrow, trainsOf(known))),
     forceRecords: ground.forceRecords,
     comparisons: tapsAgainst({ damping, timings, bodies, records: records.filter(counts) }),
     agreement,

@@ -1,6 +1,6 @@
 /** The fit of one trace: its shots found or brought on to its clock, its swing, and how far its noise is from white. */
 import { problem, type Place, type Problem } from '../problems/problems.ts';
-import type { TraceEvent } from '../readings/traceEvents.ts';
+import type { TimedTrain, TraceEvent } from '../readings/traceEvents.ts';
 import type { Trace } from '../session/session.ts';
 import { clockOffset } from '../traces/clockOffset.ts';
 import { maskOf } from '../traces/faults.ts';
@@ -11,6 +11,7 @@ import { noiseCorrelation, varianceFactor, type NoiseCorrelation } from '../trac
 import { noFireJumps, type NoFire } from '../traces/noFire.ts';
 import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
 import { likelyFrequencies } from '../traces/swingStart.ts';
+import { ripple, steadyDeflection, type SteadyDeflection } from '../traces/steadyTrain.ts';
 import { firstAtOrAfter, type Oscillation, type SwingSamples } from '../traces/swingSums.ts';
 import type { TraceRead } from './traceRead.ts';
 import type { Stretch, TraceTold } from './traceResults.ts';
@@ -33,6 +34,14 @@ export interface TraceFit {
   readonly factorOfSwing: number;
   /** What the same fit makes of the record where nothing was fired. */
   readonly noFire: NoFire | null;
+  readonly trains: readonly TrainFit[];
+  /** A train that is none, in the longest quiet stretch: what its deflection would be known to. */
+  readonly quietTrain: { readonly seconds: number; readonly u: number } | null;
+}
+
+export interface TrainFit {
+  readonly train: TimedTrain;
+  readonly steady: SteadyDeflection;
 }
 
 export interface TraceFitted {
@@ -52,6 +61,12 @@ const FAR = 2;
 /** First guess of the damping where shots are to be found. */
 const SOME_DAMPING = 0.01;
 const FINDING_ROUNDS = 2;
+/** Pulses that leave more of their own than this part of the deflection are no steady push. */
+const RIPPLES = 0.2;
+/** Periods beside a train in which a found jump is the train's own. */
+const BESIDE_TRAIN = 0.5;
+/** Least periods of a train that is thought of. */
+const QUIET_PERIODS = 3;
 /** A found jump of fewer u is none. */
 const CLEAR = 4;
 /** Part of a period by which listed and found times may differ, and by which found ones are moved by the fit. */
@@ -86,10 +101,14 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
   const { t, x } = read.samples;
   const place: Place = { sheetName: trace.name };
   const problems: Problem[] = [];
-  const use = maskOf(t, read.stretches.filter(({ why }) => why !== 'gap'));
+  const trains = read.trains.map(({ from, to, ...train }) => ({ ...train, from: Math.max(from, t[0]!), to: Math.min(to, t[t.length - 1]!) })).filter(({ from, to }) => to > from);
+  const pushed = trains.map(({ from, to }): Stretch => ({ from, to, why: 'train' }));
+  const good = maskOf(t, read.stretches.filter(({ why }) => why !== 'gap'));
+  const use = maskOf(t, [...read.stretches.filter(({ why }) => why !== 'gap'), ...pushed]);
   const bare: SwingSamples = { t, x, use };
-  const timed = timedEvents(trace, read, bare, expected, place, problems);
-  const inside = timed.events.filter(({ time }) => time > t[0]! && time < t[t.length - 1]!);
+  const anew = trains.map(({ to }) => to).filter((to) => to < t[t.length - 1]!);
+  const timed = timedEvents(trace, read, bare, expected, trains, place, problems);
+  const inside = timed.events.filter(({ time }) => time > t[0]! && time < t[t.length - 1]! && !anew.includes(time));
   if (inside.length < timed.events.length) problems.push(problem('trace-events-outside', 'doubt', place, { events: timed.events.length - inside.length, from: t[0]!, to: t[t.length - 1]! }));
   const blanks = read.blank > 0 ? inside.map(({ time }): Stretch => ({ from: time, to: time + read.blank, why: 'blanked' })) : [];
   if (blanks.length > 0) {
@@ -97,9 +116,9 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
     for (let i = 0; i < use.length; i++) if (off[i] === 0) use[i] = 0;
   }
   const listed = apart(inside, bare, place, problems);
-  const stretches = [...read.stretches, ...blanks].sort((a, b) => a.from - b.from);
+  const stretches = [...read.stretches, ...blanks, ...pushed].sort((a, b) => a.from - b.from);
   const { few, every, exposure } = meansOf(bare, read.exposure, expected);
-  const asked: Asked = { exposure, refine: read.refine };
+  const asked: Asked = { exposure, refine: read.refine, anew };
   const { events, fit } = trace.eventsFrom === 'found' ? clearJumps(listed, few, asked, expected) : { events: listed, fit: fitWithBench(few, listed.map(({ time }) => time), asked, false, expected) };
   const told = { stretches, events, offset: timed.offset };
   if (trace.eventsFrom === 'found') problems.push(problem('trace-jumps-found', 'note', place, { jumps: events.length }));
@@ -111,14 +130,25 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
   if (fit.covariance[0] === 0) problems.push(problem('trace-swing-from-bench', 'note', place, {}));
   const moved = fit.times.map((time, k) => Math.abs(time - events[k]!.time)).filter((by, k) => fit.timeU[k] !== null && by > 0);
   if (moved.length > 0 && trace.eventsFrom !== 'found') problems.push(problem('trace-times-moved', 'note', place, { times: moved.length, most: Math.max(...moved) }));
-  const noFire = noFireJumps(few, { frequency: fit.frequency, ratio: fit.ratio }, between(t, fit.times, read.blank), exposure);
-  return { ...told, problems, found: { samples: bare, every, ...told, fit, ...factorsOf(fit, few), noFire } };
+  const swing: Oscillation = { frequency: fit.frequency, ratio: fit.ratio };
+  const quiet = between(t, [...fit.times, ...trains.map(({ from }) => from)].sort((a, b) => a - b), read.blank).map((one) => ({ ...one, from: Math.max(one.from, ...trains.filter(({ from, to }) => from <= one.from && to > one.from).map(({ to }) => to)) })).filter(({ from, to }) => to > from);
+  const noFire = noFireJumps(few, swing, quiet, exposure);
+  const whole = every === 1 ? { t, x, use: good } : binned({ t, x, use: good }, every).samples;
+  const trainFits = trains.flatMap((train): TrainFit[] => {
+    const steady = steadyDeflection(whole, swing, { on: train.from, off: train.to }, aboutTrain(t, train, [...fit.times, ...trains.flatMap(({ from, to }) => [from, to])]));
+    if (!steady) problems.push(problem('trace-train-not-fitted', 'stops', place, { from: train.from, to: train.to }));
+    else if (ripple(train.rate, swing) > RIPPLES) problems.push(problem('trace-train-slow', 'doubt', place, { rate: train.rate, percent: 100 * ripple(train.rate, swing) }));
+    return steady ? [{ train, steady }] : [];
+  });
+  return { ...told, problems, found: { samples: bare, every, ...told, fit, ...factorsOf(fit, few), noFire, trains: trainFits, quietTrain: trainInQuiet(few, swing, quiet) } };
 }
 
 /** What a fit is asked for beside the samples: the time that each averages over, and how far times may be moved; s. */
 interface Asked {
   readonly exposure: number;
   readonly refine: number;
+  /** Where the swing begins anew, after a train. */
+  readonly anew: readonly number[];
 }
 
 /** The record as the fit takes it: a long one by means of some samples, as many as the swing that is expected, or stands out, allows. */
@@ -130,6 +160,20 @@ function meansOf(samples: SwingSamples, exposure: number, expected: Expected): {
   if (every === 1) return { few: samples, every, exposure };
   const made = every === most ? coarse : binned(samples, every);
   return { few: made.samples, every, exposure: Math.hypot(exposure, made.blur) };
+}
+
+/** From the strike or train before a train to the one after it. */
+function aboutTrain(t: Float64Array, { from, to }: TimedTrain, times: readonly number[]): readonly [number, number] {
+  return [Math.max(t[0]!, ...times.filter((time) => time < from)), Math.min(t[t.length - 1]!, ...times.filter((time) => time > to))];
+}
+
+/** What a train in the middle third of the longest quiet stretch would be known to; null where that is short. */
+function trainInQuiet(samples: SwingSamples, swing: Oscillation, quiet: readonly { readonly from: number; readonly to: number }[]): TraceFit['quietTrain'] {
+  const longest = [...quiet].sort((a, b) => b.to - b.from - (a.to - a.from))[0];
+  const third = longest ? (longest.to - longest.from) / 3 : 0;
+  if (!longest || third * swing.frequency < QUIET_PERIODS * 2 * Math.PI) return null;
+  const steady = steadyDeflection(samples, swing, { on: longest.from + third, off: longest.to - third }, [longest.from, longest.to]);
+  return steady && { seconds: third, u: steady.u };
 }
 
 /** The stretches between the events. */
@@ -151,21 +195,22 @@ function clearJumps(found: readonly TimedEvent[], samples: SwingSamples, asked: 
 }
 
 /** Fitted by itself; where it shows no swing, or one far from the bench's, with what the bench says. */
-function fitWithBench(samples: SwingSamples, times: readonly number[], { exposure, refine }: Asked, found: boolean, expected: Expected): SwingFitResult {
-  const options = { exposure, refineWithin: refine };
+function fitWithBench(samples: SwingSamples, times: readonly number[], { exposure, refine, anew }: Asked, found: boolean, expected: Expected): SwingFitResult {
+  const options = { exposure, refineWithin: refine, anew };
   const own = fitSwing(samples, times, options);
-  const settled = own.status === 'fitted' && found && refine === 0 ? fitSwing(samples, times, { exposure, start: { frequency: own.frequency, ratio: own.ratio }, refineWithin: (TOLERANCE * 2 * Math.PI) / own.frequency }) : own;
+  const settled = own.status === 'fitted' && found && refine === 0 ? fitSwing(samples, times, { exposure, anew, start: { frequency: own.frequency, ratio: own.ratio }, refineWithin: (TOLERANCE * 2 * Math.PI) / own.frequency }) : own;
   if (!expected || (settled.status === 'fitted' && !isFar(settled.frequency, expected))) return settled;
   const near = fitSwing(samples, times, { ...options, near: expected.frequency });
   if (near.status === 'fitted') return near;
-  const fixed = fitSwing(samples, times, { exposure, fixed: expected });
+  const fixed = fitSwing(samples, times, { exposure, anew, fixed: expected });
   return fixed.status === 'fitted' ? fixed : settled;
 }
 
 /** The events on the record's clock: as listed and moved by the offset, or as found. */
-function timedEvents(trace: Trace, read: TraceRead, samples: SwingSamples, expected: Expected, place: Place, problems: Problem[]): { readonly events: readonly TimedEvent[]; readonly offset: TraceTold['offset'] } {
+function timedEvents(trace: Trace, read: TraceRead, samples: SwingSamples, expected: Expected, trains: readonly TimedTrain[], place: Place, problems: Problem[]): { readonly events: readonly TimedEvent[]; readonly offset: TraceTold['offset'] } {
   if (trace.eventsFrom === 'found') {
-    const jumps = jumpsOf(samples, expected);
+    const anew = trains.map(({ to }) => to);
+    const jumps = jumpsOf(samples, expected, anew).filter((time) => trains.every(({ from, to }) => time < from - BESIDE_TRAIN * periodOf(samples, expected) || time > to + BESIDE_TRAIN * periodOf(samples, expected)));
     return { events: jumps.map((time, i) => ({ id: `found${i + 1}`, time, listed: time, kind: 'shot', impulse: '' })), offset: null };
   }
   if (read.offset !== null || trace.eventsFrom === 'trigger') {
@@ -188,7 +233,7 @@ function timedEvents(trace: Trace, read: TraceRead, samples: SwingSamples, expec
 const periodOf = (samples: SwingSamples, expected: Expected): number => (2 * Math.PI) / (expected?.frequency ?? likelyFrequencies(samples, 1)[0] ?? Infinity);
 
 /** Times of the jumps of a swing that nobody listed: found roughly, then with the frequency and damping that they tell. */
-function jumpsOf(all: SwingSamples, expected: Expected): readonly number[] {
+function jumpsOf(all: SwingSamples, expected: Expected, anew: readonly number[] = []): readonly number[] {
   const { few: samples, exposure } = meansOf(all, 0, expected);
   let swing: Oscillation | null = expected;
   if (!swing) {
@@ -199,7 +244,7 @@ function jumpsOf(all: SwingSamples, expected: Expected): readonly number[] {
   let times: readonly number[] = [];
   for (let round = 0; round < FINDING_ROUNDS; round++) {
     times = findJumps(samples, swing).map(({ time }) => time);
-    const fit = fitSwing(samples, times, { exposure });
+    const fit = fitSwing(samples, times, { exposure, anew });
     if (fit.status !== 'fitted' || isFar(fit.frequency, expected)) break;
     swing = { frequency: fit.frequency, ratio: Math.max(0, fit.ratio) };
   }

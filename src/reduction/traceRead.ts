@@ -4,7 +4,7 @@ import { columnUnit } from '../readings/headerUnits.ts';
 import type { SampledRecord } from '../readings/sampled/sampledRecord.ts';
 import { proposeUses, type ProposedUses } from '../readings/sampled/sampledUses.ts';
 import { atSamples, timelineOf, timeUnitNamed, type SampleClock, type Timeline } from '../readings/sampled/timeline.ts';
-import { readStretches, readTraceEvents, type TraceEvent } from '../readings/traceEvents.ts';
+import { readStretches, readTraceEvents, type TraceEvent, readTrains, type TimedTrain } from '../readings/traceEvents.ts';
 import { pictureAngle, WAYS } from '../readings/ways.ts';
 import { TRACE_USES, type Choices, type Trace, type TraceUse } from '../session/session.ts';
 import { extentOf } from '../numeric/samples.ts';
@@ -33,6 +33,7 @@ export interface TraceRead {
   readonly stretches: readonly Stretch[];
   /** As listed, or at the rises of the trigger; empty where they are to be found. */
   readonly events: readonly TraceEvent[];
+  readonly trains: readonly TimedTrain[];
   readonly exposure: number;
   readonly blank: number;
   readonly refine: number;
@@ -74,7 +75,7 @@ export function readTrace(trace: Trace, library: TraceLibrary, choices: Choices,
   return read;
 }
 
-const NOTHING: TraceRead = { record: null, columns: [], uses: {}, inVolts: false, samples: null, timeline: null, stretches: [], events: [], exposure: 0, blank: 0, refine: 0, offset: 0, problems: [] };
+const NOTHING: TraceRead = { record: null, columns: [], uses: {}, inVolts: false, samples: null, timeline: null, stretches: [], events: [], trains: [], exposure: 0, blank: 0, refine: 0, offset: 0, problems: [] };
 
 function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWay'], pivot: readonly (number | null)[], place: Place): TraceRead {
   const problems: Problem[] = [...record.problems];
@@ -89,7 +90,8 @@ function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWa
   const bare: TraceRead = { ...NOTHING, record, columns, uses, ...typed, problems };
   const listed = readTraceEvents(trace.events, `trace.${trace.id}`);
   const marked = readStretches(trace.bad, `trace.${trace.id}`);
-  problems.push(...(trace.eventsFrom === 'list' ? listed.problems : []), ...marked.problems);
+  const trains = readTrains(trace.trains, `trace.${trace.id}`);
+  problems.push(...(trace.eventsFrom === 'list' ? listed.problems : []), ...marked.problems, ...trains.problems);
   const reading = uses.reading;
   const stop = (found: Problem): TraceRead => ({ ...bare, problems: [...problems, found] });
   if (reading === undefined || record.columns.length === 0) return problems.some(({ weight }) => weight === 'stops') ? bare : stop(problem('trace-no-samples', 'stops', place, { rows: record.rows }));
@@ -113,7 +115,7 @@ function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWa
   const triggered = uses.trigger === undefined ? [] : risesOf(t, atSamples(timeline, record.columns[uses.trigger]!.values));
   const events: readonly TraceEvent[] = trace.eventsFrom === 'list' ? listed.events : trace.eventsFrom === 'trigger' ? triggered.map((time, i) => ({ id: `trigger${i + 1}`, time, kind: 'shot', impulse: '' })) : [];
   if (trace.eventsFrom === 'trigger' && triggered.length === 0) problems.push(problem('trace-no-trigger', 'doubt', place, {}));
-  return { ...bare, samples: { t, x }, inVolts, timeline, stretches, events, problems };
+  return { ...bare, samples: { t, x }, inVolts, timeline, stretches, events, trains: trains.trains, problems };
 }
 
 /** Times typed for the whole trace; one that cannot be read is told and counts as none. */

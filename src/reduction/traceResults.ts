@@ -1,7 +1,7 @@
 /** What the page is told of a sampled trace: how it was read, its shots and stretches, and the fitted swing. */
 import type { RecordKind } from '../readings/meanings.ts';
 import type { SwingModel } from '../traces/swingModel.ts';
-import type { Stated } from './results.ts';
+import type { Result, Stated } from './results.ts';
 
 /** A shot, tap or blank of a trace; times in s on the record's clock, throws in the SI unit of the reading. */
 export interface TraceEventTold {
@@ -28,7 +28,7 @@ export interface TraceEventTold {
 export interface Stretch {
   readonly from: number;
   readonly to: number;
-  readonly why: 'gap' | 'clipped' | 'spike' | 'blanked' | 'marked';
+  readonly why: 'gap' | 'clipped' | 'spike' | 'blanked' | 'marked' | 'train';
 }
 
 export interface TraceFitted {
@@ -48,12 +48,30 @@ export interface TraceFitted {
   readonly least: number | null;
   readonly noiseEquivalent: number | null;
   /** Scatter of the jumps that the same fit finds where nothing was fired: how many, its sd as a throw and as an impulse, N·s (null without a calibration), and over what the fit says of the noise there (null without noise). */
+  /** Pulses a second from which a train as long as a third of the longest quiet stretch tells the mean impulse bit better than single shots in that time; null where there is none. */
+  readonly trainsBetterFrom: number | null;
   readonly noFire: { readonly jumps: number; readonly sd: number; readonly impulse: number | null; readonly overFit: number | null } | null;
 }
 
 export interface TraceColumn {
   readonly header: string;
   readonly unit: string;
+}
+
+/** A train of pulses read as a steady deflection. */
+export interface TrainTold {
+  readonly id: string;
+  readonly from: number;
+  readonly to: number;
+  /** Pulses a second, and how many that makes. */
+  readonly rate: number;
+  readonly pulses: number;
+  /** In the SI unit of the reading. */
+  readonly deflection: Stated;
+  /** Crest to crest of what each pulse leaves of its own, over the deflection. */
+  readonly ripple: number;
+  /** Mean impulse bit of its pulses; null without a calibration. */
+  readonly impulse: Result | null;
 }
 
 /** A sampled trace as read and fitted. */
@@ -75,4 +93,5 @@ export interface TraceTold {
   readonly stretches: readonly Stretch[];
   readonly offset: { readonly value: number; readonly u: number | null; readonly found: boolean } | null;
   readonly fitted: TraceFitted | null;
+  readonly trains: readonly TrainTold[];
 }

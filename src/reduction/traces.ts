@@ -8,6 +8,7 @@ import { WAYS } from '../readings/ways.ts';
 import type { Choices, Session, Trace } from '../session/session.ts';
 import { pickedThrow } from '../traces/pickPeak.ts';
 import { residualSpectrum, type ResidualSpectrum } from '../traces/residualSpectrum.ts';
+import { betterFrom } from '../traces/steadyTrain.ts';
 import { restAt, swingOver } from '../traces/swingModel.ts';
 import { readQuantity } from '../units/quantity.ts';
 import type { Dimension } from '../units/units.ts';
@@ -20,7 +21,7 @@ import type { Scale } from './swings.ts';
 import type { Timing } from './timings.ts';
 import { fitTrace, type Expected, type TimedEvent, type TraceFit, type TraceFitted } from './traceFit.ts';
 import { readTrace, type TraceLibrary, type TraceRead } from './traceRead.ts';
-import type { TraceEventTold, TraceTold } from './traceResults.ts';
+import type { TraceEventTold, TraceTold, TrainTold } from './traceResults.ts';
 import type { WideSwing } from './wideSwings.ts';
 
 /** A trace read and fitted, in the unit of its own column. */
@@ -61,7 +62,7 @@ export function knownTraces(session: Session, library: TraceLibrary, bench: Benc
   });
 }
 
-function recordOf(trace: Trace, event: TimedEvent, time: number, number: number): SessionRecord {
+export function recordOf(trace: Trace, event: Pick<TimedEvent, 'id' | 'kind' | 'impulse'>, time: number, number: number): SessionRecord {
   const cell = (value: number, unit: string, text: string, spread: number | null = null): CellRead => ({ value, spread, decimals: 3, unit, text });
   const impulse = event.impulse === '' ? null : readQuantity(event.impulse, 'impulse', 'mN·s');
   return {
@@ -115,17 +116,36 @@ interface JumpFacts {
   readonly correction: number;
 }
 
+const lengthOf = (jump: Uncertain, sensor: Sensor | null): Uncertain => (sensor ? propagate(({ b, v }) => b * v, { b: sensor.slope, v: jump }) : jump);
+
+/** Angle of a throw from the rest, whichever way the scale runs: about the plumb mark where there is one; else the rest line is taken as the plumb point. */
+function unsignedAngle(length: Uncertain, rest: number, sensor: Sensor | null, scale: Scale): Uncertain {
+  const from = sensor ? propagate(({ a, b }) => a + b * rest, { a: sensor.offset, b: sensor.slope }) : exact(rest);
+  return scale.mark
+    ? propagate(swingFromMark(scale.way), { ...scale.stand, first: combine([[1, from], [1, length]]), rest: from, mark: scale.mark, scale: scale.scale })
+    : propagate(swingFromRest(scale.way), { ...scale.stand, first: length, rest: exact(0), scale: scale.scale });
+}
+
+/** Angle of a throw in the unit of the trace's column; null where the geometry does not reach, or a sensor's slope is wanted. */
+export function throwAngle(jump: Uncertain, rest: number, inVolts: boolean, scale: Scale, bench: BenchRead): Uncertain | null {
+  const sensor = inVolts ? sensorOf(bench) : null;
+  if (inVolts && !sensor) return null;
+  try {
+    const unsigned = unsignedAngle(lengthOf(jump, sensor), rest, sensor, scale);
+    return scale.sense === 1 ? unsigned : combine([[-1, unsigned]]);
+  } catch (failure) {
+    if (!(failure instanceof RangeError)) throw failure;
+    return null;
+  }
+}
+
 function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, sensor, correction }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
   const place = { sheetName: record.sheetName, record: record.id };
   const swing: Swing = { record, configuration: record.kind === 'tap' ? 'taps' : 'shots', readings: { restFrom: null, rest: null, first: null, next: [] }, angle: null, launch: null, jump: { value: jump, dimension } };
   if (Math.abs(stepInU) > STEP_FAULT) problems.push(problem('trace-position-step', 'doubt', place, { time: record.time!.value, inU: stepInU }));
-  const length = sensor ? propagate(({ b, v }) => b * v, { b: sensor.slope, v: jump }) : jump;
-  const from = sensor ? propagate(({ a, b }) => a + b * rest, { a: sensor.offset, b: sensor.slope }) : exact(rest);
+  const length = lengthOf(jump, sensor);
   try {
-    // About the plumb mark where there is one; else the rest line is taken as the plumb point.
-    const unsigned = scale.mark
-      ? propagate(swingFromMark(scale.way), { ...scale.stand, first: combine([[1, from], [1, length]]), rest: from, mark: scale.mark, scale: scale.scale })
-      : propagate(swingFromRest(scale.way), { ...scale.stand, first: length, rest: exact(0), scale: scale.scale });
+    const unsigned = unsignedAngle(length, rest, sensor, scale);
     const solved = correction === 0 ? unsigned : combine([[1, unsigned], [1, exact(correction)]]);
     const angle = scale.sense === 1 ? solved : combine([[-1, solved]]);
     return { ...swing, angle, launch: { full: angle, smallAngle: angle } };
@@ -186,14 +206,24 @@ export function timingsOfTraces(known: readonly TraceKnown[], wide: ReadonlyMap<
   });
 }
 
+/** Single shots are taken to be fired as far apart as those of the record; without them, some periods. */
+const SHOTS_APART = 5;
+
+function betterRate({ fit, quietTrain }: TraceFit, uJump: number | null): number | null {
+  if (!quietTrain || uJump === null || uJump === 0) return null;
+  const gaps = fit.times.slice(1).map((time, k) => time - fit.times[k]!).sort((a, b) => a - b);
+  const gap = gaps[gaps.length >> 1] ?? (SHOTS_APART * 2 * Math.PI) / fit.frequency;
+  return betterFrom(fit.frequency, quietTrain.u, uJump, Math.max(1, quietTrain.seconds / gap));
+}
+
 /** What the page is told of each trace; impulses by the records that its jumps became. */
-export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, wide: WideSwing | null, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null): TraceTold {
+export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, wide: WideSwing | null, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null, trains: readonly TrainTold[]): TraceTold {
   const { found } = fitted;
   const { samples, timeline } = read;
   const dimension = choices.readingWay === 'cameraPivotMarker' ? 'angle' : WAYS[choices.readingWay].reads;
   const bare: TraceTold = {
     id: trace.id, name: trace.name, rows: read.record?.rows ?? null, columns: read.columns, uses: { time: read.uses.time ?? null, reading: read.uses.reading ?? null, trigger: read.uses.trigger ?? null },
-    from: samples?.t[0] ?? 0, to: samples?.t[samples.t.length - 1] ?? 0, spacing: timeline?.spacing.usual ?? 0, dimension: read.inVolts ? 'voltage' : dimension, offset: fitted.offset, stretches: fitted.stretches, fitted: null,
+    from: samples?.t[0] ?? 0, to: samples?.t[samples.t.length - 1] ?? 0, spacing: timeline?.spacing.usual ?? 0, dimension: read.inVolts ? 'voltage' : dimension, offset: fitted.offset, stretches: fitted.stretches, fitted: null, trains,
     events: fitted.events.map((event): TraceEventTold => ({ id: event.id, record: null, kind: event.kind, listed: event.listed, time: event.time, timeU: null, jump: null, stepInU: 0, picked: null })),
   };
   if (!found || !frequency || !ratio) return bare;
@@ -221,6 +251,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
       period: { value: (2 * Math.PI) / (factor * frequency.value), u: ((2 * Math.PI) / frequency.value ** 2) * standardUncertainty(frequency) }, ratio: { value: ratio.value, u: standardUncertainty(ratio) },
       noise, colour: noise > 0 ? (found.factorOfSwing * found.every * fit.noise ** 2) / noise ** 2 : 1, model: fit.model, spectrum: { frequency: spectrum?.frequency ?? [], amplitude: spectrum?.amplitude ?? [] }, hums: spectrum?.lines ?? [],
       least, noiseEquivalent: least === null ? null : impulseOf(least),
+      trainsBetterFrom: betterRate(found, least),
       noFire: noFire && { jumps: noFire.jumps.length, sd: noFire.sd, impulse: impulseOf(noFire.sd), overFit: byFit === 0 ? null : Math.sqrt(noFire.jumps.reduce((sum, jump, k) => sum + (jump / (byFit * noFire.units[k]!)) ** 2, 0) / noFire.jumps.length) },
     },
   };

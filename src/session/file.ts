@@ -19,7 +19,7 @@ const VERSION = 1;
 /** Keys in the order in which they are written, whatever order edits left them in; others follow as they stand. */
 const KEY_ORDER = [
   'format', 'version', 'title', 'name', 'place', 'date', 'remark', 'demo', 'entries', 'parts', 'instruments', 'freeSwing', 'traces', 'forceRecords', 'pulseSamples', 'choices', 'sheets', 'marks',
-  'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'bytes', 'uses', 'timeUnit', 'readingUnit', 'rate', 'exposure', 'eventsFrom', 'events', 'offset', 'blank', 'refine', 'bad', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
+  'id', 'origin', 'text', 'plusMinus', 'k', 'sha256', 'bytes', 'uses', 'timeUnit', 'readingUnit', 'rate', 'exposure', 'eventsFrom', 'events', 'offset', 'blank', 'refine', 'bad', 'trains', 'delimiter', 'decimal', 'columns', 'role', 'unit', 'by', 'kindOfAll', 'edits', 'added', 'cells',
   'kind', 'setAside', 'reason', 'serial', 'certificate', 'due', 'measures', 'scale', 'instrument',
 ];
 
@@ -249,7 +249,7 @@ class Reading {
       return [{
         id: found['id'], name: text('name'), sha256: found['sha256'], bytes: this.take(`${where}.bytes`, found['bytes'], isCount, 0), uses: this.uses(`${where}.uses`, found['uses']),
         timeUnit: text('timeUnit'), readingUnit: text('readingUnit'), rate: text('rate'), exposure: text('exposure'), eventsFrom: this.take(`${where}.eventsFrom`, found['eventsFrom'], isOneOf(['list', 'trigger', 'found']), 'list'), events: this.lines(`${where}.events`, found['events']),
-        offset: text('offset'), blank: text('blank'), refine: text('refine'), bad: this.lines(`${where}.bad`, found['bad']),
+        offset: text('offset'), blank: text('blank'), refine: text('refine'), bad: this.lines(`${where}.bad`, found['bad']), trains: this.lines(`${where}.trains`, found['trains']),
       }];
     });
   }

@@ -170,11 +170,13 @@ export interface Trace {
   readonly refine: string;
   /** Stretches marked as bad, "12.5 13.1" in s on the record's clock. */
   readonly bad: readonly TraceLine[];
+  /** Trains of pulses read as a steady deflection, "20 60 50 Hz": from, to, pulses a second. */
+  readonly trains: readonly TraceLine[];
 }
 
 /** How a trace is read before anyone has said anything. */
 export const FIRST_TRACE: Omit<Trace, 'id' | 'name' | 'sha256' | 'bytes'> = {
-  uses: {}, timeUnit: '', readingUnit: '', rate: '', exposure: '', eventsFrom: 'list', events: [], offset: '', blank: '', refine: '', bad: [],
+  uses: {}, timeUnit: '', readingUnit: '', rate: '', exposure: '', eventsFrom: 'list', events: [], offset: '', blank: '', refine: '', bad: [], trains: [],
 };
 
 export interface Session {

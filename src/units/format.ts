@@ -183,6 +183,7 @@ const FAMILIES: Readonly<Record<Dimension, readonly [usual: string, ...family: s
   angularFrequency: ['rad/s', 'rad/s'],
   calibrationFactor: ['mN·m·s/rad', 'µN·m·s/rad', 'mN·m·s/rad', 'N·m·s/rad'],
   acceleration: ['m/s²', 'mm/s²', 'm/s²'],
+  frequency: ['Hz', 'mHz', 'Hz', 'kHz'],
   sensorSlope: ['mm/V', 'µm/V', 'mm/V', 'm/V'],
   number: ['1', '1'],
   pixel: ['px', 'px'],

@@ -4,7 +4,7 @@ import { unitKeys } from './unit-spelling.ts';
 export type Dimension =
   | 'length' | 'mass' | 'angle' | 'latitude' | 'time' | 'impulse' | 'angularImpulse' | 'pressure' | 'voltage'
   | 'momentOfInertia' | 'rotationalStiffness' | 'angularFrequency' | 'calibrationFactor' | 'acceleration' | 'number'
-  | 'pixel' | 'count' | 'pixelScale' | 'stiffness' | 'force' | 'celsius' | 'density' | 'modulus' | 'capacitance' | 'resistance' | 'magneticFluxDensity' | 'sensorSlope';
+  | 'pixel' | 'count' | 'pixelScale' | 'stiffness' | 'force' | 'celsius' | 'density' | 'modulus' | 'capacitance' | 'resistance' | 'magneticFluxDensity' | 'sensorSlope' | 'frequency';
 
 /** One unit; value in SI units = value × times / per, so that decimal factors are correctly rounded. */
 export interface Unit {
@@ -83,6 +83,7 @@ const ROWS: Readonly<Record<Dimension, readonly Row[]>> = {
   capacitance: [['F', 1, 1], ['mF', 1, 1e3], ['µF', 1, 1e6], ['nF', 1, 1e9]],
   resistance: [['Ω', 1, 1, 'ohm'], ['mΩ', 1, 1e3, 'mohm'], ['kΩ', 1e3, 1, 'kohm']],
   magneticFluxDensity: [['T', 1, 1], ['mT', 1, 1e3], ['µT', 1, 1e6]],
+  frequency: [['Hz', 1, 1, '1/s'], ['kHz', 1000, 1], ['mHz', 1, 1000], ['1/min', 1, 60]],
   sensorSlope: [['m/V', 1, 1], ['mm/V', 1, 1e3], ['µm/V', 1, 1e6], ['µm/mV', 1, 1e3], ['in/V', 254, 1e4]],
   density: [['kg/m³', 1, 1], ['g/cm³', 1e3, 1]],
   modulus: [['Pa', 1, 1], ['kPa', 1e3, 1], ['MPa', 1e6, 1], ['GPa', 1e9, 1], ['N/mm²', 1e6, 1]],

@@ -257,3 +257,48 @@ describe('a trace whose swings are wide', () => {
     expect(codes(large(0, 0.05))).not.toContain('trace-large-swing');
   });
 });
+
+describe('a train of pulses', () => {
+  /** Fifty pulses a second from 20 s to 40 s, and two shots, one on each side. */
+  const pulsed = (noise = 0): Traced => {
+    const { normal } = draws(12);
+    const inTrain = Array.from({ length: 1000 }, (_, k) => on(20 + (k + 0.5) / 50));
+    const small = (2e-6 * ARM) / K;
+    const events = [8, ...inTrain, 50];
+    const jumps = [(1e-4 * ARM) / K, ...inTrain.map(() => small), (1.2e-4 * ARM) / K];
+    const { t, theta } = struck({ frequency: W, ratio: Z, share: 1, events, jumps, seconds: 70, rate: RATE, start: [0, 0] });
+    const text = ['Time (s);Displacement (µm)', ...t.map((time, i) => `${exactly(time)};${(3e5 * Math.sin(theta[i]!) + noise * normal()).toFixed(3)}`)].join('\n');
+    return bench(text, '8\n50', {}, { trains: [{ id: 'p1', text: '20 40 50 Hz' }] });
+  };
+
+  it('read as a steady deflection gives its mean impulse bit, and the shots beside it theirs', () => {
+    const r = reduced(pulsed());
+    const [train] = r.traces[0]!.trains;
+    expect(train!.pulses).toBe(1000);
+    expect(train!.impulse!.value / 2e-6).toBeCloseTo(1, 2);
+    expect(bits(pulsed()).map((bit) => bit * 1e4)).toEqual([expect.closeTo(1, 2), expect.closeTo(1.2, 2)]);
+    expect(r.problems.map(({ code }) => code)).not.toContain('trace-position-step');
+  });
+
+  it('has an uncertainty of its own, and what is common', () => {
+    const { impulse, deflection } = reduced(pulsed(5)).traces[0]!.trains[0]!;
+    expect(Math.abs(impulse!.value - 2e-6)).toBeLessThan(3.5 * impulse!.u + 1e-8);
+    // The reading radius, 0.5 %.
+    expect(impulse!.u / impulse!.value).toBeGreaterThan(0.005);
+    expect(deflection.u).toBeGreaterThan(0);
+  });
+
+  it('the page says from which rate on it is the better way', () => {
+    const quiet = reduced(bench(trace({ noise: 5 }), list));
+    expect(quiet.traces[0]!.fitted!.trainsBetterFrom).toBeGreaterThan(0.05);
+    expect(quiet.traces[0]!.fitted!.trainsBetterFrom).toBeLessThan(50);
+  });
+
+  it('that is too slow, cannot be read, or has no rest beside it, is said', () => {
+    const { session, library } = pulsed();
+    const withTrain = (text: string, events: Trace['events'] = []): readonly string[] => codes({ session: { ...session, traces: [{ ...session.traces[0]!, events, trains: [{ id: 'p1', text }] }] }, library });
+    expect(withTrain('20 40 1.2 Hz')).toContain('trace-train-slow');
+    expect(withTrain('20 40')).toContain('trace-train-not-read');
+    expect(withTrain('20 40 50 Hz', [{ id: 'a', text: '19.95' }, { id: 'b', text: '40.05' }])).toContain('trace-train-not-fitted');
+  });
+});

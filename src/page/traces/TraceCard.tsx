@@ -4,7 +4,7 @@ import type { TracePicture } from '../../numeric/minMaxPyramid.ts';
 import { humWords } from '../../plots/traceSpectrum.ts';
 import type { Problem } from '../../problems/problems.ts';
 import { sentence } from '../../problems/sentences.ts';
-import type { TraceTold } from '../../reduction/traceResults.ts';
+import type { TraceTold, TrainTold } from '../../reduction/traceResults.ts';
 import { linesAgain, removeTrace, setTrace, type Edit } from '../../session/edits.ts';
 import type { Trace, TraceUse } from '../../session/session.ts';
 import type { TraceState } from '../../store/traceDesk.ts';
@@ -65,6 +65,13 @@ function noFireSentence({ jumps, sd, impulse, overFit }: NonNullable<NonNullable
   return isBlank ? `No shot is in it, so it gives its limits alone. ${begin}: decision limit ${words(DECISION)}, detection limit ${words(DETECTION)} (5 % each way).` : `${begin}${fits}; detection limit ${words(DETECTION)}.`;
 }
 
+/** κθ/(r ℓ) in words. */
+function trainSentence({ from, to, rate, pulses, deflection, ripple, impulse }: TrainTold, dimension: TraceTold['dimension']): string {
+  const unit = chooseUnit([deflection.value], dimension);
+  const bit = impulse === null ? 'no impulse bit without a calibration and a lever arm' : `mean impulse bit κθ/(r ℓ) = ${withPlusMinus(impulse.value, impulse.U, chooseUnit([impulse.value], 'impulse'))} (U, k = ${plain(impulse.k, chooseUnit([1], 'number'), 3)})`;
+  return `Train of ${pulses} pulses at ${plain(rate, chooseUnit([rate], 'frequency'), 4)}, ${plain(from, chooseUnit([to], 'time'), 5)} to ${plain(to, chooseUnit([to], 'time'), 5)}: steady deflection ${withPlusMinus(deflection.value, deflection.u, unit)} (u), ${bit}. Each pulse moves the reading by ${plain(100 * ripple, chooseUnit([1], 'number'), 2)} % of that.`;
+}
+
 function sizeSentence({ rows, from, to, spacing }: TraceTold): string {
   const span = chooseUnit([to - from], 'time');
   const step = chooseUnit([spacing], 'time');
@@ -108,6 +115,7 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
       )}
       {problems.map((found) => <p key={`${found.code} ${found.place.line ?? ''} ${JSON.stringify(found.facts)}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
       {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told)}</p>}
+      {told?.trains.map((train) => <p key={train.id} className={styles.told}>{trainSentence(train, told.dimension)}</p>)}
       {told !== undefined && picture !== null && <TracePictures trace={trace} told={told} picture={picture} change={change} />}
       {told !== undefined && told.events.length > 0 && told.fitted !== null && (
         <details className={styles.how}>
@@ -133,6 +141,19 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
           </div>
         </details>
       )}
+      <details className={styles.how} open={trace.trains.length > 0}>
+        <summary>Trains of pulses read as a steady deflection ({trace.trains.length})</summary>
+        <div className={styles.list}>
+          <label htmlFor={`${id}-trains`} className="quiet">One a line, from, to and pulses a second: 20 60 50 Hz; on the record’s clock. The record wants some of its rest before or after it.</label>
+          <textarea
+            id={`${id}-trains`}
+            spellCheck={false}
+            value={trace.trains.map(({ text }) => text).join('\n')}
+            onChange={({ target: { value } }) => change(named('trains of pulses'), setTrace(trace.id, { trains: linesAgain(trace.trains, value) }), `${trace.id}.trains`)}
+          />
+        </div>
+        {told?.fitted?.trainsBetterFrom != null && <p className="quiet">By the noise of this record a train tells the mean impulse bit better than shots fired one by one from about {plain(told.fitted.trainsBetterFrom, chooseUnit([told.fitted.trainsBetterFrom], 'frequency'), 2)} on, in the same time.</p>}
+      </details>
       <details className={styles.how} open={trace.bad.length > 0}>
         <summary>Stretches marked as bad ({trace.bad.length})</summary>
         <div className={styles.list}>
