@@ -25,7 +25,7 @@ function logarithmic(base: uPlot.Axis): uPlot.Axis {
     },
     filter: (_, splits) => splits,
     values: (_, splits) => {
-      const isFew = splits.filter((split) => /^1/.test(split.toExponential())).length < 3;
+      const isFew = splits.filter((split) => split.toExponential().startsWith('1')).length < 3;
       return splits.map((split) => ((isFew ? /^[125]/ : /^1/).test(split.toExponential()) ? inPlain(split) : ''));
     },
   };

@@ -13,6 +13,8 @@ export type TraceCode = Extract<
   | 'trace-not-fitted'
   | 'trace-position-step'
   | 'trace-large-swing'
+  | 'trace-camera-scale-differs'
+  | 'trace-camera-leans'
   | 'trace-train-not-read'
   | 'trace-train-not-fitted'
   | 'trace-train-slow'
@@ -62,6 +64,10 @@ export function traceWords(code: TraceCode, { text, number, figure, quantity, ma
       return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
     case 'trace-large-swing':
       return text('how') === 'full' ? `swings reach ${figure('degrees', 3)}°: its jumps are solved with the full pendulum, which differs from the small swing by up to ${figure('percent', 2)} %${number('drag') > 0 ? `, with a drag that goes as the square of the speed (β = ${figure('drag', 2)} a radian)` : ''}.` : `swings reach ${figure('degrees', 3)}°, and the full pendulum could not be fitted; the small swing’s equation is used, off by up to ${figure('percent', 2)} %.`;
+    case 'trace-camera-scale-differs':
+      return `the radius of the marker’s arc in the picture differs by ${figure('percent', 2)} % from scale times radius as stated, ${figure('inU', 2)} times the uncertainty of that. Check the pixels per millimetre (was its scale in the plane of the swing?) and the radius; the lens bends, too.`;
+    case 'trace-camera-leans':
+      return `the plumb line leans by ${figure('degrees', 2)}° in the picture, which makes every reading across ${figure('percent', 2)} % too small. Set the camera upright, or read pivot and marker, where it makes no difference.`;
     case 'trace-train-not-read':
       return `line ${text('at')} of its trains, “${text('found')}”, cannot be read. A train is written 20 60 50 Hz: from, to, pulses a second.`;
     case 'trace-train-not-fitted':
@@ -79,7 +85,7 @@ export function traceWords(code: TraceCode, { text, number, figure, quantity, ma
     case 'trace-rate-missing':
       return 'its samples or frames are counted and nothing says how many a second. Write that under “How it is read”.';
     case 'trace-pivot-missing':
-      return 'pivot and marker are read from the picture: the marker’s row and the pivot’s place are wanted, as columns here or the pivot under Reading.';
+      return 'pivot and marker are read from the picture: the marker’s row is wanted as a column here, and the pivot’s place as columns or under Reading: the arc of this marker is too short to tell where its centre is.';
     case 'trace-sensor-slope-missing':
       return 'it is in volts. Write the slope of the sensor’s calibration line, under Reading, or the unit of its reading.';
     case 'trace-offset-found':

@@ -131,7 +131,7 @@ export function reduce(session: Session, explain: string | null, library: TraceL
     weights: weights?.told ?? null,
     addedMasses: masses,
     tapStudy: study,
-    traces: ground.traces.map((known) => traceTold(known, choices, ground.wide.get(known.trace.id) ?? null, impulseOfThrow, trainsOf(known))),
+    traces: ground.traces.map((known) => traceTold(known, choices, bench, ground.wide.get(known.trace.id) ?? null, impulseOfThrow, trainsOf(known))),
     forceRecords: ground.forceRecords,
     comparisons: tapsAgainst({ damping, timings, bodies, records: records.filter(counts) }),
     agreement,

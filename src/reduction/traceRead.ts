@@ -5,13 +5,14 @@ import type { SampledRecord } from '../readings/sampled/sampledRecord.ts';
 import { proposeUses, type ProposedUses } from '../readings/sampled/sampledUses.ts';
 import { atSamples, timelineOf, timeUnitNamed, type SampleClock, type Timeline } from '../readings/sampled/timeline.ts';
 import { readStretches, readTraceEvents, type TraceEvent, readTrains, type TimedTrain } from '../readings/traceEvents.ts';
-import { pictureAngle, WAYS } from '../readings/ways.ts';
+import { WAYS } from '../readings/ways.ts';
 import { TRACE_USES, type Choices, type Trace, type TraceUse } from '../session/session.ts';
 import { extentOf } from '../numeric/samples.ts';
 import { clippedSpans, leastStep, maskOf, spikeSpans } from '../traces/faults.ts';
 import { risesOf } from '../traces/findShots.ts';
 import { readNumber, readQuantity } from '../units/quantity.ts';
 import { toSi, unitNamed, type Dimension, type Unit } from '../units/units.ts';
+import { anglesOf, trackOf, type CameraTrack } from './camera.ts';
 import type { BenchRead } from './entries.ts';
 import { valueOf } from './stand.ts';
 import type { Stretch, TraceColumn } from './traceResults.ts';
@@ -26,6 +27,7 @@ export interface TraceRead {
   readonly uses: Readonly<Partial<Record<TraceUse, number>>>;
   /** The reading is in volts and the sensor's line turns it into a length. */
   readonly inVolts: boolean;
+  readonly camera: CameraTrack | null;
   /** null where there is nothing to be fitted. */
   readonly samples: { readonly t: Float64Array; readonly x: Float64Array } | null;
   readonly timeline: Timeline | null;
@@ -58,7 +60,7 @@ function proposedUses(record: SampledRecord): ProposedUses {
 }
 
 /** Uses that a way of reading has columns for. */
-export const usesOfWay = (way: Choices['readingWay']): readonly TraceUse[] => TRACE_USES.filter((use) => way === 'cameraPivotMarker' || (use !== 'down' && use !== 'pivotAcross' && use !== 'pivotDown'));
+export const usesOfWay = (way: Choices['readingWay']): readonly TraceUse[] => TRACE_USES.filter((use) => way === 'cameraPivotMarker' || (way === 'cameraMarker' && use === 'down') || (use !== 'down' && use !== 'pivotAcross' && use !== 'pivotDown'));
 
 /** Asked for at every recalculation; the samples are read again only where the trace itself is read otherwise. */
 export function readTrace(trace: Trace, library: TraceLibrary, choices: Choices, bench: BenchRead): TraceRead {
@@ -75,7 +77,7 @@ export function readTrace(trace: Trace, library: TraceLibrary, choices: Choices,
   return read;
 }
 
-const NOTHING: TraceRead = { record: null, columns: [], uses: {}, inVolts: false, samples: null, timeline: null, stretches: [], events: [], trains: [], exposure: 0, blank: 0, refine: 0, offset: 0, problems: [] };
+const NOTHING: TraceRead = { record: null, columns: [], uses: {}, inVolts: false, camera: null, samples: null, timeline: null, stretches: [], events: [], trains: [], exposure: 0, blank: 0, refine: 0, offset: 0, problems: [] };
 
 function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWay'], pivot: readonly (number | null)[], place: Place): TraceRead {
   const problems: Problem[] = [...record.problems];
@@ -104,7 +106,7 @@ function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWa
   if (t.length < FEWEST) return timeline.problems.some(({ weight }) => weight === 'stops') ? { ...bare, problems } : stop(problem('trace-no-samples', 'stops', place, { rows: t.length }));
   const values = valuesOf(trace, record, { uses, timeline, way, pivot, place }, problems);
   if (!values) return { ...bare, problems };
-  const { x, inVolts } = values;
+  const { x, inVolts, camera } = values;
   const [low, high] = extentOf(x);
   if (low === high) return stop(problem('trace-constant', 'stops', place, {}));
   const stretches = leftOut(t, x, timeline, marked.stretches);
@@ -115,7 +117,7 @@ function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWa
   const triggered = uses.trigger === undefined ? [] : risesOf(t, atSamples(timeline, record.columns[uses.trigger]!.values));
   const events: readonly TraceEvent[] = trace.eventsFrom === 'list' ? listed.events : trace.eventsFrom === 'trigger' ? triggered.map((time, i) => ({ id: `trigger${i + 1}`, time, kind: 'shot', impulse: '' })) : [];
   if (trace.eventsFrom === 'trigger' && triggered.length === 0) problems.push(problem('trace-no-trigger', 'doubt', place, {}));
-  return { ...bare, samples: { t, x }, inVolts, timeline, stretches, events, trains: trains.trains, problems };
+  return { ...bare, samples: { t, x }, inVolts, camera, timeline, stretches, events, trains: trains.trains, problems };
 }
 
 /** Times typed for the whole trace; one that cannot be read is told and counts as none. */
@@ -173,17 +175,18 @@ interface ValuesFacts {
 }
 
 /** The reading of each sample, in SI; volts where the sensor's line is to turn them into lengths. */
-function valuesOf(trace: Trace, record: SampledRecord, { uses, timeline, way, pivot, place }: ValuesFacts, problems: Problem[]): { readonly x: Float64Array; readonly inVolts: boolean } | null {
+function valuesOf(trace: Trace, record: SampledRecord, { uses, timeline, way, pivot, place }: ValuesFacts, problems: Problem[]): { readonly x: Float64Array; readonly inVolts: boolean; readonly camera: CameraTrack | null } | null {
   const column = record.columns[uses.reading!]!;
   const at = (use: TraceUse): Float64Array | null => (uses[use] === undefined ? null : atSamples(timeline, record.columns[uses[use]]!.values));
   if (way === 'cameraPivotMarker') {
     const [across, down, pivotAcross, pivotDown] = [at('reading')!, at('down'), at('pivotAcross'), at('pivotDown')];
     const [fixedAcross, fixedDown] = pivot;
-    if (!down || (!pivotAcross && fixedAcross == null) || (!pivotDown && fixedDown == null)) {
+    const angles = down && anglesOf(timeline.t, { across, down, pivotAcross: pivotAcross ?? fixedAcross ?? null, pivotDown: pivotDown ?? fixedDown ?? null });
+    if (!angles) {
       problems.push(problem('trace-pivot-missing', 'stops', place, {}));
       return null;
     }
-    return { x: across.map((u, i) => pictureAngle({ across: u, down: down[i]!, pivotAcross: pivotAcross?.[i] ?? fixedAcross!, pivotDown: pivotDown?.[i] ?? fixedDown! })), inVolts: false };
+    return { ...angles, inVolts: false };
   }
   const dimension: Dimension = WAYS[way].reads;
   const words = trace.readingUnit.trim() === '' ? column.unitText : trace.readingUnit;
@@ -196,7 +199,9 @@ function valuesOf(trace: Trace, record: SampledRecord, { uses, timeline, way, pi
   }
   const unit = found ?? usual;
   const values = at('reading')!;
-  return { x: unit.factor === 1 ? values : values.map((value) => toSi(value, unit)), inVolts: found !== null && found === volts };
+  const row = way === 'cameraMarker' ? at('down') : null;
+  const camera = row && trackOf(timeline.t, { across: values, down: row, pivotAcross: null, pivotDown: null });
+  return { x: unit.factor === 1 ? values : values.map((value) => toSi(value, unit)), inVolts: found !== null && found === volts, camera };
 }
 
 /** Clipped samples, spikes, gaps and what a person marked. */

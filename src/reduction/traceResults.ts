@@ -74,6 +74,19 @@ export interface TrainTold {
   readonly impulse: Result | null;
 }
 
+/** What a camera's track tells of itself. */
+export interface CameraTold {
+  /** Radius of the marker's arc, px; null where the arc is too short to tell it. */
+  readonly radius: Stated | null;
+  /** Angle that the arc spans, rad. */
+  readonly span: number;
+  /** How the plumb line leans in the picture, rad. */
+  readonly lean: Stated | null;
+  readonly pivotBy: 'tracked' | 'typed' | 'arc' | 'none';
+  /** That radius over scale × radius as stated; null where those were not typed. */
+  readonly against: { readonly ratio: Stated; readonly inU: number } | null;
+}
+
 /** A sampled trace as read and fitted. */
 export interface TraceTold {
   readonly id: string;
@@ -94,4 +107,6 @@ export interface TraceTold {
   readonly offset: { readonly value: number; readonly u: number | null; readonly found: boolean } | null;
   readonly fitted: TraceFitted | null;
   readonly trains: readonly TrainTold[];
+  /** null where the record is no camera's track, or has no row in the picture. */
+  readonly camera: CameraTold | null;
 }

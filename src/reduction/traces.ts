@@ -12,6 +12,7 @@ import { betterFrom } from '../traces/steadyTrain.ts';
 import { restAt, swingOver } from '../traces/swingModel.ts';
 import { readQuantity } from '../units/quantity.ts';
 import type { Dimension } from '../units/units.ts';
+import { cameraRemarks, cameraTold, scaleOfArc, type CameraTrack } from './camera.ts';
 import { readingDimension, type BenchRead } from './entries.ts';
 import { uncertainJumps } from './jumpSources.ts';
 import type { SessionRecord } from './sheets.ts';
@@ -21,7 +22,7 @@ import type { Scale } from './swings.ts';
 import type { Timing } from './timings.ts';
 import { fitTrace, type Expected, type TimedEvent, type TraceFit, type TraceFitted } from './traceFit.ts';
 import { readTrace, type TraceLibrary, type TraceRead } from './traceRead.ts';
-import type { TraceEventTold, TraceTold, TrainTold } from './traceResults.ts';
+import type { CameraTold, TraceEventTold, TraceTold, TrainTold } from './traceResults.ts';
 import type { WideSwing } from './wideSwings.ts';
 
 /** A trace read and fitted, in the unit of its own column. */
@@ -52,6 +53,7 @@ export function knownTraces(session: Session, library: TraceLibrary, bench: Benc
     const { found } = fitted;
     if (!found) return { trace, read, fitted, jumps: [], frequency: null, ratio: null };
     const { fit, factors, factorOfSwing } = found;
+    if (read.camera) problems.push(...cameraRemarks(trace.name, cameraOf(found, read.camera, session.choices, bench), session.choices.readingWay));
     const variance = fit.noise ** 2;
     const [ww, wz, zz] = fit.covariance.map((value) => value * variance * factorOfSwing) as [number, number, number];
     const { jumps, frequency, ratio } = uncertainJumps(trace.id, read.inVolts ? 'voltage' : readingDimension(session.choices), {
@@ -61,6 +63,9 @@ export function knownTraces(session: Session, library: TraceLibrary, bench: Benc
     return { trace, read, fitted, jumps, frequency, ratio };
   });
 }
+
+/** Its rest in the middle of the record. */
+const cameraOf = ({ samples: { t }, fit }: TraceFit, camera: CameraTrack, choices: Choices, bench: BenchRead): CameraTold => cameraTold(camera, restAt(fit.model, (t[0]! + t[t.length - 1]!) / 2), choices, bench);
 
 export function recordOf(trace: Trace, event: Pick<TimedEvent, 'id' | 'kind' | 'impulse'>, time: number, number: number): SessionRecord {
   const cell = (value: number, unit: string, text: string, spread: number | null = null): CellRead => ({ value, spread, decimals: 3, unit, text });
@@ -82,7 +87,8 @@ export function swingsOfTraces(known: readonly TraceKnown[], bench: BenchRead, s
       problems.push(problem('trace-sensor-slope-missing', 'stops', { sheetName: trace.name, entry: 'sensorSlope' }, {}));
       return [];
     }
-    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, dimension: read.inVolts ? 'voltage' : WAYS[scale.way].reads === 'pixel' && scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor, correction: wide.get(trace.id)?.corrections[k] ?? 0 }, scale, problems));
+    const arcScale = scaleOfArc(trace.id, read.camera);
+    return found.events.map((event, k) => swingOfJump(recordOf(trace, event, found.fit.times[k]!, k + 1), { jump: jumps[k]!, dimension: read.inVolts ? 'voltage' : WAYS[scale.way].reads === 'pixel' && scale.way === 'cameraPivotMarker' ? 'angle' : WAYS[scale.way].reads, rest: restAt(found.fit.model, found.fit.times[k]!), stepInU: stepOf(found, k), sensor, correction: wide.get(trace.id)?.corrections[k] ?? 0, arcScale }, scale, problems));
   });
 }
 
@@ -114,6 +120,8 @@ interface JumpFacts {
   readonly sensor: Sensor | null;
   /** What the full pendulum's equation adds, rad. */
   readonly correction: number;
+  /** 1 with the u of a radius that the arc itself told; null where the pivot was told. */
+  readonly arcScale: Uncertain | null;
 }
 
 const lengthOf = (jump: Uncertain, sensor: Sensor | null): Uncertain => (sensor ? propagate(({ b, v }) => b * v, { b: sensor.slope, v: jump }) : jump);
@@ -139,7 +147,7 @@ export function throwAngle(jump: Uncertain, rest: number, inVolts: boolean, scal
   }
 }
 
-function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, sensor, correction }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
+function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, sensor, correction, arcScale }: JumpFacts, scale: Scale, problems: Problem[]): Swing {
   const place = { sheetName: record.sheetName, record: record.id };
   const swing: Swing = { record, configuration: record.kind === 'tap' ? 'taps' : 'shots', readings: { restFrom: null, rest: null, first: null, next: [] }, angle: null, launch: null, jump: { value: jump, dimension } };
   if (Math.abs(stepInU) > STEP_FAULT) problems.push(problem('trace-position-step', 'doubt', place, { time: record.time!.value, inU: stepInU }));
@@ -147,7 +155,8 @@ function swingOfJump(record: SessionRecord, { jump, dimension, rest, stepInU, se
   try {
     const unsigned = unsignedAngle(length, rest, sensor, scale);
     const solved = correction === 0 ? unsigned : combine([[1, unsigned], [1, exact(correction)]]);
-    const angle = scale.sense === 1 ? solved : combine([[-1, solved]]);
+    const scaled = arcScale ? propagate(({ a, s }) => a * s, { a: solved, s: arcScale }) : solved;
+    const angle = scale.sense === 1 ? scaled : combine([[-1, scaled]]);
     return { ...swing, angle, launch: { full: angle, smallAngle: angle } };
   } catch (failure) {
     if (!(failure instanceof RangeError)) throw failure;
@@ -217,13 +226,13 @@ function betterRate({ fit, quietTrain }: TraceFit, uJump: number | null): number
 }
 
 /** What the page is told of each trace; impulses by the records that its jumps became. */
-export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, wide: WideSwing | null, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null, trains: readonly TrainTold[]): TraceTold {
+export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown, choices: Choices, bench: BenchRead, wide: WideSwing | null, impulseOfThrow: ((jump: number, inVolts: boolean) => number | null) | null, trains: readonly TrainTold[]): TraceTold {
   const { found } = fitted;
-  const { samples, timeline } = read;
+  const { samples, timeline, camera } = read;
   const dimension = choices.readingWay === 'cameraPivotMarker' ? 'angle' : WAYS[choices.readingWay].reads;
   const bare: TraceTold = {
     id: trace.id, name: trace.name, rows: read.record?.rows ?? null, columns: read.columns, uses: { time: read.uses.time ?? null, reading: read.uses.reading ?? null, trigger: read.uses.trigger ?? null },
-    from: samples?.t[0] ?? 0, to: samples?.t[samples.t.length - 1] ?? 0, spacing: timeline?.spacing.usual ?? 0, dimension: read.inVolts ? 'voltage' : dimension, offset: fitted.offset, stretches: fitted.stretches, fitted: null, trains,
+    from: samples?.t[0] ?? 0, to: samples?.t[samples.t.length - 1] ?? 0, spacing: timeline?.spacing.usual ?? 0, dimension: read.inVolts ? 'voltage' : dimension, offset: fitted.offset, stretches: fitted.stretches, fitted: null, trains, camera: null,
     events: fitted.events.map((event): TraceEventTold => ({ id: event.id, record: null, kind: event.kind, listed: event.listed, time: event.time, timeU: null, jump: null, stepInU: 0, picked: null })),
   };
   if (!found || !frequency || !ratio) return bare;
@@ -242,7 +251,7 @@ export function traceTold({ trace, read, fitted, frequency, ratio }: TraceKnown,
   if (!LEFT.has(found)) LEFT.set(found, leftOver(found, bare.spacing));
   const { spectrum, noise } = LEFT.get(found)!;
   return {
-    ...bare,
+    ...bare, camera: camera && cameraOf(found, camera, choices, bench),
     events: found.events.map((event, k): TraceEventTold => ({
       id: event.id, record: `${trace.id}/${event.id}`, kind: event.kind, listed: event.listed, time: fit.times[k]!, timeU: fit.timeU[k]!, jump: { value: fit.jumps[k]!, u: uOf(k) }, stepInU: stepOf(found, k),
       picked: pickedThrow(found.samples, fit.model, fit.times[k]!, fit.times[k + 1] ?? Infinity),

@@ -30,7 +30,7 @@ const event = (id: string, kind: TraceEventTold['kind'], time: number): TraceEve
 const TOLD: TraceTold = {
   id: 't1', name: 'sensor.csv', rows: T.length, columns: [], uses: { time: 0, reading: 1, trigger: null }, from: 0, to: 30, spacing: 1 / RATE, dimension: 'length', offset: null,
   events: [event('e1', 'shot', 5), event('e2', 'tap', 15)], stretches: [{ from: 7, to: 7.2, why: 'gap' }],
-  fitted: { period: { value: 1.2566, u: 1e-4 }, ratio: { value: 0.02, u: 1e-4 }, noise: 1e-5, colour: 1, model: MODEL, spectrum: { frequency: [0.1, 1, 10], amplitude: [1e-6, 2e-6, 8e-6] }, hums: [{ frequency: 6.37, amplitude: 1e-5 }], least: 2e-6, noiseEquivalent: 1e-7, noFire: null, trainsBetterFrom: null }, trains: [],
+  fitted: { period: { value: 1.2566, u: 1e-4 }, ratio: { value: 0.02, u: 1e-4 }, noise: 1e-5, colour: 1, model: MODEL, spectrum: { frequency: [0.1, 1, 10], amplitude: [1e-6, 2e-6, 8e-6] }, hums: [{ frequency: 6.37, amplitude: 1e-5 }], least: 2e-6, noiseEquivalent: 1e-7, noFire: null, trainsBetterFrom: null }, trains: [], camera: null,
 };
 
 const rising = ({ columns: [xs] }: Figure): boolean => [...xs].every((x, i) => i === 0 || x >= xs[i - 1]!);

@@ -258,6 +258,47 @@ describe('a trace whose swings are wide', () => {
   });
 });
 
+describe('a camera’s track', () => {
+  /** A marker 400 px below (320, 60) at 1.3333 px/mm, the plumb line leaning by `lean`; y downward. */
+  const [R, LEAN_AT] = [400, [320, 60]] as const;
+  const film = ({ lean = 0, noise = 0, swing = 1, pivot = false }: { readonly lean?: number; readonly noise?: number; readonly swing?: number; readonly pivot?: boolean }): string => {
+    const { normal } = draws(21);
+    const { t, theta } = struck({ frequency: W, ratio: Z, share: 1, events: TIMES, jumps: SHOTS.map((i) => (swing * i * ARM) / K), seconds: 60, rate: RATE, start: [0.002, 0] });
+    return [`t (s);x (px);y (px)${pivot ? ';pivot x (px);pivot y (px)' : ''}`, ...t.map((time, i) => `${exactly(time)};${(LEAN_AT[0] + R * Math.sin(theta[i]! + lean) + noise * normal()).toFixed(3)};${(LEAN_AT[1] + R * Math.cos(theta[i]! + lean) + noise * normal()).toFixed(3)}${pivot ? `;${LEAN_AT[0]};${LEAN_AT[1]}` : ''}`)].join('\n');
+  };
+  const large = 150;
+
+  it('without a pivot is read about the centre of its own arc, whose u goes into every impulse bit', () => {
+    const r = reduced(bench(film({ swing: large, noise: 0.3 }), list, { readingWay: 'cameraPivotMarker' }));
+    expect(r.traces[0]!.camera!.pivotBy).toBe('arc');
+    const { radius } = r.traces[0]!.camera!;
+    expect(Math.abs(radius!.value - R)).toBeLessThan(4 * radius!.u);
+    r.records.forEach(({ impulseBit }, k) => expect(Math.abs(impulseBit!.value - large * SHOTS[k]!)).toBeLessThan(3.5 * impulseBit!.u));
+    expect(r.run!.uCommon / r.run!.mean.value).toBeGreaterThan(0.9 * (radius!.u / radius!.value));
+  });
+
+  it('that is too short for that says that the pivot is wanted', () => {
+    expect(codes(bench(film({ swing: 5, noise: 0.3 }), list, { readingWay: 'cameraPivotMarker' }))).toContain('trace-pivot-missing');
+  });
+
+  it('tells its radius in pixels against the stated scale, and how it leans', () => {
+    const entries = { readingRadius: '300 mm ± 0.5 mm', pixelScale: '1.3333 px/mm ± 0.3 %' };
+    const good = reduced(bench(film({ swing: large, noise: 0.3 }), list, { readingWay: 'cameraMarker' }, {}, entries));
+    expect(Math.abs(good.traces[0]!.camera!.against!.inU)).toBeLessThan(3.5);
+    expect(good.problems.map(({ code }) => code)).not.toContain('trace-camera-leans');
+    const leaning = reduced(bench(film({ swing: large, noise: 0.3, lean: 0.07 }), list, { readingWay: 'cameraMarker' }, {}, entries));
+    expect(leaning.traces[0]!.camera!.lean!.value).toBeCloseTo(0.07, 2);
+    expect(leaning.problems.map(({ code }) => code)).toContain('trace-camera-leans');
+    const wrong = reduced(bench(film({ swing: large, noise: 0.3 }), list, { readingWay: 'cameraMarker' }, {}, { ...entries, pixelScale: '1.25 px/mm ± 0.3 %' }));
+    expect(wrong.problems.find(({ code }) => code === 'trace-camera-scale-differs')!.facts['percent']).toBeCloseTo(6.7, 0);
+  });
+
+  it('about a tracked pivot is not moved by a lean', () => {
+    const found = bits(bench(film({ lean: 0.1, pivot: true }), list, { readingWay: 'cameraPivotMarker' }));
+    found.forEach((bit, k) => expect(bit / SHOTS[k]!).toBeCloseTo(1, 2));
+  });
+});
+
 describe('a train of pulses', () => {
   /** Fifty pulses a second from 20 s to 40 s, and two shots, one on each side. */
   const pulsed = (noise = 0): Traced => {

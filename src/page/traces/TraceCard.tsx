@@ -65,6 +65,16 @@ function noFireSentence({ jumps, sd, impulse, overFit }: NonNullable<NonNullable
   return isBlank ? `No shot is in it, so it gives its limits alone. ${begin}: decision limit ${words(DECISION)}, detection limit ${words(DETECTION)} (5 % each way).` : `${begin}${fits}; detection limit ${words(DETECTION)}.`;
 }
 
+/** What the track tells of its own picture. */
+function cameraSentence({ radius, span, lean, pivotBy, against }: NonNullable<TraceTold['camera']>): string {
+  const [pixels, one, degrees] = [chooseUnit([1], 'pixel'), chooseUnit([1], 'number'), (rad: number): string => `${plain((180 / Math.PI) * rad, chooseUnit([1], 'number'), 3)}°`];
+  return [
+    radius === null ? 'The marker’s arc is too short to tell its radius.' : `The marker’s arc, over ${degrees(span)}, has a radius of ${withPlusMinus(radius.value, radius.u, pixels)} (u)${pivotBy === 'arc' ? '; its centre serves as the pivot, and its u goes into every impulse bit' : ''}.`,
+    ...(against === null ? [] : [`That is ${withPlusMinus(against.ratio.value, against.ratio.u, one)} times scale and radius as stated, ${plain(Math.abs(against.inU), one, 2)} u off.`]),
+    ...(lean === null ? [] : [`The plumb line leans by ${degrees(lean.value)} in the picture.`]),
+  ].join(' ');
+}
+
 /** κθ/(r ℓ) in words. */
 function trainSentence({ from, to, rate, pulses, deflection, ripple, impulse }: TrainTold, dimension: TraceTold['dimension']): string {
   const unit = chooseUnit([deflection.value], dimension);
@@ -115,6 +125,7 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
       )}
       {problems.map((found) => <p key={`${found.code} ${found.place.line ?? ''} ${JSON.stringify(found.facts)}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
       {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told)}</p>}
+      {told?.camera != null && <p className={styles.told}>{cameraSentence(told.camera)}</p>}
       {told?.trains.map((train) => <p key={train.id} className={styles.told}>{trainSentence(train, told.dimension)}</p>)}
       {told !== undefined && picture !== null && <TracePictures trace={trace} told={told} picture={picture} change={change} />}
       {told !== undefined && told.events.length > 0 && told.fitted !== null && (

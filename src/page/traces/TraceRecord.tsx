@@ -1,6 +1,6 @@
 /** The whole record on the sheet: looked along by mouse, touch and keys; its shots moved, added and taken out; bad stretches marked. */
 import { useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
-import type { KeyboardEvent } from 'react';
+import type { CSSProperties, KeyboardEvent } from 'react';
 import type { Inks } from '../../plots/figure.ts';
 import { afterKey, broughtIn, eventBeside, sameSight } from '../../plots/tracePanZoom.ts';
 import type { Sight } from '../../plots/tracePanZoom.ts';
@@ -27,6 +27,9 @@ interface Props {
 }
 
 const FIRST_WIDTH = 640;
+/** A readout stands to the left of its sign where that is further right than this part of the width. */
+const TURN_AT = 0.6;
+const BESIDE = 12;
 
 /** Where the record is looked at: kept while the record itself stays. */
 function useLooking(figure: RecordFigure): readonly [Looking, (change: Partial<Looking>) => void] {
@@ -46,7 +49,7 @@ export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, o
   const [looking, look] = useLooking(figure);
   const [choosing, setChoosing] = useState(false);
   const [told, setTold] = useState('');
-  const [readout, setReadout] = useState<{ readonly event: RecordEvent; readonly left: number; readonly top: number } | null>(null);
+  const [readout, setReadout] = useState<{ readonly event: RecordEvent; readonly beside: CSSProperties } | null>(null);
   const present: Looking = { ...looking, selected };
   const latest = useRef({ looking: present, look, choosing, onSelect, onMove });
   useEffect(() => {
@@ -81,7 +84,7 @@ export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, o
         latest.current.look({ place, chosen: null });
         setTold(timeWords(place, figure.spacing));
       },
-      hover: (event, left, top) => setReadout(event === null ? null : { event, left, top }),
+      hover: (event, left, top) => setReadout(event === null ? null : { event, beside: left > width.current * TURN_AT ? { right: width.current - left + BESIDE, top } : { left: left + BESIDE, top } }),
     });
     mounted.current = drawn;
     return () => {
@@ -178,7 +181,7 @@ export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, o
         onPointerDown={() => surface.current?.focus({ preventScroll: true })}
       >
         <div ref={canvas} className={figureStyles.canvas} aria-hidden="true" style={{ minHeight: RECORD_HEIGHT }} />
-        {readout !== null && <div className={figureStyles.readout} aria-hidden="true" style={readout.left > width.current * 0.6 ? { right: width.current - readout.left + 12, top: readout.top } : { left: readout.left + 12, top: readout.top }}>{readout.event.reading}</div>}
+        {readout !== null && <div className={figureStyles.readout} aria-hidden="true" style={readout.beside}>{readout.event.reading}</div>}
       </div>
       <div className={`${styles.tools} unprinted`} role="group" aria-label={`${figure.title}: its shots`}>
         {event === null ? <span className="quiet">{figure.events.length === 0 ? 'No shot yet.' : 'Choose a shot by its sign along the top.'}</span> : (
