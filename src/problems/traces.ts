@@ -13,6 +13,7 @@ export type TraceCode = Extract<
   | 'trace-not-fitted'
   | 'trace-position-step'
   | 'trace-large-swing'
+  | 'trace-two-values'
   | 'trace-camera-scale-differs'
   | 'trace-camera-leans'
   | 'trace-train-not-read'
@@ -64,6 +65,8 @@ export function traceWords(code: TraceCode, { text, number, figure, quantity, ma
       return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
     case 'trace-large-swing':
       return text('how') === 'full' ? `swings reach ${figure('degrees', 3)}°: its jumps are solved with the full pendulum, which differs from the small swing by up to ${figure('percent', 2)} %${number('drag') > 0 ? `, with a drag that goes as the square of the speed (β = ${figure('drag', 2)} a radian)` : ''}.` : `swings reach ${figure('degrees', 3)}°, and the full pendulum could not be fitted; the small swing’s equation is used, off by up to ${figure('percent', 2)} %.`;
+    case 'trace-two-values':
+      return 'its reading has two values only: the sensor stood at one end of its range or the other all the time, or this is a trigger. Take less gain, or choose another column.';
     case 'trace-camera-scale-differs':
       return `the radius of the marker’s arc in the picture differs by ${figure('percent', 2)} % from scale times radius as stated, ${figure('inU', 2)} times the uncertainty of that. Check the pixels per millimetre (was its scale in the plane of the swing?) and the radius; the lens bends, too.`;
     case 'trace-camera-leans':

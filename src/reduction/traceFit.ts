@@ -6,7 +6,7 @@ import { clockOffset } from '../traces/clockOffset.ts';
 import { maskOf } from '../traces/faults.ts';
 import { whiteFactor } from '../traces/fittedAway.ts';
 import { findJumps } from '../traces/findShots.ts';
-import { binned, everyFor } from '../traces/binned.ts';
+import { binned, everyFor, liveliest } from '../traces/binned.ts';
 import { noiseCorrelation, varianceFactor, type NoiseCorrelation } from '../traces/noiseColour.ts';
 import { noFireJumps, type NoFire } from '../traces/noFire.ts';
 import { fitSwing, type SwingFit, type SwingFitResult } from '../traces/swingFit.ts';
@@ -153,12 +153,10 @@ interface Asked {
 
 /** The record as the fit takes it: a long one by means of some samples, as many as the swing that is expected, or stands out, allows. */
 function meansOf(samples: SwingSamples, exposure: number, expected: Expected): { readonly few: SwingSamples; readonly every: number; readonly exposure: number } {
-  const most = everyFor(samples, 0);
-  if (most === 1) return { few: samples, every: 1, exposure };
-  const coarse = binned(samples, most);
-  const every = everyFor(samples, FAR * (expected?.frequency ?? likelyFrequencies(coarse.samples, 1)[0] ?? Infinity));
+  if (everyFor(samples, 0) === 1) return { few: samples, every: 1, exposure };
+  const every = everyFor(samples, FAR * (expected?.frequency ?? likelyFrequencies(liveliest(samples), 1)[0] ?? Infinity));
   if (every === 1) return { few: samples, every, exposure };
-  const made = every === most ? coarse : binned(samples, every);
+  const made = binned(samples, every);
   return { few: made.samples, every, exposure: Math.hypot(exposure, made.blur) };
 }
 

@@ -103,12 +103,13 @@ function readAfresh(trace: Trace, record: SampledRecord, way: Choices['readingWa
   const timeline = timelineOf(record, clock, needs, place);
   problems.push(...timeline.problems);
   const { t } = timeline;
-  if (t.length < FEWEST) return timeline.problems.some(({ weight }) => weight === 'stops') ? { ...bare, problems } : stop(problem('trace-no-samples', 'stops', place, { rows: t.length }));
+  if (t.length < FEWEST) return problems.some(({ weight }) => weight === 'stops') ? { ...bare, problems } : stop(problem('trace-no-samples', 'stops', place, { rows: t.length }));
   const values = valuesOf(trace, record, { uses, timeline, way, pivot, place }, problems);
   if (!values) return { ...bare, problems };
   const { x, inVolts, camera } = values;
   const [low, high] = extentOf(x);
   if (low === high) return stop(problem('trace-constant', 'stops', place, {}));
+  if (x.every((value) => value === low || value === high)) return stop(problem('trace-two-values', 'stops', place, {}));
   const stretches = leftOut(t, x, timeline, marked.stretches);
   const clipped = stretches.filter(({ why }) => why === 'clipped').length;
   if (clipped > 0) problems.push(problem('trace-clipped', 'doubt', place, { stretches: clipped, time: stretches.find(({ why }) => why === 'clipped')!.from }));

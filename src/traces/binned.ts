@@ -7,6 +7,32 @@ const LEAST_A_PERIOD = 48;
 /** A bin longer than so many times its samples' usual length has a gap in it. */
 const GAP = 1.5;
 
+/** Samples in a row that tell how fast a swing is, and places in the record that they are sought at. */
+const LOOKED_AT = 32_768;
+const PLACES = 24;
+
+/** The part of a long record in which most happens. */
+export function liveliest({ t, x, use }: SwingSamples): SwingSamples {
+  const n = t.length;
+  if (n <= LOOKED_AT) return { t, x, ...(use ? { use } : {}) };
+  let [best, most] = [0, -1];
+  for (let k = 0; k < PLACES; k++) {
+    const from = Math.floor((k * (n - LOOKED_AT)) / (PLACES - 1));
+    let [count, sum, squares] = [0, 0, 0];
+    for (let i = from; i < from + LOOKED_AT; i += 8) {
+      if (use && use[i] === 0) continue;
+      const y = x[i]! - x[from]!;
+      count += 1;
+      sum += y;
+      squares += y * y;
+    }
+    const spread = count > 0 ? squares / count - (sum / count) ** 2 : 0;
+    if (spread > most) [best, most] = [from, spread];
+  }
+  const to = best + LOOKED_AT;
+  return { t: t.subarray(best, to), x: x.subarray(best, to), ...(use ? { use: use.subarray(best, to) } : {}) };
+}
+
 /** How many samples go into one; 1 where the record is short, or a period has few. `frequency`: the fastest that the swing may have, rad/s; 0: not known. */
 export function everyFor({ t }: SwingSamples, frequency: number): number {
   const n = t.length;

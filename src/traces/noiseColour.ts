@@ -9,7 +9,7 @@ export interface NoiseCorrelation {
 }
 
 /** The correlation is taken from this many residuals at the most, of the middle of the record. */
-const MOST = 262_144;
+const MOST = 65_536;
 
 /** Parzen's taper, which leaves no variance negative. Source: Priestley, Spectral Analysis and Time Series (1981) 6.2.3, from memory. */
 export const parzen = (u: number): number => (u <= 0.5 ? 1 - 6 * u * u * (1 - u) : 2 * (1 - u) ** 3);

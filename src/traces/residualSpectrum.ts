@@ -11,9 +11,9 @@ export interface ResidualSpectrum {
 
 const MOST_POINTS = 1200;
 /** Samples of a piece; pieces overlap by half and are averaged. */
-const LONGEST_PIECE = 65_536;
+const LONGEST_PIECE = 32_768;
 /** Of more pieces, evenly some. */
-const MOST_PIECES = 6;
+const MOST_PIECES = 8;
 /** A line stands so many times above the median power about it. */
 const STANDS_OUT = 25;
 /** Half-width of what is about a line, bins. */

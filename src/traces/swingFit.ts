@@ -58,7 +58,9 @@ const SETTLED = 1e-5;
 const CLOSE = 1e-4;
 const NEAR = 1e-2;
 const PEAKS_TRIED = 6;
-const START_RATIOS = [0.002, 0.01, 0.04, 0.15, 0.4] as const;
+const START_RATIOS: readonly number[] = [0.002, 0.01, 0.04, 0.15, 0.4];
+const FIRST_RATIOS: readonly number[] = [0.01, 0.15];
+const PROMISING = 2;
 /** The search goes on this many samples of a long record, taken evenly. */
 const SEARCHED = 20_000;
 /** Samples a period that the search keeps. */
@@ -141,15 +143,22 @@ function startOf(samples: SwingSamples, events: readonly number[], { near, expos
   const stretchesAt = (omega: number): number => Math.min(SEARCHED_STRETCHES, finestFor(few, omega));
   let best: Place | null = null;
   let failed: SwingFitResult = { status: 'noSwing' };
-  const attempt = (omega: number): void => {
-    for (const ratio of START_RATIOS) {
+  const attempt = (omega: number, ratios: readonly number[] = START_RATIOS): number => {
+    let least = Infinity;
+    for (const ratio of ratios) {
       // The peak stands at the damped frequency.
       const tried = placeAt(struck, { frequency: omega / Math.sqrt(1 - ratio * ratio), ratio }, stretchesAt(omega));
       if (!isPlace(tried)) failed = tried;
-      else if (!best || tried.solved.sumOfSquares < best.solved.sumOfSquares) best = tried;
+      else {
+        least = Math.min(least, tried.solved.sumOfSquares);
+        if (!best || tried.solved.sumOfSquares < best.solved.sumOfSquares) best = tried;
+      }
     }
+    return least;
   };
-  for (const omega of omegas) attempt(omega);
+  // All peaks with little and with much damping; the best of them with all.
+  const promising = omegas.map((omega) => ({ omega, least: attempt(omega, FIRST_RATIOS) })).sort((one, other) => one.least - other.least);
+  for (const { omega } of promising.slice(0, PROMISING)) attempt(omega, START_RATIOS.filter((ratio) => !FIRST_RATIOS.includes(ratio)));
   // Where damping is strong the peaks say little: a swing may be anywhere.
   const found = (): Place | null => best;
   if ((found()?.solved.sumOfSquares ?? Infinity) > POORLY * struck.deviations) for (let k = 0; k <= GRID; k++) attempt(low * (high / low) ** (k / GRID));

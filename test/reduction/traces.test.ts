@@ -162,7 +162,9 @@ describe('what is wrong with a trace is said, and the rest goes on', () => {
     ['trace-time-not-rising', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i === 30 ? 2 : i};${i % 7}`).join('\n')}`, '5'],
     ['trace-constant', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i};3`).join('\n')}`, '5'],
     ['trace-unit-assumed', trace({ header: 'Time;Displacement' }), list],
-['trace-not-fitted', `t (s);x (mm)\n${Array.from({ length: 30 }, (_, i) => `${i};${Math.sin(i)}`).join('\n')}`, Array.from({ length: 15 }, (_, i) => String(i + 5.5)).join('\n')],
+    ['trace-two-values', `t (s);x (mm)\n${Array.from({ length: 400 }, (_, i) => `${i / 100};${Math.sin(i / 17.5) > 0 ? 5 : -5}`).join('\n')}`, '2'],
+    ['trace-no-samples', 't (s);x (mm)\n1;2', '1'],
+    ['trace-not-fitted', `t (s);x (mm)\n${Array.from({ length: 30 }, (_, i) => `${i};${Math.sin(i)}`).join('\n')}`, Array.from({ length: 15 }, (_, i) => String(i + 5.5)).join('\n')],
     ['trace-swing-from-bench', `t (s);x (mm)\n${Array.from({ length: 40 }, (_, i) => `${i / 10};${i}`).join('\n')}`, '2'],
     ['trace-too-close', trace(), `${list}\n${exactly(TIMES[1]! + 0.001)}\n${exactly(TIMES[1]! + 0.002)}`],
   ] as const)('%s', (code, text, events) => {
