@@ -69,6 +69,7 @@ const SEARCHED_STRETCHES = 16;
 const EVENTS_SEARCHED = 10;
 /** A start that leaves more than this part of the squares calls for a search over a grid of so many frequencies. */
 const POORLY = 0.2;
+const WELL = 0.02;
 const GRID = 30;
 /** Part of Σ (x − x̄)² that is lost in differences. */
 const ROUNDING = 1e-10;
@@ -159,8 +160,11 @@ function startOf(samples: SwingSamples, events: readonly number[], { near, expos
   // All peaks with little and with much damping; the best of them with all.
   const promising = omegas.map((omega) => ({ omega, least: attempt(omega, FIRST_RATIOS) })).sort((one, other) => one.least - other.least);
   for (const { omega } of promising.slice(0, PROMISING)) attempt(omega, START_RATIOS.filter((ratio) => !FIRST_RATIOS.includes(ratio)));
-  // Where damping is strong the peaks say little: a swing may be anywhere.
   const found = (): Place | null => best;
+  const nearest = found();
+  // Evenly fired shots make lines of their own beside the swing's: from them it is a few steps.
+  if (nearest && nearest.solved.sumOfSquares > WELL * struck.deviations) best = descend(struck, nearest, stretchesAt(nearest.o.frequency));
+  // Where damping is strong the peaks say little: a swing may be anywhere.
   if ((found()?.solved.sumOfSquares ?? Infinity) > POORLY * struck.deviations) for (let k = 0; k <= GRID; k++) attempt(low * (high / low) ** (k / GRID));
   const start = found();
   return start ? descend(struck, start, stretchesAt(start.o.frequency)).o : failed;

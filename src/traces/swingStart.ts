@@ -3,7 +3,7 @@ import { powers, powerOfTwo } from '../numeric/fourier.ts';
 import type { SwingSamples } from './swingSums.ts';
 
 /** Bins that the record is put into for its spectrum. */
-const MOST_BINS = 131_072;
+const MOST_BINS = 65_536;
 /** Bins of a spectrum of fewer than this hold no peak. */
 const FEWEST_BINS = 16;
 /** Peaks that are kept: among them is any that stands in a range asked for. */
