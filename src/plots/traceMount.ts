@@ -40,8 +40,8 @@ export interface MountedRecord {
   remove(): void;
 }
 
-/** Columns for each CSS px across. */
-const COLUMNS = 2;
+/** Columns for each CSS px across, each drawn from its lowest to its highest. */
+const COLUMNS = 1;
 const LEAST_COLUMNS = 100;
 
 /** Draws the record into an element; `remove` takes it and its listeners away. */

@@ -89,7 +89,7 @@ describe('a trace that is read', () => {
 
   test('swings of taps lie over those of shots', async () => {
     await open();
-    expect(screen.getByRole('figure', { name: 'Swings of taps laid over those of shots' })).toHaveAccessibleDescription(/2 of shots \(whole lines\), 1 of taps \(dashed\)\. Their means are at most \d(\.\d)? % of the throw apart/);
+    expect(await screen.findByRole('figure', { name: 'Swings of taps laid over those of shots' })).toHaveAccessibleDescription(/2 of shots \(whole lines\), 1 of taps \(dashed\)\. Their means are at most \d(\.\d)? % of the throw apart/);
   });
 
   test('a stretch marked as bad is left out, and every change can be undone', async () => {
