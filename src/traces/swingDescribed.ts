@@ -9,6 +9,8 @@ import { BLOCK, blockMotion, firstAtOrAfter, motionOver, slopeColumns, type Cell
 const NEIGHBOURS = 40;
 /** Periods about an event in which its weights are given. */
 const PERIODS_OF_WEIGHTS = 12;
+/** Part of Σ (x − x̄)² above which the sum of squares of the solution is good to five digits or more. */
+const BY_SUMS = 1e-6;
 
 export function described(struck: Struck, place: Place, stretches: number, times: readonly number[], timeU: readonly (number | null)[], isFixed: boolean): SwingFitResult {
   const { o, sums, solved } = place;
@@ -37,14 +39,20 @@ export function described(struck: Struck, place: Place, stretches: number, times
     return Float64Array.from({ length: earlier.length + 1 }, (_, d) => (d === 0 ? covariances.ofJoint(k, value) : earlier[d - 1]!) - (isFixed ? 0 : by[k]![0] * withShared[k - d]![iw]! + by[k]![1] * withShared[k - d]![iz]!));
   });
   const model = modelOf(struck, place, stretches);
-  const { residuals, sumOfSquares } = residualsOf(struck, place, stretches);
+  let left: ReturnType<typeof residualsOf> | null = null;
+  const leftOver = (): ReturnType<typeof residualsOf> => (left ??= residualsOf(struck, place, stretches));
+  // From the sums where it is no small difference of them; else from the residuals themselves.
+  const sumOfSquares = solved.sumOfSquares > BY_SUMS * struck.deviations ? solved.sumOfSquares : leftOver().sumOfSquares;
   const dof = struck.count - many - 2 - (stretches + 1) - 2;
   let stepsInU: readonly number[] | null = null;
   return {
     ...o, status: 'fitted', times: told.map((k) => times[k]!), timeU: told.map((k) => timeU[k]!), jumps: told.map((k) => jumps[k]!), covariance: [ww, wz, zz], byFrequency: told.map((k) => by[k]![0]), byRatio: told.map((k) => by[k]![1]), neighbours,
     noiseCovariance: (i, j) => rows[Math.max(told[i]!, told[j]!)]![Math.abs(told[i]! - told[j]!)] ?? 0,
     weightsOf: (k) => weightsAt(struck, place, stretches, covariances, values[told[k]!]!, told[k]!),
-    model, residuals, sumOfSquares, dof, noise: Math.sqrt(sumOfSquares / Math.max(1, dof)),
+    model, sumOfSquares, dof, noise: Math.sqrt(sumOfSquares / Math.max(1, dof)),
+    get residuals() {
+      return leftOver().residuals;
+    },
     // A solution of its own, made when it is asked for.
     get stepsInU() {
       if (stepsInU) return stepsInU;
@@ -74,7 +82,7 @@ function eachSample(struck: Struck, o: Oscillation, stretches: number, cells: re
     const cell = struck.cells[k]!;
     const { at, first, second } = struck.hats(cell, stretches);
     for (let from = cell.from; from < cell.to; from += BLOCK) {
-      motion.begin(from, Math.min(from + BLOCK, cell.to), cell.begins, struck.even[block++] === 1);
+      motion.begin(from, Math.min(from + BLOCK, cell.to), cell.begins, struck.even[block++] !== 0);
       for (let i = from; i < motion.end; i++) {
         motion.at(i);
         if (!use || use[i] !== 0) {

@@ -33,9 +33,13 @@ export interface Cell {
 export const SUMS = 27;
 
 /** The recurrence for evenly spaced samples begins anew after so many. */
-export const BLOCK = 256;
+export const BLOCK = 64;
 /** Spacings that differ by less than this part of themselves are even. */
 const EVEN = 1e-6;
+/** Steps of two blocks that differ by less are one. */
+const SAME_STEP = 1e-10;
+export const EVEN_BLOCK = 1;
+const WHOLE_BLOCK = 2;
 
 /** Cells in order, every sample in one. Valid: events and knots in order; the outer knots at or beyond the ends. */
 export function cellsOf({ t }: SwingSamples, events: readonly number[], knots: readonly number[]): readonly Cell[] {
@@ -67,17 +71,20 @@ export function firstAtOrAfter(t: Float64Array, time: number, low: number): numb
   return from;
 }
 
-/** Which blocks of BLOCK samples go evenly, cell by cell. */
-export function evenBlocks({ t }: SwingSamples, cells: readonly Cell[]): Uint8Array {
+/** Which blocks of BLOCK samples go evenly, cell by cell: EVEN_BLOCK, or WHOLE_BLOCK where none of all BLOCK is left out; else 0. */
+export function evenBlocks({ t, use }: SwingSamples, cells: readonly Cell[]): Uint8Array {
   const blocks: number[] = [];
   for (const { from, to } of cells) {
     for (let at = from; at < to; at += BLOCK) {
       const end = Math.min(at + BLOCK, to);
       const step = end - at > 1 ? (t[end - 1]! - t[at]!) / (end - at - 1) : 0;
-      let even = 1;
-      for (let i = at + 1; i < end; i++) if (Math.abs(t[i]! - t[at]! - (i - at) * step) > EVEN * step) {
-        even = 0;
-        break;
+      let even = end - at === BLOCK ? WHOLE_BLOCK : EVEN_BLOCK;
+      for (let i = at; i < end; i++) {
+        if (Math.abs(t[i]! - t[at]! - (i - at) * step) > EVEN * step) {
+          even = 0;
+          break;
+        }
+        if (use?.[i] === 0) even = EVEN_BLOCK;
       }
       blocks.push(even);
     }
@@ -95,6 +102,8 @@ export function swingSums({ t, x, use }: SwingSamples, cells: readonly Cell[], e
   const [fall, turn] = [-z * w, w * root];
   const [kr, ki] = exposureFactor(fall, turn, exposure);
   let block = 0;
+  const powers = new Float64Array(15);
+  let powersStep = NaN;
   for (let k = 0; k < cells.length; k++) {
     const { begins, from, to, knotTime, knotStep } = cells[k]!;
     let cc = 0, cd = 0, dd = 0, scc = 0, scd = 0, sdd = 0, sscc = 0, sscd = 0, ssdd = 0;
@@ -102,7 +111,8 @@ export function swingSums({ t, x, use }: SwingSamples, cells: readonly Cell[], e
     let n = 0, su = 0, suu = 0, sx = 0, sux = 0, sxx = 0;
     for (let at = from; at < to; at += BLOCK) {
       const end = Math.min(at + BLOCK, to);
-      const isEven = even[block++] === 1;
+      const kind = even[block++]!;
+      const isEven = kind !== 0;
       const step = isEven && end - at > 1 ? (t[end - 1]! - t[at]!) / (end - at - 1) : 0;
       const [first, stepFall] = [t[at]! - begins, Math.exp(fall * step)];
       const [rc, rd] = [stepFall * Math.cos(turn * step), stepFall * Math.sin(turn * step)];
@@ -110,6 +120,46 @@ export function swingSums({ t, x, use }: SwingSamples, cells: readonly Cell[], e
       const [c0, d0] = [e0 * Math.cos(turn * first), e0 * Math.sin(turn * first)];
       let c = kr * c0 - ki * d0;
       let d = kr * d0 + ki * c0;
+      if (kind === WHOLE_BLOCK) {
+        if (!(Math.abs(step - powersStep) <= SAME_STEP * step)) {
+          blockPowers(rc, rd, powers);
+          powersStep = step;
+        }
+        const l0r = powers[0]!, l0i = powers[1]!, l1r = powers[2]!, l1i = powers[3]!, l2r = powers[4]!, l2i = powers[5]!;
+        const q0r = powers[6]!, q0i = powers[7]!, q1r = powers[8]!, q1i = powers[9]!, q2r = powers[10]!, q2i = powers[11]!;
+        const m0 = powers[12]!, m1 = powers[13]!, m2 = powers[14]!;
+        // Σ i^m A_i, and halves of Σ i^m |A_i|², Σ i^m A_i², of A_i = C_i + iD_i = A_0 ρ^i.
+        const [a0r, a0i, a1r, a1i, a2r, a2i] = [c * l0r - d * l0i, c * l0i + d * l0r, c * l1r - d * l1i, c * l1i + d * l1r, c * l2r - d * l2i, c * l2i + d * l2r];
+        const [size, re, im] = [(c * c + d * d) / 2, (c * c - d * d) / 2, c * d];
+        const [s0, s1, s2] = [size * m0, size * m1, size * m2];
+        const [e0r, e0i, e1r, e1i, e2r, e2i] = [re * q0r - im * q0i, re * q0i + im * q0r, re * q1r - im * q1i, re * q1i + im * q1r, re * q2r - im * q2i, re * q2i + im * q2r];
+        const [f, h] = [first, step];
+        const [p0, p1, p2, x0, x1, x2, y0, y1, y2] = [s0 + e0r, s1 + e1r, s2 + e2r, e0i, e1i, e2i, s0 - e0r, s1 - e1r, s2 - e2r];
+        cc += p0; cd += x0; dd += y0;
+        scc += f * p0 + h * p1; scd += f * x0 + h * x1; sdd += f * y0 + h * y1;
+        const [ff, fh, hh] = [f * f, 2 * f * h, h * h];
+        sscc += ff * p0 + fh * p1 + hh * p2; sscd += ff * x0 + fh * x1 + hh * x2; ssdd += ff * y0 + fh * y1 + hh * y2;
+        const [u0, v] = [(t[at]! - knotTime) / knotStep, step / knotStep];
+        c1 += a0r; d1 += a0i;
+        sc1 += f * a0r + h * a1r; sd1 += f * a0i + h * a1i;
+        cu += u0 * a0r + v * a1r; du += u0 * a0i + v * a1i;
+        const [g0, g1, g2] = [f * u0, f * v + h * u0, h * v];
+        scu += g0 * a0r + g1 * a1r + g2 * a2r; sdu += g0 * a0i + g1 * a1i + g2 * a2i;
+        n += BLOCK; su += BLOCK * u0 + v * FIRST_POWERS; suu += BLOCK * u0 * u0 + 2 * u0 * v * FIRST_POWERS + v * v * SECOND_POWERS;
+        let bcx = 0, bdx = 0, bicx = 0, bidx = 0, bx = 0, bix = 0;
+        for (let i = 0; i < BLOCK; i++) {
+          const y = x[at + i]! - base;
+          const cy = c * y, dy = d * y;
+          bcx += cy; bdx += dy; bicx += i * cy; bidx += i * dy;
+          bx += y; bix += i * y; sxx += y * y;
+          const next = rc * c - rd * d;
+          d = rc * d + rd * c;
+          c = next;
+        }
+        cx += bcx; dx += bdx; scx += f * bcx + h * bicx; sdx += f * bdx + h * bidx;
+        sx += bx; sux += u0 * bx + v * bix;
+        continue;
+      }
       for (let i = at; i < end; i++) {
         const s = isEven ? first + (i - at) * step : t[i]! - begins;
         if (!isEven && i > at) {
@@ -140,6 +190,25 @@ export function swingSums({ t, x, use }: SwingSamples, cells: readonly Cell[], e
     sums.set([cc, cd, dd, scc, scd, sdd, sscc, sscd, ssdd, c1, d1, sc1, sd1, cu, du, scu, sdu, cx, dx, scx, sdx, n, su, suu, sx, sux, sxx], k * SUMS);
   }
   return sums;
+}
+
+/** Σ i and Σ i² over a block. */
+const FIRST_POWERS = (BLOCK * (BLOCK - 1)) / 2;
+const SECOND_POWERS = ((BLOCK - 1) * BLOCK * (2 * BLOCK - 1)) / 6;
+
+/** Over a block, of ρ = rc + i rd: Σ i^m ρ^i and Σ i^m ρ^{2i} (real and imaginary part, m = 0, 1, 2), and Σ i^m |ρ|^{2i}. */
+function blockPowers(rc: number, rd: number, out: Float64Array): void {
+  out.fill(0);
+  let [c, d] = [1, 0];
+  for (let i = 0; i < BLOCK; i++) {
+    const [qr, qi, m] = [c * c - d * d, 2 * c * d, c * c + d * d];
+    out[0]! += c; out[1]! += d; out[2]! += i * c; out[3]! += i * d; out[4]! += i * i * c; out[5]! += i * i * d;
+    out[6]! += qr; out[7]! += qi; out[8]! += i * qr; out[9]! += i * qi; out[10]! += i * i * qr; out[11]! += i * i * qi;
+    out[12]! += m; out[13]! += i * m; out[14]! += i * i * m;
+    const next = rc * c - rd * d;
+    d = rc * d + rd * c;
+    c = next;
+  }
 }
 
 /** C and D of sample after sample of a block, by recurrence where it is even. */
