@@ -105,8 +105,11 @@ export function solveChain(segments: number, shared: number, links: readonly (Li
   }
   return {
     status: 'solved', positions, velocities, shared: gamma, sumOfSquares: Math.max(0, form[last * n + last]! - end.explained),
-    variances: Float64Array.from({ length: shared }, (_, j) => end.inverse[j + 2]![j + 2]!),
-    covariances: () => covariancesOf(steps, end.inverse, shared),
+    // Many solutions are only looked at for their sum of squares.
+    get variances() {
+      return Float64Array.from({ length: shared }, (_, j) => end.inverse()[j + 2]![j + 2]!);
+    },
+    covariances: () => covariancesOf(steps, end.inverse(), shared),
   };
 }
 
@@ -159,7 +162,7 @@ function eliminateState(form: Float64Array, n: number, link: Link | null, linkWe
 }
 
 /** The last segment's state and the shared unknowns, by Cholesky with the columns scaled. */
-function solveEnd(form: Float64Array, n: number): { readonly solution: Float64Array; readonly inverse: readonly Float64Array[]; readonly explained: number } | null {
+function solveEnd(form: Float64Array, n: number): { readonly solution: Float64Array; readonly inverse: () => readonly Float64Array[]; readonly explained: number } | null {
   const m = n - 1;
   const size = Float64Array.from({ length: m }, (_, i) => Math.sqrt(form[i * n + i]!));
   if (size.some((value) => !(value > 0))) return null;
@@ -174,7 +177,29 @@ function solveEnd(form: Float64Array, n: number): { readonly solution: Float64Ar
       } else lower[i]![j] = sum / lower[j]![j]!;
     }
   }
-  // L⁻¹, then (L Lᵀ)⁻¹ = L⁻ᵀ L⁻¹.
+  // L y = b, Lᵀ x = y.
+  const y = new Float64Array(m);
+  let explained = 0;
+  for (let i = 0; i < m; i++) {
+    let sum = form[i * n + m]! / size[i]!;
+    for (let k = 0; k < i; k++) sum -= lower[i]![k]! * y[k]!;
+    y[i] = sum / lower[i]![i]!;
+    explained += y[i]! ** 2;
+  }
+  const solution = new Float64Array(m);
+  for (let i = m - 1; i >= 0; i--) {
+    let sum = y[i]!;
+    for (let k = i + 1; k < m; k++) sum -= lower[k]![i]! * solution[k]!;
+    solution[i] = sum / lower[i]![i]!;
+  }
+  for (let i = 0; i < m; i++) solution[i]! /= size[i]!;
+  let inverse: readonly Float64Array[] | null = null;
+  return { solution, explained, inverse: () => (inverse ??= inverseOf(lower, size)) };
+}
+
+/** L⁻¹, then (L Lᵀ)⁻¹ = L⁻ᵀ L⁻¹, the scale taken off. */
+function inverseOf(lower: readonly Float64Array[], size: Float64Array): readonly Float64Array[] {
+  const m = size.length;
   const below = Array.from({ length: m }, () => new Float64Array(m));
   for (let j = 0; j < m; j++) {
     below[j]![j] = 1 / lower[j]![j]!;
@@ -190,9 +215,7 @@ function solveEnd(form: Float64Array, n: number): { readonly solution: Float64Ar
     for (let k = i; k < m; k++) sum += below[k]![i]! * below[k]![j]!;
     inverse[i]![j] = inverse[j]![i] = sum / (size[i]! * size[j]!);
   }
-  const right = Float64Array.from({ length: m }, (_, i) => form[i * n + m]!);
-  const solution = Float64Array.from(inverse, (row) => dot(row, right));
-  return { solution, inverse, explained: dot(solution, right) };
+  return inverse;
 }
 
 /** Variances and covariances of one segment's state, and with the shared unknowns. */

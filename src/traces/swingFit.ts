@@ -92,7 +92,8 @@ function descend(struck: Struck, start: Place, stretches: number, free: Free = N
     if (stepped.status !== 'solved') return here;
     const shared = stepped.shared.length;
     const [dw, dz] = [stepped.shared[shared - 2]!, stepped.shared[shared - 1]!];
-    const [ww, zz] = [stepped.variances[shared - 2]!, stepped.variances[shared - 1]!];
+    const { variances } = stepped;
+    const [ww, zz] = [variances[shared - 2]!, variances[shared - 1]!];
     const noise2 = Math.max(here.solved.sumOfSquares, rounding) / Math.max(1, struck.count - shared - struck.segments - 1);
     const inU = Math.max(Math.abs(dw) / Math.sqrt(ww * noise2), Math.abs(dz) / Math.sqrt(zz * noise2));
     if (!(inU > SETTLED)) return here;
