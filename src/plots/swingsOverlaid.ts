@@ -30,7 +30,8 @@ interface Response {
 }
 
 function responsesOf({ told, picture }: TraceSeen, kind: 'tap' | 'shot', grid: readonly number[], several: boolean): readonly Response[] {
-  const { fitted, events, to } = told;
+  const { fitted, events, to, stretches } = told;
+  const leftOut = stretches.filter(({ why }) => why !== 'gap');
   if (fitted === null) return [];
   const names = eventNames(events);
   const ordered = events.toSorted((a, b) => a.time - b.time);
@@ -45,10 +46,11 @@ function responsesOf({ told, picture }: TraceSeen, kind: 'tap' | 'shot', grid: r
     const gridTimes = Float64Array.from(grid, (s) => event.time + s);
     const [withIt, went] = [swingOver(fitted.model, gridTimes), swingOver(before, gridTimes)];
     // What the fit leaves is averaged about each grid time, and put upon the fit there: no sample is at another time than its own.
+    const near = leftOut.filter(({ from, to: end }) => end >= event.time && from <= until);
     const sums = grid.map(() => ({ sum: 0, count: 0 }));
     times.forEach((t, i) => {
       const place = sums[Math.round((t - event.time) / step)];
-      if (!place || t < event.time || t >= until || Number.isNaN(values[i]!)) return;
+      if (!place || t < event.time || t >= until || Number.isNaN(values[i]!) || near.some(({ from, to: end }) => t >= from && t <= end)) return;
       place.sum += values[i]! - fit[i]!;
       place.count += 1;
     });

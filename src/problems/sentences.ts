@@ -307,6 +307,7 @@ function words({ code, place, facts, weight }: Problem): string {
     case 'trace-position-step':
     case 'trace-large-swing':
     case 'trace-two-values':
+    case 'trace-jumps-unlisted':
     case 'trace-camera-scale-differs':
     case 'trace-camera-leans':
     case 'trace-train-not-read':

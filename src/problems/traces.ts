@@ -14,6 +14,7 @@ export type TraceCode = Extract<
   | 'trace-position-step'
   | 'trace-large-swing'
   | 'trace-two-values'
+  | 'trace-jumps-unlisted'
   | 'trace-camera-scale-differs'
   | 'trace-camera-leans'
   | 'trace-train-not-read'
@@ -65,6 +66,8 @@ export function traceWords(code: TraceCode, { text, number, figure, quantity, ma
       return `at ${quantity('time', 'time')} the position steps by ${figure('inU', 2)} times its uncertainty, which a shot does not do: a wrong time, an electrical step, stick-slip, or a knock.`;
     case 'trace-large-swing':
       return text('how') === 'full' ? `swings reach ${figure('degrees', 3)}°: its jumps are solved with the full pendulum, which differs from the small swing by up to ${figure('percent', 2)} %${number('drag') > 0 ? `, with a drag that goes as the square of the speed (β = ${figure('drag', 2)} a radian)` : ''}.` : `swings reach ${figure('degrees', 3)}°, and the full pendulum could not be fitted; the small swing’s equation is used, off by up to ${figure('percent', 2)} %.`;
+    case 'trace-jumps-unlisted':
+      return `no shot is listed, but its swing jumps ${number('jumps') === 1 ? 'once' : `${text('jumps')} times or so`}. List the shots and taps, or choose “jumps found in the swing”.`;
     case 'trace-two-values':
       return 'its reading has two values only: the sensor stood at one end of its range or the other all the time, or this is a trigger. Take less gain, or choose another column.';
     case 'trace-camera-scale-differs':

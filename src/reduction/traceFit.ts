@@ -116,6 +116,10 @@ function fitAfresh(trace: Trace, read: TraceRead, expected: Expected): TraceFitt
     for (let i = 0; i < use.length; i++) if (off[i] === 0) use[i] = 0;
   }
   const listed = apart(inside, bare, place, problems);
+  if (trace.eventsFrom === 'list' && read.events.length === 0) {
+    const unlisted = jumpsOf(bare, expected, anew).length;
+    if (unlisted > 0) problems.push(problem('trace-jumps-unlisted', 'doubt', place, { jumps: unlisted }));
+  }
   const stretches = [...read.stretches, ...blanks, ...pushed].sort((a, b) => a.from - b.from);
   const { few, every, exposure } = meansOf(bare, read.exposure, expected);
   const asked: Asked = { exposure, refine: read.refine, anew };

@@ -92,6 +92,14 @@ describe('swings laid over one another', () => {
     expect(figure.summary).toContain('1 of shots (whole lines), 1 of taps (dashed)');
   });
 
+  test('have nothing of what is left out of the fit', () => {
+    const wild = Float32Array.from(X);
+    for (let i = 505; i < 520; i++) wild[i] = 5;
+    const picture = { times: { from: 0, step: 1 / RATE }, values: wild, pyramid: buildPyramid(wild) };
+    const figure = swingsOverlaid([{ told: { ...TOLD, stretches: [...TOLD.stretches, { from: 5.04, to: 5.2, why: 'blanked' }] }, picture }], INKS)!;
+    expect(figure.summary).toMatch(/are at most \d\.\d % of the throw apart/);
+  });
+
   test('want a tap and a shot that stand clear of the noise', () => {
     const quiet = { ...TOLD, events: TOLD.events.map((one) => ({ ...one, jump: { value: 1e-5, u: 2e-6 } })) };
     expect(swingsOverlaid([{ told: quiet, picture: PICTURE }], INKS)).toBe(null);

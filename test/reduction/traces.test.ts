@@ -172,6 +172,7 @@ describe('what is wrong with a trace is said, and the rest goes on', () => {
   });
 
   it.each([
+    ['trace-jumps-unlisted', { events: [] }, {}],
     ['trace-no-trigger', { eventsFrom: 'trigger' }, {}],
     ['trace-unit-unknown', { timeUnit: 'moons' }, {}],
     ['trace-wrong-unit', { readingUnit: 'kg' }, {}],

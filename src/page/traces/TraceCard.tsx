@@ -11,6 +11,7 @@ import type { TraceState } from '../../store/traceDesk.ts';
 import { chooseUnit, plain, withPlusMinus } from '../../units/format.ts';
 import { counted } from '../readings/tradeWords.ts';
 import { EventTable } from './EventTable.tsx';
+import { Fold } from './Fold.tsx';
 import { TracePictures } from './TracePictures.tsx';
 import { TraceSettings } from './TraceSettings.tsx';
 import styles from './traceCard.module.css';
@@ -31,9 +32,10 @@ interface Props {
 const DIGEST_SHOWN = 12;
 
 /** What the fit found, in a sentence. */
-function fitSentence(told: TraceTold): string {
+function fitSentence(told: TraceTold, hasUnlisted: boolean): string {
   const { fitted, dimension } = told;
   if (!fitted) return 'No swing has been fitted yet.';
+  if (hasUnlisted) return 'Its shots and taps are wanted before its swing can be told.';
   const { period, ratio, noise, colour, least, noiseEquivalent, noFire } = fitted;
   const second = chooseUnit([period.value], 'time');
   const reading = chooseUnit([noise], dimension);
@@ -124,23 +126,20 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
         </p>
       )}
       {problems.map((found) => <p key={`${found.code} ${found.place.line ?? ''} ${JSON.stringify(found.facts)}`} className={found.weight === 'note' ? 'quiet' : 'look'}>{sentence(found)}</p>)}
-      {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told)}</p>}
+      {told !== undefined && told.rows !== null && <p className={styles.told}>{fitSentence(told, problems.some(({ code }) => code === 'trace-jumps-unlisted'))}</p>}
       {told?.camera != null && <p className={styles.told}>{cameraSentence(told.camera)}</p>}
       {told?.trains.map((train) => <p key={train.id} className={styles.told}>{trainSentence(train, told.dimension)}</p>)}
       {told !== undefined && picture !== null && <TracePictures trace={trace} told={told} picture={picture} change={change} />}
       {told !== undefined && told.events.length > 0 && told.fitted !== null && (
-        <details className={styles.how}>
-          <summary>Its shots and taps as fitted, and by the peak alone</summary>
+        <Fold title="Its shots and taps as fitted, and by the peak alone" suggested={false}>
           <EventTable told={told} />
-        </details>
+        </Fold>
       )}
-      <details className={styles.how} open={told?.fitted == null}>
-        <summary>How it is read</summary>
+      <Fold title="How it is read" suggested={told !== undefined && told.fitted === null}>
         <TraceSettings trace={trace} told={told} uses={uses} onChange={(what, patch, join) => change(named(what), setTrace(trace.id, patch), join)} />
-      </details>
+      </Fold>
       {trace.eventsFrom === 'list' && (
-        <details className={styles.how} open={trace.events.length === 0}>
-          <summary>List of its shots and taps ({trace.events.length})</summary>
+        <Fold title={`List of its shots and taps (${trace.events.length})`} suggested={trace.events.length === 0}>
           <div className={styles.list}>
             <label htmlFor={`${id}-list`} className="quiet">One a line: 12.5 · 17.25 s tap 1.2 mN·s · 40.2 blank; times on the record’s clock, in s</label>
             <textarea
@@ -150,10 +149,9 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
               onChange={({ target: { value } }) => change(named('list of shots and taps'), setTrace(trace.id, { events: linesAgain(trace.events, value) }), `${trace.id}.events`)}
             />
           </div>
-        </details>
+        </Fold>
       )}
-      <details className={styles.how} open={trace.trains.length > 0}>
-        <summary>Trains of pulses read as a steady deflection ({trace.trains.length})</summary>
+      <Fold title={`Trains of pulses read as a steady deflection (${trace.trains.length})`} suggested={trace.trains.length > 0}>
         <div className={styles.list}>
           <label htmlFor={`${id}-trains`} className="quiet">One a line, from, to and pulses a second: 20 60 50 Hz; on the record’s clock. The record wants some of its rest before or after it.</label>
           <textarea
@@ -164,9 +162,8 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
           />
         </div>
         {told?.fitted?.trainsBetterFrom != null && <p className="quiet">By the noise of this record a train tells the mean impulse bit better than shots fired one by one from about {plain(told.fitted.trainsBetterFrom, chooseUnit([told.fitted.trainsBetterFrom], 'frequency'), 2)} on, in the same time.</p>}
-      </details>
-      <details className={styles.how} open={trace.bad.length > 0}>
-        <summary>Stretches marked as bad ({trace.bad.length})</summary>
+      </Fold>
+      <Fold title={`Stretches marked as bad (${trace.bad.length})`} suggested={trace.bad.length > 0}>
         <div className={styles.list}>
           <label htmlFor={`${id}-bad`} className="quiet">One a line, from and to: 12.5 13.1; on the record’s clock, in s. They are left out of the fit.</label>
           <textarea
@@ -176,7 +173,7 @@ export function TraceCard({ trace, told, state, picture, uses, problems, change,
             onChange={({ target: { value } }) => change(named('stretches marked as bad'), setTrace(trace.id, { bad: linesAgain(trace.bad, value) }), `${trace.id}.bad`)}
           />
         </div>
-      </details>
+      </Fold>
     </article>
   );
 }

@@ -100,6 +100,17 @@ describe('a trace that is read', () => {
     await act(async () => store.actions.undo());
     expect(store.state.getState().session.traces[0]!.bad).toEqual([]);
   });
+
+  test('the list stays open while its first line is typed', async () => {
+    const { user, lines } = await open({ trace: { events: [] } });
+    const list = screen.getByLabelText(/^One a line: 12\.5/);
+    expect(list.closest('details')).toHaveAttribute('open');
+    await user.type(list, '5');
+    expect(list.closest('details')).toHaveAttribute('open');
+    expect(lines()).toEqual(['5']);
+    await user.click(screen.getByText(/^List of its shots and taps \(1\)/));
+    expect(list.closest('details')).not.toHaveAttribute('open');
+  });
 });
 
 describe('along the record', () => {
