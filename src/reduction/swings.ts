@@ -83,7 +83,9 @@ export function dampingOf(
   if (way === 'friction' && friction) return { ...undamped, friction: carriedByBody(anchor(friction), stand, 'stiffness'), law: 'friction', way };
   const found = way === 'swings' && scale ? swingsFound(session, stand, scale, records, readings, spread, counts, problems) : [];
   if (found.length === 0) {
-    if (way === 'none' || records.length > 0) problems.push(problem('damping-none', way === 'none' ? 'note' : 'doubt', {}, {}));
+    // A trace's jumps carry its own damping.
+    const onlyTraces = records.length === 0 && session.traces.length > 0;
+    if (!onlyTraces && (way === 'none' || records.length > 0)) problems.push(problem('damping-none', way === 'none' ? 'note' : 'doubt', {}, {}));
     return undamped;
   }
   if (found.length < FEW) problems.push(problem('damping-from-few', 'note', {}, { records: found.length }));

@@ -9,7 +9,8 @@ import { PERCENT, PLAIN, timesU } from '../stated/numberWords.ts';
 import { SheetTable } from '../stated/SheetTable.tsx';
 
 export function TapsAgainst({ reduction }: { readonly reduction: Reduction }) {
-  const { ranges, comparisons, difference } = reduction;
+  const { ranges, comparisons, difference, traces } = reduction;
+  const hasSwings = (kind: 'tap' | 'shot'): boolean => traces.some(({ events, fitted }) => fitted !== null && events.some((event) => event.kind === kind));
   if (ranges.taps === null || ranges.shots === null) return null;
   return (
     <SheetTable label="Taps against firings">
@@ -20,6 +21,7 @@ export function TapsAgainst({ reduction }: { readonly reduction: Reduction }) {
       <tbody>
         <tr><th scope="row">Range of the swings</th><td>{tapRangeSentence(placeInTapRange(ranges.taps, ranges.shots))}</td></tr>
         {comparisons.map((comparison) => <tr key={comparison.id}><th scope="row">{NAMES[comparison.id]}</th><td>{comparisonSentence(comparison)}</td></tr>)}
+        {hasSwings('tap') && hasSwings('shot') && <tr><th scope="row">Shape of the swings</th><td>Laid over one another, each over its own throw, <a href="#traces">under Traces</a>.</td></tr>}
         {difference !== null && <tr><th scope="row">The same shots by taps and by geometry</th><td>{sameShotsSentence(difference)}</td></tr>}
       </tbody>
     </SheetTable>

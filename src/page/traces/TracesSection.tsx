@@ -1,5 +1,5 @@
 /** The sampled traces: each with how it is read, its shots and taps, and its swing. */
-import { useMemo } from 'react';
+import { useDeferredValue, useMemo } from 'react';
 import type { Problem } from '../../problems/problems.ts';
 import { usesOfWay } from '../../reduction/traceRead.ts';
 import type { TraceTold } from '../../reduction/traceResults.ts';
@@ -25,7 +25,8 @@ export function TracesSection() {
   const notices = useNotices();
   const traces = useStore((state) => state.session.traces);
   const way = useStore((state) => state.session.choices.readingWay);
-  const told = useStore((state) => state.reduction?.traces ?? NO_TOLD);
+  // Typing goes first: the tables and pictures follow in renders that it interrupts.
+  const told = useDeferredValue(useStore((state) => state.reduction?.traces ?? NO_TOLD));
   const problems = useStore((state) => state.reduction?.problems ?? NO_PROBLEMS);
   const looked = useTraces();
   const states = useTraceStates();
