@@ -97,6 +97,11 @@ async function openWatched(context: BrowserContext, address: string, findings: s
   page.on('websocket', (socket) => findings.push(`socket: ${socket.url()}`));
   page.setDefaultTimeout(STEP_LIMIT_MS);
   await page.goto(address);
+  // Drawn, and its listeners set with the frame after: what is dropped before that is nobody's.
+  await page.getByRole('button', { name: 'save session' }).waitFor();
+  await page.evaluate(async () => new Promise((done) => {
+    requestAnimationFrame(() => requestAnimationFrame(() => setTimeout(done, 0)));
+  }));
   return page;
 }
 
