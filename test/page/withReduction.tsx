@@ -33,5 +33,9 @@ export async function withReduction(section: ReactNode, { reduction = REDUCTION,
   await act(async () => {
     render(<StoreProvider store={store}>{section}</StoreProvider>);
   });
+  // Figures are drawn one a task, after what put them there.
+  await act(async () => {
+    await new Promise((done) => setTimeout(done, 30));
+  });
   return { store, user };
 }

@@ -4,6 +4,7 @@ import type { CSSProperties, KeyboardEvent } from 'react';
 import type { Figure, Inks, Mark } from '../../plots/figure.ts';
 import { mountFigure } from '../../plots/mount.ts';
 import type { Mounted } from '../../plots/mount.ts';
+import { inTurn } from './inTurn.ts';
 import { NumbersOf } from './NumbersOf.tsx';
 import styles from './FigureView.module.css';
 
@@ -55,6 +56,7 @@ export function FigureView({ figure, inks, selected = null, onSelect = nothing, 
   const canvas = useRef<HTMLDivElement>(null);
   const mounted = useRef<Mounted | null>(null);
   const width = useRef(FIRST_WIDTH);
+  const wasDrawn = useRef(false);
   const latest = useRef({ selected, onSelect });
   const [hover, setHover] = useState<Hover | null>(null);
   const [told, setTold] = useState('');
@@ -67,19 +69,27 @@ export function FigureView({ figure, inks, selected = null, onSelect = nothing, 
   useLayoutEffect(() => {
     const into = canvas.current;
     if (into === null) return undefined;
-    width.current = into.clientWidth || width.current;
-    const drawn = mountFigure(figure, inks, into, width.current, latest.current.selected, {
-      hover: (mark, left, top) => setHover(mark === null ? null : { mark, place: placeBeside(left, top, width.current) }),
-      pick: (mark) => {
-        latest.current.onSelect(mark.id);
-        setTold(mark.reading);
-      },
-    });
-    mounted.current = drawn;
+    let drawn: Mounted | null = null;
+    const draw = (): void => {
+      wasDrawn.current = true;
+      width.current = into.clientWidth || width.current;
+      drawn = mountFigure(figure, inks, into, width.current, latest.current.selected, {
+        hover: (mark, left, top) => setHover(mark === null ? null : { mark, place: placeBeside(left, top, width.current) }),
+        pick: (mark) => {
+          latest.current.onSelect(mark.id);
+          setTold(mark.reading);
+        },
+      });
+      mounted.current = drawn;
+    };
+    // The first time there is nothing to be seen yet; later the new one takes the old one's place at once.
+    const callOff = wasDrawn.current ? null : inTurn(draw);
+    if (callOff === null) draw();
     return () => {
+      callOff?.();
       setHover(null);
       mounted.current = null;
-      drawn.remove();
+      drawn?.remove();
     };
   }, [figure, inks]);
 

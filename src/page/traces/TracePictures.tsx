@@ -11,7 +11,6 @@ import type { Trace } from '../../session/session.ts';
 import { useActions, useStore } from '../../store/hooks.tsx';
 import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
-import { useStages } from '../plot/useStages.ts';
 import { addedEvent, freeId, movedEvent, removedEvent, stretchText } from './eventEdits.ts';
 import { TraceRecord } from './TraceRecord.tsx';
 import styles from './traceRecord.module.css';
@@ -25,7 +24,6 @@ interface Props {
 
 export function TracePictures({ trace, told, picture, change }: Props) {
   const inks = useInks();
-  const stage = useStages(4);
   const { select } = useActions();
   const record = useStore((state) => state.selected);
   // An event without a record of its own, while there is no calibration yet, is chosen here alone.
@@ -60,13 +58,13 @@ export function TracePictures({ trace, told, picture, change }: Props) {
         onRemove={(id) => change(named(`take out ${names.get(id) ?? 'a shot'}`), setTrace(trace.id, removedEvent(trace, told, id)))}
         onBad={(from, to) => change(named('mark a stretch as bad'), addTraceLine(trace.id, 'bad', stretchText(from, to)))}
       />
-      {swing !== null && stage > 1 && (
+      {swing !== null && (
         <div>
           <FigureView figure={swing.swing} inks={inks} />
-          {stage > 2 && <FigureView figure={swing.residuals} inks={inks} />}
+          <FigureView figure={swing.residuals} inks={inks} />
         </div>
       )}
-      {spectrum !== null && stage > 3 && <FigureView figure={spectrum} inks={inks} />}
+      {spectrum !== null && <FigureView figure={spectrum} inks={inks} />}
     </div>
   );
 }

@@ -10,6 +10,7 @@ import { RECORD_HEIGHT } from '../../plots/traceRecord.ts';
 import type { RecordEvent, RecordFigure } from '../../plots/traceRecord.ts';
 import { timeDigits, timeWords } from '../../plots/traceWords.ts';
 import { readQuantity } from '../../units/quantity.ts';
+import { inTurn } from '../plot/inTurn.ts';
 import { NumbersOf } from '../plot/NumbersOf.tsx';
 import figureStyles from '../plot/FigureView.module.css';
 import styles from './traceRecord.module.css';
@@ -46,6 +47,7 @@ export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, o
   const canvas = useRef<HTMLDivElement>(null);
   const mounted = useRef<MountedRecord | null>(null);
   const width = useRef(FIRST_WIDTH);
+  const wasDrawn = useRef(false);
   const [looking, look] = useLooking(figure);
   const [choosing, setChoosing] = useState(false);
   const [told, setTold] = useState('');
@@ -59,38 +61,45 @@ export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, o
   useLayoutEffect(() => {
     const into = canvas.current;
     if (into === null) return undefined;
-    width.current = into.clientWidth || width.current;
-    const drawn = mountRecord(figure, inks, into, width.current, latest.current.looking, {
-      // A wheel over the picture is the page's until the picture has been taken up.
-      isWheelOurs: (event) => event.ctrlKey || event.metaKey || surface.current?.contains(document.activeElement) === true,
-      isChoosing: () => latest.current.choosing,
-      look: (sight) => latest.current.look({ sight }),
-      moving: (which, time) => latest.current.look({ moving: { id: which, time } }),
-      moved: (which, time) => {
-        latest.current.look({ moving: null });
-        if (time !== null) latest.current.onMove(which, time);
-      },
-      choosing: (chosen) => latest.current.look({ chosen }),
-      chosen: (chosen) => {
-        latest.current.look({ chosen });
-        setChoosing(false);
-        setTold(`From ${timeWords(chosen.from, figure.spacing)} to ${timeWords(chosen.to, figure.spacing)} is chosen.`);
-      },
-      pick: (event) => {
-        latest.current.onSelect(event.id);
-        setTold(event.reading);
-      },
-      point: (place) => {
-        latest.current.look({ place, chosen: null });
-        setTold(timeWords(place, figure.spacing));
-      },
-      hover: (event, left, top) => setReadout(event === null ? null : { event, beside: left > width.current * TURN_AT ? { right: width.current - left + BESIDE, top } : { left: left + BESIDE, top } }),
-    });
-    mounted.current = drawn;
+    let drawn: MountedRecord | null = null;
+    const draw = (): void => {
+      wasDrawn.current = true;
+      width.current = into.clientWidth || width.current;
+      drawn = mountRecord(figure, inks, into, width.current, latest.current.looking, {
+        // A wheel over the picture is the page's until the picture has been taken up.
+        isWheelOurs: (event) => event.ctrlKey || event.metaKey || surface.current?.contains(document.activeElement) === true,
+        isChoosing: () => latest.current.choosing,
+        look: (sight) => latest.current.look({ sight }),
+        moving: (which, time) => latest.current.look({ moving: { id: which, time } }),
+        moved: (which, time) => {
+          latest.current.look({ moving: null });
+          if (time !== null) latest.current.onMove(which, time);
+        },
+        choosing: (chosen) => latest.current.look({ chosen }),
+        chosen: (chosen) => {
+          latest.current.look({ chosen });
+          setChoosing(false);
+          setTold(`From ${timeWords(chosen.from, figure.spacing)} to ${timeWords(chosen.to, figure.spacing)} is chosen.`);
+        },
+        pick: (event) => {
+          latest.current.onSelect(event.id);
+          setTold(event.reading);
+        },
+        point: (place) => {
+          latest.current.look({ place, chosen: null });
+          setTold(timeWords(place, figure.spacing));
+        },
+        hover: (event, left, top) => setReadout(event === null ? null : { event, beside: left > width.current * TURN_AT ? { right: width.current - left + BESIDE, top } : { left: left + BESIDE, top } }),
+      });
+      mounted.current = drawn;
+    };
+    const callOff = wasDrawn.current ? null : inTurn(draw);
+    if (callOff === null) draw();
     return () => {
+      callOff?.();
       setReadout(null);
       mounted.current = null;
-      drawn.remove();
+      drawn?.remove();
     };
   }, [figure, inks]);
 

@@ -4,18 +4,15 @@ import type { Problem } from '../../problems/problems.ts';
 import { usesOfWay } from '../../reduction/traceRead.ts';
 import type { TraceTold } from '../../reduction/traceResults.ts';
 import { useActions, useStateNow, useStore, useTraces, useTraceStates } from '../../store/hooks.tsx';
-import type { Figure, Inks } from '../../plots/figure.ts';
 import { swingsOverlaid } from '../../plots/swingsOverlaid.ts';
 import { FigureView } from '../plot/FigureView.tsx';
 import { useInks } from '../plot/useInks.ts';
-import { useStages } from '../plot/useStages.ts';
 import { useNotices } from '../readings/notices.ts';
 import { takeTrace } from './takeTrace.ts';
 import { TraceCard } from './TraceCard.tsx';
 import { usePictures } from './usePictures.ts';
 import styles from './traceCard.module.css';
 
-const AFTER_THE_OTHERS = 6;
 const NO_TOLD: readonly TraceTold[] = [];
 const NO_PROBLEMS: readonly Problem[] = [];
 
@@ -56,12 +53,7 @@ export function TracesSection() {
           }}
         />
       ))}
-      {overlaid !== null && <Overlaid figure={overlaid} inks={inks} />}
+      {overlaid !== null && <FigureView figure={overlaid} inks={inks} />}
     </section>
   );
-}
-
-/** After the pictures of each trace. */
-function Overlaid({ figure, inks }: { readonly figure: Figure; readonly inks: Inks }) {
-  return useStages(AFTER_THE_OTHERS) === AFTER_THE_OTHERS ? <FigureView figure={figure} inks={inks} /> : null;
 }

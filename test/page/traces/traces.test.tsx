@@ -50,6 +50,7 @@ async function open({ trace = {}, state = { status: 'here', problems: [] }, has 
   const settle = () => act(async () => {
     await new Promise((done) => setTimeout(done, 30));
   });
+  await settle();
   return { store, user, stop, settle, lines: () => store.state.getState().session.traces[0]!.events.map(({ text: line }) => line), told: () => store.state.getState().reduction!.traces[0]! };
 }
 
