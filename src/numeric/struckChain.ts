@@ -71,6 +71,17 @@ const LEAST_PIVOT = 1e-13;
  */
 const LINK_WEIGHT = 1e6;
 
+/** One form of each size serves all solutions, one after another: making it would cost more than solving it. */
+const FORMS = new Map<number, Float64Array>();
+
+function formOf(n: number): Float64Array {
+  const kept = FORMS.get(n);
+  if (kept) return kept.fill(0);
+  const made = new Float64Array(n * n);
+  FORMS.set(n, made);
+  return made;
+}
+
 /**
  * Valid: segments ≥ 1, shared ≥ 0, links one fewer than segments.
  * Source: elimination of a block-bidiagonal least-squares problem from the first segment on, with the shared unknowns as its border; derived.
@@ -78,7 +89,7 @@ const LINK_WEIGHT = 1e6;
 export function solveChain(segments: number, shared: number, links: readonly (Link | null)[], add: AddSegment): ChainResult {
   const n = shared + 3;
   const last = n - 1;
-  const form = new Float64Array(n * n);
+  const form = formOf(n);
   const steps: Step[] = [];
   let most = 0;
   for (let k = 0; k < segments; k++) {
@@ -130,67 +141,90 @@ function eliminateState(form: Float64Array, n: number, link: Link | null, linkWe
   const next = new Float64Array(n);
   let own = 0;
   if (link) {
-    const terms: (readonly [number, number])[] = [[0, link.a], [1, link.b], ...link.drive.map(([i, g]) => [i + 2, g] as const)];
-    for (const [i, x] of terms) {
-      for (const [j, y] of terms) form[i * n + j]! += linkWeight * x * y;
-      next[i] = -linkWeight * x;
+    const { a, b, drive } = link;
+    form[0]! += linkWeight * a * a;
+    form[1]! += linkWeight * a * b;
+    form[n]! += linkWeight * a * b;
+    form[n + 1]! += linkWeight * b * b;
+    next[0] = -linkWeight * a;
+    next[1] = -linkWeight * b;
+    for (const [i, g] of drive) {
+      const row = (i + 2) * n;
+      for (const [k, other] of drive) form[row + k + 2]! += linkWeight * g * other;
+      form[row]! += linkWeight * g * a;
+      form[i + 2]! += linkWeight * g * a;
+      form[row + 1]! += linkWeight * g * b;
+      form[n + i + 2]! += linkWeight * g * b;
+      next[i + 2] = -linkWeight * g;
     }
     own = linkWeight;
   }
-  const take = (at: number) => {
-    const weight = form[at * n + at]!;
-    if (!(weight > LEAST_PIVOT * scale)) return null;
-    const row = form.slice(at * n, at * n + n);
-    const byNext = next[at]! / weight;
-    for (let i = 0; i < n; i++) {
-      const part = row[i]! / weight;
-      if (part === 0) continue;
-      for (let j = 0; j < n; j++) form[i * n + j]! -= part * row[j]!;
-      next[i]! -= byNext * row[i]!;
-    }
-    own -= byNext * byNext * weight;
-    for (let i = 0; i < n; i++) form[at * n + i] = form[i * n + at] = 0;
-    next[at] = 0;
-    return { weight, byNext, byPosition: row[0]! / weight, byShared: row.slice(2, n - 1).map((value) => value / weight), right: row[n - 1]! / weight };
-  };
-  const v = take(1);
-  const p = v && take(0);
-  if (!v || !p) return null;
+  const v = takeOut(form, n, 1, next, scale);
+  if (!v) return null;
+  own -= v.byNext * v.byNext * v.weight;
+  const p = takeOut(form, n, 0, next, scale);
+  if (!p) return null;
+  own -= p.byNext * p.byNext * p.weight;
   for (let i = 2; i < n; i++) form[i] = form[i * n] = next[i]!;
   form[0] = own;
-  return { ...v, weight2: p.weight, byNext2: p.byNext, byShared2: p.byShared, right2: p.right };
+  return { weight: v.weight, byNext: v.byNext, byPosition: v.byPosition, byShared: v.byShared, right: v.right, weight2: p.weight, byNext2: p.byNext, byShared2: p.byShared, right2: p.right };
+}
+
+/** Takes one unknown out of the form and of the row of p′; null where its equations do not tell it. */
+function takeOut(form: Float64Array, n: number, at: number, next: Float64Array, scale: number): Pick<Step, 'weight' | 'byNext' | 'byPosition' | 'byShared' | 'right'> | null {
+  const base = at * n;
+  const weight = form[base + at]!;
+  if (!(weight > LEAST_PIVOT * scale)) return null;
+  const byNext = next[at]! / weight;
+  const byShared = new Float64Array(n - 3);
+  for (let j = 2; j < n - 1; j++) byShared[j - 2] = form[base + j]! / weight;
+  const found = { weight, byNext, byPosition: form[base]! / weight, byShared, right: form[base + n - 1]! / weight };
+  for (let i = 0; i < n; i++) {
+    const of = form[base + i]!;
+    if (i === at || of === 0) continue;
+    const part = of / weight;
+    for (let j = 0; j < n; j++) form[i * n + j]! -= part * form[base + j]!;
+    next[i]! -= byNext * of;
+  }
+  for (let i = 0; i < n; i++) form[base + i] = form[i * n + at] = 0;
+  next[at] = 0;
+  return found;
 }
 
 /** The last segment's state and the shared unknowns, by Cholesky with the columns scaled. */
 function solveEnd(form: Float64Array, n: number): { readonly solution: Float64Array; readonly inverse: () => readonly Float64Array[]; readonly explained: number } | null {
   const m = n - 1;
-  const size = Float64Array.from({ length: m }, (_, i) => Math.sqrt(form[i * n + i]!));
-  if (size.some((value) => !(value > 0))) return null;
-  const lower = Array.from({ length: m }, () => new Float64Array(m));
+  // Plain arrays: small typed ones are dear to make.
+  const size = new Array<number>(m).fill(0);
+  for (let i = 0; i < m; i++) {
+    size[i] = Math.sqrt(form[i * n + i]!);
+    if (!(size[i]! > 0)) return null;
+  }
+  const lower = new Array<number>(m * m).fill(0);
   for (let i = 0; i < m; i++) {
     for (let j = 0; j <= i; j++) {
       let sum = form[i * n + j]! / (size[i]! * size[j]!);
-      for (let k = 0; k < j; k++) sum -= lower[i]![k]! * lower[j]![k]!;
+      for (let k = 0; k < j; k++) sum -= lower[i * m + k]! * lower[j * m + k]!;
       if (i === j) {
         if (!(sum > LEAST_PIVOT)) return null;
-        lower[i]![i] = Math.sqrt(sum);
-      } else lower[i]![j] = sum / lower[j]![j]!;
+        lower[i * m + i] = Math.sqrt(sum);
+      } else lower[i * m + j] = sum / lower[j * m + j]!;
     }
   }
   // L y = b, Lᵀ x = y.
-  const y = new Float64Array(m);
+  const y = new Array<number>(m).fill(0);
   let explained = 0;
   for (let i = 0; i < m; i++) {
     let sum = form[i * n + m]! / size[i]!;
-    for (let k = 0; k < i; k++) sum -= lower[i]![k]! * y[k]!;
-    y[i] = sum / lower[i]![i]!;
+    for (let k = 0; k < i; k++) sum -= lower[i * m + k]! * y[k]!;
+    y[i] = sum / lower[i * m + i]!;
     explained += y[i]! ** 2;
   }
   const solution = new Float64Array(m);
   for (let i = m - 1; i >= 0; i--) {
     let sum = y[i]!;
-    for (let k = i + 1; k < m; k++) sum -= lower[k]![i]! * solution[k]!;
-    solution[i] = sum / lower[i]![i]!;
+    for (let k = i + 1; k < m; k++) sum -= lower[k * m + i]! * solution[k]!;
+    solution[i] = sum / lower[i * m + i]!;
   }
   for (let i = 0; i < m; i++) solution[i]! /= size[i]!;
   let inverse: readonly Float64Array[] | null = null;
@@ -198,21 +232,21 @@ function solveEnd(form: Float64Array, n: number): { readonly solution: Float64Ar
 }
 
 /** L⁻¹, then (L Lᵀ)⁻¹ = L⁻ᵀ L⁻¹, the scale taken off. */
-function inverseOf(lower: readonly Float64Array[], size: Float64Array): readonly Float64Array[] {
+function inverseOf(lower: readonly number[], size: readonly number[]): readonly Float64Array[] {
   const m = size.length;
-  const below = Array.from({ length: m }, () => new Float64Array(m));
+  const below = new Array<number>(m * m).fill(0);
   for (let j = 0; j < m; j++) {
-    below[j]![j] = 1 / lower[j]![j]!;
+    below[j * m + j] = 1 / lower[j * m + j]!;
     for (let i = j + 1; i < m; i++) {
       let sum = 0;
-      for (let k = j; k < i; k++) sum -= lower[i]![k]! * below[k]![j]!;
-      below[i]![j] = sum / lower[i]![i]!;
+      for (let k = j; k < i; k++) sum -= lower[i * m + k]! * below[k * m + j]!;
+      below[i * m + j] = sum / lower[i * m + i]!;
     }
   }
   const inverse = Array.from({ length: m }, () => new Float64Array(m));
   for (let i = 0; i < m; i++) for (let j = 0; j <= i; j++) {
     let sum = 0;
-    for (let k = i; k < m; k++) sum += below[k]![i]! * below[k]![j]!;
+    for (let k = i; k < m; k++) sum += below[k * m + i]! * below[k * m + j]!;
     inverse[i]![j] = inverse[j]![i] = sum / (size[i]! * size[j]!);
   }
   return inverse;
