@@ -26,6 +26,21 @@ export function zeroLine(u: uPlot, inks: Inks): void {
   });
 }
 
+/** A dotted line from top to bottom at a place along x. */
+export function dottedUpright(u: uPlot, at: number, ink: string): void {
+  within(u, (pen) => {
+    const px = devicePixelRatio;
+    const x = Math.round(u.valToPos(at, 'x', true)) + 0.5;
+    pen.strokeStyle = ink;
+    pen.lineWidth = px;
+    pen.setLineDash([2 * px, 3 * px]);
+    pen.beginPath();
+    pen.moveTo(x, u.bbox.top);
+    pen.lineTo(x, u.bbox.top + u.bbox.height);
+    pen.stroke();
+  });
+}
+
 export interface Mean {
   readonly value: number;
   /** U, and the part of it that more shots would shrink, k·s/√n; in the units of the axis. */

@@ -9,7 +9,7 @@ import { fromSi, siUnit } from '../units/units.ts';
 import { axis, frame, roomFor } from './axes.ts';
 import type { Range } from './axes.ts';
 import type { Figure, FigureTable, Inks } from './figure.ts';
-import { zeroLine } from './lines.ts';
+import { dottedUpright, zeroLine } from './lines.ts';
 import { bandsIn } from './traceHatch.ts';
 import { throwUnit, throwWords } from './traceWords.ts';
 
@@ -91,7 +91,7 @@ export function oneSwing(told: TraceTold, picture: TracePicture, event: TraceEve
   const counting = residual.filter((value, i): value is number => value !== null && !isOut(i));
   const beyond = counting.filter((value) => Math.abs(value) > LIMIT).length;
   const bottom = axis({ label: `Time after ${name.toLowerCase()}  (s)`, side: 'bottom' }, inks);
-  const upright = (u: uPlot): void => atZero(u, inks);
+  const upright = (u: uPlot): void => dottedUpright(u, 0, inks.shot);
   return {
     swing: {
       title: `The swing after ${name.toLowerCase()}`,
@@ -139,19 +139,3 @@ function merge(view: InView, fine: Float64Array): readonly Place[] {
 }
 
 const capital = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
-
-/** An upright dotted line at the shot. */
-function atZero(u: uPlot, inks: Inks): void {
-  const { ctx: pen, bbox: { top, height } } = u;
-  const px = devicePixelRatio;
-  const x = Math.round(u.valToPos(0, 'x', true)) + 0.5;
-  pen.save();
-  pen.strokeStyle = inks.shot;
-  pen.lineWidth = px;
-  pen.setLineDash([2 * px, 3 * px]);
-  pen.beginPath();
-  pen.moveTo(x, top);
-  pen.lineTo(x, top + height);
-  pen.stroke();
-  pen.restore();
-}

@@ -5,6 +5,7 @@ import { chooseUnit, plain } from '../units/format.ts';
 import { fromSi, siUnit } from '../units/units.ts';
 import { axis, frame } from './axes.ts';
 import type { Figure, Inks } from './figure.ts';
+import { dottedUpright } from './lines.ts';
 
 const HEIGHT = 220;
 const HERTZ = siUnit('number');
@@ -61,28 +62,13 @@ export function traceSpectrum(told: TraceTold, inks: Inks): Figure | null {
       scales: { x: { time: false, distr: 3, range: [x.low, x.high] }, y: { distr: 3, range: [low, high] } },
       axes: [logarithmic(axis({ label: 'Frequency  (Hz)', side: 'bottom' }, inks)), logarithmic(axis({ label: `Amplitude  (${unit.symbol})`, side: 'left' }, inks))],
       series: [{}, { label: 'amplitude', stroke: inks.ink, width: 1, points: { show: false } }],
-      hooks: { draw: [(u) => uprightAt(u, natural, inks), (u) => wedges(u, fitted.hums.map(({ frequency, amplitude }) => [frequency, fromSi(amplitude, unit)]), inks)] },
+      hooks: { draw: [(u) => dottedUpright(u, natural, inks.shot), (u) => wedges(u, fitted.hums.map(({ frequency, amplitude }) => [frequency, fromSi(amplitude, unit)]), inks)] },
     },
     table: {
       head: ['Frequency (Hz)', 'Amplitude'],
       rows: points.map(({ frequency, amplitude }, i) => ({ id: String(i), cells: [plain(frequency, HERTZ, 4), plain(amplitude, unit, 3)] })),
     },
   };
-}
-
-function uprightAt(u: uPlot, frequency: number, inks: Inks): void {
-  const { ctx: pen, bbox: { top, height } } = u;
-  const px = devicePixelRatio;
-  const x = u.valToPos(frequency, 'x', true);
-  pen.save();
-  pen.strokeStyle = inks.shot;
-  pen.lineWidth = px;
-  pen.setLineDash([2 * px, 3 * px]);
-  pen.beginPath();
-  pen.moveTo(x, top);
-  pen.lineTo(x, top + height);
-  pen.stroke();
-  pen.restore();
 }
 
 function wedges(u: uPlot, places: readonly (readonly [number, number])[], inks: Inks): void {
