@@ -56,6 +56,8 @@ export default defineConfig({
           environment: 'node',
           include: [`test/{${PURE_FOLDERS}}/**/*.test.ts`, 'test/house.test.ts'],
           setupFiles: ['test/setup/seed.ts', 'test/setup/silence.ts'],
+          // A guard against what never ends, not a measure of speed: a busy machine takes several times as long.
+          testTimeout: 60_000,
         },
       },
       {
@@ -65,6 +67,7 @@ export default defineConfig({
           environment: 'jsdom',
           include: [`test/{${PAGE_FOLDERS}}/**/*.test.{ts,tsx}`],
           setupFiles: ['test/setup/seed.ts', 'test/setup/silence.ts', 'test/setup/browser-parts.ts'],
+          testTimeout: 60_000,
         },
       },
       {
