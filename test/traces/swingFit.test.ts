@@ -5,6 +5,7 @@ import { fitSwing, type SwingFit, type SwingOptions } from '../../src/traces/swi
 import { swingOver } from '../../src/traces/swingModel.ts';
 import fits from '../reference/fits.json';
 import { draws } from '../metrology/sources.ts';
+import { struck } from './struck.ts';
 
 const [W, Z] = [2 * Math.PI * 0.9, 0.012];
 
@@ -15,32 +16,10 @@ interface More {
   readonly rest?: (t: number) => number;
 }
 
-/** x″ + 2ζω x′ + ω²x = 0 by fourth-order Runge–Kutta at tiny steps, x′ raised by ω × jump at each event. */
-function record(jumps: readonly number[], events: readonly number[], seconds: number, rate: number, more: More = {}): { readonly t: Float64Array; readonly x: Float64Array } {
-  const steps = 8;
-  const h = 1 / rate / steps;
-  const z = more.z ?? Z;
-  let [x, v] = [more.x ?? 0, (more.v ?? 0) * W];
-  const f = (a: number, b: number): readonly [number, number] => [b, -2 * z * W * b - W * W * a];
-  const n = Math.round(seconds * rate) + 1;
-  const [t, out] = [new Float64Array(n), new Float64Array(n)];
-  let next = 0;
-  for (let i = 0; i < n; i++) {
-    const now = i / rate;
-    t[i] = now;
-    out[i] = x + (more.rest?.(now) ?? 0);
-    for (let k = 0; k < steps; k++) {
-      // Events stand on the fine grid.
-      if (next < events.length && Math.abs(now + k * h - events[next]!) < h / 2) v += W * jumps[next++]!;
-      const [a1, b1] = f(x, v);
-      const [a2, b2] = f(x + (h / 2) * a1, v + (h / 2) * b1);
-      const [a3, b3] = f(x + (h / 2) * a2, v + (h / 2) * b2);
-      const [a4, b4] = f(x + h * a3, v + h * b3);
-      x += (h / 6) * (a1 + 2 * a2 + 2 * a3 + a4);
-      v += (h / 6) * (b1 + 2 * b2 + 2 * b3 + b4);
-    }
-  }
-  return { t, x: out };
+/** A linear pendulum struck at events on the fine grid, on its rest line. */
+function record(jumps: readonly number[], events: readonly number[], seconds: number, rate: number, { x = 0, v = 0, z = Z, rest = () => 0 }: More = {}): { readonly t: Float64Array; readonly x: Float64Array } {
+  const { t, theta } = struck({ frequency: W, ratio: z, share: 0, events, jumps, seconds, rate, start: [x, v] });
+  return { t: Float64Array.from(t), x: Float64Array.from(theta, (value, i) => value + rest(t[i]!)) };
 }
 
 type Samples = Parameters<typeof fitSwing>[0];

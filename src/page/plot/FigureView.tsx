@@ -1,11 +1,11 @@
 /** A figure on the sheet: drawn, pointed at, walked through by keys where it has marks, read aloud, and repeated as a table. */
-import { useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
-import type { CSSProperties, KeyboardEvent } from 'react';
+import { useCallback, useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
+import type { CSSProperties, KeyboardEvent, RefObject } from 'react';
 import type { Figure, Inks, Mark } from '../../plots/figure.ts';
 import { mountFigure } from '../../plots/mount.ts';
 import type { Mounted } from '../../plots/mount.ts';
-import { inTurn } from './inTurn.ts';
 import { NumbersOf } from './NumbersOf.tsx';
+import { useDrawn } from './useDrawn.ts';
 import styles from './FigureView.module.css';
 
 interface Props {
@@ -25,7 +25,6 @@ interface Hover {
   readonly place: CSSProperties;
 }
 
-const FIRST_WIDTH = 640;
 /** A readout is shown to the left of its mark where the mark is further right than this part of the width. */
 const TURN_AT = 0.6;
 
@@ -53,10 +52,6 @@ const nothing = (): void => undefined;
 
 export function FigureView({ figure, inks, selected = null, onSelect = nothing, onOpen = nothing, slim = false }: Props) {
   const surface = useRef<HTMLDivElement>(null);
-  const canvas = useRef<HTMLDivElement>(null);
-  const mounted = useRef<Mounted | null>(null);
-  const width = useRef(FIRST_WIDTH);
-  const wasDrawn = useRef(false);
   const latest = useRef({ selected, onSelect });
   const [hover, setHover] = useState<Hover | null>(null);
   const [told, setTold] = useState('');
@@ -66,47 +61,25 @@ export function FigureView({ figure, inks, selected = null, onSelect = nothing, 
     latest.current = { selected, onSelect };
   });
 
-  useLayoutEffect(() => {
-    const into = canvas.current;
-    if (into === null) return undefined;
-    let drawn: Mounted | null = null;
-    const draw = (): void => {
-      wasDrawn.current = true;
-      width.current = into.clientWidth || width.current;
-      drawn = mountFigure(figure, inks, into, width.current, latest.current.selected, {
-        hover: (mark, left, top) => setHover(mark === null ? null : { mark, place: placeBeside(left, top, width.current) }),
-        pick: (mark) => {
-          latest.current.onSelect(mark.id);
-          setTold(mark.reading);
-        },
-      });
-      mounted.current = drawn;
-    };
-    // The first time there is nothing to be seen yet; later the new one takes the old one's place at once.
-    const callOff = wasDrawn.current ? null : inTurn(draw);
-    if (callOff === null) draw();
-    return () => {
-      callOff?.();
-      setHover(null);
-      mounted.current = null;
-      drawn?.remove();
+  const draw = useCallback((into: HTMLElement, width: RefObject<number>): Mounted => {
+    const drawn = mountFigure(figure, inks, into, width.current, latest.current.selected, {
+      hover: (mark, left, top) => setHover(mark === null ? null : { mark, place: placeBeside(left, top, width.current) }),
+      pick: (mark) => {
+        latest.current.onSelect(mark.id);
+        setTold(mark.reading);
+      },
+    });
+    return {
+      ...drawn,
+      remove: () => {
+        setHover(null);
+        drawn.remove();
+      },
     };
   }, [figure, inks]);
+  const { canvas, mounted } = useDrawn(draw);
 
-  useEffect(() => {
-    const into = canvas.current;
-    if (into === null) return undefined;
-    const observer = new ResizeObserver(() => {
-      const wide = into.clientWidth;
-      if (wide === 0 || wide === width.current) return;
-      width.current = wide;
-      mounted.current?.resize(wide);
-    });
-    observer.observe(into);
-    return () => observer.disconnect();
-  }, []);
-
-  useLayoutEffect(() => mounted.current?.select(selected), [selected]);
+  useLayoutEffect(() => mounted.current?.select(selected), [mounted, selected]);
 
   const { marks } = figure;
   const present = marks.findIndex((mark) => mark.id === selected);

@@ -1,6 +1,6 @@
 /** The whole record on the sheet: looked along by mouse, touch and keys; its shots moved, added and taken out; bad stretches marked. */
-import { useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
-import type { CSSProperties, KeyboardEvent } from 'react';
+import { useCallback, useEffect, useId, useLayoutEffect, useRef, useState } from 'react';
+import type { CSSProperties, KeyboardEvent, RefObject } from 'react';
 import type { Inks } from '../../plots/figure.ts';
 import { afterKey, broughtIn, eventBeside, sameSight } from '../../plots/tracePanZoom.ts';
 import type { Sight } from '../../plots/tracePanZoom.ts';
@@ -10,8 +10,8 @@ import { RECORD_HEIGHT } from '../../plots/traceRecord.ts';
 import type { RecordEvent, RecordFigure } from '../../plots/traceRecord.ts';
 import { timeDigits, timeWords } from '../../plots/traceWords.ts';
 import { readQuantity } from '../../units/quantity.ts';
-import { inTurn } from '../plot/inTurn.ts';
 import { NumbersOf } from '../plot/NumbersOf.tsx';
+import { useDrawn } from '../plot/useDrawn.ts';
 import figureStyles from '../plot/FigureView.module.css';
 import styles from './traceRecord.module.css';
 
@@ -27,7 +27,6 @@ interface Props {
   readonly onBad: (from: number, to: number) => void;
 }
 
-const FIRST_WIDTH = 640;
 /** A readout stands to the left of its sign where that is further right than this part of the width. */
 const TURN_AT = 0.6;
 const BESIDE = 12;
@@ -44,10 +43,6 @@ function useLooking(figure: RecordFigure): readonly [Looking, (change: Partial<L
 export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, onRemove, onBad }: Props) {
   const id = useId();
   const surface = useRef<HTMLDivElement>(null);
-  const canvas = useRef<HTMLDivElement>(null);
-  const mounted = useRef<MountedRecord | null>(null);
-  const width = useRef(FIRST_WIDTH);
-  const wasDrawn = useRef(false);
   const [looking, look] = useLooking(figure);
   const [choosing, setChoosing] = useState(false);
   const [told, setTold] = useState('');
@@ -58,65 +53,44 @@ export function TraceRecord({ figure, inks, selected, onSelect, onMove, onAdd, o
     latest.current = { looking: present, look, choosing, onSelect, onMove };
   });
 
-  useLayoutEffect(() => {
-    const into = canvas.current;
-    if (into === null) return undefined;
-    let drawn: MountedRecord | null = null;
-    const draw = (): void => {
-      wasDrawn.current = true;
-      width.current = into.clientWidth || width.current;
-      drawn = mountRecord(figure, inks, into, width.current, latest.current.looking, {
-        // A wheel over the picture is the page's until the picture has been taken up.
-        isWheelOurs: (event) => event.ctrlKey || event.metaKey || surface.current?.contains(document.activeElement) === true,
-        isChoosing: () => latest.current.choosing,
-        look: (sight) => latest.current.look({ sight }),
-        moving: (which, time) => latest.current.look({ moving: { id: which, time } }),
-        moved: (which, time) => {
-          latest.current.look({ moving: null });
-          if (time !== null) latest.current.onMove(which, time);
-        },
-        choosing: (chosen) => latest.current.look({ chosen }),
-        chosen: (chosen) => {
-          latest.current.look({ chosen });
-          setChoosing(false);
-          setTold(`From ${timeWords(chosen.from, figure.spacing)} to ${timeWords(chosen.to, figure.spacing)} is chosen.`);
-        },
-        pick: (event) => {
-          latest.current.onSelect(event.id);
-          setTold(event.reading);
-        },
-        point: (place) => {
-          latest.current.look({ place, chosen: null });
-          setTold(timeWords(place, figure.spacing));
-        },
-        hover: (event, left, top) => setReadout(event === null ? null : { event, beside: left > width.current * TURN_AT ? { right: width.current - left + BESIDE, top } : { left: left + BESIDE, top } }),
-      });
-      mounted.current = drawn;
-    };
-    const callOff = wasDrawn.current ? null : inTurn(draw);
-    if (callOff === null) draw();
-    return () => {
-      callOff?.();
-      setReadout(null);
-      mounted.current = null;
-      drawn?.remove();
+  const draw = useCallback((into: HTMLElement, width: RefObject<number>): MountedRecord => {
+    const drawn = mountRecord(figure, inks, into, width.current, latest.current.looking, {
+      // A wheel over the picture is the page's until the picture has been taken up.
+      isWheelOurs: (event) => event.ctrlKey || event.metaKey || surface.current?.contains(document.activeElement) === true,
+      isChoosing: () => latest.current.choosing,
+      look: (sight) => latest.current.look({ sight }),
+      moving: (which, time) => latest.current.look({ moving: { id: which, time } }),
+      moved: (which, time) => {
+        latest.current.look({ moving: null });
+        if (time !== null) latest.current.onMove(which, time);
+      },
+      choosing: (chosen) => latest.current.look({ chosen }),
+      chosen: (chosen) => {
+        latest.current.look({ chosen });
+        setChoosing(false);
+        setTold(`From ${timeWords(chosen.from, figure.spacing)} to ${timeWords(chosen.to, figure.spacing)} is chosen.`);
+      },
+      pick: (event) => {
+        latest.current.onSelect(event.id);
+        setTold(event.reading);
+      },
+      point: (place) => {
+        latest.current.look({ place, chosen: null });
+        setTold(timeWords(place, figure.spacing));
+      },
+      hover: (event, left, top) => setReadout(event === null ? null : { event, beside: left > width.current * TURN_AT ? { right: width.current - left + BESIDE, top } : { left: left + BESIDE, top } }),
+    });
+    return {
+      ...drawn,
+      remove: () => {
+        setReadout(null);
+        drawn.remove();
+      },
     };
   }, [figure, inks]);
+  const { canvas, mounted } = useDrawn(draw);
 
-  useEffect(() => {
-    const into = canvas.current;
-    if (into === null) return undefined;
-    const observer = new ResizeObserver(() => {
-      const wide = into.clientWidth;
-      if (wide === 0 || wide === width.current) return;
-      width.current = wide;
-      mounted.current?.resize(wide);
-    });
-    observer.observe(into);
-    return () => observer.disconnect();
-  }, []);
-
-  useLayoutEffect(() => mounted.current?.show({ ...looking, selected }), [looking, selected]);
+  useLayoutEffect(() => mounted.current?.show({ ...looking, selected }), [mounted, looking, selected]);
 
   const event = figure.events.find((one) => one.id === selected) ?? null;
   const { sight, place, chosen } = looking;
